@@ -1,0 +1,1 @@
+"""Calc -> EvaluatedCalc: scope, formulas, checks, sections, beams, stresses."""

@@ -1,0 +1,1 @@
+"""One file a block kind: quantities to SI arrays, to mechanics, and back."""

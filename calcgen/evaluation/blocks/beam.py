@@ -1,0 +1,349 @@
+"""`beam NAME`: solved for each case, combined, and read by group, combination, span and place."""
+
+from __future__ import annotations
+
+import re
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from calcgen.evaluation.blocks.beam_model import BeamData, Combination, length_text, read_beam
+from calcgen.evaluation.blocks.beam_results import group_results, premises, relieving_cases
+from calcgen.evaluation.results import (
+    BeamResult,
+    CombinationResult,
+    GroupResult,
+    Plain,
+    Result,
+    SecondRoute,
+)
+from calcgen.evaluation.scope import Scope
+from calcgen.language.blocks.beam import BeamBlock
+from calcgen.language.blocks.section import LaterLine
+from calcgen.language.calc import FailedBlock
+from calcgen.language.nodes import Column, Name
+from calcgen.mechanics.beam import CaseSolution, Quantity, UnstableBeam, combine, combined, solve
+from calcgen.mechanics.combinations import Envelope, ReactionPart
+from calcgen.mechanics.second_route.beam import beam_residuals
+from calcgen.quantities.display import Style, show
+from calcgen.quantities.measure import Measure, from_si
+from calcgen.quantities.symbols import plain
+from calcgen.text import Report, Span, nearest
+
+_UNITS = {"M": "N·m", "V": "N", "w": "m", "slope": "1", "R": "N", "M_R": "N·m"}
+_EXTREME = re.compile(r"^(x_)?(M|V|w|slope)_(max|min|abs)(_lat)?$")
+_REACTION = re.compile(r"^(R|M_R)_([1-9]\d*)(?:_(max|min))?(_lat)?$")
+_STATE = re.compile(r"^(M|V|w|slope)(_lat)?$")
+
+
+@dataclass(frozen=True)
+class BeamThing:
+    """A beam in the scope: its results by group, combination, span and place."""
+
+    result: BeamResult
+    style: Style
+    kind: str = "beam"
+
+    def read(self, name: Name, arguments: tuple[Plain, ...] | None, report: Report) -> Measure | None:
+        """Return a result; report one that does not exist, or that has several states."""
+        parts, spans = list(name.parts[1:]), list(name.spans[1:])
+        solutions = self._states(parts, spans, report)
+        if solutions is None:
+            return None
+        stretch: tuple[float, float] | None = None
+        if parts and re.fullmatch(r"span_\d+", parts[0]):
+            number = int(parts[0].removeprefix("span_"))
+            all_spans = self.result.model.spans
+            if not 1 <= number <= len(all_spans):
+                report.error(
+                    "no-such-result",
+                    spans[0],
+                    f"the beam '{plain(self.result.name)}' has {len(all_spans)} spans",
+                )
+                return None
+            stretch = all_spans[number - 1]
+            parts.pop(0)
+            spans.pop(0)
+        if len(parts) != 1:
+            report.error(
+                "no-such-result",
+                spans[-1] if spans else name.span,
+                "the name of a result is missing" if not parts else f"'{plain(parts[-1])}' has no results",
+                hint="results are M_max, V_abs, w_max, R_1, M_max(2.5 m), …",
+            )
+            return None
+        return _Reading(self.result, solutions, self.style, report, spans[0]).read(
+            parts[0], stretch, arguments
+        )
+
+    def _states(self, parts: list[str], spans: list[Span], report: Report) -> dict[str, CaseSolution] | None:
+        """Take the name of a group or combination off the parts and return its solutions."""
+        groups = {g.name: {c.name: c.solution for c in g.combinations} for g in self.result.groups}
+        if "" in groups:
+            return groups[""]
+        singles = {c.name: {c.name: c.solution} for g in self.result.groups for c in g.combinations}
+        known = {**singles, **groups}
+        head = parts[0]
+        if head in known:
+            parts.pop(0)
+            spans.pop(0)
+            return known[head]
+        names = ", ".join(known)
+        if _EXTREME.match(head) or _REACTION.match(head) or _STATE.match(head) or head.startswith("span_"):
+            report.error(
+                "no-such-result",
+                spans[0],
+                f"results of '{plain(self.result.name)}' hang on a combination or a group",
+                hint=f"write {self.result.name}.{next(iter(groups))}.{head}; there are {names}",
+            )
+            return None
+        close = nearest(head, known)
+        report.error(
+            "no-such-result",
+            spans[0],
+            f"'{plain(self.result.name)}' has no combination or group '{plain(head)}'",
+            hint=f"the nearest is '{close}'" if close else f"there are {names}",
+        )
+        return None
+
+
+@dataclass(frozen=True)
+class _Reading:
+    """One result asked for by name."""
+
+    beam: BeamResult
+    solutions: Mapping[str, CaseSolution]
+    style: Style
+    report: Report
+    span: Span
+
+    def read(
+        self, word: str, stretch: tuple[float, float] | None, arguments: tuple[Plain, ...] | None
+    ) -> Measure | None:
+        place = self._place(arguments)
+        if arguments is not None and place is None:
+            return None
+        extreme, reaction, state = _EXTREME.match(word), _REACTION.match(word), _STATE.match(word)
+        if (word.endswith("_lat")) and "lateral" not in self.beam.model.planes:
+            return self._fault(
+                "the stiffness about the vertical axis is not known, so there are no lateral results",
+                "give section and E instead of EI",
+            )
+        if extreme and place is None:
+            return self._extreme(extreme, stretch)
+        if extreme and place is not None and extreme[3] != "abs" and not extreme[1]:
+            found = Envelope(self.solutions).at(_quantity(extreme[2], extreme[4]), place)
+            return self._measure(extreme[2], getattr(found, extreme[3]).value)
+        if state and place is not None:
+            if not self._one_state(word, f"{word}_max(…)"):
+                return None
+            (solution,) = self.solutions.values()
+            return self._measure(state[1], solution.at(_quantity(state[1], state[2]), place))
+        if state and place is None:
+            return self._fault(
+                f"'{word}' is a result at a place", f"write {word}(2.5 m), or {word}_max for the largest"
+            )
+        if reaction and place is None and stretch is None:
+            return self._reaction(reaction)
+        known = [
+            "M_max",
+            "M_min",
+            "M_abs",
+            "V_max",
+            "V_min",
+            "V_abs",
+            "w_max",
+            "w_min",
+            "x_M_max",
+            "R_1",
+            "M_R_1",
+        ]
+        close = nearest(word, known)
+        return self._fault(
+            f"a beam has no result '{plain(word)}'",
+            f"the nearest is '{close}'" if close else ", ".join(known),
+        )
+
+    def _fault(self, message: str, hint: str) -> None:
+        self.report.error("no-such-result", self.span, message, hint=hint)
+
+    def _place(self, arguments: tuple[Plain, ...] | None) -> float | None:
+        if arguments is None:
+            return None
+        length = from_si(1.0, "m").dimension
+        if len(arguments) != 1 or not isinstance(arguments[0], Measure) or arguments[0].dimension != length:
+            return self._fault("a place on the beam is a length from its start", "such as M(2.5 m)")
+        x = arguments[0].si
+        if not -1e-9 <= x / self.beam.model.length <= 1 + 1e-9:
+            unit = "ft" if self.style.system == "US" else "m"
+            end = length_text(self.beam.model.length, self.style, unit)
+            return self._fault("the place lies outside the beam", f"the beam runs from 0 to {end}")
+        return min(max(x, 0.0), self.beam.model.length)
+
+    def _one_state(self, word: str, instead: str) -> bool:
+        if len(self.solutions) == 1:
+            return True
+        self._fault(
+            f"'{word}' has several states here: {', '.join(self.solutions)}",
+            f"name one combination, or write {instead}",
+        )
+        return False
+
+    def _extreme(self, match: re.Match[str], stretch: tuple[float, float] | None) -> Measure:
+        start, end = stretch if stretch is not None else (None, None)
+        found = Envelope(self.solutions).extremes(_quantity(match[2], match[4]), start, end)
+        governing = getattr(found, match[3])
+        if match[1]:
+            return self._measure("x", governing.x)
+        return self._measure(match[2], abs(governing.value) if match[3] == "abs" else governing.value)
+
+    def _reaction(self, match: re.Match[str]) -> Measure | None:
+        number, which = int(match[2]), match[3]
+        count = len(self.beam.model.supports)
+        if number > count:
+            return self._fault(
+                f"the beam has {count} supports", "supports are numbered from the left, from 1"
+            )
+        part: ReactionPart
+        if match[1] == "R":
+            part = "force_lat" if match[4] else "force"
+        else:
+            part = "moment_lat" if match[4] else "moment"
+        if which is None and not self._one_state(match[0], f"{match[0]}_max"):
+            return None
+        found = Envelope(self.solutions).reaction(number - 1, part)
+        return self._measure(match[1], getattr(found, which or "max").value)
+
+    def _measure(self, quantity: str, value: float) -> Measure:
+        return beam_measure(quantity, value, self.style)
+
+
+def beam_measure(quantity: str, value: float, style: Style) -> Measure:
+    """Return a result of a beam in the unit it is shown in: M, V, w, slope, x, R or M_R."""
+    us = style.system == "US"
+    if quantity == "x":
+        return from_si(value, "m").shown_in("ft" if us else "m")
+    if quantity == "w":
+        return from_si(value, "m").shown_in("in" if us else "mm")
+    if quantity == "slope":
+        return from_si(value, "")
+    return from_si(value, _UNITS[quantity]).shown_in(
+        style.default_unit(from_si(1.0, _UNITS[quantity]).dimension)
+    )
+
+
+def _quantity(word: str, lateral: str | None) -> Quantity:
+    return f"{word}{lateral or ''}"  # type: ignore[return-value]
+
+
+def evaluate_beam(block: BeamBlock, scope: Scope) -> BeamResult | FailedBlock:
+    """Solve the beam, combine its cases, and define its name."""
+    free = scope.define(block.target)
+    data = read_beam(block, scope)
+    result = _solved(block, data, scope) if data is not None else None
+    if result is None or not free:
+        if free:
+            scope.failed.add(block.target.name)
+        return FailedBlock("beam", block.span)
+    scope.things[block.target.name] = BeamThing(result, scope.style)
+    return result
+
+
+def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None:
+    name = block.target.name
+    try:
+        solutions = solve(data.model, data.cases)
+    except UnstableBeam as fault:
+        scope.report.error(
+            "unstable", block.head_span, _motion(fault, scope.style), hint="add a support, or remove a hinge"
+        )
+        return None
+    except ValueError as fault:
+        scope.report.error("beam", block.head_span, str(fault))
+        return None
+    everything = Combination("", "", dict.fromkeys(data.cases, 1.0), block.head_span)
+    combinations = data.combinations or (everything,)
+    if not solutions:
+        scope.report.error("load-missing", block.head_span, f"the beam '{plain(name)}' has no load")
+        return None
+    by_group: dict[str, list[CombinationResult]] = {}
+    for c in combinations:
+        combined_solution = combine(solutions, c.factors)
+        by_group.setdefault(c.group or c.name, []).append(
+            CombinationResult(c.name, c.factors, combined_solution)
+        )
+    groups = tuple(
+        GroupResult(group, tuple(members), group_results(members, data.model, scope.style, beam_measure))
+        for group, members in by_group.items()
+    )
+    for group in groups:
+        for case in relieving_cases(group, solutions, data.case_kinds):
+            scope.report.warning(
+                "relieving-permanent",
+                block.head_span,
+                f"the permanent case '{case}' relieves in '{group.name}', and no combination takes it at 1.0",
+                hint=f"add a combination with 1.0*{case}",
+            )
+    return BeamResult(
+        name=name,
+        section=", ".join(dict.fromkeys(s.result.name for s in data.sections)),
+        model=data.model,
+        case_kinds={case: data.case_kinds.get(case, "") for case in data.cases},
+        loads=data.rows,
+        groups=groups,
+        settings=_shown_settings(data, scope.style),
+        restrained=data.is_restrained if data.restrained is not None else None,
+        premises=premises(name, data, groups, scope.style),
+        second_route=_second_route(name, data, groups),
+        lines=_lines(block, scope),
+        line=scope.report.source.line_number(block.head_span),
+        span=block.head_span,
+    )
+
+
+def _lines(block: BeamBlock, scope: Scope) -> tuple[tuple[str, Column, Column, int], ...]:
+    """Return each line of the block as typed, with its second and third column."""
+    source = scope.report.source
+    return tuple(
+        (
+            " ".join(source.slice(line.span).partition("|")[0].split()),
+            line.annotations.note,
+            line.annotations.reference,
+            source.line_number(line.span),
+        )
+        for line in block.lines
+        if not isinstance(line, LaterLine)
+    )
+
+
+def _second_route(name: str, data: BeamData, groups: tuple[GroupResult, ...]) -> tuple[SecondRoute, ...]:
+    """Return, for each comparison, the worst residual over all combinations."""
+    worst: dict[str, SecondRoute] = {}
+    for group in groups:
+        for c in group.combinations:
+            loads = combined(data.cases, c.factors)
+            for r in beam_residuals(data.model, loads, c.solution):
+                row = SecondRoute(name, r.what, r.residual, r.tolerance, r.quantity)
+                held = worst.get(r.what)
+                if held is None or not abs(r.residual) <= abs(held.residual):
+                    worst[r.what] = row
+    return tuple(worst.values())
+
+
+def _shown_settings(data: BeamData, style: Style) -> tuple[Result, ...]:
+    results = [
+        Result(f"L_{i}" if len(data.spans) > 1 else "L", "span", m, show(m, style))
+        for i, m in enumerate((beam_measure("x", s, style) for s in data.spans), start=1)
+    ]
+    if data.E is not None:
+        results.append(Result("E", "modulus of elasticity", data.E, show(data.E, style)))
+    for i, stretch in enumerate(data.model.stretches, start=1):
+        EI = from_si(stretch.stiffness.vertical, "N·m²").shown_in(None)
+        word = "EI" if len(data.model.stretches) == 1 else f"EI_{i}"
+        results.append(Result(word, "bending stiffness about the horizontal axis", EI, show(EI, style)))
+    return tuple(results)
+
+
+def _motion(fault: UnstableBeam, style: Style) -> str:
+    """Return how an unstable beam can move, in the project's unit of length."""
+    unit = "ft" if style.system == "US" else "m"
+    return re.sub(r"([\d.e+-]+) m\b", lambda m: length_text(float(m[1]), style, unit), str(fault))

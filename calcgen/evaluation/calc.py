@@ -1,0 +1,205 @@
+"""One calc from top to bottom, and all calcs of a project in order."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field
+from typing import Literal
+
+from calcgen.evaluation.blocks.beam import evaluate_beam
+from calcgen.evaluation.blocks.inputs import evaluate_inputs
+from calcgen.evaluation.blocks.prose import evaluate_prose, evaluate_sheet
+from calcgen.evaluation.blocks.section import evaluate_section
+from calcgen.evaluation.blocks.stress import evaluate_stress
+from calcgen.evaluation.blocks.working import evaluate_working
+from calcgen.evaluation.checks import Labels
+from calcgen.evaluation.citations import check_citations
+from calcgen.evaluation.formulas import shown
+from calcgen.evaluation.order import feeds_of, in_order
+from calcgen.evaluation.results import (
+    AssumptionsResult,
+    BeamResult,
+    CheckResult,
+    CheckRow,
+    EvaluatedCalc,
+    Origin,
+    Premise,
+    SecondRoute,
+    SectionResult,
+    Segment,
+    Standing,
+    StressResult,
+    WorkingResult,
+)
+from calcgen.evaluation.scope import Scope
+from calcgen.language.blocks.assumptions import AssumptionsBlock
+from calcgen.language.blocks.beam import BeamBlock
+from calcgen.language.blocks.inputs import InputsBlock
+from calcgen.language.blocks.section import SectionBlock
+from calcgen.language.blocks.sheet import SheetBlock
+from calcgen.language.blocks.stress import StressBlock
+from calcgen.language.blocks.working import Derivation, WorkingBlock
+from calcgen.language.calc import Block, Calc, FailedBlock, Prose
+from calcgen.profiles.catalogue import Catalogue
+from calcgen.quantities.display import Style
+from calcgen.text import Diagnostic, Report
+
+
+@dataclass(frozen=True)
+class Setting:
+    """What a project gives to each of its calcs."""
+
+    axes: Literal["eurocode", "american"]
+    style: Style
+    catalogue: Catalogue
+    references: frozenset[str] = field(default_factory=frozenset)
+
+
+def evaluate_all(calcs: Sequence[Calc], setting: Setting) -> tuple[EvaluatedCalc, ...]:
+    """Evaluate calcs, those that feed others first; returned in the order of their numbers."""
+    order = in_order(calcs)
+    scopes: dict[str, Scope] = {}
+    done: dict[str, EvaluatedCalc] = {}
+    for calc in order.cyclic:
+        found = tuple(d for d in order.diagnostics if d.source == calc.source)
+        done[calc.number] = not_evaluated(calc, "it is part of a loop of calcs that feed each other", found)
+    known = {c.number for c in calcs}
+    for calc in order.calcs:
+        broken = sorted(
+            {
+                f.calc
+                for f in feeds_of(calc)
+                if f.calc in done and done[f.calc].standing in ("in error", "not evaluated")
+            }
+        )
+        if broken:
+            reasons = (f"{n}, which feeds it, is {done[n].standing}" for n in broken)
+            done[calc.number] = not_evaluated(calc, "; ".join(reasons), ())
+            continue
+        done[calc.number], scopes[calc.number] = evaluate_calc(calc, setting, scopes)
+    assert known == set(done)
+    return tuple(done[n] for n in sorted(done))
+
+
+def not_evaluated(calc: Calc, reason: str, found: tuple[Diagnostic, ...]) -> EvaluatedCalc:
+    """Return a calc of which nothing is evaluated; one with errors of its own is in error."""
+    diagnostics = calc.diagnostics + found
+    failed = any(d.severity == "error" for d in diagnostics)
+    standing: Standing = "in error" if failed else "not evaluated"
+    return EvaluatedCalc(calc, (), {}, (), (), (), (), diagnostics, standing, reason)
+
+
+def evaluate_calc(calc: Calc, setting: Setting, upstream: Mapping[str, Scope]) -> tuple[EvaluatedCalc, Scope]:
+    """Evaluate one calc; `upstream` holds the scopes of the calcs that may feed it."""
+    report = Report(calc.source)
+    scope = Scope(report, setting.style, failed=set(calc.failed_names), later=_defined_names(calc))
+    labels = Labels()
+    found: dict[int, Segment] = {}
+    for index, segment in enumerate(calc.segments):
+        if not isinstance(segment, Prose | SheetBlock):
+            found[index] = _evaluate_block(segment, scope, labels, setting, upstream)
+    for index, segment in enumerate(calc.segments):
+        if isinstance(segment, Prose):
+            found[index] = evaluate_prose(segment, scope)
+        elif isinstance(segment, SheetBlock):
+            found[index] = evaluate_sheet(segment, scope)
+    segments = tuple(found[i] for i in range(len(calc.segments)))
+    check_citations(calc, setting.references, report)
+    second_route = _second_route(segments)
+    _report_residuals(segments, report)
+    diagnostics = tuple(sorted({*calc.diagnostics, *report.diagnostics}, key=lambda d: d.order))
+    checks = _checks(segments)
+    result = EvaluatedCalc(
+        calc=calc,
+        segments=segments,
+        values={name: (value, shown(value, scope)) for name, value in scope.values.items()},
+        checks=checks,
+        premises=_premises(segments),
+        second_route=second_route,
+        depends=tuple(Origin(f.calc, f.name.dotted) for f in feeds_of(calc)),
+        diagnostics=diagnostics,
+        standing=_standing(checks, diagnostics),
+    )
+    return result, scope
+
+
+def _evaluate_block(
+    segment: Block | FailedBlock,
+    scope: Scope,
+    labels: Labels,
+    setting: Setting,
+    upstream: Mapping[str, Scope],
+) -> Segment:
+    match segment:
+        case AssumptionsBlock():
+            return AssumptionsResult(segment)
+        case InputsBlock():
+            return evaluate_inputs(segment, scope, upstream)
+        case WorkingBlock():
+            return evaluate_working(segment, scope, labels)
+        case SectionBlock():
+            return evaluate_section(segment, scope, setting.axes, setting.catalogue)
+        case BeamBlock():
+            return evaluate_beam(segment, scope, setting.axes)
+        case StressBlock():
+            return evaluate_stress(segment, scope, labels, setting.axes)
+        case FailedBlock():
+            return segment
+    raise AssertionError(segment)
+
+
+def _defined_names(calc: Calc) -> frozenset[str]:
+    names: set[str] = set()
+    for block in calc.segments:
+        match block:
+            case InputsBlock():
+                names.update(i.target.name for i in block.items)
+            case WorkingBlock():
+                names.update(i.target.name for i in block.items if isinstance(i, Derivation))
+            case SectionBlock() | BeamBlock() | StressBlock():
+                names.add(block.target.name)
+            case _:
+                pass
+    return frozenset(names)
+
+
+def _checks(segments: Sequence[Segment]) -> tuple[CheckResult, ...]:
+    checks: list[CheckResult] = []
+    for segment in segments:
+        if isinstance(segment, WorkingResult):
+            checks += [row.result for row in segment.rows if isinstance(row, CheckRow)]
+        elif isinstance(segment, StressResult) and segment.check is not None:
+            checks.append(segment.check)
+    return tuple(checks)
+
+
+def _premises(segments: Sequence[Segment]) -> tuple[Premise, ...]:
+    return tuple(p for s in segments if isinstance(s, BeamResult | StressResult) for p in s.premises)
+
+
+def _second_route(segments: Sequence[Segment]) -> tuple[SecondRoute, ...]:
+    kinds = SectionResult | BeamResult | StressResult
+    return tuple(r for s in segments if isinstance(s, kinds) for r in s.second_route)
+
+
+def _report_residuals(segments: Sequence[Segment], report: Report) -> None:
+    """Report each number that the second route does not find again: an error of the calc."""
+    for segment in segments:
+        if isinstance(segment, SectionResult | BeamResult | StressResult):
+            for row in segment.second_route:
+                if not row.holds:
+                    report.error(
+                        "residual",
+                        segment.span,
+                        f"the second route does not find {row.what} of '{row.of}' again: "
+                        f"residual {row.residual:.2e}, tolerance {row.tolerance:.0e} of {row.scale}",
+                        hint="do not use these results; the outline, the data or the program is at fault",
+                    )
+
+
+def _standing(checks: Sequence[CheckResult], diagnostics: Sequence[Diagnostic]) -> Standing:
+    if any(d.severity == "error" for d in diagnostics):
+        return "in error"
+    if not checks:
+        return "no checks"
+    return "satisfied" if all(c.satisfied for c in checks) else "exceeded"

@@ -1,0 +1,46 @@
+"""Citations: every key cited is in references.toml."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import fields, is_dataclass
+
+from calcgen.language.calc import Calc, Prose
+from calcgen.language.nodes import Citation, Column
+from calcgen.text import Report, nearest
+
+
+def citations_of(calc: Calc) -> tuple[Citation, ...]:
+    """Return the citations of a calc in the order they stand."""
+    found = (
+        c
+        for s in calc.segments
+        if not isinstance(s, Prose)
+        for column in _columns(s)
+        for c in column.citations
+    )
+    return tuple(sorted(found, key=lambda c: c.span))
+
+
+def check_citations(calc: Calc, known: frozenset[str], report: Report) -> None:
+    """Report each cited key that the project's references do not have."""
+    for citation in citations_of(calc):
+        if citation.key not in known:
+            found = nearest(citation.key, known)
+            report.error(
+                "unknown-reference",
+                citation.span,
+                f"'{citation.key}' is not in references.toml",
+                hint=f"the nearest key is '{found}'" if found else "add it there, with its title and edition",
+            )
+
+
+def _columns(node: object) -> Iterator[Column]:
+    if isinstance(node, Column):
+        yield node
+    elif isinstance(node, tuple):
+        for item in node:
+            yield from _columns(item)
+    elif is_dataclass(node):
+        for part in fields(node):
+            yield from _columns(getattr(node, part.name))

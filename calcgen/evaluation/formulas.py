@@ -1,0 +1,443 @@
+"""Formulas with quantities: dimensions are checked at every operator, faults are reported at their place."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable
+from dataclasses import dataclass, replace
+
+import pint
+
+from calcgen.evaluation.results import Operand, Plain
+from calcgen.evaluation.scope import Scope
+from calcgen.language.nodes import (
+    Binary,
+    Call,
+    Cases,
+    Comparison,
+    Condition,
+    Expression,
+    Formula,
+    Logic,
+    Name,
+    Number,
+    Text,
+    Truth,
+    Unary,
+    UnitText,
+)
+from calcgen.quantities.display import Shown, describe, show
+from calcgen.quantities.measure import Measure, measure, pretty
+from calcgen.quantities.registry import registry
+from calcgen.text import Report, Span
+
+_COMPARE: dict[str, Callable[[float, float], bool]] = {
+    "<": lambda a, b: a < b,
+    "<=": lambda a, b: a <= b,
+    ">": lambda a, b: a > b,
+    ">=": lambda a, b: a >= b,
+    "==": lambda a, b: a == b,
+    "!=": lambda a, b: a != b,
+}
+
+
+def evaluate(formula: Formula, scope: Scope) -> tuple[Plain | None, int | None]:
+    """Return the value of a formula and the index of the case taken.
+
+    Every case is evaluated, so that its names and dimensions are checked even where it is not taken;
+    arithmetic faults (a root of a negative number) count only in the case that is.
+    """
+    if not isinstance(formula, Cases):
+        return Evaluator(scope).value(formula), None
+    taken: int | None = None
+    value: Plain | None = None
+    dimension: object = None
+    whole = True
+    for index, branch in enumerate(formula.branches):
+        held: bool | None = True
+        if branch.condition is not None:
+            held = Evaluator(scope, quiet=taken is not None).condition(branch.condition)
+        whole = whole and (held is not None or taken is not None)
+        here = taken is None and held is True and whole
+        found = Evaluator(scope, quiet=not here).value(branch.value)
+        if here:
+            taken, value = index, found
+        if isinstance(found, Measure):
+            if dimension is not None and found.dimension != dimension:
+                scope.report.error(
+                    "cases-differ",
+                    branch.value.span,
+                    f"this case is {describe(found.dimension)}, the first one is {describe(dimension)}",  # type: ignore[arg-type]
+                    hint="all cases of a value have one dimension",
+                )
+                whole = False
+            dimension = found.dimension if dimension is None else dimension
+    if taken is None and whole:
+        scope.report.error(
+            "no-case-holds", formula.span, "no case is true here", hint="add a last case with 'otherwise'"
+        )
+    return (value if whole else None), taken
+
+
+@dataclass(frozen=True)
+class Evaluator:
+    """Evaluates expressions over a scope. `quiet` leaves arithmetic faults unreported."""
+
+    scope: Scope
+    quiet: bool = False
+
+    @property
+    def report(self) -> Report:
+        """Where faults go."""
+        return self.scope.report
+
+    def value(self, node: Expression) -> Plain | None:
+        """Return the value of an expression, or None after a fault."""
+        match node:
+            case Number():
+                return self.literal(node)
+            case Text(value=text):
+                return text
+            case Truth(value=truth):
+                return truth
+            case Name():
+                return self._name(node)
+            case Unary():
+                return self._unary(node)
+            case Binary():
+                return self._binary(node)
+            case Call():
+                return self._call(node)
+
+    def measure(self, node: Expression) -> Measure | None:
+        """Return the value of an expression that must be a quantity or number."""
+        value = self.value(node)
+        if value is None or isinstance(value, Measure):
+            return value
+        what = "text" if isinstance(value, str) else "yes or no"
+        self.report.error("not-a-number", node.span, f"a quantity is needed here, this is {what}")
+        return None
+
+    def literal(self, node: Number) -> Measure | None:
+        """Return a literal with its unit."""
+        if node.unit is None:
+            return measure(node.value, None)
+        for symbol, span in node.unit.joined:
+            if symbol in self.scope.values or symbol in self.scope.things:
+                before = self.report.source.text[node.span.start : span.start].rstrip("/ ")
+                self.report.error(
+                    "unit-or-name",
+                    span,
+                    f"'{symbol}' is a unit and also a name of this calc",
+                    hint=f"write {before} / {symbol} with spaces to divide by the name, or rename it",
+                )
+                return None
+        return measure(node.value, pretty(node.unit.text), node.unit.factors)
+
+    def _name(self, node: Name) -> Plain | None:
+        arguments: tuple[Plain, ...] | None = None
+        if node.arguments is not None:
+            values = [self.value(a) for a in node.arguments]
+            if any(v is None for v in values):
+                return None
+            arguments = tuple(v for v in values if v is not None)
+        return self.scope.value(node, arguments)
+
+    def _unary(self, node: Unary) -> Measure | None:
+        operand = self.measure(node.operand)
+        if operand is None:
+            return None
+        return Measure(-operand.quantity, operand.unit) if node.operator == "-" else operand
+
+    def _binary(self, node: Binary) -> Measure | None:
+        left, right = self.measure(node.left), self.measure(node.right)
+        if left is None or right is None:
+            return None
+        match node.operator:
+            case "+" | "-":
+                return self._sum(node, left, right)
+            case "*":
+                unit = _product_unit(left, right) or _product_unit(right, left)
+                return self._finite(node.operator_span, lambda: left.quantity * right.quantity, unit)
+            case "/":
+                if right.si == 0:
+                    return self._fault("division-by-zero", node.operator_span, "division by zero", node.right)
+                return self._finite(
+                    node.operator_span, lambda: left.quantity / right.quantity, _product_unit(left, right)
+                )
+            case _:
+                return self._power(node, left, right)
+
+    def _sum(self, node: Binary, left: Measure, right: Measure) -> Measure | None:
+        if not self.same_dimension(node.operator_span, node.operator, left, right):
+            return None
+        unit = left.unit if left.unit is not None else right.unit
+        if "°C" in (left.unit, right.unit):
+            unit = "°C" if (left.unit, right.unit) == ("°C", "K") else "K"
+        sign = 1 if node.operator == "+" else -1
+        return self._finite(node.operator_span, lambda: left.quantity + sign * right.quantity, unit)
+
+    def _power(self, node: Binary, left: Measure, right: Measure) -> Measure | None:
+        if right.dimension:
+            self.report.error(
+                "exponent-has-dimension",
+                node.right.span,
+                f"an exponent is a plain number, this is {describe(right.dimension)}",
+            )
+            return None
+        if left.si < 0 and right.si != int(right.si):
+            return self._fault(
+                "outside-domain", node.operator_span, "a negative base with a fractional exponent", node.left
+            )
+        if left.si == 0 and right.si < 0:
+            return self._fault(
+                "division-by-zero", node.operator_span, "zero with a negative exponent", node.left
+            )
+        exponent = int(right.si) if right.si == int(right.si) else right.si
+        if abs(exponent) > 1000:
+            return self._fault("not-finite", node.operator_span, "the exponent is out of range", node.right)
+        return self._finite(node.operator_span, lambda: left.quantity**exponent, None)
+
+    def same_dimension(self, span: Span, operator: str, left: Measure, right: Measure) -> bool:
+        """Return whether two operands have one dimension; report it when not."""
+        if left.dimension == right.dimension:
+            return True
+        verb = {"+": "adds", "-": "subtracts"}.get(operator, "compares")
+        hint = ""
+        if {describe(left.dimension), describe(right.dimension)} == {"mass", "force"}:
+            hint = "lb, kg and t are masses; write lbf or kN for a force, or multiply by g_n"
+        elif not left.dimension or not right.dimension:
+            hint = "a unit or a factor is missing on one side"
+        self.report.error(
+            "dimension-mismatch",
+            span,
+            f"'{operator}' {verb} {describe(left.dimension)} and {describe(right.dimension)}",
+            hint=hint,
+        )
+        return False
+
+    def _finite(
+        self, span: Span, compute: Callable[[], pint.Quantity[float]], unit: str | None
+    ) -> Measure | None:
+        try:
+            quantity = compute()
+        except OverflowError:
+            quantity = None
+        if quantity is None or not math.isfinite(quantity.magnitude):
+            return self._fault("not-finite", span, "the result is too large to be a number", None)
+        return Measure(quantity, unit)
+
+    def _fault(self, code: str, span: Span, message: str, at: Expression | None) -> Measure | None:
+        if not self.quiet:
+            hint = ""
+            if isinstance(at, Name):
+                hint = f"'{at.dotted}' is the operand to look at"
+            self.report.error(code, span, message, hint=hint)
+        return None
+
+    def _call(self, node: Call) -> Measure | None:
+        values = [self.measure(a) for a in node.arguments]
+        arguments = [v for v in values if v is not None]
+        if len(arguments) < len(values):
+            return None
+        first = arguments[0]
+        match node.function:
+            case "sqrt" | "cbrt":
+                return self._root(node, first)
+            case "abs":
+                return Measure(abs(first.quantity), first.unit)
+            case "min" | "max":
+                return self._extreme(node, arguments)
+            case "round" | "ceil" | "floor":
+                return self._to_step(node, first, arguments[1])
+            case "atan2":
+                if not self.same_dimension(node.function_span, node.function, first, arguments[1]):
+                    return None
+                return measure(math.atan2(first.si, arguments[1].si), None)
+            case "interpolate":
+                return self._interpolate(node, arguments)
+            case _:
+                return self._number_function(node, first)
+
+    def _root(self, node: Call, value: Measure) -> Measure | None:
+        if node.function == "sqrt" and value.si < 0:
+            return self._fault(
+                "outside-domain", node.function_span, "the root of a negative value", node.arguments[0]
+            )
+        power = 1 / 2 if node.function == "sqrt" else 1 / 3
+        root = (
+            math.sqrt(value.si)
+            if node.function == "sqrt"
+            else math.copysign(abs(value.si) ** power, value.si)
+        )
+        units = value.quantity.units**power
+        return Measure(registry().Quantity(root, units), None)
+
+    def _extreme(self, node: Call, arguments: list[Measure]) -> Measure | None:
+        first = arguments[0]
+        for other in arguments[1:]:
+            if not self.same_dimension(node.function_span, node.function, first, other):
+                return None
+        choose = min if node.function == "min" else max
+        best = choose(arguments, key=lambda m: m.si)
+        return replace(best, unit=best.unit or next((a.unit for a in arguments if a.unit), None))
+
+    def _to_step(self, node: Call, value: Measure, step: Measure) -> Measure | None:
+        if not self.same_dimension(node.function_span, node.function, value, step):
+            return None
+        if step.si <= 0:
+            return self._fault(
+                "outside-domain", node.function_span, "the step must be positive", node.arguments[1]
+            )
+        ratio = round(value.si / step.si, 9)  # so that 250 mm, held as 0.25000000000000006 m, stays 250 mm
+        count = {"round": math.floor(ratio + 0.5), "ceil": math.ceil(ratio), "floor": math.floor(ratio)}
+        return Measure(step.quantity * count[node.function], value.unit or step.unit)
+
+    def _interpolate(self, node: Call, arguments: list[Measure]) -> Measure | None:
+        x, x_1, y_1, x_2, y_2 = arguments
+        for a, b in ((x, x_1), (x, x_2), (y_1, y_2)):
+            if not self.same_dimension(node.function_span, node.function, a, b):
+                return None
+        if x_1.si == x_2.si:
+            return self._fault(
+                "division-by-zero", node.function_span, "both points have the same x", node.arguments[3]
+            )
+        share = (x.si - x_1.si) / (x_2.si - x_1.si)
+        if not -1e-12 <= share <= 1 + 1e-12:
+            return self._fault(
+                "outside-domain", node.arguments[0].span, "x lies outside the two points", node.arguments[0]
+            )
+        quantity = y_1.quantity + (y_2.quantity - y_1.quantity) * share
+        return Measure(quantity, y_1.unit)
+
+    def _number_function(self, node: Call, value: Measure) -> Measure | None:
+        if value.dimension:
+            self.report.error(
+                "dimension-mismatch",
+                node.arguments[0].span,
+                f"'{node.function}' takes a plain number or an angle, this is {describe(value.dimension)}",
+            )
+            return None
+        functions: dict[str, Callable[[float], float]] = {
+            "sin": math.sin,
+            "cos": math.cos,
+            "tan": math.tan,
+            "asin": math.asin,
+            "acos": math.acos,
+            "atan": math.atan,
+            "exp": math.exp,
+            "ln": math.log,
+            "log10": math.log10,
+        }
+        try:
+            return measure(functions[node.function](value.si), None)
+        except (ValueError, OverflowError):
+            return self._fault(
+                "outside-domain",
+                node.function_span,
+                f"'{node.function}' has no value at {value.si:g}",
+                node.arguments[0],
+            )
+
+    def condition(self, node: Condition) -> bool | None:
+        """Return whether a condition holds, or None after a fault."""
+        if isinstance(node, Logic):
+            held = [self.condition(o) for o in node.operands]
+            if any(h is None for h in held):
+                return None
+            if node.operator == "not":
+                return not held[0]
+            return all(held) if node.operator == "and" else any(held)
+        return self._comparison(node)
+
+    def _comparison(self, node: Comparison) -> bool | None:
+        left, right = self.value(node.left), self.value(node.right)
+        if left is None or right is None:
+            return None
+        if isinstance(left, Measure) and isinstance(right, Measure):
+            if not self.same_dimension(node.operator_span, node.operator, left, right):
+                return None
+            return _COMPARE[node.operator](left.si, right.si)
+        if type(left) is type(right) and node.operator in ("==", "!="):
+            return (left == right) is (node.operator == "==")
+        self.report.error(
+            "not-a-number",
+            node.operator_span,
+            f"'{node.operator}' compares two quantities, or with == and != two texts",
+        )
+        return None
+
+
+def _product_unit(value: Measure, factor: Measure) -> str | None:
+    """Return the unit that `value` keeps when multiplied or divided by a plain `factor`."""
+    if factor.dimension or not value.dimension:
+        return None
+    return "K" if value.unit == "°C" else value.unit
+
+
+def with_unit(value: Plain, unit: UnitText | None, report: Report) -> Plain | None:
+    """Return a value shown in the unit chosen in brackets; report a unit of another dimension."""
+    if unit is None:
+        return value
+    if not isinstance(value, Measure):
+        report.error("unit-mismatch", unit.span, "only a quantity has a unit")
+        return None
+    chosen = measure(0.0, None, unit.factors).dimension
+    if value.dimension != chosen:
+        report.error(
+            "unit-mismatch",
+            unit.span,
+            f"the value is {describe(value.dimension)}, the unit {pretty(unit.text)} is {describe(chosen)}",
+            hint="a missing factor, or a unit left out of a number, is the usual cause",
+        )
+        return None
+    return value.shown_in(pretty(unit.text))
+
+
+def names_in(node: Formula | Condition) -> tuple[Name, ...]:
+    """Return the names of a formula in the order written, those in arguments after their owner."""
+    match node:
+        case Name():
+            inner = (n for a in node.arguments or () for n in names_in(a))
+            return (node, *inner)
+        case Unary():
+            return names_in(node.operand)
+        case Binary() | Comparison():
+            return names_in(node.left) + names_in(node.right)
+        case Call():
+            return tuple(n for a in node.arguments for n in names_in(a))
+        case Logic():
+            return tuple(n for o in node.operands for n in names_in(o))
+        case Cases():
+            found: tuple[Name, ...] = ()
+            for branch in node.branches:
+                found += names_in(branch.value)
+                found += names_in(branch.condition) if branch.condition is not None else ()
+            return found
+        case _:
+            return ()
+
+
+def operands_of(node: Formula | Condition, scope: Scope) -> dict[str, Operand]:
+    """Return what stands for each name of a formula, by the name's text as typed.
+
+    Read after the formula was evaluated without a fault; names without a value are left out.
+    """
+    silent = Report(scope.report.source)
+    reader = Evaluator(replace(scope, report=silent), quiet=True)
+    operands: dict[str, Operand] = {}
+    for name in names_in(node):
+        value = reader.value(name)
+        if value is not None:
+            text = scope.report.source.slice(name.span).strip()
+            operands[text] = Operand(name.dotted, shown(value, scope))
+    return operands
+
+
+def shown(value: Plain, scope: Scope) -> Shown:
+    """Return a value as it is read on a page."""
+    if isinstance(value, Measure):
+        return show(value, scope.style)
+    if isinstance(value, bool):
+        return Shown("yes" if value else "no")
+    return Shown(value)

@@ -1,0 +1,139 @@
+"""The names of a calc while it is evaluated from top to bottom."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass, field
+from typing import Protocol
+
+from calcgen.language.nodes import CONSTANTS, FUNCTIONS, Name, Named
+from calcgen.quantities.display import Style
+from calcgen.quantities.measure import Measure, from_si, measure
+from calcgen.quantities.symbols import plain
+from calcgen.quantities.units import STANDARD_GRAVITY
+from calcgen.evaluation.results import Plain
+from calcgen.text import Related, Report, Span, nearest
+
+_CONSTANT_VALUES = {
+    "π": measure(3.141592653589793, None),
+    "g_n": from_si(STANDARD_GRAVITY, "m/s²"),
+}
+
+
+class Evaluate(Protocol):
+    """Evaluates an argument of a name, `2.5 m` in `stringer.M_max(2.5 m)`."""
+
+    def __call__(self, argument: object, /) -> Measure | None: ...
+
+
+class Thing(Protocol):
+    """What a block defines: its results are read by dotted names."""
+
+    @property
+    def kind(self) -> str:
+        """The kind of block, for messages: 'section'."""
+        ...
+
+    def read(self, name: Name, arguments: tuple[Plain, ...] | None, report: Report) -> Measure | None:
+        """Return the result that `name` asks for; report and return None when there is none."""
+        ...
+
+
+@dataclass
+class Scope:
+    """What is defined so far. It grows while a calc is evaluated and is read by calcs fed from it.
+
+    Attributes
+    ----------
+    failed : names that would be defined, had their line not failed: using one reports nothing more.
+    """
+
+    report: Report
+    style: Style
+    values: dict[str, Plain] = field(default_factory=dict)
+    things: dict[str, Thing] = field(default_factory=dict)
+    failed: set[str] = field(default_factory=set)
+    places: dict[str, Span] = field(default_factory=dict)
+    later: frozenset[str] = frozenset()
+
+    def define(self, target: Named) -> bool:
+        """Claim a name for the line that defines it; report a name that is taken or reserved."""
+        name = target.name
+        if name in CONSTANTS or name in FUNCTIONS:
+            self.report.error(
+                "reserved-name",
+                target.span,
+                f"'{name}' is reserved",
+                hint="choose another name, or add a subscript",
+            )
+            return False
+        if name in self.places:
+            first = self.places[name]
+            line = self.report.source.line_number(first)
+            self.report.error(
+                "name-defined-twice",
+                target.span,
+                f"'{plain(name)}' is already defined on line {line}",
+                hint="a name is defined once; give this one a subscript of its own",
+                related=(Related(first, "defined here"),),
+            )
+            return False
+        self.places[name] = target.span
+        return True
+
+    def value(
+        self, name: Name, arguments: tuple[Plain, ...] | None, report: Report | None = None
+    ) -> Plain | None:
+        """Return the value a name stands for; report and return None when it has none."""
+        to = report or self.report
+        head = name.parts[0]
+        if len(name.parts) == 1 and arguments is None:
+            if head in CONSTANTS:
+                return _CONSTANT_VALUES["π" if head in ("pi", "π") else head]
+            if head in self.values:
+                return self.values[head]
+        if head in self.failed:
+            return None
+        if head in self.things:
+            thing = self.things[head]
+            if len(name.parts) == 1:
+                to.error(
+                    "block-is-no-value",
+                    name.span,
+                    f"'{head}' is a {thing.kind}, not a value",
+                    hint=f"name one of its results after a dot: {head}.…",
+                )
+                return None
+            return thing.read(name, arguments, to)
+        self._unknown(name, arguments, to)
+        return None
+
+    def _unknown(self, name: Name, arguments: tuple[Plain, ...] | None, to: Report) -> None:
+        head = name.parts[0]
+        if head in self.values:
+            if len(name.parts) > 1:
+                to.error(
+                    "no-such-result",
+                    name.spans[1],
+                    f"'{plain(head)}' is a value and has no parts",
+                    hint="only sections, beams and stresses have results after a dot",
+                )
+            else:
+                to.error(
+                    "not-a-function",
+                    name.span,
+                    f"'{plain(head)}' is a value, not a function",
+                    hint="write * to multiply by what stands in parentheses",
+                )
+            return
+        known = [*self.values, *self.things, *self.failed]
+        found = nearest(head, known)
+        if head in self.later:
+            hint = "it is defined further down; blocks are evaluated from top to bottom, so move it up"
+        elif found:
+            hint = f"the nearest name defined above is '{found}'"
+        elif arguments is not None:
+            found = nearest(head, FUNCTIONS)
+            hint = f"the nearest function is '{found}'" if found else "define it above, in inputs or working"
+        else:
+            hint = "define it above, in inputs or working"
+        to.error("unknown-name", name.spans[0], f"'{plain(head)}' is not defined", hint=hint)

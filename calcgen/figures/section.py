@@ -1,0 +1,170 @@
+"""Figure of a section: outline to scale, dimensions, centroid, axes."""
+
+from dataclasses import dataclass
+
+import numpy as np
+
+from calcgen.figures.dimensions import Dimension, draw_dimensions
+from calcgen.figures.labels import Box, Obstacles, Point
+from calcgen.figures.outline import (
+    EUROCODE,
+    AxisNames,
+    Part,
+    Scale,
+    draw_axes,
+    draw_cross,
+    draw_parts,
+    draw_principal,
+    draw_tone,
+    fit,
+)
+from calcgen.figures.picture import (
+    DASH,
+    LINE,
+    SMALL,
+    THIN,
+    WIDTHS,
+    Label,
+    Picture,
+    Sketch,
+    Stroke,
+    Width,
+)
+from calcgen.figures.svg import render
+
+DIMENSIONS_AT = 36.0  # pixels outside the outline: beyond the names of the axes
+
+
+@dataclass(frozen=True)
+class Leader:
+    """A note that points at a place of the section: a radius, a bar, a weld."""
+
+    label: str
+    point: Point
+
+
+@dataclass(frozen=True, eq=False)
+class SectionDrawing:
+    """A section in the unit shown, x right and y up.
+
+    `ident` is the figure's address on its page. `principal_angle` is in degrees from the horizontal to
+    axis 1, counter-clockwise, None where the principal axes are the reference axes. `plastic_axis` is the
+    height of the plastic neutral axis of bending about the horizontal axis.
+    """
+
+    ident: str
+    title: str
+    parts: tuple[Part, ...]
+    centroid: Point
+    unit_note: str = "dimensions in mm"
+    axes: AxisNames = EUROCODE
+    dimensions: tuple[Dimension, ...] = ()
+    leaders: tuple[Leader, ...] = ()
+    principal_angle: float | None = None
+    shear_centre: Point | None = None
+    plastic_axis: float | None = None
+    description: str = ""
+
+
+def draw_section(drawing: SectionDrawing, width: Width) -> str:
+    """SVG of the section for a `wide` or a `narrow` place."""
+    return render(compose_section(drawing, width))
+
+
+def compose_section(drawing: SectionDrawing, width: Width) -> Picture:
+    """Compose the section as a picture, no wider than its place."""
+    sketch = Sketch()
+    room = (300.0, 250.0) if width == "wide" else (WIDTHS["narrow"] - 160.0, 220.0)
+    scale, box = fit(drawing.parts, *room)
+    centre = scale.at(*drawing.centroid)
+    draw_parts(sketch, scale, drawing.parts)
+    draw_axes(sketch, box, centre, drawing.axes)
+    if drawing.principal_angle is not None:
+        draw_principal(sketch, box, centre, drawing.principal_angle)
+    draw_cross(sketch, centre)
+    if drawing.shear_centre is not None:
+        sketch.dot(scale.at(*drawing.shear_centre), 3.0, "paper", Stroke("ink", 1.1))
+    draw_dimensions(sketch, scale, box, drawing.dimensions, DIMENSIONS_AT)
+    _draw_notes(sketch, scale, box, drawing)
+    _draw_frame_text(sketch, box, drawing)
+    description = drawing.description or _describe(drawing)
+    return sketch.picture(f"{drawing.ident}-{width}", drawing.title, description)
+
+
+def _draw_notes(sketch: Sketch, scale: Scale, box: Box, drawing: SectionDrawing) -> None:
+    """Leaders, the shear centre's name and the plastic neutral axis, each where there is room."""
+    if drawing.plastic_axis is not None:
+        y = scale.at(0.0, drawing.plastic_axis)[1]
+        sketch.line([(box.left - 8, y), (box.right + 8, y)], Stroke("ink", 0.9, DASH))
+    held = sketch.box()
+    obstacles = Obstacles(held.left - 160, held.right + 160)
+    for item in sketch.items:
+        if isinstance(item, Label) or item.fill == "ink":
+            obstacles.boxes.append(item.box)
+        elif not item.clip:
+            for ring in item.rings:
+                obstacles.add_line([*ring, ring[0]] if item.closed else ring)
+    notes = [(leader.label, scale.at(*leader.point)) for leader in drawing.leaders]
+    if drawing.shear_centre is not None:
+        notes.append(("shear centre", scale.at(*drawing.shear_centre)))
+    if drawing.plastic_axis is not None:
+        notes.append(("plastic neutral axis", (box.right + 8, scale.at(0.0, drawing.plastic_axis)[1])))
+    for text, point in notes:
+        label, elbow = _note(text, point, box, obstacles)
+        obstacles.boxes.append(sketch.label(label).box)
+        sketch.line([point, elbow], THIN)
+        obstacles.add_line([point, elbow])
+
+
+def _note(text: str, point: Point, box: Box, obstacles: Obstacles) -> tuple[Label, Point]:
+    """Give a label near `point`, clear of the rest, and the end of its leader."""
+    x, y = point
+    right = x >= (box.left + box.right) / 2
+    for reach in np.arange(14.0, 400.0, 6.0):
+        for across, up in ((0.9, 0.45), (0.9, -0.45), (1.0, 0.0), (0.5, 0.9), (0.5, -0.9)):
+            for sign in (1, -1) if right else (-1, 1):
+                elbow = (x + sign * reach * across, y - reach * up)
+                label = Label(
+                    elbow[0] + 3 * sign,
+                    elbow[1] + 0.36 * SMALL,
+                    text,
+                    SMALL,
+                    "left" if sign > 0 else "right",
+                    halo=True,
+                )
+                if obstacles.clear(label.box, 3.0):
+                    return label, elbow
+    raise AssertionError(f"no room for {text!r}")  # the reach is wider than any figure
+
+
+def _draw_frame_text(sketch: Sketch, box: Box, drawing: SectionDrawing) -> None:
+    """Title above, legend of materials and note of units below."""
+    held = sketch.box()
+    middle = (box.left + box.right) / 2
+    sketch.label(Label(middle, held.top - 8, drawing.title))
+    y = held.bottom + 8
+    seen: set[str] = set()
+    for part in drawing.parts:
+        if part.label and part.label not in seen:
+            seen.add(part.label)
+            x = box.left
+            draw_tone(sketch, [np.array([(x, y + 10), (x + 16, y + 10), (x + 16, y), (x, y)])], part.tone)
+            sketch.label(Label(x + 22, y + 9, part.label, SMALL, "left"))
+            y += LINE + 1
+    if drawing.unit_note:
+        sketch.label(Label(middle, y + 10, drawing.unit_note, SMALL, colour="muted"))
+
+
+def _describe(drawing: SectionDrawing) -> str:
+    names = drawing.axes
+    said = [
+        "Section seen along the beam from its start; axis"
+        f" {names.horizontal}–{names.horizontal} is horizontal, {names.vertical}–{names.vertical} vertical."
+    ]
+    if drawing.principal_angle is not None:
+        said.append(f"Axis 1 lies at {drawing.principal_angle:.1f}° from the horizontal, counter-clockwise.")
+    if drawing.dimensions:
+        said.append("Dimensions: " + ", ".join(d.label for d in drawing.dimensions) + ".")
+    return " ".join(said)
+
+

@@ -1,0 +1,1 @@
+"""Text -> Calc: lines, expressions and blocks, with every fault at its place."""

@@ -1,0 +1,131 @@
+"""`beam NAME`: spans, supports, loads, cases and combinations."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import Literal, TypeAlias
+
+from calcgen.language.blocks.section import LaterLine
+from calcgen.language.nodes import Annotations, Expression, Named
+from calcgen.text import Span
+
+Plane: TypeAlias = Literal["both", "vertical", "lateral"]
+
+
+@dataclass(frozen=True)
+class SpanLine:
+    """`span = 6 m, 8 m, 6 m`."""
+
+    lengths: tuple[Expression, ...]
+    annotations: Annotations
+    span: Span
+
+
+@dataclass(frozen=True)
+class BeamSetting:
+    """`E = 210 GPa`, `section = main`, `EI = ...`; a stretch of it with `start` and `end`.
+
+    Keys: section, E, EI, GA_s, restrained, shear_deformation, expansion.
+    """
+
+    key: Named
+    value: Expression
+    start: Expression | None
+    end: Expression | None
+    annotations: Annotations
+    span: Span
+    statement_span: Span
+
+
+@dataclass(frozen=True)
+class SupportLine:
+    """`support spring 12 kN/mm rotation 5 kN·m lateral at 14 m settles 5 mm in S`.
+
+    `plane` is 'both', or 'lateral' where that word is written. `label` numbers results: supports are
+    numbered from the left, from 1.
+    """
+
+    kind: Literal["pin", "roller", "fixed", "spring"]
+    stiffness: Expression | None
+    rotation: Expression | None
+    plane: Plane
+    at: Expression
+    settles: Expression | None
+    settles_case: Named | None
+    annotations: Annotations
+    span: Span
+
+
+@dataclass(frozen=True)
+class HingeLine:
+    """`hinge at 9 m`."""
+
+    at: Expression
+    annotations: Annotations
+    span: Span
+
+
+@dataclass(frozen=True)
+class CaseLine:
+    """`case G permanent`; the kind is a word: permanent, imposed, snow, wind, ..."""
+
+    target: Named
+    kind: Named | None
+    annotations: Annotations
+    span: Span
+
+
+@dataclass(frozen=True)
+class LoadLine:
+    """`load Q lateral linear 0 kN/m to 4 kN/m from 0 m to 3 m`.
+
+    kind 'uniform': values has one; 'linear': two; 'point' and 'moment': one, with `at`, or with
+    `start` and `end` for a distributed moment; 'self_weight': one value (weight by volume).
+    """
+
+    case: Named
+    kind: Literal["uniform", "linear", "point", "moment", "self_weight"]
+    plane: Plane
+    values: tuple[Expression, ...]
+    at: Expression | None
+    start: Expression | None
+    end: Expression | None
+    annotations: Annotations
+    span: Span
+    statement_span: Span
+
+
+@dataclass(frozen=True)
+class Term:
+    """One term of a combination: `1.35*G`; `factor` is None for 1. `sign` is +1 or -1."""
+
+    sign: int
+    factor: Expression | None
+    case: Named
+    span: Span
+
+
+@dataclass(frozen=True)
+class CombinationLine:
+    """`combination U1 in ULS = 1.35*G + 1.5*Q`; `group` is None where none is written."""
+
+    target: Named
+    group: Named | None
+    terms: tuple[Term, ...]
+    annotations: Annotations
+    span: Span
+
+
+BeamLine: TypeAlias = (
+    SpanLine | BeamSetting | SupportLine | HingeLine | CaseLine | LoadLine | CombinationLine | LaterLine
+)
+
+
+@dataclass(frozen=True)
+class BeamBlock:
+    """A beam: its lines in the order typed."""
+
+    target: Named
+    lines: tuple[BeamLine, ...]
+    span: Span
+    head_span: Span

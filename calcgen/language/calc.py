@@ -1,0 +1,70 @@
+"""A calc as read: its title, and prose and blocks in order."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from typing import TypeAlias
+
+from markdown_it.token import Token
+
+from calcgen.language.blocks.assumptions import AssumptionsBlock
+from calcgen.language.blocks.beam import BeamBlock
+from calcgen.language.blocks.inputs import InputsBlock
+from calcgen.language.blocks.section import SectionBlock
+from calcgen.language.blocks.sheet import SheetBlock
+from calcgen.language.blocks.stress import StressBlock
+from calcgen.language.blocks.working import WorkingBlock
+from calcgen.language.nodes import Name
+from calcgen.text import Diagnostic, SourceFile, Span
+
+
+@dataclass(frozen=True)
+class Place:
+    """`{M_Ed}` in prose or in a sheet's text: where the value of a name is shown."""
+
+    name: Name
+    span: Span
+
+
+@dataclass(frozen=True)
+class Prose:
+    """A run of CommonMark between live blocks, as tokens.
+
+    Inline tokens of type 'value' (content: the dotted canonical name and arguments as typed) stand for places;
+    'math_inline' and 'math_block' for TeX. `places` lists the places, so that evaluation can look them up:
+    the n-th 'value' token of the run belongs to the n-th place.
+    """
+
+    tokens: tuple[Token, ...]
+    places: tuple[Place, ...]
+    images: tuple[tuple[str, Span], ...]
+    span: Span
+
+
+Block: TypeAlias = (
+    SheetBlock | AssumptionsBlock | InputsBlock | WorkingBlock | SectionBlock | BeamBlock | StressBlock
+)
+
+
+@dataclass(frozen=True)
+class FailedBlock:
+    """A live block of which nothing can be used: its kind is not available yet, or its head is wrong."""
+
+    kind: str
+    span: Span
+
+
+@dataclass(frozen=True)
+class Calc:
+    """One calc file as read.
+
+    `number` is the file's stem, `title` the text of its first level-1 heading (the number when there is none).
+    `segments` leaves the title's heading out. `diagnostics` are those of reading.
+    """
+
+    number: str
+    title: str
+    source: SourceFile
+    segments: tuple[Prose | Block | FailedBlock, ...]
+    failed_names: frozenset[str]
+    diagnostics: tuple[Diagnostic, ...]

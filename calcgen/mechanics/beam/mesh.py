@@ -1,0 +1,68 @@
+"""One division of a beam into elements for all its load cases, so that cases add term by term."""
+
+from __future__ import annotations
+
+from bisect import bisect_left, insort
+from collections.abc import Iterable
+from dataclasses import dataclass
+
+import numpy as np
+
+from calcgen.mechanics.arrays import FloatArray
+from calcgen.mechanics.beam.model import BeamModel, BendingStiffness
+
+
+@dataclass(frozen=True, eq=False)
+class Mesh:
+    """Nodes (n + 1,) from 0 to the beam's length, m, and what lies at them.
+
+    `supports`: the node of each support. `hinges`: the nodes that are hinges. `stiffness`: of each of the n
+    elements.
+    """
+
+    nodes: FloatArray
+    supports: tuple[int, ...]
+    hinges: frozenset[int]
+    stiffness: tuple[BendingStiffness, ...]
+
+    @property
+    def lengths(self) -> FloatArray:
+        """Length of each element, (n,), m."""
+        return np.diff(self.nodes)
+
+    def node(self, x: float) -> int:
+        """Give the number of the node nearest to `x`."""
+        return nearest(self.nodes, x)
+
+
+def nearest(nodes: FloatArray, x: float) -> int:
+    """Give the number of the node nearest to `x`."""
+    right = int(np.clip(np.searchsorted(nodes, x), 1, len(nodes) - 1))
+    return right - 1 if x - nodes[right - 1] <= nodes[right] - x else right
+
+
+def divide(model: BeamModel, places: Iterable[float]) -> Mesh:
+    """Divide the beam at its supports, hinges, changes of stiffness and at the `places` of loads.
+
+    Of places closer than the model's tolerance the first named stands: the ends, then the supports, then
+    the rest.
+    """
+    found: list[float] = [0.0, model.length]
+    for x in (
+        *(support.x for support in model.supports),
+        *model.hinges,
+        *(stretch.end for stretch in model.stretches[:-1]),
+        *places,
+    ):
+        at = bisect_left(found, x)
+        if not any(model.same(x, neighbour) for neighbour in found[max(at - 1, 0) : at + 1]):
+            insort(found, x)
+    nodes = np.array(found)
+    ends = np.array([stretch.end for stretch in model.stretches])
+    stretch_of = np.searchsorted(ends, (nodes[:-1] + nodes[1:]) / 2)
+    return Mesh(
+        nodes,
+        tuple(nearest(nodes, support.x) for support in model.supports),
+        frozenset(nearest(nodes, x) for x in model.hinges),
+        tuple(model.stretches[number].stiffness for number in stretch_of),
+    )

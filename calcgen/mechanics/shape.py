@@ -1,0 +1,92 @@
+"""A shape: an outline, the sizes it was made from, and the marks that show them in a drawing."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Mapping
+from dataclasses import dataclass, field
+from typing import Literal, TypeAlias
+
+from calcgen.mechanics.arrays import Point
+from calcgen.mechanics.outline import Outline, exact_cos_sin
+
+Side: TypeAlias = Literal["left", "right", "top", "bottom"]
+
+
+class ShapeError(ValueError):
+    """A size that makes no shape: `parameter`, its `value` (m, or a number), and the `reason` as a phrase."""
+
+    def __init__(self, parameter: str, value: float, reason: str) -> None:
+        self.parameter, self.value, self.reason = parameter, value, reason
+        super().__init__(f"{parameter} {reason}")
+
+
+@dataclass(frozen=True)
+class DimensionMark:
+    """A size to be drawn: measured from `start` to `end`, m, with its figure on the given side."""
+
+    symbol: str
+    value: float
+    start: Point
+    end: Point
+    side: Side
+
+
+@dataclass(frozen=True, eq=False)
+class Shape:
+    """An outline with the sizes it was made from, by symbol, and the marks that show them."""
+
+    outline: Outline
+    dimensions: Mapping[str, float] = field(default_factory=dict)
+    marks: tuple[DimensionMark, ...] = ()
+
+    def placed(self, x: float = 0.0, y: float = 0.0, *, mirrored: bool = False, turned: float = 0.0) -> Shape:
+        """Mirror left and right first, turn by `turned`, rad, counter-clockwise then, and place the middle.
+
+        The middle of the bounding box comes to (x, y), m. Marks go along; a turn other than by
+        quarters drops them.
+        """
+        shape = _mirrored(self) if mirrored else self
+        shape = _turned(shape, turned) if turned else shape
+        middle_x, middle_y = shape.outline.bounds.middle
+        return mapped(
+            shape,
+            shape.outline.placed(x, y),
+            lambda point: (point[0] + x - middle_x, point[1] + y - middle_y),
+            lambda side: side,
+        )
+
+
+def _mirrored(shape: Shape) -> Shape:
+    axis = 2.0 * shape.outline.bounds.middle[0]
+    swap: dict[Side, Side] = {"left": "right", "right": "left", "top": "top", "bottom": "bottom"}
+    return mapped(
+        shape, shape.outline.mirrored(), lambda point: (axis - point[0], point[1]), lambda side: swap[side]
+    )
+
+
+def _turned(shape: Shape, angle: float) -> Shape:
+    turned = shape.outline.turned(angle)
+    cos, sin = exact_cos_sin(angle)
+    if cos * sin != 0.0:
+        return Shape(turned, shape.dimensions)
+    x, y = shape.outline.bounds.middle
+    sides: tuple[Side, ...] = ("right", "top", "left", "bottom")
+    quarters = round(angle / (0.5 * math.pi))
+    return mapped(
+        shape,
+        turned,
+        lambda p: (x + cos * (p[0] - x) - sin * (p[1] - y), y + sin * (p[0] - x) + cos * (p[1] - y)),
+        lambda side: sides[(sides.index(side) + quarters) % 4],
+    )
+
+
+def mapped(
+    shape: Shape, new: Outline, point: Callable[[Point], Point], side: Callable[[Side], Side]
+) -> Shape:
+    """Return the shape with the outline `new` and its marks carried along by `point` and `side`."""
+    marks = tuple(
+        DimensionMark(mark.symbol, mark.value, point(mark.start), point(mark.end), side(mark.side))
+        for mark in shape.marks
+    )
+    return Shape(new, shape.dimensions, marks)

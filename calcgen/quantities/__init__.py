@@ -1,0 +1,1 @@
+"""Units, display units, significant figures, symbols and subscripts."""
