@@ -20,9 +20,9 @@ from urllib.parse import unquote, urlsplit
 HOST = "127.0.0.1"
 PORTS_TRIED = 20
 
-_PAUSES = (0.0, 0.02, 0.1)  # seconds before each look for a file: the package may just be being replaced
+_PAUSES = (0.0, 0.01, 0.05)  # seconds before each look for a file: the package may just be being replaced
 _BEAT = 10.0  # seconds between signs of life to an open tab
-_POLL = 0.05  # seconds until a stop is seen
+_POLL = 0.02  # seconds until a stop is seen
 
 # Not from the machine's registry, which differs from one to the next.
 _TYPES = {
@@ -106,7 +106,7 @@ class Preview:
         self._server = _bind(folder, self._builds, port)
         self.port: int = self._server.server_address[1]
         if port not in (0, self.port):
-            say(f"port {port} is taken, so the preview is at {self.url}")
+            say(f"port {port} is not free, so the preview is at {self.url}")
         self._thread = threading.Thread(target=self._server.serve_forever, args=(_POLL,), daemon=True)
 
     @property
@@ -228,7 +228,10 @@ class _Handler(BaseHTTPRequestHandler):
 
     @property
     def _path(self) -> str:
-        return urlsplit(self.path).path
+        try:
+            return urlsplit(self.path).path
+        except ValueError:  # an address in brackets that is none; no file has such a name
+            return self.path
 
     def _is_host_ours(self) -> bool:
         """Refuse other names: a page elsewhere could have its own name lead here (DNS rebinding)."""

@@ -113,8 +113,9 @@ class Debouncer:
 
     def burst(self, patience: float) -> tuple[RawEvent, ...]:
         """Return the next burst, ended by quiet or the ceiling; empty if none begins within `patience` s."""
+        events: list[RawEvent] = []
         try:
-            events = [self._events.get(timeout=patience)]
+            events.append(self._events.get(timeout=patience))
             end = time.monotonic() + self._ceiling
             while (left := end - time.monotonic()) > 0:
                 events.append(self._events.get(timeout=min(self._quiet, left)))

@@ -126,8 +126,10 @@ DIMENSIONS: dict[str, str] = {
 """Dimensions of a shape that can be read as properties."""
 
 LATER: dict[Axes, frozenset[str]] = {
-    "eurocode": frozenset("A_v_z A_v_y A_s_z A_s_y x_s y_s k_t k_b k_l k_r β".split()),
-    "american": frozenset("A_w A_s_y A_s_x x_s y_s k_t k_b k_l k_r β".split()),
+    "eurocode": frozenset(
+        ["A_v_z", "A_v_y", "A_s_z", "A_s_y", "x_s", "y_s", "k_t", "k_b", "k_l", "k_r", "β"]
+    ),
+    "american": frozenset(["A_w", "A_s_y", "A_s_x", "x_s", "y_s", "k_t", "k_b", "k_l", "k_r", "β"]),
 }
 """Properties of the language that this release does not evaluate, by convention."""
 

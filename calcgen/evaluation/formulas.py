@@ -6,8 +6,6 @@ import math
 from collections.abc import Callable
 from dataclasses import dataclass, replace
 
-import pint
-
 from calcgen.evaluation.results import Operand, Plain
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import (
@@ -27,7 +25,7 @@ from calcgen.language.nodes import (
     UnitText,
 )
 from calcgen.quantities.display import Shown, describe, show
-from calcgen.quantities.measure import Measure, measure, pretty
+from calcgen.quantities.measure import Measure, Quantity, measure, pretty
 from calcgen.quantities.registry import registry
 from calcgen.text import Report, Span
 
@@ -216,9 +214,7 @@ class Evaluator:
         )
         return False
 
-    def _finite(
-        self, span: Span, compute: Callable[[], pint.Quantity[float]], unit: str | None
-    ) -> Measure | None:
+    def _finite(self, span: Span, compute: Callable[[], Quantity], unit: str | None) -> Measure | None:
         try:
             quantity = compute()
         except OverflowError:
@@ -245,7 +241,7 @@ class Evaluator:
             case "sqrt" | "cbrt":
                 return self._root(node, first)
             case "abs":
-                return Measure(abs(first.quantity), first.unit)
+                return first if first.si >= 0 else Measure(-first.quantity, first.unit)
             case "min" | "max":
                 return self._extreme(node, arguments)
             case "round" | "ceil" | "floor":

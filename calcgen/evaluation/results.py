@@ -127,8 +127,8 @@ class Result:
     """A named result of a block: `W_el_y`, `M_max`, `σ_max`.
 
     `meaning` is the quantity in words, with axis or sign: 'second moment of area about the horizontal axis'.
-    `place` tells where an extreme stands, '' where that says nothing; `provenance` whether a catalogue published
-    the value or the outline gave it, '' where the question does not arise.
+    `place` tells where an extreme stands, '' where that says nothing; `provenance` whether a catalogue
+    published the value or the outline gave it, '' where the question does not arise.
     """
 
     name: str
@@ -224,7 +224,7 @@ class SectionResult:
     shape : word of the language; designation is set for a catalogued section.
     published : what a catalogue gives, beside the outline's own.
     computed : properties of the outline.
-    values : the values in force in SI, published ones first, under names neutral of convention (`I_h`, `W_el_v`).
+    values : the values in force in SI, published ones first, by keys neutral of convention (`I_h`).
     dimensions : the shape's dimensions in SI.
     results : the properties under the names of the project's axes.
     """
@@ -267,7 +267,7 @@ class GroupResult:
 
 @dataclass(frozen=True)
 class LoadRow:
-    """One load as shown: '5.0 kN/m from 6 m to 14 m'; `node` index is its place among the loads of its case."""
+    """One load as shown: '5.0 kN/m from 6 m to 14 m'; `values` in SI, `start` and `end` in m."""
 
     case: str
     kind: str

@@ -5,12 +5,12 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import Protocol
 
+from calcgen.evaluation.results import Plain
 from calcgen.language.nodes import CONSTANTS, FUNCTIONS, Name, Named
 from calcgen.quantities.display import Style
 from calcgen.quantities.measure import Measure, from_si, measure
 from calcgen.quantities.symbols import plain
 from calcgen.quantities.units import STANDARD_GRAVITY
-from calcgen.evaluation.results import Plain
 from calcgen.text import Related, Report, Span, nearest
 
 _CONSTANT_VALUES = {
@@ -19,16 +19,10 @@ _CONSTANT_VALUES = {
 }
 
 
-class Evaluate(Protocol):
-    """Evaluates an argument of a name, `2.5 m` in `stringer.M_max(2.5 m)`."""
-
-    def __call__(self, argument: object, /) -> Measure | None: ...
-
-
 class Thing(Protocol):
     """What a block defines: its results are read by dotted names."""
 
-    @property
+    @property  # read-only, so that a frozen type fits
     def kind(self) -> str:
         """The kind of block, for messages: 'section'."""
         ...

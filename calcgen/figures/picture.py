@@ -204,6 +204,27 @@ def wrap(text: str, size: float, width: float) -> list[str]:
     return lines
 
 
+def thin(points: Points, tolerance: float = 0.1) -> NDArray[np.float64]:
+    """Leave out points that lie within `tolerance` pixels of the line through those kept (Douglas–Peucker)."""
+    given = np.asarray(points, dtype=float)
+    keep = np.zeros(len(given), dtype=bool)
+    keep[[0, -1]] = True
+    spans = [(0, len(given) - 1)]
+    while spans:
+        first, last = spans.pop()
+        if last - first < 2:
+            continue
+        along, offsets = given[last] - given[first], given[first + 1 : last] - given[first]
+        length = float(np.hypot(*along))
+        apart = np.abs(along[0] * offsets[:, 1] - along[1] * offsets[:, 0]) / length if length else None
+        distances = np.hypot(*offsets.T) if apart is None else apart
+        farthest = int(np.argmax(distances)) + first + 1
+        if distances[farthest - first - 1] > tolerance:
+            keep[farthest] = True
+            spans += [(first, farthest), (farthest, last)]
+    return given[keep]
+
+
 def arc(centre: Point, radius: float, start: float, sweep: float, steps: int = 24) -> tuple[Point, ...]:
     """Points along a circle; angles in degrees, counter-clockwise as seen, from the right."""
     angles = np.radians(start + sweep * np.linspace(0.0, 1.0, steps + 1))

@@ -99,6 +99,7 @@ class _Row:
     height: float
 
 
+LEAST_DEPTH = 90.0  # pixels; a shallower section is drawn narrower than to scale, and that is said
 FACE_NOTE = "Cut face of the part towards the start: tension leaves it, compression enters it."
 
 
@@ -133,8 +134,9 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
     left, bottom, right, upper = bounds(drawing.parts)
     head = top + 18
     room = row.section[1] - row.section[0]
-    factor = row.height / max(upper - bottom, 1e-300)
-    across = min(factor, room / max(right - left, 1e-300))
+    depth, breadth = max(upper - bottom, 1e-300), max(right - left, 1e-300)
+    factor = max(min(row.height / depth, room / breadth), LEAST_DEPTH / depth)
+    across = min(factor, room / breadth)
     x = (sum(row.section) - across * (right - left)) / 2
     scale, box = place(drawing.parts, factor, x, head, across=across)
     draw_parts(sketch, scale, drawing.parts)
@@ -152,10 +154,12 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
     if row.face is not None:
         titles.append(Label(row.face + row.reach / 2, top, drawing.stress_title))
     for title in titles:
-        obstacles.boxes.append(sketch.label(title.within(3.0, width - 3.0)).box)
+        placed = _stepped(title.within(3.0, width - 3.0), obstacles, -1 if title.y == top else 1)
+        obstacles.boxes.append(sketch.label(placed).box)
     axis = None
     if drawing.neutral_axis is not None:
-        y, end = scale.at(0.0, drawing.neutral_axis)[1], width - 70.0
+        y = scale.at(0.0, drawing.neutral_axis)[1]
+        end = width - 70.0 if row.strain is None or row.face is not None else row.strain + 60
         axis = [(max(box.left - 12, 2.0), y), (end, y)]
         obstacles.add_line(axis)
     if row.strain is not None:
@@ -176,7 +180,7 @@ def _draw_axis_label(
             label = Label(0.0, baseline, text, SMALL, "left", halo=True)
             length = label.box.right
             for x in np.arange(ends[1] - length - 2, ends[0], -4.0):
-                if obstacles.clear(label.moved(float(x), 0).box):
+                if obstacles.clear(label.moved(float(x), 0).box.grown(2.0), 0.5):
                     obstacles.boxes.append(sketch.label(label.moved(float(x), 0)).box)
                     return
 

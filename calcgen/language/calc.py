@@ -14,25 +14,17 @@ from calcgen.language.blocks.section import SectionBlock
 from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.blocks.stress import StressBlock
 from calcgen.language.blocks.working import WorkingBlock
-from calcgen.language.nodes import Name
+from calcgen.language.nodes import Place as Place
 from calcgen.text import Diagnostic, SourceFile, Span
-
-
-@dataclass(frozen=True)
-class Place:
-    """`{M_Ed}` in prose or in a sheet's text: where the value of a name is shown."""
-
-    name: Name
-    span: Span
 
 
 @dataclass(frozen=True)
 class Prose:
     """A run of CommonMark between live blocks, as tokens.
 
-    Inline tokens of type 'value' (content: the dotted canonical name and arguments as typed) stand for places;
-    'math_inline' and 'math_block' for TeX. `places` lists the places, so that evaluation can look them up:
-    the n-th 'value' token of the run belongs to the n-th place.
+    Inline tokens of type 'value' (content: the dotted canonical name and arguments as typed) stand for
+    places; 'math_inline' and 'math_block' for TeX. `places` lists the places, so that evaluation can look
+    them up: the n-th 'value' token of the run belongs to the n-th place.
     """
 
     tokens: tuple[Token, ...]
@@ -58,8 +50,8 @@ class FailedBlock:
 class Calc:
     """One calc file as read.
 
-    `number` is the file's stem, `title` the text of its first level-1 heading (the number when there is none).
-    `segments` leaves the title's heading out. `diagnostics` are those of reading.
+    `number` is the file's stem, `title` the text of its first level-1 heading (the number when there is
+    none). `segments` leaves the title's heading out. `diagnostics` are those of reading.
     """
 
     number: str

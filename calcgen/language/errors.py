@@ -31,8 +31,3 @@ class ReadingError(Exception):
         report.error(
             self.code, self.span, self.message, hint=self.hint, label=self.label, related=self.related
         )
-
-
-def choices(words: object) -> str:
-    """Return a list of words for a hint: 'pin, roller, fixed'."""
-    return ", ".join(str(w) for w in words) if isinstance(words, (list, tuple)) else str(words)

@@ -47,4 +47,4 @@ def defined_names(text: str) -> frozenset[str]:
     return frozenset({name})
 
 
-_DEFINES = re.compile(r"\s*(?:\[[^\]\n]*\]\s*)?(?:[:=](?!=)|=(?!=)|of\b)")
+_DEFINES = re.compile(r"\s*(?:\[[^\]\n]*\]\s*)?(?::?=(?!=)|of\b)")

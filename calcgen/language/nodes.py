@@ -206,3 +206,11 @@ class Named:
 
     name: str
     span: Span
+
+
+@dataclass(frozen=True)
+class Place:
+    """`{M_Ed}` in prose or in a sheet's text: where the value of a name is shown."""
+
+    name: Name
+    span: Span

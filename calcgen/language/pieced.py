@@ -46,6 +46,12 @@ class Pieced:
             return Span(place, place)
         return Span(self.place(start), self.place(end - 1) + 1)
 
+    def part(self, start: int, end: int) -> Pieced:
+        """Return the text from `start` to before `end`, which knows its places as well."""
+        inner = [i for i in self.starts if start < i < end]
+        starts = (start, *inner)
+        return Pieced(self.text[start:end], tuple(i - start for i in starts), tuple(map(self.place, starts)))
+
     @property
     def whole(self) -> Span:
         """The range of the file from the first character to the last."""

@@ -31,9 +31,9 @@ _ALIASES = {
     "newton": "N",
     "newtons": "N",
     "kips": "kip",
-    "lbs": "lbf' for a force or 'lb' for a mass",
-    "pound": "lbf' for a force or 'lb' for a mass",
-    "pounds": "lbf' for a force or 'lb' for a mass",
+    "lbs": "lbf' (force) or 'lb",
+    "pound": "lbf' (force) or 'lb",
+    "pounds": "lbf' (force) or 'lb",
     "sec": "s",
     "tonne": "t",
     "tonnes": "t",
@@ -118,9 +118,7 @@ def _side(text: str, start: int) -> UnitMatch | None:
         second = _symbol(text, first.end + 1, word, end)
         if second is not None and word in others:
             joint = "-" if mark == "-" else "·"
-            return UnitMatch(
-                first.text + joint + second.text, first.factors + second.factors, (), second.end
-            )
+            return UnitMatch(first.text + joint + second.text, first.factors + second.factors, (), second.end)
     return first
 
 

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from functools import cached_property
 
 import numpy as np
-from numpy.typing import ArrayLike
+from numpy.typing import ArrayLike, NDArray
 
 from calcgen.mechanics.arrays import FloatArray, Point
 from calcgen.mechanics.crossings import IntArray, first_contact
@@ -220,21 +220,26 @@ def _require_no_contact(rings: list[FloatArray], kept: list[IntArray], tolerance
 
 def _require_holes_inside(rings: list[FloatArray]) -> None:
     """Require each hole inside the outer ring and outside the others; no two rings touch by now."""
+    firsts = np.cumsum([0, *(len(ring) for ring in rings[:-1])])
+    start = np.concatenate(rings)
+    end = np.concatenate([np.roll(ring, -1, axis=0) for ring in rings])
     for index, hole in enumerate(rings[1:], start=1):
-        place = _point(hole[0])
-        if not _inside(rings[0], place):
-            raise OutlineError("has a hole outside the outer ring", index, (), (place,))
-        if any(_inside(ring, place) for other, ring in enumerate(rings[1:], start=1) if other != index):
-            raise OutlineError("has a hole inside another hole", index, (), (place,))
+        crossed = _crosses_ray(start, end, hole[0])
+        inside = np.add.reduceat(crossed.astype(np.intp), firsts) % 2 == 1
+        inside[index] = False  # of itself, on whose edge the corner lies
+        if not inside[0]:
+            raise OutlineError("has a hole outside the outer ring", index, (), (_point(hole[0]),))
+        if inside[1:].any():
+            raise OutlineError("has a hole inside another hole", index, (), (_point(hole[0]),))
 
 
-def _inside(ring: FloatArray, point: Point) -> bool:
-    """Whether a ray from the point to the right leaves the ring an odd number of times."""
-    (x0, y0), (x1, y1) = ring.T, np.roll(ring, -1, axis=0).T
-    astride = (y0 > point[1]) != (y1 > point[1])
-    rise = np.where(astride, y1 - y0, 1.0)
-    crossing = x0 + (point[1] - y0) / rise * (x1 - x0)
-    return bool(np.count_nonzero(astride & (crossing > point[0])) % 2)
+def _crosses_ray(start: FloatArray, end: FloatArray, origin: FloatArray) -> NDArray[np.bool_]:
+    """Tell which edges a ray from `origin` to the right crosses."""
+    (x_0, y_0), (x_1, y_1) = start.T, end.T
+    astride = (y_0 > origin[1]) != (y_1 > origin[1])
+    rise = np.where(astride, y_1 - y_0, 1.0)
+    crossed: NDArray[np.bool_] = astride & (x_0 + (origin[1] - y_0) / rise * (x_1 - x_0) > origin[0])
+    return crossed
 
 
 def _point(row: FloatArray) -> Point:

@@ -43,8 +43,7 @@ class Inertia:
     @property
     def I_2(self) -> float:
         """Smallest second moment of area, m⁴."""
-        # the determinant over I_1 keeps its digits where I_2 is far smaller
-        return (self.I_h * self.I_v - self.I_hv**2) / self.I_1
+        return 0.5 * (self.I_h + self.I_v) - self._half_range
 
     @property
     def alpha(self) -> float:

@@ -1,7 +1,8 @@
-"""A shape: an outline, the sizes it was made from, and the marks that show them in a drawing."""
+"""A shape: its outline, sizes and dimension marks; and how one is written: a form with its parameters."""
 
 from __future__ import annotations
 
+import inspect
 import math
 from collections.abc import Callable, Mapping
 from dataclasses import dataclass, field
@@ -90,3 +91,72 @@ def mapped(
         for mark in shape.marks
     )
     return Shape(new, shape.dimensions, marks)
+
+
+@dataclass(frozen=True)
+class Parameter:
+    """A size of a shape: its symbol, its kind, what it is, and whether it may be left out."""
+
+    name: str
+    kind: Literal["length", "number", "points"]
+    note: str
+    optional: bool
+
+
+@dataclass(frozen=True)
+class ShapeForm:
+    """One way to write a shape; `build` takes the parameters by name, and `note` says what it makes."""
+
+    parameters: tuple[Parameter, ...]
+    build: Callable[..., Shape]
+    note: str
+
+    @property
+    def names(self) -> frozenset[str]:
+        """Names that may be given."""
+        return frozenset(parameter.name for parameter in self.parameters)
+
+    @property
+    def required(self) -> frozenset[str]:
+        """Names that must be given."""
+        return frozenset(parameter.name for parameter in self.parameters if not parameter.optional)
+
+
+SYNONYMS: Mapping[str, str] = {"d": "h", "b_f": "b"}
+
+
+def canonical(form: ShapeForm, name: str) -> str:
+    """Resolve a synonym (`d` for `h`, `b_f` for `b`) unless the form has a parameter of that name."""
+    return name if name in form.names else SYNONYMS.get(name, name)
+
+
+NOTES: Mapping[str, str] = {
+    "h": "overall depth",
+    "b": "overall width",
+    "d": "outside diameter",
+    "t": "thickness",
+    "t_w": "web thickness",
+    "t_f": "flange thickness",
+    "b_t": "width at the top",
+    "b_b": "width at the bottom",
+    "t_t": "thickness of the top flange",
+    "t_b": "thickness of the bottom flange",
+    "r": "root radius",
+    "r_1": "root radius",
+    "r_2": "toe radius",
+    "r_toe": "toe radius",
+    "r_o": "outside corner radius",
+    "r_i": "inside corner radius",
+    "slope": "slope of the flanges' inner faces",
+    "points": "corners in turn",
+}
+
+
+def form_of(build: Callable[..., Shape], note: str) -> ShapeForm:
+    """Read a form from the signature of the function that builds the shape."""
+    kinds: Mapping[str, Literal["number", "points"]] = {"slope": "number", "points": "points"}
+    parameters = tuple(
+        Parameter(name, kinds.get(name, "length"), NOTES[name], parameter.default is not parameter.empty)
+        for name, parameter in inspect.signature(build).parameters.items()
+    )
+    return ShapeForm(parameters, build, note)

@@ -8,14 +8,34 @@ ShapeError. Arcs are many short edges whose area is exact.
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping, Sequence
+from collections.abc import Collection, Mapping, Sequence
 
 import numpy as np
 
 from calcgen.mechanics.arrays import Point
 from calcgen.mechanics.outline import OutlineError, outline
 from calcgen.mechanics.rounding import EDGES_A_QUARTER, Corner, CornerError, rounded
-from calcgen.mechanics.shape import DimensionMark, Shape, ShapeError, mapped
+from calcgen.mechanics.shape import (
+    DimensionMark,
+    Parameter,
+    Shape,
+    ShapeError,
+    ShapeForm,
+    canonical,
+    form_of,
+    mapped,
+)
+
+__all__ = [
+    "SHAPES",
+    "DimensionMark",
+    "Parameter",
+    "Shape",
+    "ShapeError",
+    "ShapeForm",
+    "canonical",
+    "form_for",
+]
 
 EDGES_A_QUARTER_OF_A_CIRCLE = 128
 EUROPEAN_SLOPE = 0.15  # European tapered flanges slope by 5, 8 or 14 %, American ones by 1/6
@@ -101,7 +121,7 @@ def i_shape(
         (e, top, 0.0),
     ]
     left = [(-x, y, radius) for x, y, radius in reversed(right)]
-    marks = (*_overall(b, h), _web(t_w), _flange("t_f", t_f, e, top - t_f))
+    marks = (*_overall(b, h), _web(t_w), _flange("t_f", t_f, x_f if slope else e, top - t_f))
     sizes = {"h": h, "b": b, "t_w": t_w, "t_f": t_f, "r": r, "slope": slope, "r_toe": r_toe}
     return _rings([[*right, *left]], sizes, marks)
 
@@ -161,7 +181,7 @@ def channel(
     ]
     upper = [(x, -y, radius) for x, y, radius in reversed(lower)]
     web = DimensionMark("t_w", t_w, (-e, 0.0), (-e + t_w, 0.0), "right")
-    marks = (*_overall(b, h), web, _flange("t_f", t_f, e, top - t_f))
+    marks = (*_overall(b, h), web, _flange("t_f", t_f, x_f - e if slope else e, top - t_f))
     sizes = {"h": h, "b": b, "t_w": t_w, "t_f": t_f, "r": r, "slope": slope, "r_toe": r_toe}
     return _rings([[*lower, *upper]], sizes, marks)
 
@@ -319,3 +339,32 @@ def _web(t_w: float, symbol: str = "t_w") -> DimensionMark:
 
 def _flange(symbol: str, t: float, x: float, y: float) -> DimensionMark:
     return DimensionMark(symbol, t, (x, y), (x, y + t), "right")
+
+
+SHAPES: Mapping[str, tuple[ShapeForm, ...]] = {
+    "rectangle": (form_of(rectangle, "solid rectangle"),),
+    "circle": (form_of(circle, "solid circle"),),
+    "ellipse": (form_of(ellipse, "solid ellipse"),),
+    "trapezium": (form_of(trapezium, "symmetric trapezium"),),
+    "tube": (form_of(tube, "round tube"),),
+    "box": (form_of(box, "rectangular hollow section"),),
+    "i_shape": (
+        form_of(i_shape, "I-section with equal flanges"),
+        form_of(unequal_i_shape, "I-section with unequal flanges"),
+    ),
+    "channel": (form_of(channel, "channel, web left, open to the right"),),
+    "tee": (form_of(tee, "tee, flange on top"),),
+    "angle": (form_of(angle, "angle, heel bottom left"),),
+    "zed": (form_of(zed, "zed, top flange to the left"),),
+    "polygon": (form_of(polygon, "polygon through its corners"),),
+}
+
+
+def form_for(name: str, given: Collection[str]) -> ShapeForm:
+    """Pick the form of the shape `name` that fits the names given best; the first of equals."""
+
+    def misfit(form: ShapeForm) -> int:
+        names = {canonical(form, each) for each in given}
+        return len(form.required - names) + len(names - form.names)
+
+    return min(SHAPES[name], key=misfit)

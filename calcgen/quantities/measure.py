@@ -3,19 +3,23 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Mapping
 from dataclasses import dataclass
 from functools import cache
+from typing import TypeAlias
 
 import pint
+from pint.facets.plain import PlainQuantity
 
 from calcgen.quantities.registry import registry
 from calcgen.quantities.units import SYMBOLS, ZERO_CELSIUS, pint_name
 
-Dimension = tuple[tuple[str, int | float], ...]
+Quantity: TypeAlias = PlainQuantity[float]
+"""A pint quantity with a plain number."""
+
+Dimension: TypeAlias = tuple[tuple[str, int | float], ...]
 """Exponents of the base dimensions, sorted, without zeros: (('[length]', 1),)."""
 
-UnitFactors = tuple[tuple[str, int], ...]
+UnitFactors: TypeAlias = tuple[tuple[str, int], ...]
 """Symbols of the closed list with their exponents, in the order written."""
 
 
@@ -29,7 +33,7 @@ class Measure:
     unit : the unit it is shown in, as text of the language; None where nothing chose one.
     """
 
-    quantity: pint.Quantity[float]
+    quantity: Quantity
     unit: str | None = None
 
     @property
@@ -52,10 +56,9 @@ class Measure:
         return Measure(self.quantity, unit)
 
 
-def dimension_of(quantity: pint.Quantity[float]) -> Dimension:
+def dimension_of(quantity: Quantity) -> Dimension:
     """Return the dimension of a pint quantity (angles have none)."""
-    exponents: Mapping[str, float] = quantity.dimensionality
-    cleaned = ((name, round(float(power), 9)) for name, power in exponents.items())
+    cleaned = ((name, round(float(str(power)), 9)) for name, power in quantity.dimensionality.items())
     return tuple(sorted((n, int(p) if p == int(p) else p) for n, p in cleaned if p))
 
 
@@ -92,7 +95,7 @@ def magnitude_in(quantity: Measure, unit: str) -> float:
 
 
 @cache
-def unit_size(unit: str) -> pint.Quantity[float]:
+def unit_size(unit: str) -> Quantity:
     """Return one `unit` in SI base units.
 
     Raises

@@ -8,8 +8,6 @@ import pint
 
 from calcgen.quantities.units import SYMBOLS, pint_name
 
-Quantity = pint.Quantity
-
 
 @cache
 def registry() -> pint.UnitRegistry[float]:

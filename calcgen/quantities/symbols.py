@@ -6,13 +6,30 @@ import unicodedata
 from dataclasses import dataclass
 
 GREEK = {
-    name: chr(code)
-    for name, code in zip(
-        "alpha beta gamma delta epsilon zeta eta theta iota kappa lambda mu nu xi omicron pi rho".split()
-        + "sigma tau upsilon phi chi psi omega".split(),
-        [*range(0x3B1, 0x3C2), *range(0x3C3, 0x3CA)],
-        strict=True,
-    )
+    "alpha": "α",
+    "beta": "β",
+    "gamma": "γ",
+    "delta": "δ",
+    "epsilon": "ε",
+    "zeta": "ζ",
+    "eta": "η",
+    "theta": "θ",
+    "iota": "ι",
+    "kappa": "κ",
+    "lambda": "λ",
+    "mu": "μ",
+    "nu": "ν",
+    "xi": "ξ",
+    "omicron": "ο",
+    "pi": "π",
+    "rho": "ρ",
+    "sigma": "σ",
+    "tau": "τ",
+    "upsilon": "υ",
+    "phi": "φ",
+    "chi": "χ",
+    "psi": "ψ",
+    "omega": "ω",
 }
 GREEK |= {name.capitalize(): letter.upper() for name, letter in GREEK.items()}
 
@@ -33,13 +50,15 @@ class Symbol:
 def canonical(name: str) -> str:
     """Return the one spelling of a name: NFKC, segments that spell a Greek letter as that letter.
 
-    >>> canonical("sigma_max")
-    'σ_max'
+    >>> canonical("sigma_max"), canonical("Phi'")
+    ('σ_max', "Φ'")
     """
-    segments = unicodedata.normalize("NFKC", name).split("_")
-    return "_".join(
-        GREEK.get(s.rstrip("'"), s.rstrip("'")) + "'" * (len(s) - len(s.rstrip("'"))) for s in segments
-    )
+    return "_".join(_segment(s) for s in unicodedata.normalize("NFKC", name).split("_"))
+
+
+def _segment(text: str) -> str:
+    letters = text.rstrip("'")
+    return GREEK.get(letters, letters) + text[len(letters) :]
 
 
 def symbol(name: str) -> Symbol:

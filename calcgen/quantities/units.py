@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-
 SYMBOLS: dict[str, str] = {
     "mm": "1e-3 * meter",
     "cm": "1e-2 * meter",

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from calcgen.trail.canonical import canonical
 from calcgen.trail.changes import Changes, Item
 from calcgen.trail.entry import Entry
-from calcgen.trail.trail import Trail, apply
+from calcgen.trail.trail import Trail
 
 
 @dataclass(frozen=True)
@@ -51,15 +51,20 @@ def previous_values(trail: Trail, changes: Changes) -> Mapping[str, Previous]:
 
     `changes` may be pending ones or those of an entry. Addresses that were added have no previous value.
     """
-    sought = {c.address: (c.before, canonical(c.before)) for c in changes if c.before is not None}
-    found: dict[str, Previous] = {}
-    issues: dict[str, Entry] = {}
-    state: dict[str, Item] = {}
+    sought = {change.address: change.before for change in changes if change.before is not None}
+    texts = {address: canonical(item) for address, item in sought.items()}
+    standing: set[str] = set()
+    last: dict[str, Entry] = {}
+    issued: dict[str, Entry] = {}
     for entry in trail.order:
-        apply(entry, state)
-        for address, (item, text) in sought.items():
-            if address in state and canonical(state[address]) == text:
-                if entry.kind == "issue":
-                    issues[address] = entry
-                found[address] = Previous(item, entry, issues.get(address))
-    return found
+        for change in entry.changes:
+            if change.after is not None and canonical(change.after) == texts.get(change.address):
+                standing.add(change.address)
+            else:
+                standing.discard(change.address)
+        last.update(dict.fromkeys(standing, entry))
+        if entry.kind == "issue":
+            issued.update(dict.fromkeys(standing, entry))
+    return {
+        address: Previous(sought[address], last[address], issued.get(address)) for address in sorted(last)
+    }

@@ -70,14 +70,9 @@ def replay(trail: Trail, entry: str | None = None) -> State:
         raise KeyError(entry)
     state: dict[str, Item] = {}
     for past in trail.ancestry(trail.heads if entry is None else (entry,)):
-        apply(past, state)
+        for change in past.changes:
+            if change.after is None:
+                state.pop(change.address, None)
+            else:
+                state[change.address] = change.after
     return state
-
-
-def apply(entry: Entry, state: dict[str, Item]) -> None:
-    """Bring `state` in place from before `entry` to after it."""
-    for change in entry.changes:
-        if change.after is None:
-            state.pop(change.address, None)
-        else:
-            state[change.address] = change.after

@@ -1,7 +1,7 @@
 """Beams with known answers: published tables, worked examples and closed forms, in SI base units.
 
-Signs are those of `calcgen.mechanics.beam`. A case in multiples of w, L and EI has all three equal to 1. "From memory"
-means that the source was not at hand when its numbers were written down; all of them also follow from the theory.
+Signs are those of `calcgen.mechanics.beam`. A case in multiples of w, L and EI has all three equal to 1.
+"From memory" means that the source was not at hand when its numbers were written down.
 """
 
 from __future__ import annotations

@@ -1,4 +1,4 @@
-"""Published properties of catalogued sections: sizes, values, tolerances that cover their rounding, sources."""
+"""Published properties of catalogued sections: sizes, values, tolerances for their rounding, sources."""
 
 from __future__ import annotations
 

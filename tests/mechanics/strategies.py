@@ -11,7 +11,8 @@ from calcgen.mechanics.stress import Forces
 def star(radii: list[float], scale: float, phase: float) -> FloatArray:
     """A ring that never crosses itself: one corner on each of equally spaced rays."""
     angles = phase + np.linspace(0.0, 2.0 * np.pi, len(radii), endpoint=False)
-    return scale * np.array(radii)[:, None] * np.column_stack((np.cos(angles), np.sin(angles)))
+    ring: FloatArray = scale * np.array(radii)[:, None] * np.column_stack((np.cos(angles), np.sin(angles)))
+    return ring
 
 
 _radii = st.lists(st.floats(0.4, 1.0), min_size=5, max_size=14)

@@ -253,7 +253,7 @@ def test_cantilever_of_two_stiffnesses() -> None:
 
 
 def test_hinged_beam_by_statics() -> None:
-    """Spans 6 m and 6 m, a hinge 2 m beyond the middle support: the right part is a simple span of 4 m that hangs there."""
+    """Two spans of 6 m, a hinge 2 m beyond the middle support: there a simple span of 4 m hangs."""
     model = prismatic(12.0, EI, (pin(0.0), pin(6.0), pin(12.0)), (8.0,))
     s = solved(model, DistributedLoad.uniform(0.0, 12.0, W))
     hanging = W * 4 / 2
@@ -275,10 +275,10 @@ def test_hinge_over_a_support_parts_the_spans() -> None:
 
 
 def test_unequal_angle_cantilever_deflects_sideways() -> None:
-    """Against bending about the principal axes: I_1 and I_2 turned by α counter-clockwise from the horizontal.
+    """Against bending about the principal axes, axis 1 turned counter-clockwise by α from the horizontal.
 
-    A tip load P down has the components -P sin α along axis 1 and -P cos α along axis 2, y up; each bends the beam about the
-    other axis alone, and the two deflections are put together again.
+    A tip load P down has the components -P sin α along axis 1 and -P cos α along axis 2, y up; each bends the
+    beam about the other axis alone, and the two deflections are put together again.
     """
     I_1, I_2, alpha = 9.0e-6, 1.5e-6, radians(23.0)
     mean, half = (I_1 + I_2) / 2, (I_1 - I_2) / 2
@@ -298,7 +298,7 @@ def test_unequal_angle_cantilever_deflects_sideways() -> None:
 
 
 def test_the_coupling_is_that_of_a_section() -> None:
-    """Moments of the stresses E(κ d + κ_lat r), d down and r right, summed over fibres of a skew parallelogram."""
+    """Moments of the stresses E(κ d + κ_lat r), d down and r right, over the fibres of a parallelogram."""
     E, kappa, kappa_lat = 10.0, 0.3, -0.2
     s, t = (np.arange(400) + 0.5) / 400 - 0.5, (np.arange(400) + 0.5) / 400 - 0.5
     x = 2.0 * s[:, None] + 0.7 * t  # leans to the right at the top: ∫xy dA > 0
@@ -330,7 +330,7 @@ def test_planes_hold_on_their_own() -> None:
 
 @pytest.mark.parametrize("sliver", [1e-2, 1e-4, 1e-6])
 def test_a_short_element_costs_no_digits(sliver: float) -> None:
-    """A load that starts a little beside a support of a propped cantilever, against sympy in exact fractions."""
+    """A load that starts close beside a support of a propped cantilever, against sympy in fractions."""
     start = 3.0 + sliver
     model = prismatic(20.0, 1e7, (fixed(0.0), pin(3.0), pin(20.0)))
     s = solved(model, DistributedLoad.uniform(start, 20.0, W))
@@ -352,7 +352,7 @@ def test_a_short_element_costs_no_digits(sliver: float) -> None:
 
 @pytest.mark.parametrize("seed", range(4))
 def test_against_a_collocation_solver(seed: int) -> None:
-    """scipy's solve_bvp on w'' = -M/EI, M'' = -q with a random smooth-free beam: fixed, then on a spring."""
+    """scipy's solve_bvp on w'' = -M/EI, M'' = -q with a random beam: fixed, then on a spring."""
     rng = np.random.default_rng(seed)
     length, stiffness, k = rng.uniform(2, 9), rng.uniform(1e6, 1e7), rng.uniform(1e4, 1e6)
     a, b = rng.uniform(-5e3, 9e3, 2)
@@ -361,7 +361,7 @@ def test_against_a_collocation_solver(seed: int) -> None:
     s = solved(model, DistributedLoad(0.0, length, a, b), PointLoad(length, tip), PointMoment(length, couple))
 
     def rates(x: FloatArray, z: FloatArray) -> FloatArray:
-        w, slope, M, V = z
+        _, slope, M, V = z
         return np.array([slope, -M * 1e3 / stiffness, V, -(a + (b - a) * x / length) / 1e3])
 
     def ends(start: FloatArray, end: FloatArray) -> FloatArray:

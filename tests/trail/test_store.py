@@ -7,6 +7,8 @@ import hashlib
 import multiprocessing
 import resource
 import signal
+import threading
+import time
 from pathlib import Path
 
 import pytest
@@ -150,20 +152,23 @@ def test_a_file_that_took_the_trails_place_meanwhile_gets_the_entry(path: Path) 
     """As by a checkout while a build waits: the entry must not go into the file that is no longer there."""
     append(path, lambda trail: build(trail, FIRST))
     other = path.with_name("other")
+    waiting = threading.Thread(target=append, args=(path, lambda trail: build(trail, SECOND, hour=1)))
 
-    def replace(trail: Trail) -> Entry | None:
+    def replace(_: Trail) -> None:
+        waiting.start()
+        time.sleep(0.03)
         other.write_bytes(path.read_bytes())
         other.replace(path)
-        return None
 
     append(path, replace)
-    append(path, lambda trail: build(trail, SECOND, hour=1))
+    waiting.join()
     assert replay(load(path)[0]) == SECOND
 
 
 def append_often(path: Path, name: str, count: int) -> None:
     for number in range(count):
-        append(path, lambda trail, n=number: build(trail, {**replay(trail), f"{name}#{n}": CHECK}))  # type: ignore[misc]
+        item = {f"{name}#{number}": CHECK}
+        append(path, lambda trail, item=item: build(trail, {**replay(trail), **item}))  # type: ignore[misc]
 
 
 def test_all_entries_of_two_processes_survive_in_one_chain(path: Path) -> None:

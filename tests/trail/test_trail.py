@@ -218,7 +218,10 @@ FAULTY = {
     "no JSON": (A + "hello\n" + B + C, [("trail-unreadable", 2)]),
     "no entry": (A + '{"kind":"build"}\n' + B + C, [("trail-unreadable", 2)]),
     "no object": (A + "[]\n" + B + C, [("trail-unreadable", 2)]),
-    "wrong type": (A + B.replace('"parents":[', '"parents":[1,') + C, [("trail-unreadable", 2)]),
+    "wrong type": (
+        A + B.replace('"parents":[', '"parents":[1,') + C,
+        [("trail-unreadable", 2), ("trail-gap", 3)],
+    ),
     "nested deep": (A + "[" * 100_000 + "\n" + B + C, [("trail-unreadable", 2)]),
     "conflict": (
         A + "<<<<<<< HEAD\n" + B + "=======\n" + C + ">>>>>>> other\n",

@@ -6,7 +6,9 @@ import re
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-from calcgen.evaluation.blocks.beam_model import BeamData, Combination, length_text, read_beam
+from calcgen.evaluation.blocks.beam_combinations import Combination
+from calcgen.evaluation.blocks.beam_lines import EXTREME, REACTION, SPAN, STATE, is_result, length_text
+from calcgen.evaluation.blocks.beam_model import BeamData, read_beam
 from calcgen.evaluation.blocks.beam_results import group_results, premises, relieving_cases
 from calcgen.evaluation.results import (
     BeamResult,
@@ -30,9 +32,6 @@ from calcgen.quantities.symbols import plain
 from calcgen.text import Report, Span, nearest
 
 _UNITS = {"M": "N·m", "V": "N", "w": "m", "slope": "1", "R": "N", "M_R": "N·m"}
-_EXTREME = re.compile(r"^(x_)?(M|V|w|slope)_(max|min|abs)(_lat)?$")
-_REACTION = re.compile(r"^(R|M_R)_([1-9]\d*)(?:_(max|min))?(_lat)?$")
-_STATE = re.compile(r"^(M|V|w|slope)(_lat)?$")
 
 
 @dataclass(frozen=True)
@@ -50,7 +49,7 @@ class BeamThing:
         if solutions is None:
             return None
         stretch: tuple[float, float] | None = None
-        if parts and re.fullmatch(r"span_\d+", parts[0]):
+        if parts and SPAN.match(parts[0]):
             number = int(parts[0].removeprefix("span_"))
             all_spans = self.result.model.spans
             if not 1 <= number <= len(all_spans):
@@ -88,7 +87,7 @@ class BeamThing:
             spans.pop(0)
             return known[head]
         names = ", ".join(known)
-        if _EXTREME.match(head) or _REACTION.match(head) or _STATE.match(head) or head.startswith("span_"):
+        if is_result(head):
             report.error(
                 "no-such-result",
                 spans[0],
@@ -122,7 +121,7 @@ class _Reading:
         place = self._place(arguments)
         if arguments is not None and place is None:
             return None
-        extreme, reaction, state = _EXTREME.match(word), _REACTION.match(word), _STATE.match(word)
+        extreme, reaction, state = EXTREME.match(word), REACTION.match(word), STATE.match(word)
         if (word.endswith("_lat")) and "lateral" not in self.beam.model.planes:
             return self._fault(
                 "the stiffness about the vertical axis is not known, so there are no lateral results",
@@ -163,20 +162,23 @@ class _Reading:
             f"the nearest is '{close}'" if close else ", ".join(known),
         )
 
-    def _fault(self, message: str, hint: str) -> None:
+    def _fault(self, message: str, hint: str) -> Measure | None:
         self.report.error("no-such-result", self.span, message, hint=hint)
+        return None
 
     def _place(self, arguments: tuple[Plain, ...] | None) -> float | None:
         if arguments is None:
             return None
         length = from_si(1.0, "m").dimension
         if len(arguments) != 1 or not isinstance(arguments[0], Measure) or arguments[0].dimension != length:
-            return self._fault("a place on the beam is a length from its start", "such as M(2.5 m)")
+            self._fault("a place on the beam is a length from its start", "such as M(2.5 m)")
+            return None
         x = arguments[0].si
         if not -1e-9 <= x / self.beam.model.length <= 1 + 1e-9:
             unit = "ft" if self.style.system == "US" else "m"
             end = length_text(self.beam.model.length, self.style, unit)
-            return self._fault("the place lies outside the beam", f"the beam runs from 0 to {end}")
+            self._fault("the place lies outside the beam", f"the beam runs from 0 to {end}")
+            return None
         return min(max(x, 0.0), self.beam.model.length)
 
     def _one_state(self, word: str, instead: str) -> bool:

@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Callable, Mapping, Sequence
 from typing import Literal
 
-from calcgen.evaluation.blocks.beam_model import BeamData, length_text
+from calcgen.evaluation.blocks.beam_lines import length_text
+from calcgen.evaluation.blocks.beam_model import BeamData
 from calcgen.evaluation.results import CombinationResult, GroupResult, Premise, Result, Verdict
 from calcgen.mechanics.beam import BeamModel, CaseSolution
 from calcgen.mechanics.combinations import Envelope, Governing
@@ -97,7 +98,7 @@ def _lateral(members: Sequence[CombinationResult]) -> bool:
 def relieving_cases(
     group: GroupResult, solutions: Mapping[str, CaseSolution], kinds: Mapping[str, str]
 ) -> tuple[str, ...]:
-    """Return the permanent cases that act against a governing moment or reaction of a group, never taken at 1.0.
+    """Return the permanent cases that act against a governing moment or reaction, never taken at 1.0.
 
     A share below a hundredth of the governing value does not count.
     """
@@ -107,10 +108,8 @@ def relieving_cases(
         factors = [c.factors[case] for c in group.combinations if case in c.factors]
         if kinds.get(case) != "permanent" or not factors or any(abs(f - 1.0) < 1e-12 for f in factors):
             continue
-        shares: list[tuple[float, float]] = []
         moments = envelope.extremes("M")
-        for governing in (moments.max, moments.min):
-            shares.append((governing.value, solutions[case].at("M", governing.x)))
+        shares = [(m.value, solutions[case].at("M", m.x)) for m in (moments.max, moments.min)]
         for index in range(len(solutions[case].model.supports)):
             reaction = envelope.reaction(index)
             own = solutions[case].reactions[index].force
@@ -156,7 +155,8 @@ def premises(name: str, data: BeamData, groups: Sequence[GroupResult], style: St
         add(
             "small deflections",
             "not met",
-            f"the largest, {shown}, is more than 1/{1 / SMALL:.0f} of the span: the deformed shape carries otherwise",
+            f"the largest, {shown}, is more than 1/{1 / SMALL:.0f} of the span: "
+            "equilibrium on the undeformed shape no longer holds",
         )
     _bending_plane(data, add)
     if data.is_restrained and data.restrained is not None:

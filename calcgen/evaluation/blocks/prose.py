@@ -2,12 +2,9 @@
 
 from __future__ import annotations
 
-import re
-
 from calcgen.evaluation.formulas import Evaluator, shown
-from calcgen.evaluation.results import ProseResult, SheetResult
+from calcgen.evaluation.results import ProseResult
 from calcgen.evaluation.scope import Scope
-from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.calc import Prose
 from calcgen.quantities.display import Shown
 

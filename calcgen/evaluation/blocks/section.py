@@ -6,18 +6,17 @@ import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 
+from calcgen.evaluation.blocks.shape import placed_shape, profile_named, rolled_shape, shape_of
 from calcgen.evaluation.conventions import DIMENSIONS, LATER, PROPERTIES, Axes, names, other, translation
-from calcgen.evaluation.formulas import Evaluator
-from calcgen.evaluation.quantity import quantity_of, si
+from calcgen.evaluation.quantity import quantity_of
 from calcgen.evaluation.results import Plain, Published, Result, SecondRoute, SectionResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.section import SectionBlock, ShapeLine, ShapeText
 from calcgen.language.calc import FailedBlock
-from calcgen.language.nodes import Expression, Name, Text
-from calcgen.mechanics.outline import OutlineError
+from calcgen.language.nodes import Expression, Name
 from calcgen.mechanics.second_route.section import PUBLISHED, published_residuals, section_residuals
 from calcgen.mechanics.section import SectionProperties, section_properties
-from calcgen.mechanics.shapes import SHAPES, Shape, ShapeError, ShapeForm, canonical, form_for
+from calcgen.mechanics.shapes import Shape
 from calcgen.profiles.catalogue import Catalogue, Profile
 from calcgen.quantities.display import KINDS, Style, show
 from calcgen.quantities.measure import Measure, from_si, measure
@@ -55,7 +54,7 @@ class SectionThing:
             report.error(
                 "other-convention",
                 span,
-                f"'{plain(wanted)}' is a name of the {other(self.axes)} axes; this project's axes are {self.axes}",
+                f"'{plain(wanted)}' is a name of the {other(self.axes)} axes, here they are {self.axes}",
                 hint=f"write {foreign.name(self.axes)}: {foreign.meaning}",
             )
             return
@@ -109,11 +108,11 @@ def _section(
     text = line.shape
     profile: Profile | None = None
     if text.shape.name == "rolled":
-        profile = _profile(text, scope, catalogue)
-        shape = _rolled(profile, text, scope) if profile is not None else None
+        profile = profile_named(text, scope, catalogue)
+        shape = rolled_shape(profile, text, scope) if profile is not None else None
     else:
-        shape = _shape(text, scope)
-    placed = _placed(shape, text, scope) if shape is not None else None
+        shape = shape_of(text, scope)
+    placed = placed_shape(shape, text, scope) if shape is not None else None
     if placed is None:
         return None
     computed = section_properties(placed.outline)
@@ -152,173 +151,17 @@ def _in_force(
     if "I_h" in published:
         values["W_el_h_top"] = values["I_h"] / computed.c_top
         values["W_el_h_bottom"] = values["I_h"] / computed.c_bottom
-    for i, I in (("i_h", "I_h"), ("i_v", "I_v"), ("i_1", "I_1"), ("i_2", "I_2")):
-        if i not in published and I in published:
-            values[i] = math.sqrt(values[I] / values["A"])
+    for i, inertia in (("i_h", "I_h"), ("i_v", "I_v"), ("i_1", "I_1"), ("i_2", "I_2")):
+        if i not in published and inertia in published:
+            values[i] = math.sqrt(values[inertia] / values["A"])
     return values
-
-
-def _profile(text: ShapeText, scope: Scope, catalogue: Catalogue) -> Profile | None:
-    """Return the catalogued profile that `rolled(...)` names."""
-    if len(text.positional) != 1 or text.arguments or text.points:
-        scope.report.error(
-            "rolled-arguments",
-            text.span,
-            "'rolled' takes one designation",
-            hint='write rolled("IPE 240"), or the name of a text input',
-        )
-        return None
-    node = text.positional[0]
-    designation = Evaluator(scope).value(node)
-    if designation is None:
-        return None
-    if not isinstance(designation, str):
-        scope.report.error(
-            "rolled-arguments", node.span, "a designation is text", hint='put it in quotes: rolled("IPE 240")'
-        )
-        return None
-    found = catalogue.find(designation)
-    if found is None:
-        close = ", ".join(catalogue.nearest(designation)[:3])
-        where = node.span if isinstance(node, Text) else text.span
-        scope.report.error(
-            "unknown-profile",
-            where,
-            f"'{designation}' is in no catalogue",
-            hint=f"the nearest are {close}" if close else "designations read like IPE 240, W18x50, L6x4x1/2",
-        )
-    return found
-
-
-def _rolled(profile: Profile, text: ShapeText, scope: Scope) -> Shape | None:
-    given = frozenset(profile.dimensions)
-    form = form_for(profile.shape, given)
-    try:
-        return form.build(**{k: v for k, v in profile.dimensions.items() if k in form.names})
-    except (ShapeError, OutlineError) as fault:
-        scope.report.error(
-            "shape-does-not-fit",
-            text.span,
-            f"the dimensions of {profile.designation} make no section: {fault}",
-            hint=f"see {profile.file}, line {profile.line}",
-        )
-        return None
-
-
-def _shape(text: ShapeText, scope: Scope) -> Shape | None:
-    """Build a shape of the language from its arguments."""
-    word = text.shape.name
-    if word not in SHAPES:
-        scope.report.error("not-available-yet", text.shape.span, f"the shape '{word}' is not available yet")
-        return None
-    if word == "polygon":
-        return _polygon(text, scope)
-    form = form_for(word, frozenset(a.name.name for a in text.arguments))
-    given = _arguments(text, form, scope)
-    if given is None:
-        return None
-    spans = {canonical(form, a.name.name): a.value.span for a in text.arguments}
-    try:
-        return form.build(**given)
-    except ShapeError as fault:
-        scope.report.error(
-            "shape-does-not-fit",
-            spans.get(fault.parameter, text.span),
-            f"'{fault.parameter}' of the {word} {fault.reason}",
-            label=_size(fault.parameter, fault.value, form, scope.style),
-        )
-    except OutlineError as fault:
-        scope.report.error("outline", text.span, f"the outline {fault.reason}")
-    return None
-
-
-def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, float] | None:
-    word = text.shape.name
-    complete = True
-    given: dict[str, float] = {}
-    kinds = {p.name: p.kind for p in form.parameters}
-    for node in text.positional:
-        complete = False
-        scope.report.error(
-            "argument-without-name",
-            node.span,
-            "arguments of a shape are always named",
-            hint=f"write {word}({', '.join(f'{n} = …' for n in (p.name for p in form.parameters if not p.optional))})",
-        )
-    for argument in text.arguments:
-        name = canonical(form, argument.name.name)
-        if name not in kinds:
-            complete = False
-            found = nearest(argument.name.name, form.names)
-            scope.report.error(
-                "unknown-argument",
-                argument.name.span,
-                f"'{word}' has no '{argument.name.name}'",
-                hint=f"the nearest is '{found}'" if found else f"it takes {', '.join(kinds)}",
-            )
-            continue
-        if name in given:
-            complete = False
-            scope.report.error("argument-given-twice", argument.name.span, f"'{name}' is given twice")
-            continue
-        value = si(argument.value, "length" if kinds[name] == "length" else "number", scope)
-        if value is None:
-            complete = False
-            given[name] = math.nan
-        else:
-            given[name] = value
-    missing = [p.name for p in form.parameters if not p.optional and p.name not in given]
-    if missing:
-        complete = False
-        scope.report.error(
-            "argument-missing",
-            text.shape.span,
-            f"'{word}' needs {' and '.join(missing)}",
-            hint=f"{form.note}: {', '.join(f'{p.name} ({p.note})' for p in form.parameters)}",
-        )
-    return given if complete else None
-
-
-def _polygon(text: ShapeText, scope: Scope) -> Shape | None:
-    pairs = [(si(p.x, "length", scope), si(p.y, "length", scope)) for p in text.points]
-    corners = [(x, y) for x, y in pairs if x is not None and y is not None]
-    if len(corners) < len(pairs):
-        return None
-    try:
-        return SHAPES["polygon"][0].build(points=corners)
-    except OutlineError as fault:
-        places = [text.points[i].span for i in fault.vertices if i < len(text.points)]
-        scope.report.error(
-            "outline",
-            places[0] if places else text.span,
-            f"the outline {fault.reason}",
-            hint="corners follow one another around the section, in either sense",
-        )
-        return None
-
-
-def _placed(shape: Shape, text: ShapeText, scope: Scope) -> Shape | None:
-    turned = 0.0
-    x: float | None = 0.0
-    y: float | None = 0.0
-    angle = None
-    if text.turned is not None:
-        angle = quantity_of(text.turned, "number", scope)
-        if angle is None:
-            return None
-        turned = angle.si
-    if text.at is not None:
-        x, y = si(text.at.x, "length", scope), si(text.at.y, "length", scope)
-    if x is None or y is None:
-        return None
-    return shape.placed(x, y, mirrored=text.mirrored, turned=turned)
 
 
 _TURNED = {"I_h": "I_v", "W_el_h": "W_el_v", "W_pl_h": "W_pl_v", "i_h": "i_v"}
 
 
 def _oriented(profile: Profile, text: ShapeText, scope: Scope) -> dict[str, float]:
-    """Return a profile's published values as the section lies: those about the axes change places in a quarter turn.
+    """Return a profile's published values as the section lies: a quarter turn exchanges the axes.
 
     Turned by another angle, only what has no axis keeps its published value.
     """
@@ -337,7 +180,7 @@ def _oriented(profile: Profile, text: ShapeText, scope: Scope) -> dict[str, floa
 
 
 def _with_synonyms(dimensions: Mapping[str, float], shape: str) -> dict[str, float]:
-    """Return a shape's dimensions with `d` beside `h` and `b_f` beside `b`, and `h` and `b` of what is round."""
+    """Return a shape's dimensions with `d` beside `h` and `b_f` beside `b`."""
     known = {k: v for k, v in dimensions.items() if k in DIMENSIONS}
     if "h" in known:
         known.setdefault("d", known["h"])
@@ -405,12 +248,6 @@ def _second_route(
     if profile is not None:
         found += published_residuals(published, computed, profile.tolerances)
     return tuple(SecondRoute(name, r.what, r.residual, r.tolerance, r.quantity) for r in found)
-
-
-def _size(parameter: str, value: float, form: ShapeForm, style: Style) -> str:
-    kind = next((p.kind for p in form.parameters if p.name == parameter), "number")
-    shown = show(from_si(value, "m").shown_in(None) if kind == "length" else measure(value, None), style)
-    return f"{parameter} = {shown.text}"
 
 
 def section_named(node: Expression, scope: Scope) -> SectionThing | None:

@@ -2,27 +2,22 @@
 
 from __future__ import annotations
 
-import math
 from dataclasses import dataclass
 
-import numpy as np
-
-from calcgen.evaluation.blocks.section import SectionThing, section_named
+from calcgen.evaluation.blocks.section import section_named
+from calcgen.evaluation.blocks.stress_results import RESULT_MEANINGS, stress_premises, stress_results
 from calcgen.evaluation.checks import Labels, Statement, judge
-from calcgen.evaluation.conventions import Axes
-from calcgen.evaluation.formulas import shown
 from calcgen.evaluation.quantity import quantity_of, si
-from calcgen.evaluation.results import CheckResult, Plain, Premise, Result, SecondRoute, StressResult
+from calcgen.evaluation.results import CheckResult, Plain, Result, SecondRoute, StressResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.stress import StressBlock
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Name
 from calcgen.mechanics.arrays import Point
-from calcgen.mechanics.outline import Outline
 from calcgen.mechanics.second_route.stress import stress_residuals
-from calcgen.mechanics.stress import Extreme, Forces, StressPlane, elastic_stress
-from calcgen.quantities.display import Style, show
-from calcgen.quantities.measure import Measure, from_si, measure
+from calcgen.mechanics.stress import Forces, elastic_stress
+from calcgen.quantities.display import show
+from calcgen.quantities.measure import Measure, from_si
 from calcgen.quantities.symbols import plain
 from calcgen.text import Report, nearest
 
@@ -81,13 +76,11 @@ class StressThing:
         return None
 
 
-def evaluate_stress(
-    block: StressBlock, scope: Scope, labels: Labels, axes: Axes
-) -> StressResult | FailedBlock:
+def evaluate_stress(block: StressBlock, scope: Scope, labels: Labels) -> StressResult | FailedBlock:
     """Solve for the stress, judge its limit, and define its name."""
     name = block.target.name
     free = scope.define(block.target)
-    result = None if block.later else _stress(name, block, scope, labels, axes)
+    result = None if block.later else _stress(name, block, scope, labels)
     if result is None or not free:
         if free:
             scope.failed.add(name)
@@ -96,7 +89,7 @@ def evaluate_stress(
     return result
 
 
-def _stress(name: str, block: StressBlock, scope: Scope, labels: Labels, axes: Axes) -> StressResult | None:
+def _stress(name: str, block: StressBlock, scope: Scope, labels: Labels) -> StressResult | None:
     available = _only_available(block, scope)
     setting = block.setting("section")
     if setting is None:
@@ -128,7 +121,7 @@ def _stress(name: str, block: StressBlock, scope: Scope, labels: Labels, axes: A
     plane = elastic_stress(section.result.computed, forces)
     outline = section.result.outline
     E = modulus.si if modulus is not None else None
-    results = _results(plane, outline, E, points, scope.style)
+    results = stress_results(plane, outline, E, points, scope.style)
     return StressResult(
         name=name,
         section=section.result,
@@ -142,7 +135,7 @@ def _stress(name: str, block: StressBlock, scope: Scope, labels: Labels, axes: A
         results=results,
         points=points,
         check=_limit(name, block, limit, results, scope, labels),
-        premises=_premises(name, section, plane, forces, strength, outline, scope),
+        premises=stress_premises(name, section, plane, forces, strength, outline, scope),
         second_route=tuple(
             SecondRoute(name, r.what, r.residual, r.tolerance, r.quantity)
             for r in stress_residuals(plane, forces, outline)
@@ -226,7 +219,7 @@ def _points(block: StressBlock, scope: Scope) -> dict[str, Point] | None:
     for line in block.points:
         x, y = si(line.point.x, "length", scope), si(line.point.y, "length", scope)
         name = line.target.name
-        taken = [*points, *_RESULT_MEANINGS, *_LATER_RESULTS]
+        taken = [*points, *RESULT_MEANINGS, *_LATER_RESULTS]
         if name in taken:
             complete = False
             scope.report.error(
@@ -239,82 +232,6 @@ def _points(block: StressBlock, scope: Scope) -> dict[str, Point] | None:
         else:
             points[name] = (x, y)
     return points if complete else None
-
-
-_RESULT_MEANINGS = {
-    "σ_max": "largest normal stress, tension positive",
-    "σ_min": "smallest normal stress, tension positive",
-    "σ_top": "normal stress at the top fibre",
-    "σ_bottom": "normal stress at the bottom fibre",
-    "na_depth": "from the centroid to the neutral axis along the vertical",
-    "na_angle": "neutral axis from the horizontal, counter-clockwise",
-    "κ": "curvature in the plane of bending",
-    "R": "radius of curvature",
-    "ε_max": "largest strain, lengthening positive",
-    "ε_min": "smallest strain, lengthening positive",
-}
-
-
-def _results(
-    plane: StressPlane, outline: Outline, E: float | None, points: dict[str, Point], style: Style
-) -> tuple[Result, ...]:
-    largest, smallest = plane.extremes(outline)
-    results: list[Result] = []
-
-    def add(name: str, value: Measure, place: str = "", meaning: str = "") -> None:
-        meaning = meaning or _RESULT_MEANINGS[name]
-        results.append(Result(name, meaning, value, show(value, style), place))
-
-    add("σ_max", from_si(largest.value, "Pa").shown_in(None), _place(largest, plane, style))
-    add("σ_min", from_si(smallest.value, "Pa").shown_in(None), _place(smallest, plane, style))
-    add("σ_top", from_si(plane.at_top(outline), "Pa").shown_in(None))
-    add("σ_bottom", from_si(plane.at_bottom(outline), "Pa").shown_in(None))
-    axis = plane.neutral_axis
-    length = "in" if style.system == "US" else "mm"
-    if axis is not None:
-        if axis.above is not None:
-            sense = -1.0 if style.depth == "down" else 1.0
-            add("na_depth", from_si(sense * axis.above, "m").shown_in(length), f"positive {style.depth}wards")
-        add("na_angle", measure(math.degrees(axis.angle), "deg", (("deg", 1),)))
-    if E is not None:
-        curvature = plane.curvature(E)
-        add("κ", from_si(curvature.resultant, "1/m").shown_in(None))
-        if curvature.radius is not None:
-            add("R", from_si(curvature.radius, "m").shown_in("ft" if style.system == "US" else "m"))
-        add("ε_max", measure(largest.value / E, None))
-        add("ε_min", measure(smallest.value / E, None))
-    for name, point in points.items():
-        stress = float(plane.at(np.array([point]))[0])
-        where = f"at ({_length(point[0], style)}, {_length(point[1], style)})"
-        add(name, from_si(stress, "Pa").shown_in(None), where, "normal stress at the point, tension positive")
-    return tuple(_in_one_unit(results, style))
-
-
-def _in_one_unit(results: list[Result], style: Style) -> list[Result]:
-    """Show all stresses of a block in the unit of the largest of them."""
-    stresses = [r for r in results if r.value.dimension == from_si(1.0, "Pa").dimension]
-    largest = max(stresses, key=lambda r: abs(r.value.si))
-    unit = style.unit_of(largest.value)
-    shown_in_unit = []
-    for r in results:
-        value = r.value.shown_in(unit) if r in stresses else r.value
-        shown_in_unit.append(Result(r.name, r.meaning, value, show(value, style), r.place))
-    return shown_in_unit
-
-
-def _length(value: float, style: Style) -> str:
-    return show(from_si(value, "m").shown_in("in" if style.system == "US" else "mm"), style).text
-
-
-def _place(extreme: Extreme, plane: StressPlane, style: Style) -> str:
-    if plane.uniform:
-        return "everywhere"
-    (x_1, y_1), (x_2, y_2) = extreme.ends
-    if (x_1, y_1) != (x_2, y_2) and y_1 == y_2:
-        return "at the top" if extreme.y > plane.y_bar else "at the bottom"
-    if (x_1, y_1) != (x_2, y_2) and x_1 == x_2:
-        return "on the right" if extreme.x > plane.x_bar else "on the left"
-    return f"at ({_length(extreme.x, style)}, {_length(extreme.y, style)})"
 
 
 def _with_unit_of(block: StressBlock, key: str, kind: str, value: float, scope: Scope) -> Measure:
@@ -355,54 +272,3 @@ def _limit(
         address=address,
         line=scope.report.source.line_number(setting.span),
     )
-
-
-def _premises(
-    name: str,
-    section: SectionThing,
-    plane: StressPlane,
-    forces: Forces,
-    strength: Measure | None,
-    outline: Outline,
-    scope: Scope,
-) -> tuple[Premise, ...]:
-    largest, smallest = plane.extremes(outline)
-    peak = max(largest.value, -smallest.value)
-    found: list[Premise] = []
-
-    def add(premise: str, verdict: str, detail: str) -> None:
-        found.append(Premise(name, premise, verdict, detail))  # type: ignore[arg-type]
-
-    stress = shown(from_si(peak, "Pa").shown_in(None), scope).text
-    if strength is None:
-        add("linear elastic", "left to judgement", f"no f_y is given; the largest stress is {stress}")
-    elif peak <= strength.si:
-        add(
-            "linear elastic",
-            "met",
-            f"the largest stress, {stress}, is below f_y = {shown(strength, scope).text}",
-        )
-    else:
-        add(
-            "linear elastic",
-            "not met",
-            f"the largest stress, {stress}, is above f_y = {shown(strength, scope).text}: "
-            "the section yields, and these stresses do not occur",
-        )
-    inertia = section.result.computed
-    if inertia.I_hv == 0.0:
-        add("bending about principal axes", "met", "the horizontal and vertical axes are principal axes")
-    else:
-        add(
-            "bending about principal axes",
-            "met",
-            "they are not principal axes: the general formula with the product moment is used",
-        )
-    if forces.N == 0.0:
-        add("no net axial force", "met", "N = 0: the neutral axis passes through the centroid")
-    else:
-        add("no net axial force", "met", "N acts at the centroid and shifts the neutral axis, as shown")
-    add("plane sections", "left to judgement", "slender member, away from supports, point loads and openings")
-    add("straight member", "left to judgement", "radius of the member's axis large beside its depth")
-    add("restraint against lateral buckling", "left to judgement", "stress alone does not show stability")
-    return tuple(found)

@@ -11,10 +11,11 @@ from calcgen.language.blocks.working import Check, Derivation, WorkingBlock
 
 def evaluate_working(block: WorkingBlock, scope: Scope, labels: Labels) -> WorkingResult:
     """Define the derived values and judge the checks of a block; `labels` grows over the calc."""
-    rows: list[DerivedRow | CheckRow | FailedRow] = []
-    for item in block.items:
-        rows.append(_derive(item, scope) if isinstance(item, Derivation) else _check(item, scope, labels))
-    return WorkingResult(tuple(rows), block.span)
+    rows = tuple(
+        _derive(item, scope) if isinstance(item, Derivation) else _check(item, scope, labels)
+        for item in block.items
+    )
+    return WorkingResult(rows, block.span)
 
 
 def _derive(item: Derivation, scope: Scope) -> DerivedRow | FailedRow:

@@ -4,8 +4,20 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
+from calcgen.language.blocks.reading import (
+    BlockText,
+    Outcome,
+    not_available_yet,
+    one_of,
+    only_once,
+    read_each,
+)
+from calcgen.language.cursor import Cursor
+from calcgen.language.errors import ReadingError
+from calcgen.language.lines import Line
 from calcgen.language.nodes import Annotations, Expression, Named
-from calcgen.text import Span
+from calcgen.language.shapes import SHAPES, read_shape
+from calcgen.text import Report, Span
 
 
 @dataclass(frozen=True)

@@ -4,8 +4,13 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
+from calcgen.language.blocks.reading import BlockText, Outcome, names_of, read_each
+from calcgen.language.cursor import Cursor
+from calcgen.language.errors import ReadingError
+from calcgen.language.expressions import comparison, formula
+from calcgen.language.lines import Line
 from calcgen.language.nodes import Annotations, Comparison, Formula, Named, UnitText
-from calcgen.text import Span
+from calcgen.text import Report, Span
 
 
 @dataclass(frozen=True)
@@ -40,3 +45,33 @@ class WorkingBlock:
 
     items: tuple[Derivation | Check, ...]
     span: Span
+
+
+def read_working(block: BlockText, report: Report) -> Outcome[WorkingBlock]:
+    """Read `name = formula` and checks."""
+    items, failed = read_each(block.lines, report, _read_statement)
+    return Outcome(WorkingBlock(tuple(items), block.span), names_of(failed))
+
+
+def _read_statement(line: Line, cursor: Cursor) -> Derivation | Check:
+    if cursor.token.kind in ("name", "word") and cursor.following.text in ("=", "[", ":="):
+        return _read_derivation(line, cursor)
+    statement = comparison(cursor)
+    if cursor.sees("="):
+        raise ReadingError(
+            "unexpected",
+            cursor.span(cursor.token),
+            "only a name stands on the left side of '='",
+            hint="write == to compare",
+        )
+    cursor.finish()
+    return Check(statement, line.statement_text, line.annotations, line.span, line.statement_span)
+
+
+def _read_derivation(line: Line, cursor: Cursor) -> Derivation:
+    target = cursor.named("a value")
+    unit = cursor.bracketed_unit()
+    cursor.expect("=")
+    found = formula(cursor)
+    cursor.finish()
+    return Derivation(target, unit, found, line.annotations, line.span, line.statement_span)

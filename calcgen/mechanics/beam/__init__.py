@@ -30,6 +30,7 @@ from calcgen.mechanics.beam.loads import (
 )
 from calcgen.mechanics.beam.model import (
     FREE,
+    PLANES,
     RIGID,
     BeamModel,
     BendingStiffness,
@@ -49,6 +50,7 @@ from calcgen.mechanics.beam.stability import UnstableBeam
 
 __all__ = [
     "FREE",
+    "PLANES",
     "QUANTITIES",
     "RIGID",
     "BeamModel",

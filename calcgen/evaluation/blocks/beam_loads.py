@@ -1,0 +1,130 @@
+"""The loads of a beam block, by case."""
+
+from __future__ import annotations
+
+import math
+
+from calcgen.evaluation.blocks.beam_lines import Lines
+from calcgen.evaluation.blocks.beam_stiffness import Property
+from calcgen.evaluation.quantity import quantity_of
+from calcgen.evaluation.results import LoadRow
+from calcgen.language.blocks.beam import (
+    CaseLine,
+    LoadLine,
+)
+from calcgen.mechanics.beam import (
+    DistributedLoad,
+    DistributedMoment,
+    Load,
+    Plane,
+    PointLoad,
+    PointMoment,
+)
+from calcgen.quantities.display import show
+
+
+def loads_of(lines: Lines, properties: list[Property]) -> tuple[dict[str, list[Load]], list[LoadRow]]:
+    """Return the loads by case, and each as shown."""
+    cases: dict[str, list[Load]] = {line.target.name: [] for line in lines.of(CaseLine)}
+    rows: list[LoadRow] = []
+    for line in lines.of(LoadLine):
+        lines.keep_free_of_results(line.case)
+        loads, row = _load(lines, line, properties)
+        cases.setdefault(line.case.name, []).extend(loads)
+        rows.append(row)
+    return cases, rows
+
+
+def _load(lines: Lines, line: LoadLine, properties: list[Property]) -> tuple[list[Load], LoadRow]:
+    plane: Plane = "lateral" if line.plane == "lateral" else "vertical"
+    start = lines.place(line.start) if line.start is not None else 0.0
+    end = lines.place(line.end) if line.end is not None else lines.length
+    if line.at is not None:
+        start = end = lines.place(line.at)
+    elif end - start <= 1e-9 * lines.length and not lines.failed:
+        lines.fault("no-length", line.statement_span, "the load has no length: 'from' must be before 'to'")
+    distributed = line.at is None
+    kind = {
+        "uniform": "line load",
+        "linear": "line load",
+        "point": "force",
+        "moment": "force" if distributed else "moment",
+        "self_weight": "weight by volume",
+    }[line.kind]
+    measures = [quantity_of(node, kind, lines.scope) for node in line.values]
+    if any(m is None for m in measures):
+        lines.failed = True
+    values = tuple(m.si if m is not None else math.nan for m in measures)
+    loads: list[Load] = []
+    if not lines.failed:
+        loads = _of_kind(lines, line, plane, values, start, end, properties)
+    shown = " to ".join(show(m, lines.scope.style).text for m in measures if m is not None)
+    whole = distributed and line.start is None
+    unit = lines.unit_of(line.at or line.start)
+    where = (
+        "over the whole beam"
+        if whole
+        else f"from {lines.text(start, unit)} to {lines.text(end, unit)}"
+        if distributed
+        else f"at {lines.text(start, unit)}"
+    )
+    return loads, LoadRow(
+        line.case.name,
+        line.kind,
+        plane,
+        f"{shown} {where}",
+        values,
+        start,
+        end,
+        line.annotations.note,
+        line.annotations.reference,
+        lines.report.source.line_number(line.span),
+    )
+
+
+def _of_kind(
+    lines: Lines,
+    line: LoadLine,
+    plane: Plane,
+    values: tuple[float, ...],
+    start: float,
+    end: float,
+    properties: list[Property],
+) -> list[Load]:
+    match line.kind:
+        case "point":
+            return [PointLoad(start, values[0], plane)]
+        case "moment" if line.at is not None:
+            return [PointMoment(start, values[0], plane)]
+        case "moment":
+            return [DistributedMoment.uniform(start, end, values[0], plane)]
+        case "self_weight":
+            return _self_weight(lines, line, values[0], start, end, plane, properties)
+        case _:
+            return [DistributedLoad(start, end, values[0], values[-1], plane)]
+
+
+def _self_weight(
+    lines: Lines,
+    line: LoadLine,
+    weight: float,
+    start: float,
+    end: float,
+    plane: Plane,
+    properties: list[Property],
+) -> list[Load]:
+    loads: list[Load] = []
+    for p in properties:
+        a, b = max(start, p.start), min(end, p.end)
+        if b - a <= 1e-9 * lines.length:
+            continue
+        if p.section is None:
+            lines.fault(
+                "section-missing",
+                line.span,
+                "self-weight needs the section's area, and this beam has EI alone",
+                hint="write the weight as a uniform load",
+            )
+            return []
+        loads.append(DistributedLoad.uniform(a, b, weight * p.section.result.values["A"], plane))
+    return loads

@@ -1,0 +1,116 @@
+"""`section`, `E` and `EI` of a beam block -> the stiffness of each stretch."""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+
+from calcgen.evaluation.blocks.beam_lines import Lines
+from calcgen.evaluation.blocks.section import SectionThing, section_named
+from calcgen.evaluation.quantity import quantity_of
+from calcgen.language.blocks.beam import (
+    BeamSetting,
+)
+from calcgen.mechanics.beam import (
+    BendingStiffness,
+)
+from calcgen.quantities.measure import Measure
+
+
+@dataclass(frozen=True)
+class Property:
+    """A stretch's stiffness: a section with E, or EI."""
+
+    start: float
+    end: float
+    section: SectionThing | None
+    EI: float | None
+
+
+def modulus_of(lines: Lines, line: BeamSetting | None) -> Measure | None:
+    """Return the modulus of elasticity, None where it is not given or wrong."""
+    if line is None:
+        return None
+    E = quantity_of(line.value, "stress", lines.scope)
+    if E is None:
+        lines.failed = True
+    elif E.si <= 0:
+        lines.fault("not-positive", line.value.span, "the modulus of elasticity must be positive")
+    return E
+
+
+def properties_of(lines: Lines, E: Measure | None) -> list[Property]:
+    """Return the stretches from left to right; a line with 'from … to …' stands before one without."""
+    base: Property | None = None
+    own: list[tuple[Property, BeamSetting]] = []
+    for line in lines.of(BeamSetting):
+        if line.key.name not in ("section", "EI"):
+            continue
+        start = lines.place(line.start) if line.start is not None else 0.0
+        end = lines.place(line.end) if line.end is not None else lines.length
+        section = section_named(line.value, lines.scope) if line.key.name == "section" else None
+        EI = None
+        if line.key.name == "EI":
+            EI = lines.number(line.value, "bending stiffness")
+            if EI <= 0:
+                lines.fault("not-positive", line.value.span, "the bending stiffness must be positive")
+        elif section is None:
+            lines.failed = True
+        elif E is None and not any(s.key.name == "E" for s in lines.of(BeamSetting)):
+            lines.fault(
+                "modulus-missing",
+                line.span,
+                "a beam with a section needs the modulus of elasticity",
+                hint="add a line such as E = 210 GPa",
+            )
+        found = Property(start, end, section, EI)
+        if line.start is None:
+            if base is not None and (base.EI is not None) != (EI is not None):
+                lines.fault(
+                    "given-twice", line.span, "'EI' stands for 'section' and 'E': give one of the two"
+                )
+            base = found
+        elif end - start <= 1e-9 * lines.length:
+            lines.fault("no-length", line.span, "the stretch has no length")
+        else:
+            own.append((found, line))
+    return _cover(lines, base, own)
+
+
+def _cover(lines: Lines, base: Property | None, own: list[tuple[Property, BeamSetting]]) -> list[Property]:
+    own.sort(key=lambda item: item[0].start)
+    row: list[Property] = []
+    x, least = 0.0, 1e-9 * lines.length
+    for stretch, line in own:
+        if stretch.start < x - least:
+            lines.fault("stretches-overlap", line.span, "this stretch overlaps the one before it")
+        if stretch.start > x + least and base is not None:
+            row.append(Property(x, stretch.start, base.section, base.EI))
+        elif stretch.start > x + least:
+            _uncovered(lines, x, stretch.start)
+        row.append(stretch)
+        x = stretch.end
+    if x < lines.length - least and base is not None:
+        row.append(Property(x, lines.length, base.section, base.EI))
+    elif x < lines.length - least:
+        _uncovered(lines, x, lines.length)
+    return row
+
+
+def _uncovered(lines: Lines, start: float, end: float) -> None:
+    if not lines.failed:
+        lines.fault(
+            "stiffness-missing",
+            lines.block.head_span,
+            f"the beam has no stiffness from {lines.text(start)} to {lines.text(end)}",
+            hint="add section = … and E = …, or EI = …",
+        )
+
+
+def stiffness_of(p: Property, E: Measure | None, *, restrained: bool) -> BendingStiffness:
+    """Return the bending stiffness of a stretch, with the section's values in force."""
+    if p.section is None or E is None:
+        return BendingStiffness(p.EI or 0.0)
+    values = p.section.result.values
+    return BendingStiffness.of_section(
+        E.si, values["I_h"], values["I_v"], values["I_hv"], restrained=restrained
+    )

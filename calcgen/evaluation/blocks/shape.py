@@ -1,0 +1,181 @@
+"""A shape as written -> the shape of mechanics; faults are reported at the argument that is wrong."""
+
+from __future__ import annotations
+
+import math
+
+from calcgen.evaluation.formulas import Evaluator
+from calcgen.evaluation.quantity import quantity_of, si
+from calcgen.evaluation.scope import Scope
+from calcgen.language.blocks.section import ShapeText
+from calcgen.language.nodes import Text
+from calcgen.mechanics.outline import OutlineError
+from calcgen.mechanics.shapes import SHAPES, Shape, ShapeError, ShapeForm, canonical, form_for
+from calcgen.profiles.catalogue import Catalogue, Profile
+from calcgen.quantities.display import Style, show
+from calcgen.quantities.measure import from_si, measure
+from calcgen.text import nearest
+
+
+def profile_named(text: ShapeText, scope: Scope, catalogue: Catalogue) -> Profile | None:
+    """Return the catalogued profile that `rolled(...)` names."""
+    if len(text.positional) != 1 or text.arguments or text.points:
+        scope.report.error(
+            "rolled-arguments",
+            text.span,
+            "'rolled' takes one designation",
+            hint='write rolled("IPE 240"), or the name of a text input',
+        )
+        return None
+    node = text.positional[0]
+    designation = Evaluator(scope).value(node)
+    if designation is None:
+        return None
+    if not isinstance(designation, str):
+        scope.report.error(
+            "rolled-arguments", node.span, "a designation is text", hint='put it in quotes: rolled("IPE 240")'
+        )
+        return None
+    found = catalogue.find(designation)
+    if found is None:
+        close = ", ".join(catalogue.nearest(designation)[:3])
+        where = node.span if isinstance(node, Text) else text.span
+        scope.report.error(
+            "unknown-profile",
+            where,
+            f"'{designation}' is in no catalogue",
+            hint=f"the nearest are {close}" if close else "designations read like IPE 240, W18x50, L6x4x1/2",
+        )
+    return found
+
+
+def rolled_shape(profile: Profile, text: ShapeText, scope: Scope) -> Shape | None:
+    """Build the outline of a catalogued profile from its nominal dimensions."""
+    given = frozenset(profile.dimensions)
+    form = form_for(profile.shape, given)
+    try:
+        return form.build(**{k: v for k, v in profile.dimensions.items() if k in form.names})
+    except (ShapeError, OutlineError) as fault:
+        scope.report.error(
+            "shape-does-not-fit",
+            text.span,
+            f"the dimensions of {profile.designation} make no section: {fault}",
+            hint=f"see {profile.file}, line {profile.line}",
+        )
+        return None
+
+
+def shape_of(text: ShapeText, scope: Scope) -> Shape | None:
+    """Build a shape of the language from its arguments."""
+    word = text.shape.name
+    if word not in SHAPES:
+        scope.report.error("not-available-yet", text.shape.span, f"the shape '{word}' is not available yet")
+        return None
+    if word == "polygon":
+        return _polygon(text, scope)
+    form = form_for(word, frozenset(a.name.name for a in text.arguments))
+    given = _arguments(text, form, scope)
+    if given is None:
+        return None
+    spans = {canonical(form, a.name.name): a.value.span for a in text.arguments}
+    try:
+        return form.build(**given)
+    except ShapeError as fault:
+        scope.report.error(
+            "shape-does-not-fit",
+            spans.get(fault.parameter, text.span),
+            f"'{fault.parameter}' of the {word} {fault.reason}",
+            label=_size(fault.parameter, fault.value, form, scope.style),
+        )
+    except OutlineError as fault:
+        scope.report.error("outline", text.span, f"the outline {fault.reason}")
+    return None
+
+
+def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, float] | None:
+    word = text.shape.name
+    complete = True
+    given: dict[str, float] = {}
+    kinds = {p.name: p.kind for p in form.parameters}
+    for node in text.positional:
+        complete = False
+        scope.report.error(
+            "argument-without-name",
+            node.span,
+            "arguments of a shape are always named",
+            hint=f"write {word}({', '.join(f'{p.name} = …' for p in form.parameters if not p.optional)})",
+        )
+    for argument in text.arguments:
+        name = canonical(form, argument.name.name)
+        if name not in kinds:
+            complete = False
+            found = nearest(argument.name.name, form.names)
+            scope.report.error(
+                "unknown-argument",
+                argument.name.span,
+                f"'{word}' has no '{argument.name.name}'",
+                hint=f"the nearest is '{found}'" if found else f"it takes {', '.join(kinds)}",
+            )
+            continue
+        if name in given:
+            complete = False
+            scope.report.error("argument-given-twice", argument.name.span, f"'{name}' is given twice")
+            continue
+        value = si(argument.value, "length" if kinds[name] == "length" else "number", scope)
+        if value is None:
+            complete = False
+            given[name] = math.nan
+        else:
+            given[name] = value
+    missing = [p.name for p in form.parameters if not p.optional and p.name not in given]
+    if missing:
+        complete = False
+        scope.report.error(
+            "argument-missing",
+            text.shape.span,
+            f"'{word}' needs {' and '.join(missing)}",
+            hint=f"{form.note}: {', '.join(f'{p.name} ({p.note})' for p in form.parameters)}",
+        )
+    return given if complete else None
+
+
+def _polygon(text: ShapeText, scope: Scope) -> Shape | None:
+    pairs = [(si(p.x, "length", scope), si(p.y, "length", scope)) for p in text.points]
+    corners = [(x, y) for x, y in pairs if x is not None and y is not None]
+    if len(corners) < len(pairs):
+        return None
+    try:
+        return SHAPES["polygon"][0].build(points=corners)
+    except OutlineError as fault:
+        places = [text.points[i].span for i in fault.vertices if i < len(text.points)]
+        scope.report.error(
+            "outline",
+            places[0] if places else text.span,
+            f"the outline {fault.reason}",
+            hint="corners follow one another around the section, in either sense",
+        )
+        return None
+
+
+def placed_shape(shape: Shape, text: ShapeText, scope: Scope) -> Shape | None:
+    """Mirror, turn and place a shape as written."""
+    turned = 0.0
+    x: float | None = 0.0
+    y: float | None = 0.0
+    angle = None
+    if text.turned is not None:
+        angle = quantity_of(text.turned, "number", scope)
+        if angle is None:
+            return None
+        turned = angle.si
+    if text.at is not None:
+        x, y = si(text.at.x, "length", scope), si(text.at.y, "length", scope)
+    if x is None or y is None:
+        return None
+    return shape.placed(x, y, mirrored=text.mirrored, turned=turned)
+
+
+def _size(parameter: str, value: float, form: ShapeForm, style: Style) -> str:
+    kind = next((p.kind for p in form.parameters if p.name == parameter), "number")
+    shown = show(from_si(value, "m").shown_in(None) if kind == "length" else measure(value, None), style)
+    return f"{parameter} = {shown.text}"

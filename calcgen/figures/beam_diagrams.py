@@ -1,0 +1,203 @@
+"""Diagrams along a beam: V, M and w, or their envelopes, with extremes labelled clear of everything."""
+
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass
+from math import ceil
+
+import numpy as np
+from numpy.typing import NDArray
+
+from calcgen.figures.labels import Obstacles, Point, spread, text_width
+from calcgen.figures.picture import DASH, LINE, SMALL, THIN, Anchor, Label, Sketch, Stroke, thin, wrap
+
+HEIGHT = 78.0  # pixels from the lowest to the highest value
+CURVE = Stroke("ink", 1.5)
+LOWER = Stroke("ink", 1.5, DASH)
+
+
+@dataclass(frozen=True)
+class Extreme:
+    """A value to label where it occurs, its label ready: '45.0 kN·m at 3.00 m'."""
+
+    x: float
+    value: float
+    label: str
+
+
+@dataclass(frozen=True)
+class Diagram:
+    """One quantity along the beam as points (x, value); x does not decrease, a jump repeats its x.
+
+    With `lower`, `curve` is the largest and `lower` the least value of an envelope. `down` puts positive
+    values below the line, as for a moment drawn on the tension side or a deflection.
+    """
+
+    title: str
+    curve: tuple[Point, ...]
+    lower: tuple[Point, ...] = ()
+    extremes: tuple[Extreme, ...] = ()
+    down: bool = False
+    note: str = ""
+
+
+@dataclass(frozen=True)
+class _Placed:
+    """A label with the point that it tells of, and where its leader ends if it needs one."""
+
+    label: Label
+    point: Point
+    foot: Point | None
+
+
+def draw_diagram(
+    sketch: Sketch, diagram: Diagram, top: float, across: Callable[[float], float], width: float
+) -> float:
+    """Draw the diagram below `top`, and give the height at which it ends."""
+    y = _draw_head(sketch, diagram, top, width)
+    values = [v for _, v in (*diagram.curve, *diagram.lower)]
+    span = max(*values, 0.0) - min(*values, 0.0)
+    factor = (HEIGHT / span if span else 0.0) * (1 if diagram.down else -1)
+    curve = _pixels(diagram.curve, across, factor)
+    lower = _pixels(diagram.lower, across, factor) if diagram.lower else None
+    ends = ((across(diagram.curve[0][0]), 0.0), (across(diagram.curve[-1][0]), 0.0))
+    lines = [curve] if lower is None else [curve, lower]
+    points = [(across(extreme.x), factor * extreme.value) for extreme in diagram.extremes]
+    labels = _placed(diagram, lines, ends, points, width)
+    heights = np.concatenate([line[:, 1] for line in lines])
+    boxes = [placed.label.box for placed in labels]
+    highest = min(float(heights.min()), 0.0, *(box.top for box in boxes))
+    lowest = max(float(heights.max()), 0.0, *(box.bottom for box in boxes))
+    zero = y + 8 - highest
+    _draw_curves(sketch, curve + [0, zero], None if lower is None else lower + [0, zero], ends, zero)
+    for placed in labels:
+        x, at = placed.point[0], placed.point[1] + zero
+        if placed.foot is not None:
+            sketch.line([(x, at), (placed.foot[0], placed.foot[1] + zero)], THIN)
+        sketch.dot((x, at), 2.2, "ink")
+        sketch.label(placed.label.moved(0, zero))
+    return zero + lowest
+
+
+def _draw_head(sketch: Sketch, diagram: Diagram, top: float, width: float) -> float:
+    """Write the title, the key of an envelope and the note; give the height below them."""
+    y = top + SMALL
+    title = sketch.label(Label(3, y, diagram.title, SMALL, "left", bold=True))
+    x = title.box.right + 14
+    if diagram.lower:
+        if x + 110 > width:
+            x, y = 3.0, y + LINE
+        for name, stroke in (("max", CURVE), ("min", LOWER)):
+            sketch.line([(x, y - 3.5), (x + 22, y - 3.5)], stroke)
+            x = sketch.label(Label(x + 26, y, name, SMALL, "left")).box.right + 12
+    if diagram.note:
+        note = Label(x, y, diagram.note, SMALL, "left", colour="muted")
+        if note.box.right <= width - 3:
+            sketch.label(note)
+        else:
+            for line in wrap(diagram.note, SMALL, width - 6):
+                y += LINE
+                sketch.label(Label(3, y, line, SMALL, "left", colour="muted"))
+    return y
+
+
+def _pixels(
+    points: tuple[Point, ...], across: Callable[[float], float], factor: float
+) -> NDArray[np.float64]:
+    return thin([(across(x), factor * value) for x, value in points])
+
+
+def _draw_curves(
+    sketch: Sketch,
+    curve: NDArray[np.float64],
+    lower: NDArray[np.float64] | None,
+    ends: tuple[Point, Point],
+    zero: float,
+) -> None:
+    base = [(ends[0][0], zero), (ends[1][0], zero)]
+    other = np.array(base) if lower is None else lower
+    sketch.fill([np.vstack([curve, other[::-1]])], "section", opacity=0.9)
+    sketch.line(base, Stroke("ink", 0.9))
+    if lower is None:
+        sketch.line([base[0], *curve, base[1]], CURVE)
+    else:
+        sketch.line(lower, LOWER)
+        sketch.line(curve, CURVE)
+
+
+def _placed(
+    diagram: Diagram,
+    lines: Sequence[NDArray[np.float64]],
+    ends: tuple[Point, Point],
+    points: Sequence[Point],
+    width: float,
+) -> list[_Placed]:
+    """Place the labels about the zero line: beside their points, or in lanes where that is too dense."""
+    if sum(text_width(extreme.label, SMALL) + 4 for extreme in diagram.extremes) > 3 * width:
+        return _in_lanes(diagram, lines, points, width)
+    obstacles = Obstacles(3.0, width - 3.0)
+    obstacles.add_line(ends)
+    for line in lines:
+        obstacles.add_line([ends[0], *line, ends[1]])
+    placed = []
+    for extreme, point in zip(diagram.extremes, points, strict=True):
+        found = _beside(extreme.label, point, obstacles)
+        if found is None:
+            return _in_lanes(diagram, lines, points, width)
+        obstacles.boxes.append(found.label.box)
+        if found.foot is not None:
+            obstacles.add_line([point, found.foot])
+        placed.append(found)
+    return placed
+
+
+def _beside(text: str, point: Point, obstacles: Obstacles) -> _Placed | None:
+    """Give the nearest clear place for a label, outward from the zero line before inward."""
+    x, y = point
+    out = 1.0 if y > 0 else -1.0
+    half = Label(0, 0, text, SMALL).box.right + 1
+    places = [
+        (gap + 0.12 * abs(shift) + (0.0 if way == out else 10.0), gap, shift, way)
+        for gap in np.arange(4.0, 64.0, 4.0)
+        for shift in (0.0, -half - 4, half + 4, -half / 2, half / 2, -1.6 * half, 1.6 * half)
+        for way in (out, -out)
+    ]
+    for _, gap, shift, way in sorted(places, key=lambda place: place[0]):
+        baseline = y + way * gap + (0.77 * SMALL if way > 0 else -0.24 * SMALL)
+        label = Label(x + shift, baseline, text, SMALL, halo=True).within(obstacles.left, obstacles.right)
+        if not obstacles.clear(label.box):
+            continue
+        near = min(max(x, label.box.left), label.box.right)
+        foot = (near, label.box.top - 1 if way > 0 else label.box.bottom + 1)
+        if gap <= 8 and near == x:
+            return _Placed(label, point, None)
+        if not any(box.crosses(np.array([point]), np.array([foot])) for box in obstacles.boxes):
+            return _Placed(label, point, foot)
+    return None
+
+
+def _in_lanes(
+    diagram: Diagram, lines: Sequence[NDArray[np.float64]], points: Sequence[Point], width: float
+) -> list[_Placed]:
+    """Stand the labels upright side by side, in a lane above the curves and in one below them.
+
+    Labels that a lane has no room for go into a further lane beyond it.
+    """
+    heights = np.concatenate([line[:, 1] for line in lines])
+    placed = []
+    capacity = int((width - 6) / (SMALL + 3))
+    for way, start in ((-1.0, min(float(heights.min()), 0.0)), (1.0, max(float(heights.max()), 0.0))):
+        chosen = sorted(
+            (point, extreme.label)
+            for extreme, point in zip(diagram.extremes, points, strict=True)
+            if (point[1] > 0) == (way > 0)
+        )
+        level = start + way * 16
+        lanes = max(ceil(len(chosen) / capacity), 1)
+        for lane in (chosen[n::lanes] for n in range(lanes)):
+            places = spread([x for (x, _), _ in lane], [SMALL + 3] * len(lane), 3, width - 3) or []
+            for (point, text), x in zip(lane, places, strict=True):
+                anchor: Anchor = "left" if way < 0 else "right"
+                label = Label(x + 0.36 * SMALL, level, text, SMALL, anchor, turned=True, halo=True)
+                placed.append(_Placed(label, point, (x, level - way * 3)))
+            level += way * (max((text_width(text, SMALL) for _, text in lane), default=0.0) + 12)
+    return placed

@@ -1,0 +1,143 @@
+"""Evaluated calcs -> the state that the trail compares: an item for each input, formula, check and block."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Mapping, Sequence
+
+from calcgen.evaluation.results import (
+    AssumptionsResult,
+    BeamResult,
+    CheckResult,
+    CheckRow,
+    DerivedRow,
+    EvaluatedCalc,
+    InputRow,
+    InputsResult,
+    Plain,
+    Result,
+    SectionResult,
+    StressResult,
+    WorkingResult,
+)
+from calcgen.quantities.display import Style, rounded
+from calcgen.quantities.measure import Measure, magnitude_in
+from calcgen.text import Span
+from calcgen.trail.canonical import Json
+from calcgen.trail.changes import Item, State
+
+
+def state_of(
+    calcs: Sequence[EvaluatedCalc], references: Mapping[str, str], before: State, style: Style
+) -> State:
+    """Return the state of a project.
+
+    A calc that is in error or not evaluated keeps the items it had `before`: what cannot be evaluated now has
+    not been taken back. `references` gives each key's title and edition in one text.
+    """
+    state: dict[str, Item] = {
+        f"references#{key}": {"kind": "reference", "text": text} for key, text in references.items()
+    }
+    for calc in calcs:
+        if calc.standing in ("in error", "not evaluated"):
+            state |= {a: i for a, i in before.items() if a.partition("#")[0] == calc.number}
+        else:
+            state |= {f"{calc.number}#{address}": item for address, item in _items(calc, style)}
+    return state
+
+
+def _items(calc: EvaluatedCalc, style: Style) -> Iterable[tuple[str, Item]]:
+    source = calc.calc.source
+
+    def text(span: Span) -> str:
+        return " ".join(source.slice(span).split())
+
+    for segment in calc.segments:
+        match segment:
+            case InputsResult(rows=inputs):
+                for row in inputs:
+                    if isinstance(row, InputRow):
+                        yield row.name, _valued("input", text(row.node.statement_span), row.value, row, style)
+            case WorkingResult(rows=rows):
+                for line in rows:
+                    if isinstance(line, DerivedRow):
+                        yield (
+                            line.name,
+                            _valued("formula", text(line.node.statement_span), line.value, line, style),
+                        )
+                    elif isinstance(line, CheckRow):
+                        yield line.result.address, _check(line.result, line.node.statement)
+            case AssumptionsResult(block=block):
+                for a in block.items:
+                    item = {
+                        "kind": "assumption",
+                        "text": a.text.text,
+                        "reference": a.basis.text,
+                        "open": a.open,
+                    }
+                    yield a.number, item
+            case SectionResult() | BeamResult() | StressResult():
+                yield from _block(segment, _block_text(calc, segment.span), style)
+            case _:
+                pass
+
+
+def _block(
+    segment: SectionResult | BeamResult | StressResult, text: str, style: Style
+) -> Iterable[tuple[str, Item]]:
+    results: dict[str, Json] = {}
+    match segment:
+        case SectionResult():
+            kind = "section"
+            results = _results(segment.results, style)
+        case BeamResult():
+            kind = "beam"
+            for group in segment.groups:
+                prefix = f"{group.name}." if group.name else ""
+                results |= {prefix + k: v for k, v in _results(group.results, style).items()}
+        case StressResult():
+            kind = "stress"
+            results = _results(segment.results, style)
+            if segment.check is not None:
+                yield segment.check.address, _check(segment.check, f"{segment.name}: limit")
+    yield segment.name, {"kind": kind, "text": text, "results": results}
+
+
+def _valued(kind: str, text: str, value: Plain, row: InputRow | DerivedRow, style: Style) -> Item:
+    number, unit = plain_value(value, style)
+    return {
+        "kind": kind,
+        "text": text,
+        "value": number,
+        "unit": unit,
+        "note": row.node.annotations.note.text,
+        "reference": row.node.annotations.reference.text,
+    }
+
+
+def _check(result: CheckResult, statement: str) -> Item:
+    return {
+        "kind": "check",
+        "text": statement,
+        "label": result.label,
+        "utilisation": result.utilisation,
+        "satisfied": result.satisfied,
+        "reference": result.reference.text,
+    }
+
+
+def _results(results: Iterable[Result], style: Style) -> dict[str, Json]:
+    return {r.name: list(plain_value(r.value, style)) for r in results}
+
+
+def plain_value(value: Plain, style: Style) -> tuple[float | str | bool, str]:
+    """Return a value as number and unit, rounded to 12 significant digits in the unit it is shown in."""
+    if isinstance(value, Measure):
+        unit = style.unit_of(value)
+        return rounded(magnitude_in(value, unit)), unit
+    return value, ""
+
+
+def _block_text(calc: EvaluatedCalc, head: Span) -> str:
+    """Return the lines of a block as typed, from its info string to its closing fence."""
+    block = next(s.span for s in calc.calc.segments if s.span.start <= head.start < s.span.end)
+    return "\n".join(line.rstrip() for line in calc.calc.source.slice(block).strip().splitlines())
