@@ -267,12 +267,13 @@ class GroupResult:
 
 @dataclass(frozen=True)
 class LoadRow:
-    """One load as shown: '5.0 kN/m from 6 m to 14 m'; `values` in SI, `start` and `end` in m."""
+    """One load as shown: '5.0 kN/m from 6 m to 14 m'; `label` its size alone; `values` in SI, places in m."""
 
     case: str
     kind: str
     plane: Literal["vertical", "lateral"]
     text: str
+    label: str
     values: tuple[float, ...]
     start: float
     end: float
@@ -283,11 +284,17 @@ class LoadRow:
 
 @dataclass(frozen=True)
 class BeamResult:
-    """A beam with its model, loads, and results by group; numbers in SI."""
+    """A beam with its model, loads, and results by group; numbers in SI.
+
+    `spans` are the stretches of the `span` line, from and to; `support_kinds` has the word of each support of
+    the model; `lines` each line as typed, with its columns.
+    """
 
     name: str
     section: str
     model: BeamModel
+    spans: tuple[tuple[float, float], ...]
+    support_kinds: tuple[str, ...]
     case_kinds: Mapping[str, str]
     loads: tuple[LoadRow, ...]
     groups: tuple[GroupResult, ...]

@@ -2,12 +2,11 @@
 
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
-from math import ceil
 
 import numpy as np
 from numpy.typing import NDArray
 
-from calcgen.figures.labels import Obstacles, Point, spread, text_width
+from calcgen.figures.labels import Obstacles, Point, spread, text_width, two_lanes
 from calcgen.figures.picture import DASH, LINE, SMALL, THIN, Anchor, Label, Sketch, Stroke, thin, wrap
 
 HEIGHT = 78.0  # pixels from the lowest to the highest value
@@ -42,11 +41,10 @@ class Diagram:
 
 @dataclass(frozen=True)
 class _Placed:
-    """A label with the point that it tells of, and where its leader ends if it needs one."""
+    """A label with its leader, which begins at the point that the label tells of."""
 
     label: Label
-    point: Point
-    foot: Point | None
+    leader: tuple[Point, ...]
 
 
 def draw_diagram(
@@ -70,10 +68,10 @@ def draw_diagram(
     zero = y + 8 - highest
     _draw_curves(sketch, curve + [0, zero], None if lower is None else lower + [0, zero], ends, zero)
     for placed in labels:
-        x, at = placed.point[0], placed.point[1] + zero
-        if placed.foot is not None:
-            sketch.line([(x, at), (placed.foot[0], placed.foot[1] + zero)], THIN)
-        sketch.dot((x, at), 2.2, "ink")
+        leader = [(x, at + zero) for x, at in placed.leader]
+        if len(leader) > 1:
+            sketch.line(leader, THIN)
+        sketch.dot(leader[0], 2.2, "ink")
         sketch.label(placed.label.moved(0, zero))
     return zero + lowest
 
@@ -81,7 +79,7 @@ def draw_diagram(
 def _draw_head(sketch: Sketch, diagram: Diagram, top: float, width: float) -> float:
     """Write the title, the key of an envelope and the note; give the height below them."""
     y = top + SMALL
-    title = sketch.label(Label(3, y, diagram.title, SMALL, "left", bold=True))
+    title = sketch.label(Label(3, y, diagram.title, SMALL, "left", bold=True, halo=True))
     x = title.box.right + 14
     if diagram.lower:
         if x + 110 > width:
@@ -90,13 +88,13 @@ def _draw_head(sketch: Sketch, diagram: Diagram, top: float, width: float) -> fl
             sketch.line([(x, y - 3.5), (x + 22, y - 3.5)], stroke)
             x = sketch.label(Label(x + 26, y, name, SMALL, "left")).box.right + 12
     if diagram.note:
-        note = Label(x, y, diagram.note, SMALL, "left", colour="muted")
+        note = Label(x, y, diagram.note, SMALL, "left", colour="muted", halo=True)
         if note.box.right <= width - 3:
             sketch.label(note)
         else:
             for line in wrap(diagram.note, SMALL, width - 6):
                 y += LINE
-                sketch.label(Label(3, y, line, SMALL, "left", colour="muted"))
+                sketch.label(Label(3, y, line, SMALL, "left", colour="muted", halo=True))
     return y
 
 
@@ -144,8 +142,8 @@ def _placed(
         if found is None:
             return _in_lanes(diagram, lines, points, width)
         obstacles.boxes.append(found.label.box)
-        if found.foot is not None:
-            obstacles.add_line([point, found.foot])
+        if len(found.leader) > 1:
+            obstacles.add_line(found.leader)
         placed.append(found)
     return placed
 
@@ -169,9 +167,9 @@ def _beside(text: str, point: Point, obstacles: Obstacles) -> _Placed | None:
         near = min(max(x, label.box.left), label.box.right)
         foot = (near, label.box.top - 1 if way > 0 else label.box.bottom + 1)
         if gap <= 8 and near == x:
-            return _Placed(label, point, None)
+            return _Placed(label, (point,))
         if not any(box.crosses(np.array([point]), np.array([foot])) for box in obstacles.boxes):
-            return _Placed(label, point, foot)
+            return _Placed(label, (point, foot))
     return None
 
 
@@ -180,24 +178,26 @@ def _in_lanes(
 ) -> list[_Placed]:
     """Stand the labels upright side by side, in a lane above the curves and in one below them.
 
-    Labels that a lane has no room for go into a further lane beyond it.
+    Where one lane has no room for its labels, every other one goes beyond; what still has none is left out.
     """
     heights = np.concatenate([line[:, 1] for line in lines])
     placed = []
-    capacity = int((width - 6) / (SMALL + 3))
     for way, start in ((-1.0, min(float(heights.min()), 0.0)), (1.0, max(float(heights.max()), 0.0))):
         chosen = sorted(
             (point, extreme.label)
             for extreme, point in zip(diagram.extremes, points, strict=True)
             if (point[1] > 0) == (way > 0)
         )
-        level = start + way * 16
-        lanes = max(ceil(len(chosen) / capacity), 1)
-        for lane in (chosen[n::lanes] for n in range(lanes)):
-            places = spread([x for (x, _), _ in lane], [SMALL + 3] * len(lane), 3, width - 3) or []
-            for (point, text), x in zip(lane, places, strict=True):
-                anchor: Anchor = "left" if way < 0 else "right"
-                label = Label(x + 0.36 * SMALL, level, text, SMALL, anchor, turned=True, halo=True)
-                placed.append(_Placed(label, point, (x, level - way * 3)))
-            level += way * (max((text_width(text, SMALL) for _, text in lane), default=0.0) + 12)
+        wanted = [x for (x, _), _ in chosen]
+        places = spread(wanted, [SMALL + 3] * len(wanted), 3, width - 3)
+        beyond = 0.0
+        if places is None:
+            places = two_lanes(wanted, SMALL + 3, 3, width - 3) or []
+            beyond = max(text_width(text, SMALL) for _, text in chosen) + 8
+        anchor: Anchor = "left" if way < 0 else "right"
+        for number, ((point, text), x) in enumerate(zip(chosen, places, strict=False)):
+            level = start + way * (16 + beyond * (number % 2))
+            label = Label(x + 0.36 * SMALL, level, text, SMALL, anchor, turned=True, halo=True)
+            knee = (x, start + way * 13)
+            placed.append(_Placed(label, (point, knee, (x, level - way * 3))))
     return placed

@@ -6,8 +6,8 @@ from math import ceil
 
 import numpy as np
 
-from calcgen.figures.labels import Box, Obstacles, Point, spread
-from calcgen.figures.picture import LINE, SMALL, THIN, Label, Sketch, Stroke
+from calcgen.figures.labels import Obstacles, Point, spread, two_lanes
+from calcgen.figures.picture import LINE, SMALL, THIN, Anchor, Label, Sketch, Stroke
 
 TALL, LOW = 24.0, 9.0  # of the arrows of the largest and of the smallest load
 POINT_ARROW = 32.0
@@ -201,11 +201,12 @@ def _draw_single(
 
 @dataclass(frozen=True)
 class _Lane:
-    """Labels in one lane above the arrows: level where they fit side by side, else upright, else counted."""
+    """Labels above the arrows: level where they fit side by side, else upright, in two lanes, or counted."""
 
     labels: tuple[tuple[str, float, float], ...]  # text, place of the load, place of the label
     upright: bool
     height: float
+    second: float = 0.0  # how far the second lane stands above the first
     note: str = ""
 
     @staticmethod
@@ -219,18 +220,25 @@ class _Lane:
         near = placed and all(abs(p - w) <= 40 for p, w in zip(placed, wanted, strict=True))
         if placed and near:
             return _Lane(tuple(zip(texts, wanted, placed, strict=True)), upright=False, height=LINE + 6)
+        longest = max(box.right for box in boxes)
         placed = spread(wanted, [SMALL + 3] * len(texts), 3, width - 3)
         if placed:
-            longest = max(box.right for box in boxes)
             return _Lane(tuple(zip(texts, wanted, placed, strict=True)), upright=True, height=longest + 12)
+        placed = two_lanes(wanted, SMALL + 3, 3, width - 3)
+        if placed:
+            rows = tuple(zip(texts, wanted, placed, strict=True))
+            return _Lane(rows, upright=True, height=2 * longest + 20, second=longest + 8)
         return _Lane((), upright=False, height=LINE, note=f"{len(texts)} loads, too close to label")
 
     def draw(self, sketch: Sketch, foot: float) -> None:
-        for text, load, place in self.labels:
+        """Draw the labels above `foot`, each with a leader to its load where it stands aside."""
+        for number, (text, load, place) in enumerate(self.labels):
+            lift = 8.0 + (self.second if number % 2 else 0.0)
             if self.upright or abs(load - place) > 1:
-                sketch.line([(load, foot - 1), (place, foot - 6)], THIN)
-            x, y = (place + 0.36 * SMALL, foot - 8) if self.upright else (place, foot - 8)
-            anchor = "left" if self.upright else "center"
-            sketch.label(Label(x, y, text, SMALL, anchor, turned=self.upright))  # type: ignore[arg-type]
+                rise = [(place, foot - lift + 2)] if lift > 8 else []
+                sketch.line([(load, foot - 1), (place, foot - 6), *rise], THIN)
+            x = place + 0.36 * SMALL if self.upright else place
+            anchor: Anchor = "left" if self.upright else "center"
+            sketch.label(Label(x, foot - lift, text, SMALL, anchor, turned=self.upright))
         if self.note:
             sketch.label(Label(3, foot - 5, self.note, SMALL, "left"))

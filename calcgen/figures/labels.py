@@ -141,3 +141,9 @@ def spread(wanted: Sequence[float], widths: Sequence[float], low: float, high: f
         placed.append(min(max(mean, low), high - sum(widths)) + before + width / 2)
         before += width
     return placed
+
+
+def two_lanes(wanted: Sequence[float], breadth: float, low: float, high: float) -> list[float] | None:
+    """Centres for upright labels, the odd ones in a lane beyond, whose leaders pass between the even ones."""
+    widths = [breadth if n % 2 == 0 else max(4.0, breadth / 3) for n in range(len(wanted))]
+    return spread(wanted, widths, low, high)

@@ -5,7 +5,8 @@ from dataclasses import dataclass
 import numpy as np
 
 from calcgen.figures.dimensions import Dimension, draw_dimensions
-from calcgen.figures.labels import Box, Obstacles, Point
+from calcgen.figures.labels import Box, Point
+from calcgen.figures.notes import draw_note, obstacles_of
 from calcgen.figures.outline import (
     EUROCODE,
     AxisNames,
@@ -22,7 +23,6 @@ from calcgen.figures.picture import (
     DASH,
     LINE,
     SMALL,
-    THIN,
     WIDTHS,
     Label,
     Picture,
@@ -96,45 +96,14 @@ def _draw_notes(sketch: Sketch, scale: Scale, box: Box, drawing: SectionDrawing)
     if drawing.plastic_axis is not None:
         y = scale.at(0.0, drawing.plastic_axis)[1]
         sketch.line([(box.left - 8, y), (box.right + 8, y)], Stroke("ink", 0.9, DASH))
-    held = sketch.box()
-    obstacles = Obstacles(held.left - 160, held.right + 160)
-    for item in sketch.items:
-        if isinstance(item, Label) or item.fill == "ink":
-            obstacles.boxes.append(item.box)
-        elif not item.clip:
-            for ring in item.rings:
-                obstacles.add_line([*ring, ring[0]] if item.closed else ring)
+    obstacles = obstacles_of(sketch)
     notes = [(leader.label, scale.at(*leader.point)) for leader in drawing.leaders]
     if drawing.shear_centre is not None:
         notes.append(("shear centre", scale.at(*drawing.shear_centre)))
     if drawing.plastic_axis is not None:
         notes.append(("plastic neutral axis", (box.right + 8, scale.at(0.0, drawing.plastic_axis)[1])))
     for text, point in notes:
-        label, elbow = _note(text, point, box, obstacles)
-        obstacles.boxes.append(sketch.label(label).box)
-        sketch.line([point, elbow], THIN)
-        obstacles.add_line([point, elbow])
-
-
-def _note(text: str, point: Point, box: Box, obstacles: Obstacles) -> tuple[Label, Point]:
-    """Give a label near `point`, clear of the rest, and the end of its leader."""
-    x, y = point
-    right = x >= (box.left + box.right) / 2
-    for reach in np.arange(14.0, 400.0, 6.0):
-        for across, up in ((0.9, 0.45), (0.9, -0.45), (1.0, 0.0), (0.5, 0.9), (0.5, -0.9)):
-            for sign in (1, -1) if right else (-1, 1):
-                elbow = (x + sign * reach * across, y - reach * up)
-                label = Label(
-                    elbow[0] + 3 * sign,
-                    elbow[1] + 0.36 * SMALL,
-                    text,
-                    SMALL,
-                    "left" if sign > 0 else "right",
-                    halo=True,
-                )
-                if obstacles.clear(label.box, 3.0):
-                    return label, elbow
-    raise AssertionError(f"no room for {text!r}")  # the reach is wider than any figure
+        draw_note(sketch, Label(0, 0, text, SMALL, halo=True), point, box, obstacles)
 
 
 def _draw_frame_text(sketch: Sketch, box: Box, drawing: SectionDrawing) -> None:

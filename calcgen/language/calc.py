@@ -3,17 +3,10 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
-from typing import TypeAlias
 
 from markdown_it.token import Token
 
-from calcgen.language.blocks.assumptions import AssumptionsBlock
-from calcgen.language.blocks.beam import BeamBlock
-from calcgen.language.blocks.inputs import InputsBlock
-from calcgen.language.blocks.section import SectionBlock
-from calcgen.language.blocks.sheet import SheetBlock
-from calcgen.language.blocks.stress import StressBlock
-from calcgen.language.blocks.working import WorkingBlock
+from calcgen.language.blocks import Block as Block
 from calcgen.language.nodes import Place as Place
 from calcgen.text import Diagnostic, SourceFile, Span
 
@@ -31,11 +24,6 @@ class Prose:
     places: tuple[Place, ...]
     images: tuple[tuple[str, Span], ...]
     span: Span
-
-
-Block: TypeAlias = (
-    SheetBlock | AssumptionsBlock | InputsBlock | WorkingBlock | SectionBlock | BeamBlock | StressBlock
-)
 
 
 @dataclass(frozen=True)

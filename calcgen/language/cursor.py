@@ -140,6 +140,8 @@ class Cursor:
     def unexpected(self) -> ReadingError:
         """Return the fault of the next token after a whole expression."""
         token, before = self.token, self.previous
+        if token.text in self.stops:
+            return ReadingError("unexpected", self.span(token), f"'{token.text}' is not expected here")
         if before is not None and (token.kind in ("number", "text", "name") or token.text == "("):
             return self._no_operator(before, token)
         span = self.span(token)

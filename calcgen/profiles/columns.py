@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import re
 import unicodedata
-from collections.abc import Mapping
+from collections.abc import Collection, Mapping
 from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
@@ -12,6 +12,7 @@ from calcgen.profiles.profile import Axes
 
 # A kind is a power of length, mass along a length, or a plain number.
 Kind: TypeAlias = Literal[1, 2, 3, 4, 6, "mass", "number"]
+Part: TypeAlias = Literal["dimensions", "stated", "published"]
 
 KINDS: Mapping[Kind, str] = {
     1: "a length",
@@ -23,20 +24,25 @@ KINDS: Mapping[Kind, str] = {
     "number": "a plain number",
 }
 
-# Sizes of each shape of the language: those it needs, and those it can do without.
-SIZES: Mapping[str, tuple[tuple[str, ...], tuple[str, ...]]] = {
-    "i_shape": (("h", "b", "t_w", "t_f"), ("r", "slope", "r_toe")),
-    "channel": (("h", "b", "t_w", "t_f"), ("r", "slope", "r_toe")),
-    "tee": (("h", "b", "t_w", "t_f"), ("r",)),
-    "angle": (("h", "b", "t"), ("r_1", "r_2")),
-    "zed": (("h", "b", "t"), ()),
-    "box": (("h", "b", "t"), ("r_o", "r_i")),
-    "rectangle": (("h", "b"), ()),
-    "circle": (("d",), ()),
-    "tube": (("d", "t"), ()),
+# Sizes of each shape of the language, for each way to write it: those it needs, those it can do without.
+Sizes: TypeAlias = tuple[tuple[str, ...], tuple[str, ...]]
+SIZES: Mapping[str, tuple[Sizes, ...]] = {
+    "i_shape": (
+        (("h", "b", "t_w", "t_f"), ("r", "slope", "r_toe")),
+        (("h", "b_t", "t_t", "b_b", "t_b", "t_w"), ("r",)),
+    ),
+    "channel": ((("h", "b", "t_w", "t_f"), ("r", "slope", "r_toe")),),
+    "tee": ((("h", "b", "t_w", "t_f"), ("r",)),),
+    "angle": ((("h", "b", "t"), ("r_1", "r_2")),),
+    "zed": ((("h", "b", "t"), ()),),
+    "box": ((("h", "b", "t"), ("r_o", "r_i")),),
+    "rectangle": ((("h", "b"), ()),),
+    "circle": ((("d",), ()),),
+    "tube": ((("d", "t"), ()),),
 }
 SYNONYMS: Mapping[str, str] = {"d": "h", "b_f": "b"}
 STATED = frozenset({"k_des", "t_nom"})
+ZERO_ALLOWED = frozenset({"r", "r_toe", "r_1", "r_2", "r_o", "r_i", "slope"})
 
 COMMON: Mapping[str, tuple[str, Kind]] = {
     "A": ("A", 2),
@@ -74,8 +80,7 @@ PUBLISHED: Mapping[Axes, Mapping[str, tuple[str, Kind]]] = {
         "Z_y": ("W_pl_v", 3),
         "r_x": ("i_h", 1),
         "r_y": ("i_v", 1),
-        "r_1": ("i_1", 1),
-        "r_2": ("i_2", 1),
+        "r_z": ("i_2", 1),  # the least radius of single angles; r_1 and r_2 are their fillets
         "J": ("I_t", 4),
         "C_w": ("I_w", 6),
     },
@@ -104,15 +109,25 @@ _SCALED = re.compile(r"(?:10\^?(\d) )?(\S+)")
 class Column:
     """What the cells of a column become: `name` in `part` of a profile, times `factor`."""
 
-    part: Literal["dimensions", "stated", "published"]
+    part: Part
     name: str
     factor: float
 
 
-def column_name(written: str, shape: str, axes: Axes) -> tuple[Literal["dimensions", "stated", "published"], str, Kind] | None:
+def sizes_of(shape: str) -> frozenset[str]:
+    """All sizes that a shape may have."""
+    return frozenset(size for needed, optional in SIZES[shape] for size in needed + optional)
+
+
+def sizes_missing(shape: str, given: Collection[str]) -> tuple[str, ...]:
+    """Sizes that the shape needs beside those given, for the way to write it that they fit best."""
+    missing = [tuple(size for size in needed if size not in given) for needed, _ in SIZES[shape]]
+    return min(missing, key=len)
+
+
+def column_meaning(written: str, shape: str, axes: Axes) -> tuple[Part, str, Kind] | None:
     """Tell what a column of this name holds in a catalogue of `shape`; None when nothing is known by it."""
-    needed, optional = SIZES[shape]
-    sizes = needed + optional
+    sizes = sizes_of(shape)
     size = written if written in sizes else SYNONYMS.get(written, written)
     if size in sizes:
         return "dimensions", size, "number" if size == "slope" else 1

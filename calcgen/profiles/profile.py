@@ -28,8 +28,8 @@ class Profile:
     stated : further sizes that the table prints, m: `k_des`, the nominal wall `t_nom`.
     published : printed properties; one that the table or the row lacks is not there. h is about the
         horizontal axis and v about the vertical one, as the profile normally stands: A, m²; I_h I_v I_1 I_2
-        I_t, m⁴; W_el_h W_el_v W_pl_h W_pl_v, m³; I_w, m⁶; i_h i_v i_1 i_2, m; the centroid x_bar from the back
-        of the web or the heel and y_bar from the bottom, m; mass, kg/m.
+        I_t, m⁴; W_el_h W_el_v W_pl_h W_pl_v, m³; I_w, m⁶; i_h i_v i_1 i_2, m; the centroid x_bar from the
+        back of the web or the heel and y_bar from the bottom, m; mass, kg/m.
     source : where the row's figures come from.
     file, line : where it stands; lines count from 1.
     """

@@ -29,7 +29,6 @@ from calcgen.mechanics.beam import (
 
 EI = 2e6
 SKEW = BendingStiffness(2e6, 1e6, 3e5)
-VERTICAL_ALONE = ("vertical",)
 
 
 @pytest.mark.parametrize(
@@ -139,6 +138,7 @@ def test_a_load_the_beam_cannot_carry(model: BeamModel, load: Load, message: str
             "follow",
         ),
         ({"stretches": ()}, "follow"),
+        ({"stretches": (Stretch(0.0, 4.0, SKEW), Stretch(4.0, 10.0, BendingStiffness(EI)))}, "coupling"),
     ],
 )
 def test_a_model_that_is_none(change: dict[str, Any], message: str) -> None:

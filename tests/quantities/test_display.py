@@ -91,8 +91,8 @@ def test_every_kind_has_a_default_unit_of_its_dimension(kind: str) -> None:
 
 
 def test_a_dimension_without_a_word_is_shown_in_base_units() -> None:
-    area_squared = Measure(from_si(2.0, "kN·m").quantity ** 2)
-    assert show(area_squared, Style()) == Shown("4.000 × 10⁶", "m⁴·kg²·s⁻⁴")
+    moment_squared = Measure(from_si(2e3, "N·m").quantity ** 2)
+    assert show(moment_squared, Style()) == Shown("4.000 × 10⁶", "m⁴·kg²·s⁻⁴")
 
 
 @pytest.mark.parametrize(

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 import re
 from collections.abc import Mapping
 from dataclasses import dataclass
@@ -51,7 +52,7 @@ class BeamThing:
         stretch: tuple[float, float] | None = None
         if parts and SPAN.match(parts[0]):
             number = int(parts[0].removeprefix("span_"))
-            all_spans = self.result.model.spans
+            all_spans = self.result.spans
             if not 1 <= number <= len(all_spans):
                 report.error(
                     "no-such-result",
@@ -289,6 +290,8 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         name=name,
         section=", ".join(dict.fromkeys(s.result.name for s in data.sections)),
         model=data.model,
+        spans=_ends(data.spans),
+        support_kinds=data.support_kinds,
         case_kinds={case: data.case_kinds.get(case, "") for case in data.cases},
         loads=data.rows,
         groups=groups,
@@ -300,6 +303,10 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         line=scope.report.source.line_number(block.head_span),
         span=block.head_span,
     )
+
+
+def _ends(lengths: tuple[float, ...]) -> tuple[tuple[float, float], ...]:
+    return tuple((math.fsum(lengths[:i]), math.fsum(lengths[: i + 1])) for i in range(len(lengths)))
 
 
 def _lines(block: BeamBlock, scope: Scope) -> tuple[tuple[str, Column, Column, int], ...]:

@@ -21,6 +21,7 @@ from calcgen.mechanics.beam import (
     PointMoment,
 )
 from calcgen.quantities.display import show
+from calcgen.quantities.measure import from_si
 
 
 def loads_of(lines: Lines, properties: list[Property]) -> tuple[dict[str, list[Load]], list[LoadRow]]:
@@ -59,6 +60,13 @@ def _load(lines: Lines, line: LoadLine, properties: list[Property]) -> tuple[lis
     if not lines.failed:
         loads = _of_kind(lines, line, plane, values, start, end, properties)
     shown = " to ".join(show(m, lines.scope.style).text for m in measures if m is not None)
+    label = shown
+    if line.kind == "self_weight":
+        values = tuple(load.value_start for load in loads if isinstance(load, DistributedLoad))
+        weights = dict.fromkeys(
+            show(from_si(v, "N/m").shown_in(None), lines.scope.style).text for v in values
+        )
+        shown, label = f"{shown} ({', '.join(weights)})", f"{', '.join(weights)} self-weight"
     whole = distributed and line.start is None
     unit = lines.unit_of(line.at or line.start)
     where = (
@@ -73,6 +81,7 @@ def _load(lines: Lines, line: LoadLine, properties: list[Property]) -> tuple[lis
         line.kind,
         plane,
         f"{shown} {where}",
+        label,
         values,
         start,
         end,

@@ -42,6 +42,7 @@ class BeamData:
     combinations: tuple[Combination, ...]
     sections: tuple[SectionThing, ...]
     E: Measure | None
+    support_kinds: tuple[str, ...]
     restrained: BeamSetting | None
     is_restrained: bool
     spans: tuple[float, ...]
@@ -58,11 +59,11 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
     is_restrained = _truth(lines, settings.get("restrained"))
     E = modulus_of(lines, settings.get("E"))
     properties = properties_of(lines, E)
-    supports, settling = supports_of(lines, spans)
-    hinges = hinges_of(lines, supports)
+    supports = supports_of(lines, spans)
+    hinges = hinges_of(lines, supports.all)
     kinds = case_kinds(lines)
     cases, rows = loads_of(lines, properties)
-    for case, load in settling:
+    for case, load in supports.settling:
         cases.setdefault(case, []).append(load)
     combinations = combinations_of(lines, kinds, cases)
     if lines.failed:
@@ -71,7 +72,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         Stretch(p.start, p.end, stiffness_of(p, E, restrained=is_restrained)) for p in properties
     )
     try:
-        model = BeamModel(lines.length, stretches, supports, hinges)
+        model = BeamModel(lines.length, stretches, supports.all, hinges)
     except ValueError as fault:
         lines.fault("beam", lines.block.head_span, str(fault))
         return None
@@ -83,6 +84,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         combinations=combinations,
         sections=tuple(p.section for p in properties if p.section is not None),
         E=E,
+        support_kinds=supports.kinds,
         restrained=settings.get("restrained"),
         is_restrained=is_restrained,
         spans=spans,

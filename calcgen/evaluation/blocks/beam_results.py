@@ -8,7 +8,7 @@ from typing import Literal
 from calcgen.evaluation.blocks.beam_lines import length_text
 from calcgen.evaluation.blocks.beam_model import BeamData
 from calcgen.evaluation.results import CombinationResult, GroupResult, Premise, Result, Verdict
-from calcgen.mechanics.beam import BeamModel, CaseSolution
+from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
 from calcgen.mechanics.combinations import Envelope, Governing
 from calcgen.quantities.display import Style, number_text, show
 from calcgen.quantities.measure import Measure
@@ -25,9 +25,8 @@ _SENSE_LAT = {
     "V": ("sideways shear force", "positive where the left part is pushed to the left"),
     "w": ("sideways deflection", "positive to the right"),
 }
-SLENDER = (
-    10.0  # span to depth from which shear deflection is left out as a matter of course (common practice)
-)
+_SIDEWAYS: tuple[Quantity, ...] = ("w_lat", "M_lat")
+SLENDER = 10.0  # span to depth from which shear deflection is commonly left out (common practice)
 SMALL = 1 / 50  # deflection to span up to which the undeformed shape serves (common practice)
 
 
@@ -92,7 +91,7 @@ def _lateral(members: Sequence[CombinationResult]) -> bool:
     """Whether anything happens in the lateral plane."""
     if "lateral" not in members[0].solution.model.planes:
         return False
-    return any(c.solution.extremes(q).abs > 0 for c in members for q in ("w_lat", "M_lat"))  # type: ignore[arg-type]
+    return any(c.solution.extremes(q).abs > 0 for c in members for q in _SIDEWAYS)
 
 
 def relieving_cases(

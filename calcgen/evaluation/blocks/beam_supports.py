@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+from dataclasses import dataclass
 from itertools import pairwise
 
 from calcgen.evaluation.blocks.beam_lines import Lines
@@ -21,14 +22,22 @@ from calcgen.mechanics.beam import (
 from calcgen.text import Related
 
 
-def supports_of(
-    lines: Lines, spans: tuple[float, ...]
-) -> tuple[tuple[Support, ...], list[tuple[str, Settlement]]]:
-    """Return the supports from left to right, and the settlements with their cases."""
+@dataclass(frozen=True)
+class Supports:
+    """The supports from left to right, the word of each, and the settlements with their cases."""
+
+    all: tuple[Support, ...]
+    kinds: tuple[str, ...]
+    settling: tuple[tuple[str, Settlement], ...]
+
+
+def supports_of(lines: Lines, spans: tuple[float, ...]) -> Supports:
+    """Return the supports as written; with none written, a simple one at each end of each span."""
     typed = lines.of(SupportLine)
     if not typed:
         ends = [math.fsum(spans[:i]) for i in range(len(spans) + 1)]
-        return tuple(Support(x) for x in ends), []
+        kinds = ("pin", *["roller"] * len(spans))
+        return Supports(tuple(Support(x) for x in ends), kinds, ())
     placed: list[tuple[float, SupportLine]] = sorted(
         ((lines.place(line.at), line) for line in typed), key=lambda item: item[0]
     )
@@ -48,7 +57,7 @@ def supports_of(
             case = line.settles_case.name if line.settles_case is not None else ""
             plane: Plane = "lateral" if line.plane == "lateral" else "vertical"
             settling.append((case, Settlement(index, value, plane)))
-    return supports, settling
+    return Supports(supports, tuple(line.kind for _, line in placed), tuple(settling))
 
 
 def _support(lines: Lines, x: float, line: SupportLine) -> Support:

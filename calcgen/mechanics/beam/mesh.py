@@ -7,6 +7,7 @@ from collections.abc import Iterable
 from dataclasses import dataclass
 
 import numpy as np
+import numpy.typing as npt
 
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam.model import BeamModel, BendingStiffness
@@ -32,13 +33,13 @@ class Mesh:
 
     def node(self, x: float) -> int:
         """Give the number of the node nearest to `x`."""
-        return nearest(self.nodes, x)
+        return int(nearest(self.nodes, x))
 
 
-def nearest(nodes: FloatArray, x: float) -> int:
-    """Give the number of the node nearest to `x`."""
-    right = int(np.clip(np.searchsorted(nodes, x), 1, len(nodes) - 1))
-    return right - 1 if x - nodes[right - 1] <= nodes[right] - x else right
+def nearest(nodes: FloatArray, x: FloatArray | float) -> npt.NDArray[np.intp]:
+    """Give the numbers of the nodes nearest to the places `x`."""
+    right = np.clip(np.searchsorted(nodes, x), 1, len(nodes) - 1)
+    return np.asarray(np.where(x - nodes[right - 1] <= nodes[right] - x, right - 1, right))
 
 
 def divide(model: BeamModel, places: Iterable[float]) -> Mesh:
@@ -62,7 +63,7 @@ def divide(model: BeamModel, places: Iterable[float]) -> Mesh:
     stretch_of = np.searchsorted(ends, (nodes[:-1] + nodes[1:]) / 2)
     return Mesh(
         nodes,
-        tuple(nearest(nodes, support.x) for support in model.supports),
-        frozenset(nearest(nodes, x) for x in model.hinges),
+        tuple(int(nearest(nodes, support.x)) for support in model.supports),
+        frozenset(int(nearest(nodes, x)) for x in model.hinges),
         tuple(model.stretches[number].stiffness for number in stretch_of),
     )

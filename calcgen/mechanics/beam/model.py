@@ -141,6 +141,8 @@ class BeamModel:
             raise ValueError("a support lies outside the beam")
         if not all(self.tolerance < x < self.length - self.tolerance for x in self.hinges):
             raise ValueError("a hinge must lie inside the beam")
+        if len(self.planes) == 1 and any(stretch.stiffness.coupling != 0.0 for stretch in self.stretches):
+            raise ValueError("a coupling in one stretch needs the lateral stiffness of all")
         for support in self.supports:
             if (support.rotation or support.lateral_rotation) and any(
                 self.same(support.x, hinge) for hinge in self.hinges

@@ -188,7 +188,7 @@ class CaseSolution:
         """Move places within the model's tolerance of a node onto it."""
         if np.any((x < -self.model.tolerance) | (x > self.model.length + self.model.tolerance)):
             raise ValueError("the place lies outside the beam")
-        near = self.nodes[[nearest(self.nodes, float(place)) for place in x]]
+        near = self.nodes[nearest(self.nodes, x)]
         return np.where(np.abs(x - near) <= self.model.tolerance, near, x)
 
     def _range(self, start: float | None, end: float | None) -> tuple[int, int, FloatArray, FloatArray]:

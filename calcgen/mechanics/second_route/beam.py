@@ -7,7 +7,7 @@ from __future__ import annotations
 
 from collections.abc import Sequence
 from itertools import pairwise
-from typing import Final
+from typing import Final, Literal
 
 import numpy as np
 
@@ -55,11 +55,10 @@ def _name(symbol: str, plane: Plane) -> str:
     return symbol if plane == "vertical" else f"{symbol}_lat"
 
 
-def _quantity(symbol: str, plane: Plane) -> Quantity:
-    names: dict[str, Quantity] = {
-        "w": "w", "M": "M", "V": "V", "w_lat": "w_lat", "M_lat": "M_lat", "V_lat": "V_lat",
-    }  # fmt: skip
-    return names[_name(symbol, plane)]
+def _quantity(part: Literal["w", "M", "V"], plane: Plane) -> Quantity:
+    vertical: dict[str, Quantity] = {"w": "w", "M": "M", "V": "V"}
+    lateral: dict[str, Quantity] = {"w": "w_lat", "M": "M_lat", "V": "V_lat"}
+    return vertical[part] if plane == "vertical" else lateral[part]
 
 
 def _support_forces(solution: CaseSolution, plane: Plane) -> tuple[FloatArray, FloatArray, FloatArray]:
@@ -101,6 +100,8 @@ def _equilibrium(model: BeamModel, loads: Sequence[Load], solution: CaseSolution
         sums.append((plane, force.sum() - reaction.sum(), moment.sum() - reaction @ x - support_moment.sum()))
         force_scale += float(np.abs(force).sum() + np.abs(reaction).sum())
         moment_scale += float(size.sum() + np.abs(reaction * x).sum() + np.abs(support_moment).sum())
+    # Couples alone may leave the supports without force: their size over the length is then the measure.
+    force_scale += moment_scale / model.length
     return [
         residual
         for plane, force, moment in sums
@@ -109,7 +110,7 @@ def _equilibrium(model: BeamModel, loads: Sequence[Load], solution: CaseSolution
                 _name("ΣF", plane),
                 relative(float(force), force_scale),
                 TOLERANCE,
-                "sum of loads and reactions, over the sum of their magnitudes",
+                "sum of loads and reactions, over the magnitudes of forces and of moments over the length",
             ),
             Residual(
                 _name("ΣM", plane),
@@ -160,7 +161,7 @@ def _slopes(model: BeamModel, loads: Sequence[Load], solution: CaseSolution) -> 
     found: list[tuple[Plane, float, float]] = []
     shear = intensity = 0.0
     for plane in model.planes:
-        M, V = (solution.values(_quantity(symbol, plane), x) for symbol in ("M", "V"))
+        M, V = solution.values(_quantity("M", plane), x), solution.values(_quantity("V", plane), x)
         q = _intensity(loads, DistributedLoad, plane, x)
         m = _intensity(loads, DistributedMoment, plane, x)
         found.append(

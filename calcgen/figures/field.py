@@ -1,0 +1,243 @@
+"""Figure of the stress over the section in biaxial bending: bands clipped to the outline, neutral axis."""
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+from math import ceil, floor, hypot, log10
+
+import numpy as np
+
+from calcgen.figures.labels import Box, Point
+from calcgen.figures.notes import draw_note, obstacles_of
+from calcgen.figures.outline import EUROCODE, AxisNames, Part, Ring, Scale, draw_axes, draw_cross, fit
+from calcgen.figures.picture import (
+    CHAIN,
+    DASH,
+    FIRM,
+    LINE,
+    SMALL,
+    WIDTHS,
+    Colour,
+    Label,
+    Picture,
+    Sketch,
+    Stroke,
+    Width,
+    wrap,
+)
+from calcgen.figures.svg import render
+
+
+@dataclass(frozen=True, eq=False)
+class FieldPart:
+    """A part with its stress, `constant` + `by_x`·x + `by_y`·y, tension positive."""
+
+    part: Part
+    constant: float
+    by_x: float
+    by_y: float
+
+    def at(self, x: float, y: float) -> float:
+        """Give the stress at a point of the section."""
+        return self.constant + self.by_x * x + self.by_y * y
+
+
+@dataclass(frozen=True)
+class FieldMark:
+    """A stress to write at a point of the section."""
+
+    point: Point
+    value: float
+    label: str
+
+
+@dataclass(frozen=True, eq=False)
+class FieldDrawing:
+    """Normal stress that varies both ways over a section, x right and y up.
+
+    `neutral_axis_label` says where the neutral axis lies; it is drawn where it crosses the section.
+    `actions` are sentences such as 'M = 30.0 kN·m about y–y: tension at the bottom'.
+    """
+
+    ident: str
+    title: str
+    parts: tuple[FieldPart, ...]
+    centroid: Point
+    marks: tuple[FieldMark, ...]
+    unit: str = "MPa"
+    axes: AxisNames = EUROCODE
+    neutral_axis_label: str = "neutral axis"
+    actions: tuple[str, ...] = ()
+    description: str = ""
+
+
+def draw_field(drawing: FieldDrawing, width: Width) -> str:
+    """SVG of the stress field for a `wide` or a `narrow` place."""
+    return render(compose_field(drawing, width))
+
+
+def compose_field(drawing: FieldDrawing, width: Width) -> Picture:
+    """Compose the field, its marks, its legend and the sentences under it, no wider than its place."""
+    sketch = Sketch()
+    parts = [field.part for field in drawing.parts]
+    scale, box = fit(parts, *((280.0, 240.0) if width == "wide" else (WIDTHS["narrow"] - 190.0, 200.0)))
+    corners = [(field, x, y) for field in drawing.parts for ring in field.part.rings for x, y in ring]
+    stresses = [field.at(x, y) for field, x, y in corners]
+    step = _round_step(max(abs(min(stresses)), abs(max(stresses))) / 5)
+    for field in drawing.parts:
+        _draw_part(sketch, scale, field, step)
+    centre = scale.at(*drawing.centroid)
+    draw_axes(sketch, box, centre, drawing.axes)
+    draw_cross(sketch, centre, 4.0)
+    ends = _neutral_axis(drawing.parts[0], scale, box)
+    if ends:
+        sketch.line(ends, Stroke("ink", 1.3, CHAIN))
+    obstacles = obstacles_of(sketch, WIDTHS[width])
+    allowed = (WIDTHS[width] - (box.right - box.left)) / 2 - 4
+    obstacles.left, obstacles.right = box.left - allowed, box.right + allowed
+    for mark in drawing.marks:
+        at = scale.at(*mark.point)
+        text = f"{mark.label} {_word(mark.value)}".strip()
+        note = Label(0, 0, text, SMALL, colour=_colour(mark.value), bold=True, halo=True)
+        draw_note(sketch, note, at, box, obstacles)
+        sketch.dot(at, 2.6, _colour(mark.value), Stroke("paper", 0.8))
+    if ends:
+        end = max(ends)
+        draw_note(sketch, Label(0, 0, "neutral axis", SMALL, halo=True), end, box, obstacles)
+    middle = (box.left + box.right) / 2
+    sketch.label(Label(middle, sketch.box().top - 8, drawing.title))
+    _draw_legend(sketch, drawing, (min(stresses), max(stresses)), step, middle, WIDTHS[width] - 20)
+    _draw_sentences(sketch, [drawing.neutral_axis_label, *drawing.actions], middle, WIDTHS[width] - 12)
+    return sketch.picture(f"{drawing.ident}-{width}", drawing.title, drawing.description or _describe(drawing))
+
+
+def _draw_part(sketch: Sketch, scale: Scale, field: FieldPart, step: float) -> None:
+    """Draw bands of one step of stress, contours between them, dashed in compression, and the outline."""
+    rings = [scale.ring(ring) for ring in field.part.rings]
+    sketch.fill(rings, "section")
+    stresses = [field.at(x, y) for ring in field.part.rings for x, y in ring]
+    for low, high in _bands(min(stresses), max(stresses), step):
+        strip = _strip(field, scale, low, high)
+        sketch.fill([strip], _colour(low + high), opacity=_opacity(low, high, step), clip=rings)
+    lines: dict[bool, list[Ring]] = {True: [], False: []}
+    if hypot(field.by_x, field.by_y) > 0:
+        for level in np.arange(ceil(min(stresses) / step), floor(max(stresses) / step) + 1) * step:
+            if level:
+                lines[bool(level > 0)].append(_strip(field, scale, level, level)[:2])
+    sketch.lines(lines[True], Stroke("tension", 0.7), clip=rings)
+    sketch.lines(lines[False], Stroke("compression", 0.7, DASH), clip=rings)
+    sketch.fill(rings, None, stroke=FIRM)
+
+
+def _bands(low: float, high: float, step: float) -> Iterator[tuple[float, float]]:
+    """Limits of the bands of width `step` that hold [low, high], the outer ones in full."""
+    if low == high == 0.0:
+        return
+    first, last = floor(low / step), max(ceil(high / step), floor(low / step) + 1)
+    for number in range(first, last):
+        yield number * step, (number + 1) * step
+
+
+def _opacity(low: float, high: float, step: float) -> float:
+    return round(0.1 + 0.11 * (abs(low + high) / 2 / step - 0.5), 3)
+
+
+def _strip(field: FieldPart, scale: Scale, low: float, high: float) -> Ring:
+    """Corners in pixels of the strip with stress from `low` to `high`, longer than the part is wide."""
+    points = np.vstack(field.part.rings)
+    centre = points.mean(axis=0)
+    reach = float(np.ptp(points, axis=0).sum()) or 1.0
+    slope = np.array([field.by_x, field.by_y])
+    steepness = float(np.hypot(*slope))
+    here = field.at(*centre)
+    if steepness * reach < 1e-9 * max(abs(here), 1e-300):  # uniform: one band covers all
+        square = np.array([(-1, -1), (1, -1), (1, 1), (-1, 1)]) * reach
+        return scale.ring(centre + square)
+    up = slope / steepness
+    along = np.array([-up[1], up[0]]) * reach
+    bottom, top = (centre + up * (np.clip((level - here) / steepness, -reach, reach)) for level in (low, high))
+    return scale.ring(np.array([bottom - along, bottom + along, top + along, top - along]))
+
+
+def _neutral_axis(field: FieldPart, scale: Scale, box: Box) -> list[Point] | None:
+    """Ends of the line of zero stress, a little beyond the box of the section, if it crosses that."""
+    slope = np.array([field.by_x, field.by_y])
+    if not slope.any():
+        return None
+    start, end = _strip(field, scale, 0.0, 0.0)[:2]
+    outer = box.grown(26.0)
+    step = end - start
+    with np.errstate(divide="ignore", invalid="ignore"):
+        first = (np.array([outer.left, outer.top]) - start) / step
+        second = (np.array([outer.right, outer.bottom]) - start) / step
+    moving = np.abs(step) > 1e-9
+    enter = float(np.minimum(first, second)[moving].max())
+    leave = float(np.maximum(first, second)[moving].min())
+    if not box.crosses(start[None, :], end[None, :]) or leave <= enter:
+        return None
+    a, b = start + enter * step, start + leave * step
+    return [(float(a[0]), float(a[1])), (float(b[0]), float(b[1]))]
+
+
+def _draw_legend(
+    sketch: Sketch,
+    drawing: FieldDrawing,
+    stresses: tuple[float, float],
+    step: float,
+    middle: float,
+    room: float,
+) -> None:
+    """Draw a strip of the bands with their limits under it and the words at its ends."""
+    bands = list(_bands(*stresses, step))
+    if not bands:
+        return
+    top = sketch.box().bottom + 24
+    breadth = min(34.0, room / len(bands))
+    left = middle - breadth * len(bands) / 2
+    words = [w for w, present in (("compression", bands[0][0] < 0), ("tension", bands[-1][1] > 0)) if present]
+    heading = f"{' and '.join(words)}, {drawing.unit}"
+    sketch.label(Label(middle, top - 6, heading, SMALL, colour="muted"))
+    for number, (low, high) in enumerate(bands):
+        x = left + number * breadth
+        ring = [(x, top), (x + breadth, top), (x + breadth, top + 11), (x, top + 11)]
+        sketch.fill([ring], "section")
+        sketch.fill([ring], _colour(low + high), opacity=_opacity(low, high, step))
+        sketch.fill([ring], None, stroke=Stroke(_colour(low + high), 0.7))
+    free = -1e9
+    for number, level in enumerate([band[0] for band in bands] + [bands[-1][1]]):
+        label = Label(left + number * breadth, top + 23, _plain(level, step), SMALL)
+        if label.box.left > free:
+            free = sketch.label(label).box.right + 3
+
+
+def _draw_sentences(sketch: Sketch, sentences: list[str], middle: float, room: float) -> None:
+    y = sketch.box().bottom + 17
+    for sentence in sentences:
+        for line in wrap(sentence, SMALL, room):
+            sketch.label(Label(middle, y, line, SMALL, colour="muted"))
+            y += LINE
+
+
+def _round_step(about: float) -> float:
+    """Give 1, 2 or 5 times a power of ten, at least `about`."""
+    if about <= 0:
+        return 1.0
+    power = 10.0 ** floor(log10(about))
+    return next(m * power for m in (1, 2, 5, 10) if m * power >= about * (1 - 1e-9))
+
+
+def _plain(level: float, step: float) -> str:
+    digits = max(0, -floor(log10(step) + 1e-9))
+    return f"{level:.{digits}f}".replace("-", "−") if round(level / step) else "0"
+
+
+def _word(value: float) -> str:
+    return "tension" if value > 0 else "compression" if value < 0 else ""
+
+
+def _colour(value: float) -> Colour:
+    return "tension" if value > 0 else "compression" if value < 0 else "ink"
+
+
+def _describe(drawing: FieldDrawing) -> str:
+    said = [f"{mark.label} {_word(mark.value)}".strip() for mark in drawing.marks]
+    return "; ".join([*said, drawing.neutral_axis_label, *drawing.actions]) + "."

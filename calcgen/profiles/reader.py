@@ -1,0 +1,244 @@
+"""Reads one catalogue of sections from its CSV text.
+
+Comment lines `# axes = eurocode`, `# shape = i_shape` and, at will, `# family = IPE` stand above the header,
+whose cells give each column's name and unit: `h [mm]`, `I_y [cm4]`. Every row is one section. An empty cell
+is a size or property that the table does not give.
+"""
+
+from __future__ import annotations
+
+import csv
+import math
+import re
+from collections.abc import Iterator, Sequence
+from difflib import get_close_matches
+from pathlib import PurePosixPath
+from typing import TypeAlias, TypeVar
+
+from calcgen.profiles.columns import (
+    KINDS,
+    PUBLISHED,
+    SYNONYMS,
+    UNITS,
+    ZERO_ALLOWED,
+    Column,
+    column_meaning,
+    sizes_missing,
+    sizes_of,
+    unit_factor,
+)
+from calcgen.profiles.columns import SIZES as SHAPES
+from calcgen.profiles.profile import Axes, CatalogueFault, Profile, designation_key
+
+Header: TypeAlias = tuple[Column | str, ...]  # a text column stands as its name
+
+Choice = TypeVar("Choice", bound=str)
+
+AXES: tuple[Axes, ...] = ("eurocode", "american")
+TEXT_COLUMNS = ("designation", "source")
+
+_DIRECTIVE = re.compile(r"#\s*(axes|shape|family)\s*=\s*(.*?)\s*")
+_HEADER_CELL = re.compile(r"(\S+?)\s*\[\s*(.*?)\s*\]")
+_CELL = re.compile(r'\s*"(?:[^"]|"")*"[^,]*|[^,]*')
+
+
+def read_catalogue(name: str, text: str) -> tuple[tuple[Profile, ...], tuple[CatalogueFault, ...]]:
+    """Read the sections of a catalogue, and every fault in its text.
+
+    A row with a fault gives no section; a fault above the rows leaves none at all.
+
+    Parameters
+    ----------
+    name : the file's path as faults and sections are to show it.
+    text : the file's contents.
+    """
+    reading = _Reading(name, text)
+    profiles = tuple(reading.profiles())
+    return profiles, tuple(sorted(reading.faults, key=lambda fault: (fault.line, fault.column)))
+
+
+class _Reading:
+    """One pass over the text of a catalogue; collects its faults."""
+
+    def __init__(self, name: str, text: str) -> None:
+        self.name = name
+        self.lines = text.removeprefix("\ufeff").splitlines()
+        self.faults: list[CatalogueFault] = []
+        self.directives: dict[str, tuple[str, int]] = {}
+        self.table: list[int] = []  # the lines of the header and the rows
+        for line, written in enumerate(self.lines, start=1):
+            if written.lstrip().startswith("#"):
+                self._directive(line, written.strip())
+            elif written.strip(" \t,"):
+                self.table.append(line)
+
+    def profiles(self) -> Iterator[Profile]:
+        """Yield the sections of the rows that have no fault."""
+        axes, shape = self._choice("axes", AXES), self._choice("shape", tuple(SHAPES))
+        if not self.table:
+            self._fault(1, "there is no header", "write one such as: designation,h [mm],b [mm],source")
+        if axes is None or shape is None or not self.table:
+            return
+        header = self._header(self.table[0], shape, axes)
+        if header is None:
+            return
+        lines: dict[str, int] = {}
+        for line in self.table[1:]:
+            profile = self._profile(line, header, shape, axes)
+            if profile is None:
+                continue
+            first = lines.setdefault(designation_key(profile.designation), line)
+            if first == line:
+                yield profile
+            else:
+                self._fault(line, f"'{profile.designation}' is defined twice", f"first on line {first}")
+
+    def _directive(self, line: int, written: str) -> None:
+        match = _DIRECTIVE.fullmatch(written)
+        if match is None:
+            return
+        if self.table:
+            self._fault(line, f"'{match[1]}' stands below the header", "move it to the top of the file")
+        elif match[1] in self.directives:
+            self._fault(line, f"'{match[1]}' is set twice")
+        else:
+            self.directives[match[1]] = match[2], line
+
+    def _choice(self, directive: str, known: Sequence[Choice]) -> Choice | None:
+        if directive not in self.directives:
+            hint = f"write '# {directive} = {known[0]}' above the header; known: {', '.join(known)}"
+            self._fault(1, f"the file does not say its {directive}", hint)
+            return None
+        value, line = self.directives[directive]
+        for choice in known:
+            if choice == value:
+                return choice
+        self._fault(line, f"'{value}' is not a known {directive}", f"known: {', '.join(known)}")
+        return None
+
+    def _header(self, line: int, shape: str, axes: Axes) -> Header | None:
+        """Read the header; None when it has a fault."""
+        before = len(self.faults)
+        cells = self._cells(line)
+        if len(cells) == 1 and re.search(r"[;\t]", cells[0]):
+            self._fault(line, "the cells are not separated by commas", "write commas, and decimal points")
+            return None
+        columns: list[Column | str] = []
+        for n, cell in enumerate(cells):
+            column = self._column(line, n, cell, shape, axes)
+            if column is None:
+                continue
+            name = column if isinstance(column, str) else column.name
+            if any(name == (other if isinstance(other, str) else other.name) for other in columns):
+                self._fault(line, f"'{cell}' gives {name} a second time", cell=n)
+            columns.append(column)
+        if len(self.faults) > before:
+            return None
+        if "designation" not in columns:
+            self._fault(line, "there is no column 'designation'")
+        if missing := sizes_missing(shape, [c.name for c in columns if isinstance(c, Column)]):
+            self._fault(line, f"there is no column for {', '.join(missing)}", f"{shape} needs it")
+        return tuple(columns) if len(self.faults) == before else None
+
+    def _column(self, line: int, n: int, cell: str, shape: str, axes: Axes) -> Column | str | None:
+        if cell in TEXT_COLUMNS:
+            return cell
+        match = _HEADER_CELL.fullmatch(cell)
+        written = match[1] if match else cell
+        meaning = column_meaning(written, shape, axes)
+        if meaning is None:
+            self._fault(line, f"unknown column '{written}'", _hint_for_column(written, shape, axes), cell=n)
+            return None
+        part, name, kind = meaning
+        if match is None:
+            self._fault(line, f"'{written}' has no unit", f"write it as {written} [...]", cell=n)
+            return None
+        unit = unit_factor(match[2])
+        if unit is None:
+            self._fault(line, f"unknown unit '{match[2]}'", f"known: {', '.join(UNITS)}", cell=n)
+            return None
+        if unit[0] != kind:
+            self._fault(line, f"'{match[2]}' is not a unit of {KINDS[kind]}, which {written} is", cell=n)
+            return None
+        return Column(part, name, unit[1])
+
+    def _profile(self, line: int, header: Header, shape: str, axes: Axes) -> Profile | None:
+        """Read a row; None when it has a fault."""
+        before = len(self.faults)
+        cells = self._cells(line)
+        if len(cells) != len(header):
+            hint = "put quotes around a text with commas" if len(cells) > len(header) else ""
+            self._fault(line, f"{len(cells)} cells stand under {len(header)} columns", hint)
+            return None
+        texts: dict[str, str] = {}
+        values: dict[str, dict[str, float]] = {"dimensions": {}, "stated": {}, "published": {}}
+        for n, (column, cell) in enumerate(zip(header, cells, strict=True)):
+            if isinstance(column, str):
+                texts[column] = cell
+            elif cell:
+                values[column.part][column.name] = self._value(line, n, column, cell)
+        if not texts["designation"]:
+            self._fault(line, "the designation is missing")
+        dimensions, stated = values["dimensions"], values["stated"]
+        if missing := sizes_missing(shape, list(dimensions)):
+            self._fault(line, f"{', '.join(missing)} missing: {shape} needs it")
+        if len(self.faults) == before and "k_des" in stated and "t_f" in dimensions and "r" not in dimensions:
+            dimensions["r"] = stated["k_des"] - dimensions["t_f"]
+            if dimensions["r"] < 0.0:
+                self._fault(line, "k_des is less than t_f")
+        if len(self.faults) > before:
+            return None
+        return Profile(
+            designation=texts["designation"],
+            family=self.directives.get("family", (PurePosixPath(self.name).stem, 0))[0],
+            shape=shape,
+            axes=axes,
+            dimensions=dimensions,
+            stated=stated,
+            published=values["published"],
+            source=texts.get("source") or self.name,
+            file=self.name,
+            line=line,
+        )
+
+    def _value(self, line: int, n: int, column: Column, cell: str) -> float:
+        """Value of a cell in SI units; NaN with a fault when it has none."""
+        value = _number(cell)
+        if math.isnan(value):
+            self._fault(line, f"'{cell}' is not a number", "write a decimal point" * ("," in cell), cell=n)
+        elif value < 0.0 or (value == 0.0 and column.name not in ZERO_ALLOWED):
+            self._fault(line, f"{column.name} must be positive", cell=n)
+        return value * column.factor
+
+    def _cells(self, line: int) -> list[str]:
+        # a row never goes on in the next line, so that a quote left open spoils one row only
+        return [cell.strip() for cell in next(csv.reader([self.lines[line - 1]], skipinitialspace=True))]
+
+    def _fault(self, line: int, message: str, hint: str = "", *, cell: int = 0) -> None:
+        column = 1
+        if cell:
+            written = self.lines[line - 1]
+            start = 0
+            for _ in range(cell):
+                match = _CELL.match(written, start)
+                start = (match.end() if match else start) + 1
+            column = start + len(written[start:]) - len(written[start:].lstrip()) + 1
+        self.faults.append(CatalogueFault(self.name, line, column, message, hint))
+
+
+def _number(text: str) -> float:
+    """Value of a decimal number, NaN when it is none (`1_000` and `inf` are none)."""
+    try:
+        value = float(text)
+    except ValueError:
+        return math.nan
+    return value if math.isfinite(value) and "_" not in text else math.nan
+
+
+def _hint_for_column(written: str, shape: str, axes: Axes) -> str:
+    for other in AXES:
+        if other != axes and written in PUBLISHED[other]:
+            return f"{written} is a name of the {other} axes, and the file's are {axes}"
+    known = [*TEXT_COLUMNS, *sorted(sizes_of(shape)), *SYNONYMS, *PUBLISHED[axes]]
+    near = get_close_matches(written, known, n=1)
+    return f"did you mean {near[0]}?" if near else f"known: {', '.join(known)}"
