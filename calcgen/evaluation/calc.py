@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping, Sequence
+from collections.abc import Hashable, Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 from typing import Literal
 
@@ -55,8 +55,39 @@ class Setting:
     references: frozenset[str] = field(default_factory=frozenset)
 
 
-def evaluate_all(calcs: Sequence[Calc], setting: Setting) -> tuple[EvaluatedCalc, ...]:
+class Memory:
+    """Evaluated calcs by what they were evaluated from: one that nothing touched is not evaluated again."""
+
+    def __init__(self) -> None:
+        self._setting: Setting | None = None
+        self._kept: dict[str, tuple[Hashable, EvaluatedCalc, Scope]] = {}
+
+    def prepare(self, setting: Setting) -> None:
+        """Forget everything where the project's setting is another one."""
+        if setting != self._setting:
+            self._setting = setting
+            self._kept.clear()
+
+    def key(self, calc: Calc, upstream: Iterable[str]) -> Hashable:
+        """Return what the evaluation of a calc depends on: its text, and the keys of what feeds it."""
+        return (calc.source, tuple(self._kept[n][0] for n in sorted(upstream) if n in self._kept))
+
+    def recall(self, number: str, key: Hashable) -> tuple[EvaluatedCalc, Scope] | None:
+        """Return the calc evaluated under this key."""
+        kept = self._kept.get(number)
+        return (kept[1], kept[2]) if kept is not None and kept[0] == key else None
+
+    def keep(self, key: Hashable, result: EvaluatedCalc, scope: Scope) -> None:
+        """Remember an evaluated calc."""
+        self._kept[result.number] = (key, result, scope)
+
+
+def evaluate_all(
+    calcs: Sequence[Calc], setting: Setting, memory: Memory | None = None
+) -> tuple[EvaluatedCalc, ...]:
     """Evaluate calcs, those that feed others first; returned in the order of their numbers."""
+    memory = memory or Memory()
+    memory.prepare(setting)
     order = in_order(calcs)
     scopes: dict[str, Scope] = {}
     done: dict[str, EvaluatedCalc] = {}
@@ -75,7 +106,10 @@ def evaluate_all(calcs: Sequence[Calc], setting: Setting) -> tuple[EvaluatedCalc
             reasons = (f"{n}, which feeds it, is {done[n].standing}" for n in broken)
             done[calc.number] = not_evaluated(calc, "; ".join(reasons), ())
             continue
-        done[calc.number], scopes[calc.number] = evaluate_calc(calc, setting, scopes)
+        key = memory.key(calc, {f.calc for f in feeds_of(calc)})
+        result, scope = memory.recall(calc.number, key) or evaluate_calc(calc, setting, scopes)
+        memory.keep(key, result, scope)
+        done[calc.number], scopes[calc.number] = result, scope
     return tuple(done[n] for n in sorted(done))
 
 

@@ -159,6 +159,12 @@ class SecondRoute:
     tolerance: float
     scale: str
 
+    @classmethod
+    def found(cls, of: str, what: str, residual: float, tolerance: float, scale: str) -> SecondRoute:
+        """Return a comparison; below 1e-12 lies rounding that differs between machines, taken as none."""
+        small = abs(residual) < 1e-12
+        return cls(of, what, 0.0 if small else float(f"{residual:.2e}"), tolerance, scale)
+
     @property
     def holds(self) -> bool:
         """Whether the two routes agree within the tolerance."""

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterable, Sequence
+from itertools import pairwise
 
 from calcgen.evaluation.results import BeamResult, CombinationResult, GroupResult, LoadRow
 from calcgen.figures.beam import BeamDrawing, Stretch
@@ -115,7 +116,7 @@ def _stretches(beam: BeamResult, style: Style) -> tuple[Stretch, ...]:
     factor = _per_metre(style)
     return tuple(
         Stretch(a * factor, b * factor, _length(b - a, style))
-        for a, b in zip(ends, ends[1:], strict=False)
+        for a, b in pairwise(ends)
         if b - a > 1e-9 * beam.model.length
     )
 

@@ -8,6 +8,7 @@ from collections.abc import Iterable
 from calcgen.evaluation.conventions import Axes
 from calcgen.evaluation.results import SectionResult, StressResult
 from calcgen.figures.dimensions import Dimension, Side
+from calcgen.figures.field import FieldDrawing, FieldMark, FieldPart
 from calcgen.figures.outline import AMERICAN, EUROCODE, AxisNames, Part
 from calcgen.figures.section import SectionDrawing
 from calcgen.figures.stress import Couple, Force, Mark, StressDrawing
@@ -106,6 +107,67 @@ def stress_drawing(stress: StressResult, ident: str, style: Style) -> StressDraw
         if forces.N
         else (),
     )
+
+
+def field_drawing(stress: StressResult, ident: str, axes: Axes, style: Style) -> FieldDrawing:
+    """Return the drawing of a stress that varies across the section."""
+    factor, section, plane = _factor(style), stress.section, stress.plane
+    unit = next(r.shown.unit for r in stress.results if r.name == "σ_max")
+    size = magnitude_in(from_si(1.0, "Pa"), unit)
+    by_x, by_y = plane.g_x * size / factor, plane.g_y * size / factor
+    constant = plane.sigma_0 * size - by_x * plane.x_bar * factor - by_y * plane.y_bar * factor
+    (part,) = parts_of(section, factor)
+    shown = {r.name: r.shown for r in stress.results}
+    largest, smallest = plane.extremes(section.outline)
+    marks = [
+        FieldMark((e.x * factor, e.y * factor), e.value, f"{plain(name)} = {_signed(shown[name], e.value)}")
+        for e, name in ((largest, "σ_max"), (smallest, "σ_min"))
+    ]
+    for name, (x, y) in stress.points.items():
+        value = next(r.value.si for r in stress.results if r.name == name)
+        marks.append(
+            FieldMark((x * factor, y * factor), value, f"{plain(name)}: {_signed(shown[name], value)}")
+        )
+    names = axis_names(axes)
+    return FieldDrawing(
+        ident=ident,
+        title=title_of(section),
+        parts=(FieldPart(part, constant, by_x, by_y),),
+        centroid=(section.computed.x_bar * factor, section.computed.y_bar * factor),
+        marks=tuple(marks),
+        unit=unit,
+        axes=names,
+        neutral_axis_label=_field_axis(stress, style),
+        actions=tuple(_actions(stress, names)),
+    )
+
+
+def _field_axis(stress: StressResult, style: Style) -> str:
+    """Return where the neutral axis of a field lies, in words."""
+    axis = stress.plane.neutral_axis
+    if axis is None:
+        return "no neutral axis: the stress is uniform"
+    text = f"neutral axis at {number_text(math.degrees(axis.angle), style.digits)}° from the horizontal"
+    if stress.plane.sigma_0 == 0.0:
+        return f"{text}, through the centroid"
+    distance = math.hypot(axis.x - stress.plane.x_bar, axis.y - stress.plane.y_bar) * _factor(style)
+    return f"{text}, {number_text(distance, style.digits)} {length_unit(style)} from the centroid"
+
+
+def _actions(stress: StressResult, names: AxisNames) -> Iterable[str]:
+    """Return each force with its axis and the side it puts in tension."""
+    forces, shown = stress.forces, stress.forces_shown
+    if forces.M:
+        side = "bottom" if forces.M > 0 else "top"
+        axis = f"{names.horizontal}–{names.horizontal}"
+        yield f"M = {shown['M'].text} about {axis} (horizontal): tension at the {side}"
+    if forces.M_lat:
+        side = "right" if forces.M_lat > 0 else "left"
+        axis = f"{names.vertical}–{names.vertical}"
+        yield f"M_lat = {shown['M_lat'].text} about {axis} (vertical): tension on the {side}"
+    if forces.N:
+        word = "tension" if forces.N > 0 else "compression"
+        yield f"N = {shown['N'].text}, {word}, at the centroid"
 
 
 def _neutral_axis(stress: StressResult, style: Style) -> tuple[float | None, str]:

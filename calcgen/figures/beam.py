@@ -125,7 +125,7 @@ def _draw_beam(
         for s in drawing.stretches:
             left, right = across(s.start), across(s.end)
             sketch.line([(left, level), (right, level)], THIN)
-            sketch.heads([((left + 9, level), (left, level)), ((right - 9, level), (right, level))], "muted", 4.5)
+            sketch.heads([((right, level), (left, level)), ((left, level), (right, level))], "muted", 4.5)
         middles = sorted(((across(s.start) + across(s.end)) / 2, s.label) for s in drawing.stretches)
         y = _draw_lane(sketch, middles, level + 4, room)
     return y

@@ -66,7 +66,8 @@ def draw_diagram(
     highest = min(float(heights.min()), 0.0, *(box.top for box in boxes))
     lowest = max(float(heights.max()), 0.0, *(box.bottom for box in boxes))
     zero = y + 8 - highest
-    _draw_curves(sketch, curve + [0, zero], None if lower is None else lower + [0, zero], ends, zero)
+    drop = np.array([0.0, zero])
+    _draw_curves(sketch, curve + drop, None if lower is None else lower + drop, ends, zero)
     for placed in labels:
         leader = [(x, at + zero) for x, at in placed.leader]
         if len(leader) > 1:

@@ -210,7 +210,10 @@ class _Lane:
     note: str = ""
 
     @staticmethod
-    def of(singles: Sequence[PointLoad | CoupleLoad], across: Callable[[float], float], width: float) -> "_Lane":
+    def of(
+        singles: Sequence[PointLoad | CoupleLoad], across: Callable[[float], float], width: float
+    ) -> "_Lane":
+        """Find places for the labels of loads, which are in the order of their places."""
         texts = [single.label for single in singles]
         wanted = [across(_middle(single)) for single in singles]
         if not texts:

@@ -1,6 +1,6 @@
 """Figure of the axes and signs in force, each drawn in a cell of its own with a sentence under it."""
 
-from collections.abc import Callable, Iterable
+from collections.abc import Callable
 from dataclasses import dataclass
 from typing import Literal
 
@@ -8,7 +8,16 @@ import numpy as np
 
 from calcgen.figures.beam_supports import draw_support
 from calcgen.figures.labels import Box, Point
-from calcgen.figures.outline import AMERICAN, EUROCODE, AxisNames, Part, draw_axes, draw_cross, draw_parts, place
+from calcgen.figures.outline import (
+    AMERICAN,
+    EUROCODE,
+    AxisNames,
+    Part,
+    draw_axes,
+    draw_cross,
+    draw_parts,
+    place,
+)
 from calcgen.figures.picture import (
     CHAIN,
     DASH,
@@ -26,7 +35,7 @@ from calcgen.figures.picture import (
 )
 from calcgen.figures.svg import render
 
-CELL = 140.0  # height of the drawing in a cell, in pixels
+CELL = 152.0  # height of the drawing in a cell, in pixels
 FORCE = Stroke("ink", 1.6)
 HALF_B, HALF_H = 32.0, 46.0  # of the section drawn, in pixels
 
@@ -152,8 +161,8 @@ def _draw_bending(sketch: Sketch, at: Point, *, lateral: bool) -> None:
     sketch.fill([_corners(Box(x - b, y - h, x + b, y + h))], None, stroke=FIRM)
     if lateral:
         sketch.line([(x, y - h - 10), (x, y + h + 10)], Stroke("ink", 1.0, CHAIN))
-        sketch.label(Label(x - b - 5, y + 3.5, "compression", SMALL, "right", "compression"))
-        sketch.label(Label(x + b + 5, y + 3.5, "tension", SMALL, "left", "tension"))
+        sketch.label(Label(x - 4, y - h - 5, "compression", SMALL, "right", "compression"))
+        sketch.label(Label(x + 4, y - h - 5, "tension", SMALL, "left", "tension"))
     else:
         sketch.line([(x - b - 10, y), (x + b + 10, y)], Stroke("ink", 1.0, CHAIN))
         sketch.label(Label(x, y - h - 5, "compression", SMALL, colour="compression"))
@@ -185,8 +194,9 @@ def _draw_beam(sketch: Sketch, at: Point) -> None:
     x, y = at
     half = 66.0
     left, right = x - half, x + half
-    for end, kind in ((left, "pin"), (right, "roller")):
-        draw_support(sketch, "pin" if kind == "pin" else "roller", (end, y), "inner")
+    draw_support(sketch, "pin", (left, y), "inner")
+    draw_support(sketch, "roller", (right, y), "inner")
+    for end in (left, right):
         sketch.arrows([((end, y + 50), (end, y + 26))], FORCE, 7.0)
         sketch.label(Label(end + 9, y + 46, "R", SMALL, "left"))
     xs = np.linspace(-half, half, 41)
@@ -215,7 +225,5 @@ def _draw_depth(sketch: Sketch, at: Point, *, down: bool) -> None:
     sketch.label(Label(box.right + 14, axis + (-4 if down else 12), "neutral axis", SMALL, "left", halo=True))
 
 
-def _corners(box: Box) -> Iterable[Point]:
+def _corners(box: Box) -> tuple[Point, ...]:
     return ((box.left, box.top), (box.right, box.top), (box.right, box.bottom), (box.left, box.bottom))
-
-

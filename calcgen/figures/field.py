@@ -79,7 +79,8 @@ def compose_field(drawing: FieldDrawing, width: Width) -> Picture:
     """Compose the field, its marks, its legend and the sentences under it, no wider than its place."""
     sketch = Sketch()
     parts = [field.part for field in drawing.parts]
-    scale, box = fit(parts, *((280.0, 240.0) if width == "wide" else (WIDTHS["narrow"] - 190.0, 200.0)))
+    room = (280.0, 240.0) if width == "wide" else (WIDTHS["narrow"] - 190.0, 200.0)
+    scale, box = fit(parts, *room)
     corners = [(field, x, y) for field in drawing.parts for ring in field.part.rings for x, y in ring]
     stresses = [field.at(x, y) for field, x, y in corners]
     step = _round_step(max(abs(min(stresses)), abs(max(stresses))) / 5)
@@ -91,23 +92,24 @@ def compose_field(drawing: FieldDrawing, width: Width) -> Picture:
     ends = _neutral_axis(drawing.parts[0], scale, box)
     if ends:
         sketch.line(ends, Stroke("ink", 1.3, CHAIN))
-    obstacles = obstacles_of(sketch, WIDTHS[width])
-    allowed = (WIDTHS[width] - (box.right - box.left)) / 2 - 4
-    obstacles.left, obstacles.right = box.left - allowed, box.right + allowed
+    obstacles = obstacles_of(sketch)
     for mark in drawing.marks:
         at = scale.at(*mark.point)
         text = f"{mark.label} {_word(mark.value)}".strip()
         note = Label(0, 0, text, SMALL, colour=_colour(mark.value), bold=True, halo=True)
-        draw_note(sketch, note, at, box, obstacles)
+        draw_note(sketch, note, at, box, obstacles, WIDTHS[width] - 6)
         sketch.dot(at, 2.6, _colour(mark.value), Stroke("paper", 0.8))
     if ends:
-        end = max(ends)
-        draw_note(sketch, Label(0, 0, "neutral axis", SMALL, halo=True), end, box, obstacles)
-    middle = (box.left + box.right) / 2
-    sketch.label(Label(middle, sketch.box().top - 8, drawing.title))
+        name = Label(0, 0, "neutral axis", SMALL, halo=True)
+        draw_note(sketch, name, max(ends), box, obstacles, WIDTHS[width] - 6)
+    sketch.label(Label((box.left + box.right) / 2, sketch.box().top - 8, drawing.title))
+    held = sketch.box()
+    middle = (held.left + held.right) / 2
     _draw_legend(sketch, drawing, (min(stresses), max(stresses)), step, middle, WIDTHS[width] - 20)
     _draw_sentences(sketch, [drawing.neutral_axis_label, *drawing.actions], middle, WIDTHS[width] - 12)
-    return sketch.picture(f"{drawing.ident}-{width}", drawing.title, drawing.description or _describe(drawing))
+    return sketch.picture(
+        f"{drawing.ident}-{width}", drawing.title, drawing.description or _describe(drawing)
+    )
 
 
 def _draw_part(sketch: Sketch, scale: Scale, field: FieldPart, step: float) -> None:
@@ -154,12 +156,14 @@ def _strip(field: FieldPart, scale: Scale, low: float, high: float) -> Ring:
         return scale.ring(centre + square)
     up = slope / steepness
     along = np.array([-up[1], up[0]]) * reach
-    bottom, top = (centre + up * (np.clip((level - here) / steepness, -reach, reach)) for level in (low, high))
+    bottom, top = (
+        centre + up * (np.clip((level - here) / steepness, -reach, reach)) for level in (low, high)
+    )
     return scale.ring(np.array([bottom - along, bottom + along, top + along, top - along]))
 
 
 def _neutral_axis(field: FieldPart, scale: Scale, box: Box) -> list[Point] | None:
-    """Ends of the line of zero stress, a little beyond the box of the section, if it crosses that."""
+    """Give the ends of the line of zero stress, a little beyond the section, if it crosses its box."""
     slope = np.array([field.by_x, field.by_y])
     if not slope.any():
         return None

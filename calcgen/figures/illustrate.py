@@ -1,26 +1,95 @@
-"""Evaluated blocks -> drawings in the units shown, and their SVG in both widths."""
+"""Evaluated blocks -> drawings in the units shown, and their SVG for both places."""
 
 from __future__ import annotations
 
-from collections.abc import Callable, Iterator, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass
-from functools import lru_cache
+from typing import Literal
 
 from calcgen.evaluation.conventions import Axes
 from calcgen.evaluation.results import BeamResult, EvaluatedCalc, SectionResult, StressResult
 from calcgen.figures.adapt_beam import beam_drawings
-from calcgen.figures.adapt_section import section_drawing, stress_drawings
-from calcgen.figures.picture import Width
+from calcgen.figures.adapt_section import field_drawing, section_drawing, stress_drawing
+from calcgen.figures.beam import compose_beam
+from calcgen.figures.conventions import ConventionDrawing, compose_conventions
+from calcgen.figures.field import compose_field
+from calcgen.figures.picture import Picture
+from calcgen.figures.section import compose_section
+from calcgen.figures.stress import compose_stress
+from calcgen.figures.svg import render
 from calcgen.quantities.display import Style
-
-Draw = Callable[[Width], str]
 
 
 @dataclass(frozen=True)
-class DrawnFigure:
-    """A figure with its text for those who cannot see it, and its SVG for both places."""
+class Figure:
+    """A figure composed for a wide and for a narrow place."""
+
+    wide: Picture
+    narrow: Picture
+
+
+@dataclass(frozen=True)
+class Drawn:
+    """A figure as SVG text, with its title and its description in words."""
 
     title: str
     description: str
     wide: str
     narrow: str
+
+
+def illustrate(calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple[Figure, ...]]:
+    """Return the figures of a calc by the name of their block."""
+    figures: dict[str, tuple[Figure, ...]] = {}
+    for segment in calc.segments:
+        ident = f"{calc.number}-{getattr(segment, 'name', '')}"
+        match segment:
+            case SectionResult():
+                drawing = section_drawing(segment, ident, axes, style)
+                figures[segment.name] = (
+                    Figure(compose_section(drawing, "wide"), compose_section(drawing, "narrow")),
+                )
+            case BeamResult():
+                figures[segment.name] = tuple(
+                    Figure(compose_beam(b, "wide"), compose_beam(b, "narrow"))
+                    for b in beam_drawings(segment, ident, style)
+                )
+            case StressResult() if segment.plane.g_x == 0.0:
+                stress = stress_drawing(segment, ident, style)
+                figures[segment.name] = (
+                    Figure(compose_stress(stress, "wide"), compose_stress(stress, "narrow")),
+                )
+            case StressResult():
+                field = field_drawing(segment, ident, axes, style)
+                figures[segment.name] = (
+                    Figure(compose_field(field, "wide"), compose_field(field, "narrow")),
+                )
+            case _:
+                pass
+    return figures
+
+
+def conventions(axes: Axes, depth: Literal["down", "up"]) -> Figure:
+    """Return the figure of the axes and signs in force."""
+    drawing = ConventionDrawing("conventions", "Axes and signs", axes, depth)
+    return Figure(compose_conventions(drawing, "wide"), compose_conventions(drawing, "narrow"))
+
+
+class Studio:
+    """Draws figures and remembers them, so that a figure that has not changed is not drawn again."""
+
+    def __init__(self) -> None:
+        self._drawn: dict[Figure, Drawn] = {}
+
+    def draw(self, figures: Mapping[str, tuple[Figure, ...]]) -> dict[str, tuple[Drawn, ...]]:
+        """Return the SVG of figures by the name of their block."""
+        return {name: tuple(self.draw_one(figure) for figure in row) for name, row in figures.items()}
+
+    def draw_one(self, figure: Figure) -> Drawn:
+        """Return the SVG of a figure."""
+        drawn = self._drawn.get(figure)
+        if drawn is None:
+            wide, narrow = render(figure.wide), render(figure.narrow)
+            drawn = Drawn(figure.wide.title, figure.wide.description, wide, narrow)
+            self._drawn[figure] = drawn
+        return drawn

@@ -107,11 +107,12 @@ class Obstacles:
 
     def clear(self, box: Box, gap: float = 2.0) -> bool:
         """Tell whether `box` is inside the frame and free of everything placed so far."""
-        inside = box.left >= self.left and box.right <= self.right
-        return (
-            inside
-            and not any(box.overlaps(other, gap) for other in self.boxes)
-            and not any(box.grown(gap / 2).crosses(start, end) for start, end in self.segments)
+        return box.left >= self.left and box.right <= self.right and self.free(box, gap)
+
+    def free(self, box: Box, gap: float = 2.0) -> bool:
+        """Tell whether `box` is free of everything placed so far, inside the frame or not."""
+        return not any(box.overlaps(other, gap) for other in self.boxes) and not any(
+            box.grown(gap / 2).crosses(start, end) for start, end in self.segments
         )
 
 

@@ -2,20 +2,20 @@
 
 from collections.abc import Iterator
 from dataclasses import replace
+from math import inf
 
 import numpy as np
 
 from calcgen.figures.labels import Box, Obstacles, Point
 from calcgen.figures.picture import THIN, Label, Sketch
 
-REACH = 160.0  # pixels that notes may stand out beyond what is drawn, on either side
+REACH = 400.0  # pixels from a point to the end of its leader, at most
 DIRECTIONS = ((0.9, 0.45), (0.9, -0.45), (1.0, 0.0), (0.5, 0.9), (0.5, -0.9))
 
 
-def obstacles_of(sketch: Sketch, reach: float = REACH) -> Obstacles:
+def obstacles_of(sketch: Sketch) -> Obstacles:
     """Give everything drawn so far as obstacles: labels and dark fills as boxes, all else by its lines."""
-    held = sketch.box()
-    obstacles = Obstacles(held.left - reach, held.right + reach)
+    obstacles = Obstacles(-inf, inf)
     for item in sketch.items:
         if isinstance(item, Label) or item.fill == "ink":
             obstacles.boxes.append(item.box)
@@ -25,15 +25,24 @@ def obstacles_of(sketch: Sketch, reach: float = REACH) -> Obstacles:
     return obstacles
 
 
-def draw_note(sketch: Sketch, note: Label, point: Point, around: Box, obstacles: Obstacles) -> None:
-    """Draw `note` beside `point` with a leader, on the outer side of the box `around` where it can be."""
-    found = next(
-        (label, elbow)
-        for label, elbow in _places(note, point, around)
-        if obstacles.clear(label.box, 3.0)
-        and not any(box.crosses(np.array([point]), np.array([elbow])) for box in _others(obstacles, point))
-    )
-    label, elbow = found
+def draw_note(
+    sketch: Sketch, note: Label, point: Point, around: Box, obstacles: Obstacles, room: float
+) -> None:
+    """Draw `note` beside `point` with a leader, on the outer side of the box `around` where it can be.
+
+    The whole picture stays within `room` pixels across, unless the note alone is too wide for that.
+    """
+    held = sketch.box()
+    obstacles.left, obstacles.right = held.right - room, held.left + room
+    others = _others(obstacles, point)
+
+    def open_to(elbow: Point) -> bool:
+        return not any(box.crosses(np.array([point]), np.array([elbow])) for box in others)
+
+    places = list(_places(note, point, around))
+    clear = ((label, at) for label, at in places if obstacles.clear(label.box, 3.0) and open_to(at))
+    free = ((label, at) for label, at in places if obstacles.free(label.box, 3.0))
+    label, elbow = next(clear, None) or next(free)  # a note wider than the frame goes beyond it
     sketch.line([point, elbow], THIN)
     obstacles.add_line([point, elbow])
     obstacles.boxes.append(sketch.label(label).box)
@@ -48,7 +57,7 @@ def _others(obstacles: Obstacles, point: Point) -> list[Box]:
 def _places(note: Label, point: Point, around: Box) -> Iterator[tuple[Label, Point]]:
     x, y = point
     outer = 1 if x >= (around.left + around.right) / 2 else -1
-    for reach in np.arange(14.0, 2000.0, 6.0):
+    for reach in np.arange(14.0, REACH, 6.0):
         for across, up in DIRECTIONS:
             for sign in (outer, -outer):
                 elbow = (float(x + sign * reach * across), float(y - reach * up))

@@ -126,7 +126,7 @@ def draw_axes(sketch: Sketch, box: Box, centre: Point, names: AxisNames) -> None
 
 
 def draw_principal(sketch: Sketch, box: Box, centre: Point, angle: float) -> None:
-    """Draw the principal axes 1 and 2; `angle` in degrees from the horizontal, counter-clockwise, to axis 1."""
+    """Draw the principal axes; `angle` in degrees from the horizontal, counter-clockwise, to axis 1."""
     for name, turn in (("1", radians(angle)), ("2", radians(angle + 90))):
         along = cos(turn), -sin(turn)
         ends = [_exit(box.grown(OVERRUN - 4), centre, (sign * along[0], sign * along[1])) for sign in (-1, 1)]

@@ -124,9 +124,7 @@ class Sketch:
         """Draw an open polyline."""
         self.items.append(Shape((_ring(points),), closed=False, stroke=stroke))
 
-    def lines(
-        self, several: Iterable[Points], stroke: Stroke = THIN, *, clip: Iterable[Points] = ()
-    ) -> None:
+    def lines(self, several: Iterable[Points], stroke: Stroke = THIN, *, clip: Iterable[Points] = ()) -> None:
         """Draw open polylines that share a stroke, within `clip` if there is one."""
         rings = tuple(_ring(points) for points in several)
         if rings:
@@ -144,9 +142,7 @@ class Sketch:
     ) -> None:
         """Fill closed rings, and draw their edges if there is a `stroke`."""
         outer, within = tuple(_ring(points) for points in rings), tuple(_ring(points) for points in clip)
-        self.items.append(
-            Shape(outer, closed=True, stroke=stroke, fill=colour, opacity=opacity, clip=within)
-        )
+        self.items.append(Shape(outer, closed=True, stroke=stroke, fill=colour, opacity=opacity, clip=within))
 
     def arrows(self, several: Iterable[tuple[Point, Point]], stroke: Stroke, head: float = 5.0) -> None:
         """Draw straight arrows from tail to tip."""
@@ -185,10 +181,12 @@ class Sketch:
         return around(item.box for item in self.items)
 
     def picture(self, ident: str, title: str, description: str, *, width: float | None = None) -> Picture:
-        """Frame the picture: over [0, `width`], or as wide as what is drawn when there is no width."""
-        held = self.box().grown(3.0)
-        left, right = (held.left, held.right) if width is None else (0.0, width)
-        frame = Box(round(left, 1), round(held.top, 1), round(right, 1), round(held.bottom, 1))
+        """Frame the picture: over [0, `width`], or as what is drawn needs if that is wider or not given."""
+        held = self.box()
+        left, right = held.left - 3.0, held.right + 3.0
+        if width is not None:
+            left, right = min(held.left, 0.0), max(held.right, width)
+        frame = Box(round(left, 1), round(held.top - 3.0, 1), round(right, 1), round(held.bottom + 3.0, 1))
         return Picture(ident, title, description, frame, tuple(self.items))
 
 
@@ -205,7 +203,7 @@ def wrap(text: str, size: float, width: float) -> list[str]:
 
 
 def thin(points: Points, tolerance: float = 0.1) -> NDArray[np.float64]:
-    """Leave out points that lie within `tolerance` pixels of the line through those kept (Douglas–Peucker)."""
+    """Leave out points that lie within `tolerance` pixels of the lines through the rest (Douglas–Peucker)."""
     given = np.asarray(points, dtype=float)
     keep = np.zeros(len(given), dtype=bool)
     keep[[0, -1]] = True

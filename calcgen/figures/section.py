@@ -74,8 +74,7 @@ def draw_section(drawing: SectionDrawing, width: Width) -> str:
 def compose_section(drawing: SectionDrawing, width: Width) -> Picture:
     """Compose the section as a picture, no wider than its place."""
     sketch = Sketch()
-    room = (300.0, 250.0) if width == "wide" else (WIDTHS["narrow"] - 160.0, 220.0)
-    scale, box = fit(drawing.parts, *room)
+    scale, box = fit(drawing.parts, *((300.0, 250.0) if width == "wide" else (170.0, 220.0)))
     centre = scale.at(*drawing.centroid)
     draw_parts(sketch, scale, drawing.parts)
     draw_axes(sketch, box, centre, drawing.axes)
@@ -85,13 +84,13 @@ def compose_section(drawing: SectionDrawing, width: Width) -> Picture:
     if drawing.shear_centre is not None:
         sketch.dot(scale.at(*drawing.shear_centre), 3.0, "paper", Stroke("ink", 1.1))
     draw_dimensions(sketch, scale, box, drawing.dimensions, DIMENSIONS_AT)
-    _draw_notes(sketch, scale, box, drawing)
+    _draw_notes(sketch, scale, box, drawing, WIDTHS[width] - 6)
     _draw_frame_text(sketch, box, drawing)
     description = drawing.description or _describe(drawing)
     return sketch.picture(f"{drawing.ident}-{width}", drawing.title, description)
 
 
-def _draw_notes(sketch: Sketch, scale: Scale, box: Box, drawing: SectionDrawing) -> None:
+def _draw_notes(sketch: Sketch, scale: Scale, box: Box, drawing: SectionDrawing, room: float) -> None:
     """Leaders, the shear centre's name and the plastic neutral axis, each where there is room."""
     if drawing.plastic_axis is not None:
         y = scale.at(0.0, drawing.plastic_axis)[1]
@@ -103,7 +102,7 @@ def _draw_notes(sketch: Sketch, scale: Scale, box: Box, drawing: SectionDrawing)
     if drawing.plastic_axis is not None:
         notes.append(("plastic neutral axis", (box.right + 8, scale.at(0.0, drawing.plastic_axis)[1])))
     for text, point in notes:
-        draw_note(sketch, Label(0, 0, text, SMALL, halo=True), point, box, obstacles)
+        draw_note(sketch, Label(0, 0, text, SMALL, halo=True), point, box, obstacles, room)
 
 
 def _draw_frame_text(sketch: Sketch, box: Box, drawing: SectionDrawing) -> None:
@@ -135,5 +134,3 @@ def _describe(drawing: SectionDrawing) -> str:
     if drawing.dimensions:
         said.append("Dimensions: " + ", ".join(d.label for d in drawing.dimensions) + ".")
     return " ".join(said)
-
-

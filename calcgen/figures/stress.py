@@ -2,11 +2,12 @@
 
 from collections.abc import Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 from typing import Literal
 
 import numpy as np
 
-from calcgen.figures.labels import Box, Obstacles, Point
+from calcgen.figures.labels import Box, Obstacles, Point, around
 from calcgen.figures.outline import Part, Scale, bounds, draw_cross, draw_parts, place
 from calcgen.figures.picture import (
     CHAIN,
@@ -159,7 +160,7 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
     axis = None
     if drawing.neutral_axis is not None:
         y = scale.at(0.0, drawing.neutral_axis)[1]
-        end = width - 70.0 if row.strain is None or row.face is not None else row.strain + 60
+        end = width - 70.0 if row.face is not None or row.strain is None else row.strain + 60
         axis = [(max(box.left - 12, 2.0), y), (end, y)]
         obstacles.add_line(axis)
     if row.strain is not None:
@@ -168,7 +169,9 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
         _draw_stress(sketch, drawing, scale, row, obstacles, width)
     if axis is not None:
         sketch.line(axis, Stroke("ink", 0.9, CHAIN))
-        _draw_axis_label(sketch, drawing.neutral_axis_label, axis[0][1], (box.right + 8, axis[1][0]), obstacles)
+        _draw_axis_label(
+            sketch, drawing.neutral_axis_label, axis[0][1], (box.right + 8, axis[1][0]), obstacles
+        )
 
 
 def _draw_axis_label(
@@ -185,7 +188,9 @@ def _draw_axis_label(
                     return
 
 
-def _draw_strain(sketch: Sketch, drawing: StressDrawing, scale: Scale, axis: float, obstacles: Obstacles) -> None:
+def _draw_strain(
+    sketch: Sketch, drawing: StressDrawing, scale: Scale, axis: float, obstacles: Obstacles
+) -> None:
     """Draw the strain as a signed profile about its zero line: lengthening to the right."""
     largest = _largest(drawing.strain) or 1.0
     heights = [scale.at(0.0, y)[1] for y, _ in drawing.strain]
@@ -194,11 +199,12 @@ def _draw_strain(sketch: Sketch, drawing: StressDrawing, scale: Scale, axis: flo
     sketch.line([(axis, heights[0]), *profile, (axis, heights[-1])], Stroke("ink", 1.2))
     sketch.line([(axis, min(heights)), (axis, max(heights))], FIRM)
     obstacles.add_line([(axis, heights[0]), *profile, (axis, heights[-1])])
+    middle = (min(heights) + max(heights)) / 2
     for mark in drawing.strain_marks:
         x, y = axis + 34 * mark.value / largest, scale.at(0.0, mark.y)[1]
-        middle = (min(heights) + max(heights)) / 2
-        label = Label((axis + x) / 2, y - 5 if y < middle else y + 12, mark.label, SMALL, colour=_colour(mark.value))
-        obstacles.boxes.append(sketch.label(_stepped(label, obstacles, -1 if y < middle else 1)).box)
+        way, clear_of = (-1, -5.0) if y < middle else (1, 12.0)
+        label = Label((axis + x) / 2, y + clear_of, mark.label, SMALL, colour=_colour(mark.value))
+        obstacles.boxes.append(sketch.label(_stepped(label, obstacles, way)).box)
 
 
 def _draw_stress(
@@ -230,10 +236,9 @@ def _draw_stress(
 
 def _draw_stub(sketch: Sketch, face: float, upper: float, lower: float) -> None:
     """Draw a short piece of the beam behind the face, broken off at its left."""
-    back = face - 13.0
-    middle = (upper + lower) / 2
-    broken = [(back, lower), (back, middle + 7), (back - 4, middle + 3), (back + 4, middle - 3), (back, middle - 7)]
-    broken.append((back, upper))
+    back, middle = face - 13.0, (upper + lower) / 2
+    zigzag = [(back, middle + 7), (back - 4, middle + 3), (back + 4, middle - 3), (back, middle - 7)]
+    broken = [(back, lower), *zigzag, (back, upper)]
     sketch.fill([[(face, upper), (face, lower), *broken]], "section")
     sketch.line(broken, Stroke("muted", 0.7))
     sketch.lines([((back, y), (face, y)) for y in (upper, lower)], Stroke("ink", 1.0))
@@ -242,7 +247,7 @@ def _draw_stub(sketch: Sketch, face: float, upper: float, lower: float) -> None:
 def _lobes(profile: Sequence[Point], sign: float) -> list[list[Point]]:
     """Stretches of the profile where the stress has this sign, ending at its zeros."""
     lobes: list[list[Point]] = [[]]
-    for (y_1, s_1), (y_2, s_2) in zip(profile, profile[1:], strict=False):
+    for (y_1, s_1), (y_2, s_2) in pairwise(profile):
         piece = [(y_1, s_1), (y_2, s_2)]
         if s_1 * s_2 < 0:
             zero = (y_1 + (y_2 - y_1) * s_1 / (s_1 - s_2), 0.0)
@@ -274,26 +279,22 @@ def _draw_mark(
 ) -> None:
     """Write a value, and under or over it the word, to the right of the profile."""
     y = scale.at(0.0, mark.y)[1]
-    low = y > sum(ends) / 2
+    inward = -1 if y > sum(ends) / 2 else 1
     colour = _colour(mark.value)
-    value = Label(tip + 6, y + (4.0 if not low else 3.0), mark.label, TEXT, "left", colour, bold=True)
-    placed = _stepped(value, obstacles, -1 if low else 1, below=LINE if not low else 0.0, above=LINE if low else 0.0)
+    value = Label(tip + 6, y + 4, mark.label, TEXT, "left", colour, bold=True)
+    placed = _stepped(value.within(obstacles.left, obstacles.right), obstacles, inward, LINE)
     obstacles.boxes.append(sketch.label(placed).box)
     if mark.value:
-        word = Label(placed.x, placed.y + (-12.5 if low else 12.5), _word(mark.value), SMALL, "left", colour)
+        word = Label(placed.x, placed.y + 12.5 * inward, _word(mark.value), SMALL, "left", colour)
         obstacles.boxes.append(sketch.label(word).box)
 
 
-def _stepped(
-    label: Label, obstacles: Obstacles, way: int, *, above: float = 0.0, below: float = 0.0
-) -> Label:
-    """Give the label moved up (`way` -1) or down (1) until it is clear, with room above and below it."""
-    for step in range(80):
-        moved = label.moved(0.0, way * 3.0 * step)
-        box = moved.box
-        if obstacles.clear(Box(box.left, box.top - above, box.right, box.bottom + below), 1.0):
-            return moved
-    return label
+def _stepped(label: Label, obstacles: Obstacles, way: int, room: float = 0.0) -> Label:
+    """Give the label moved up (`way` -1) or down (1) until it and `room` beyond it are clear."""
+    moved = label
+    while not obstacles.free(around([moved.box, moved.box.moved(0.0, way * room)]), 1.0):
+        moved = moved.moved(0.0, way * 3.0)
+    return moved
 
 
 def _draw_resultants(
@@ -309,7 +310,7 @@ def _draw_resultants(
             colour = _colour(force.value)
             sketch.arrows([ends if force.value > 0 else ends[::-1]], Stroke(colour, 1.8), 8.0)
             obstacles.add_line(ends)
-        labels.append((Label(right, y + 13, f"{force.label}", SMALL, "right"), 1))
+        labels.append((Label(right, y + 13, force.label, SMALL, "right"), 1))
     if drawing.moment is not None:
         if drawing.moment.value:
             sweep = 116.0 if drawing.moment.value > 0 else -116.0
@@ -334,10 +335,8 @@ def _colour(value: float) -> Colour:
 
 
 def _describe(drawing: StressDrawing) -> str:
-    said = [
-        f"{drawing.stress_title}: " + ", ".join(f"{m.label} {_word(m.value) if m.value else ''}".strip() for m in drawing.marks),
-        drawing.neutral_axis_label,
-    ]
+    values = [f"{m.label} {_word(m.value)}" if m.value else m.label for m in drawing.marks]
+    said = [f"{drawing.stress_title}: " + ", ".join(values), drawing.neutral_axis_label]
     if drawing.moment:
         said.append(drawing.moment.label)
     said += [force.label for force in drawing.forces]

@@ -77,10 +77,11 @@ def calc_from(source: SourceFile) -> Calc:
 
 def _take_title(tokens: list[Token], report: Report) -> tuple[str | None, list[Token]]:
     """Return the text of the first level-1 heading, and the tokens without it."""
-    for index, token in enumerate(tokens):
-        if token.type == "heading_open" and token.tag == "h1" and token.level == 0:
-            break
-    else:
+    headings = (
+        i for i, t in enumerate(tokens) if t.type == "heading_open" and t.tag == "h1" and t.level == 0
+    )
+    index = next(headings, None)
+    if index is None:
         return None, tokens
     prose = read_prose(tokens[index : index + 3], report)
     for place in prose.places:
@@ -130,7 +131,6 @@ def _read_fence(fence: Token, report: Report) -> tuple[Block | FailedBlock, froz
     end = source.line_starts[last - 1] + len(source.line(last))
     span, kind = Span(start, end), _kind(fence)
     head = Span(start + opening.start(3), head_span.end)
-    later = _later_names(opening[3]) if kind in LATER else frozenset[str]()
     try:
         if not closed:
             raise _unclosed(head_span)
@@ -139,7 +139,7 @@ def _read_fence(fence: Token, report: Report) -> tuple[Block | FailedBlock, froz
         name = _block_name(kind, head, source)
     except ReadingError as fault:
         fault.report_to(report)
-        return FailedBlock(kind, span), later | _names_in(fence)
+        return FailedBlock(kind, span), _names_in(fence)
     lines = read_lines(source, content, report)
     outcome = READERS[kind](BlockText(kind, name, head, span, lines), report)
     return outcome.block or FailedBlock(kind, span), outcome.failed_names
@@ -192,7 +192,7 @@ def _check_fence(fence: Token, report: Report) -> frozenset[str]:
             f"the block '{kind}' stands inside a list or a quotation",
             hint="a live block stands at the left margin of the calc",
         )
-        return _names_in(fence) | _later_names(fence.info)
+        return _names_in(fence)
     if fence.level == 0 and not _is_closed(fence, source):
         _unclosed(head).report_to(report)
         return frozenset()
@@ -224,16 +224,18 @@ def _is_closed(fence: Token, source: SourceFile) -> bool:
 
 
 def _names_in(fence: Token) -> frozenset[str]:
-    """Return the names that the lines and the head of a fence would define."""
-    words = fence.info.split()
-    head = canonical_name(words[1]) if len(words) > 1 else None
-    found = frozenset[str]().union(*(defined_names(line) for line in fence.content.split("\n")))
-    return found | {head} if head else found
+    """Return the names that a fence would define; one that is not closed has swallowed other blocks."""
+    found = _head_names(fence.info)
+    lines = fence.content.split("\n")
+    if fence.info.split()[:1] not in [[kind] for kind in NAMED]:
+        found = found.union(*(defined_names(line) for line in lines))
+    heads = (opening[3] for opening in map(_OPENING.fullmatch, lines) if opening)
+    return found.union(*map(_head_names, heads))
 
 
-def _later_names(head: str) -> frozenset[str]:
-    """Return the name that the head of a block would define: `table NAME`, `method FILE as NAME`."""
+def _head_names(head: str) -> frozenset[str]:
+    """Return the name that the head of a block defines: `beam NAME`, `method FILE as NAME`."""
     words = head.split("|")[0].split()
-    name = words[-1] if len(words) > 1 else ""
-    found = canonical_name(name) if name else None
+    named = words[:1] == ["method"] or words[:1] in [[kind] for kind in NAMED]
+    found = canonical_name(words[-1]) if named and len(words) > 1 else None
     return frozenset({found}) if found else frozenset()

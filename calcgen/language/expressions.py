@@ -93,8 +93,14 @@ def comparison(cursor: Cursor) -> Comparison:
             hint="write each comparison as a check on a line of its own",
         )
     if not isinstance(node, Comparison):
-        if not cursor.ended:
-            raise cursor.unexpected()
+        if cursor.sees("="):
+            raise ReadingError(
+                "unexpected",
+                cursor.span(cursor.token),
+                "only a name stands on the left side of '='",
+                hint="write name = ... to define a value, == to compare",
+            )
+        cursor.finish()
         raise ReadingError(
             "not-a-statement",
             node.span,

@@ -68,8 +68,8 @@ def _image_span(image: Token, text: Pieced) -> Span:
 def _located(token: Token, source: SourceFile, cursors: dict[int, int]) -> Pieced:
     """Return the text of an inline token with the place of each of its lines.
 
-    Each line stands in the file behind the marks of its list or quotation. Where it does not stand there as it
-    is (a tab or an escaped '|' was rewritten), its characters are placed at the start of the line.
+    Each line stands in the file behind the marks of its list or quotation. Where it does not stand there
+    as it is (a tab or an escaped '|' was rewritten), its characters are placed at the start of the line.
     `cursors` has the column behind what was found before on a line: the cells of a table share one.
     """
     starts: list[int] = []

@@ -12,7 +12,7 @@ from calcgen.profiles.profile import Axes
 
 # A kind is a power of length, mass along a length, or a plain number.
 Kind: TypeAlias = Literal[1, 2, 3, 4, 6, "mass", "number"]
-Part: TypeAlias = Literal["dimensions", "stated", "published"]
+Part: TypeAlias = Literal["dimensions", "stated", "published", "text"]
 
 KINDS: Mapping[Kind, str] = {
     1: "a length",
@@ -41,6 +41,7 @@ SIZES: Mapping[str, tuple[Sizes, ...]] = {
     "tube": ((("d", "t"), ()),),
 }
 SYNONYMS: Mapping[str, str] = {"d": "h", "b_f": "b"}
+TEXTS = ("designation", "source")
 STATED = frozenset({"k_des", "t_nom"})
 ZERO_ALLOWED = frozenset({"r", "r_toe", "r_1", "r_2", "r_o", "r_i", "slope"})
 
@@ -111,7 +112,7 @@ class Column:
 
     part: Part
     name: str
-    factor: float
+    factor: float = 1.0
 
 
 def sizes_of(shape: str) -> frozenset[str]:

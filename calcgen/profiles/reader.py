@@ -13,12 +13,13 @@ import re
 from collections.abc import Iterator, Sequence
 from difflib import get_close_matches
 from pathlib import PurePosixPath
-from typing import TypeAlias, TypeVar
+from typing import TypeVar
 
 from calcgen.profiles.columns import (
     KINDS,
     PUBLISHED,
     SYNONYMS,
+    TEXTS,
     UNITS,
     ZERO_ALLOWED,
     Column,
@@ -30,12 +31,9 @@ from calcgen.profiles.columns import (
 from calcgen.profiles.columns import SIZES as SHAPES
 from calcgen.profiles.profile import Axes, CatalogueFault, Profile, designation_key
 
-Header: TypeAlias = tuple[Column | str, ...]  # a text column stands as its name
-
 Choice = TypeVar("Choice", bound=str)
 
 AXES: tuple[Axes, ...] = ("eurocode", "american")
-TEXT_COLUMNS = ("designation", "source")
 
 _DIRECTIVE = re.compile(r"#\s*(axes|shape|family)\s*=\s*(.*?)\s*")
 _HEADER_CELL = re.compile(r"(\S+?)\s*\[\s*(.*?)\s*\]")
@@ -62,7 +60,8 @@ class _Reading:
 
     def __init__(self, name: str, text: str) -> None:
         self.name = name
-        self.lines = text.removeprefix("\ufeff").splitlines()
+        # only these end a line, as in every other text of a project
+        self.lines = re.split(r"\r\n|\r|\n", text.removeprefix("\ufeff"))
         self.faults: list[CatalogueFault] = []
         self.directives: dict[str, tuple[str, int]] = {}
         self.table: list[int] = []  # the lines of the header and the rows
@@ -113,36 +112,36 @@ class _Reading:
         for choice in known:
             if choice == value:
                 return choice
-        self._fault(line, f"'{value}' is not a known {directive}", f"known: {', '.join(known)}")
+        self._fault(line, f"unknown {directive} '{value}'", f"known: {', '.join(known)}")
         return None
 
-    def _header(self, line: int, shape: str, axes: Axes) -> Header | None:
+    def _header(self, line: int, shape: str, axes: Axes) -> tuple[Column, ...] | None:
         """Read the header; None when it has a fault."""
         before = len(self.faults)
         cells = self._cells(line)
         if len(cells) == 1 and re.search(r"[;\t]", cells[0]):
             self._fault(line, "the cells are not separated by commas", "write commas, and decimal points")
             return None
-        columns: list[Column | str] = []
+        columns: list[Column] = []
         for n, cell in enumerate(cells):
             column = self._column(line, n, cell, shape, axes)
             if column is None:
                 continue
-            name = column if isinstance(column, str) else column.name
-            if any(name == (other if isinstance(other, str) else other.name) for other in columns):
-                self._fault(line, f"'{cell}' gives {name} a second time", cell=n)
+            if column.name in {other.name for other in columns}:
+                self._fault(line, f"'{cell}' gives {column.name} a second time", cell=n)
             columns.append(column)
         if len(self.faults) > before:
             return None
-        if "designation" not in columns:
+        names = [column.name for column in columns]
+        if "designation" not in names:
             self._fault(line, "there is no column 'designation'")
-        if missing := sizes_missing(shape, [c.name for c in columns if isinstance(c, Column)]):
+        if missing := sizes_missing(shape, names):
             self._fault(line, f"there is no column for {', '.join(missing)}", f"{shape} needs it")
         return tuple(columns) if len(self.faults) == before else None
 
-    def _column(self, line: int, n: int, cell: str, shape: str, axes: Axes) -> Column | str | None:
-        if cell in TEXT_COLUMNS:
-            return cell
+    def _column(self, line: int, n: int, cell: str, shape: str, axes: Axes) -> Column | None:
+        if cell in TEXTS:
+            return Column("text", cell)
         match = _HEADER_CELL.fullmatch(cell)
         written = match[1] if match else cell
         meaning = column_meaning(written, shape, axes)
@@ -162,19 +161,20 @@ class _Reading:
             return None
         return Column(part, name, unit[1])
 
-    def _profile(self, line: int, header: Header, shape: str, axes: Axes) -> Profile | None:
+    def _profile(self, line: int, header: tuple[Column, ...], shape: str, axes: Axes) -> Profile | None:
         """Read a row; None when it has a fault."""
         before = len(self.faults)
         cells = self._cells(line)
-        if len(cells) != len(header):
-            hint = "put quotes around a text with commas" if len(cells) > len(header) else ""
+        if len(self.faults) == before and len(cells) != len(header):
+            hint = "quotes around a text with commas?" if len(cells) > len(header) else "a quote left open?"
             self._fault(line, f"{len(cells)} cells stand under {len(header)} columns", hint)
+        if len(self.faults) > before:
             return None
         texts: dict[str, str] = {}
         values: dict[str, dict[str, float]] = {"dimensions": {}, "stated": {}, "published": {}}
         for n, (column, cell) in enumerate(zip(header, cells, strict=True)):
-            if isinstance(column, str):
-                texts[column] = cell
+            if column.part == "text":
+                texts[column.name] = cell
             elif cell:
                 values[column.part][column.name] = self._value(line, n, column, cell)
         if not texts["designation"]:
@@ -205,14 +205,21 @@ class _Reading:
         """Value of a cell in SI units; NaN with a fault when it has none."""
         value = _number(cell)
         if math.isnan(value):
-            self._fault(line, f"'{cell}' is not a number", "write a decimal point" * ("," in cell), cell=n)
+            hint = "write a decimal point" if "," in cell else ""
+            self._fault(line, f"'{cell}' is not a number", hint, cell=n)
         elif value < 0.0 or (value == 0.0 and column.name not in ZERO_ALLOWED):
             self._fault(line, f"{column.name} must be positive", cell=n)
         return value * column.factor
 
     def _cells(self, line: int) -> list[str]:
+        """Cells of a line; none, with a fault, where it is no CSV."""
         # a row never goes on in the next line, so that a quote left open spoils one row only
-        return [cell.strip() for cell in next(csv.reader([self.lines[line - 1]], skipinitialspace=True))]
+        try:
+            row = next(csv.reader([self.lines[line - 1]], skipinitialspace=True))
+        except csv.Error as error:
+            self._fault(line, f"the line cannot be split into cells: {error}")
+            return []
+        return [cell.strip() for cell in row]
 
     def _fault(self, line: int, message: str, hint: str = "", *, cell: int = 0) -> None:
         column = 1
@@ -239,6 +246,6 @@ def _hint_for_column(written: str, shape: str, axes: Axes) -> str:
     for other in AXES:
         if other != axes and written in PUBLISHED[other]:
             return f"{written} is a name of the {other} axes, and the file's are {axes}"
-    known = [*TEXT_COLUMNS, *sorted(sizes_of(shape)), *SYNONYMS, *PUBLISHED[axes]]
+    known = [*TEXTS, *sorted(sizes_of(shape)), *SYNONYMS, *PUBLISHED[axes]]
     near = get_close_matches(written, known, n=1)
     return f"did you mean {near[0]}?" if near else f"known: {', '.join(known)}"

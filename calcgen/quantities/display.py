@@ -5,6 +5,7 @@ from __future__ import annotations
 import math
 from collections.abc import Mapping
 from dataclasses import dataclass
+from decimal import ROUND_HALF_UP, Context, Decimal
 from typing import Literal
 
 from calcgen.quantities.measure import Dimension, Measure, dimension_of, magnitude_in, unit_size
@@ -151,7 +152,7 @@ def show(value: Measure, style: Style, digits: int | None = None) -> Shown:
 
 
 def number_text(number: float, digits: int = 4) -> str:
-    """Return a number with `digits` significant figures, never fewer than its integer part has.
+    """Return a number with `digits` significant figures, halves rounded up, never fewer than its integer part has.
 
     From a million and below a ten-thousandth it is written with a power of ten.
 
@@ -162,13 +163,14 @@ def number_text(number: float, digits: int = 4) -> str:
         return "not finite"
     if number == 0:
         return "0"
-    mantissa, _, tail = f"{abs(number):.{digits - 1}e}".partition("e")
-    exponent = int(tail)
+    exact = Decimal(repr(abs(rounded(number))))  # 8.4375, not 8.43749999999999
+    figures = Context(prec=digits, rounding=ROUND_HALF_UP).create_decimal(exact)
+    exponent = figures.adjusted()
     sign = "−" if number < 0 else ""
     if exponent >= 6 or exponent < -4:
-        return f"{sign}{mantissa} × 10{_superscript(exponent)}"
+        return f"{sign}{figures.scaleb(-exponent):.{digits - 1}f} × 10{_superscript(exponent)}"
     places = max(0, digits - 1 - exponent)
-    return f"{sign}{abs(number):.{places}f}"
+    return f"{sign}{exact.quantize(Decimal(1).scaleb(-places), rounding=ROUND_HALF_UP):f}"
 
 
 def rounded(number: float, digits: int = 12) -> float:

@@ -331,7 +331,7 @@ def _second_route(name: str, data: BeamData, groups: tuple[GroupResult, ...]) ->
         for c in group.combinations:
             loads = combined(data.cases, c.factors)
             for r in beam_residuals(data.model, loads, c.solution):
-                row = SecondRoute(name, r.what, r.residual, r.tolerance, r.quantity)
+                row = SecondRoute.found(name, r.what, r.residual, r.tolerance, r.quantity)
                 held = worst.get(r.what)
                 if held is None or not abs(r.residual) <= abs(held.residual):
                     worst[r.what] = row

@@ -32,7 +32,7 @@ def case_kinds(lines: Lines) -> dict[str, str]:
     kinds: dict[str, str] = {}
     for line in lines.of(CaseLine):
         if line.target.name in kinds:
-            lines.fault("given-twice", line.span, f"the case '{line.target.name}' is declared twice")
+            lines.fault("written-twice", line.span, f"the case '{line.target.name}' is declared twice")
         lines.keep_free_of_results(line.target)
         kinds[line.target.name] = line.kind.name if line.kind is not None else ""
     return kinds
@@ -48,9 +48,9 @@ def combinations_of(
     for line in typed:
         name = line.target.name
         if any(c.name == name for c in found):
-            lines.fault("given-twice", line.target.span, f"the combination '{name}' is given twice")
+            lines.fault("written-twice", line.target.span, f"the combination '{name}' is given twice")
         if name in groups:
-            lines.fault("given-twice", line.target.span, f"'{name}' is the name of a group, too")
+            lines.fault("written-twice", line.target.span, f"'{name}' is the name of a group, too")
         for label in (line.target, line.group):
             if label is not None:
                 lines.keep_free_of_results(label)
@@ -71,7 +71,7 @@ def combinations_of(
         found.append(Combination(name, group, factors, line.span))
     used = {case for c in found for case in c.factors}
     for target in [c.target for c in lines.of(CaseLine)] + [c.case for c in lines.of(LoadLine)]:
-        if found and target.name not in used:
+        if found and not lines.failed and target.name not in used:
             used.add(target.name)
             lines.report.warning(
                 "case-unused",

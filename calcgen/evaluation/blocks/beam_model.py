@@ -97,7 +97,7 @@ def _spans(lines: Lines) -> tuple[float, ...] | None:
         lines.fault("span-missing", lines.block.head_span, "the beam has no span", hint="write span = 6 m")
         return None
     if len(typed) > 1:
-        lines.fault("given-twice", typed[1].span, "the spans are given twice")
+        lines.fault("written-twice", typed[1].span, "the spans are given twice")
     lengths = []
     for node in typed[0].lengths:
         length = lines.number(node, "length")
@@ -116,7 +116,7 @@ def _settings(lines: Lines) -> dict[str, BeamSetting]:
         if line.key.name in found:
             first = found[line.key.name]
             lines.fault(
-                "given-twice",
+                "written-twice",
                 line.key.span,
                 f"'{line.key.name}' is given twice",
                 related=(Related(first.key.span, "first here"),),

@@ -66,7 +66,7 @@ def properties_of(lines: Lines, E: Measure | None) -> list[Property]:
         if line.start is None:
             if base is not None and (base.EI is not None) != (EI is not None):
                 lines.fault(
-                    "given-twice", line.span, "'EI' stands for 'section' and 'E': give one of the two"
+                    "written-twice", line.span, "'EI' stands for 'section' and 'E': give one of the two"
                 )
             base = found
         elif end - start <= 1e-9 * lines.length:

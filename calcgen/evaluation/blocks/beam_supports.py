@@ -96,7 +96,7 @@ def hinges_of(lines: Lines, supports: tuple[Support, ...]) -> tuple[float, ...]:
                 hint="remove it",
             )
         elif any(abs(x - other) <= least for other in found):
-            lines.fault("given-twice", line.span, f"there is a hinge at {lines.text(x)} already")
+            lines.fault("written-twice", line.span, f"there is a hinge at {lines.text(x)} already")
         elif any(abs(x - s.x) <= least and (s.rotation or s.lateral_rotation) for s in supports):
             lines.fault(
                 "hinge-at-fixed", line.span, "a hinge cannot stand at a support that holds the rotation"

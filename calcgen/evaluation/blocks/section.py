@@ -11,6 +11,7 @@ from calcgen.evaluation.conventions import DIMENSIONS, LATER, PROPERTIES, Axes, 
 from calcgen.evaluation.quantity import quantity_of
 from calcgen.evaluation.results import Plain, Published, Result, SecondRoute, SectionResult
 from calcgen.evaluation.scope import Scope
+from calcgen.evaluation.tables import tolerances
 from calcgen.language.blocks.section import SectionBlock, ShapeLine, ShapeText
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Expression, Name
@@ -84,7 +85,7 @@ def evaluate_section(
     lines = [line for line in block.items if isinstance(line, ShapeLine)]
     if len(lines) > 1:
         scope.report.error(
-            "shape-given-twice",
+            "written-twice",
             lines[1].span,
             "a section has one shape",
             hint="several shapes are parts of a section",
@@ -130,7 +131,7 @@ def _section(
         dimensions=_with_synonyms(placed.dimensions, text.shape.name if profile is None else profile.shape),
         results=_results(values, published, scope.style, axes),
         published=_beside(published, computed, profile, scope.style, axes),
-        second_route=_second_route(name, computed, placed, published, profile),
+        second_route=_second_route(name, computed, placed, published, profile, axes),
         note=line.annotations.note,
         reference=line.annotations.reference,
         line=scope.report.source.line_number(block.head_span),
@@ -231,7 +232,7 @@ def _beside(
                 show(from_si(published[p.key], si_unit).shown_in(unit), style),
                 show(from_si(own, si_unit).shown_in(unit), style),
                 (own - published[p.key]) / abs(published[p.key]),
-                profile.tolerances.get(p.key, math.inf),
+                tolerances(profile).get(p.key, math.inf),
             )
         )
     return tuple(rows)
@@ -243,11 +244,16 @@ def _second_route(
     placed: Shape,
     published: Mapping[str, float],
     profile: Profile | None,
+    axes: Axes,
 ) -> tuple[SecondRoute, ...]:
     found = [*section_residuals(computed, placed.outline)]
     if profile is not None:
-        found += published_residuals(published, computed, profile.tolerances)
-    return tuple(SecondRoute(name, r.what, r.residual, r.tolerance, r.quantity) for r in found)
+        found += published_residuals(published, computed, tolerances(profile))
+    symbols = {p.key: p.name(axes) for p in PROPERTIES}
+    return tuple(
+        SecondRoute.found(name, symbols.get(r.what, r.what), r.residual, r.tolerance, r.quantity)
+        for r in found
+    )
 
 
 def section_named(node: Expression, scope: Scope) -> SectionThing | None:

@@ -111,7 +111,7 @@ def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, floa
             complete = False
             found = nearest(argument.name.name, form.names)
             scope.report.error(
-                "unknown-argument",
+                "unknown-word",
                 argument.name.span,
                 f"'{word}' has no '{argument.name.name}'",
                 hint=f"the nearest is '{found}'" if found else f"it takes {', '.join(kinds)}",
@@ -119,7 +119,7 @@ def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, floa
             continue
         if name in given:
             complete = False
-            scope.report.error("argument-given-twice", argument.name.span, f"'{name}' is given twice")
+            scope.report.error("written-twice", argument.name.span, f"'{name}' is given twice")
             continue
         value = si(argument.value, "length" if kinds[name] == "length" else "number", scope)
         if value is None:

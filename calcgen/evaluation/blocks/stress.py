@@ -137,7 +137,7 @@ def _stress(name: str, block: StressBlock, scope: Scope, labels: Labels) -> Stre
         check=_limit(name, block, limit, results, scope, labels),
         premises=stress_premises(name, section, plane, forces, strength, outline, scope),
         second_route=tuple(
-            SecondRoute(name, r.what, r.residual, r.tolerance, r.quantity)
+            SecondRoute.found(name, r.what, r.residual, r.tolerance, r.quantity)
             for r in stress_residuals(plane, forces, outline)
         ),
         line=scope.report.source.line_number(block.head_span),
@@ -180,7 +180,7 @@ def _elastic(node: object, scope: Scope) -> bool:
         return False
     found = nearest(node.dotted, ("elastic", *_LATER_MODELS))
     scope.report.error(
-        "unknown-model",
+        "unknown-word",
         node.span,
         f"there is no model '{node.dotted}'",
         hint=f"the nearest is '{found}'" if found else f"models are elastic, {', '.join(_LATER_MODELS)}",

@@ -6,7 +6,6 @@ from dataclasses import dataclass
 
 from calcgen.language.blocks.reading import BlockText, Outcome, names_of, read_each
 from calcgen.language.cursor import Cursor
-from calcgen.language.errors import ReadingError
 from calcgen.language.expressions import comparison, formula
 from calcgen.language.lines import Line
 from calcgen.language.nodes import Annotations, Comparison, Formula, Named, UnitText
@@ -57,13 +56,6 @@ def _read_statement(line: Line, cursor: Cursor) -> Derivation | Check:
     if cursor.token.kind in ("name", "word") and cursor.following.text in ("=", "[", ":="):
         return _read_derivation(line, cursor)
     statement = comparison(cursor)
-    if cursor.sees("="):
-        raise ReadingError(
-            "unexpected",
-            cursor.span(cursor.token),
-            "only a name stands on the left side of '='",
-            hint="write == to compare",
-        )
     cursor.finish()
     return Check(statement, line.statement_text, line.annotations, line.span, line.statement_span)
 

@@ -1,0 +1,345 @@
+"""Invented drawings of every kind, plain and extreme, for the tests of figures."""
+
+from dataclasses import replace
+
+import numpy as np
+from numpy.typing import NDArray
+
+from calcgen.figures.beam import BeamDrawing, Stretch, compose_beam
+from calcgen.figures.beam_diagrams import Diagram, Extreme
+from calcgen.figures.beam_loads import CoupleLoad, Distributed, Effect, LoadCase, PointLoad
+from calcgen.figures.beam_supports import Support
+from calcgen.figures.conventions import ConventionDrawing, compose_conventions
+from calcgen.figures.dimensions import Dimension
+from calcgen.figures.field import FieldDrawing, FieldMark, FieldPart, compose_field
+from calcgen.figures.outline import AMERICAN, Part
+from calcgen.figures.picture import Picture, Width
+from calcgen.figures.section import Leader, SectionDrawing, compose_section
+from calcgen.figures.stress import Couple, Force, Mark, StressDrawing, compose_stress
+
+Ring = NDArray[np.float64]
+
+
+def rectangle(b: float, h: float, x: float = 0.0, y: float = 0.0) -> Ring:
+    left, right, bottom, top = x - b / 2, x + b / 2, y - h / 2, y + h / 2
+    return np.array([(left, bottom), (right, bottom), (right, top), (left, top)])
+
+
+def circle(d: float, x: float = 0.0, y: float = 0.0, *, hole: bool = False) -> Ring:
+    turns = np.linspace(0, 2 * np.pi, 48, endpoint=False)[:: -1 if hole else 1]
+    return np.column_stack([x + d / 2 * np.cos(turns), y + d / 2 * np.sin(turns)])
+
+
+ANGLE = Part((np.array([(0, 0), (100, 0), (100, 12), (12, 12), (12, 150), (0, 150)], dtype=float),))
+PLATE = Part((rectangle(60, 240),))
+BARS = tuple(Part((circle(20, x, -200),), "steel, E = 200 GPa", "solid") for x in (-100, -33, 33, 100))
+
+SECTION = SectionDrawing(
+    ident="angle",
+    title="angle 150 × 100 × 12",
+    parts=(ANGLE,),
+    centroid=(24.2, 48.9),
+    principal_angle=114.0,
+    shear_centre=(6.0, 6.0),
+    plastic_axis=30.0,
+    dimensions=(
+        Dimension("h = 150", (0, 0), (0, 150), "left"),
+        Dimension("b = 100", (0, 0), (100, 0), "bottom"),
+        Dimension("t = 12", (100, 0), (100, 12), "right"),
+        Dimension("12 mm", (0, 90), (12, 90), "across"),
+    ),
+)
+RIB = SectionDrawing(
+    ident="rib",
+    title="slab rib",
+    parts=(Part((rectangle(300, 500),), "concrete, E = 12 GPa", "hatched"), *BARS),
+    centroid=(0, -8),
+    axes=AMERICAN,
+    leaders=(Leader("4 of 20 mm", (100, -200)),),
+    dimensions=(Dimension("500", (-150, -250), (-150, 250), "left"),),
+)
+TUBE = SectionDrawing(
+    ident="tube",
+    title="tube 168.3 × 6.3",
+    parts=(Part((circle(168.3), circle(155.7, hole=True))),),
+    centroid=(0, 0),
+    dimensions=(Dimension("t = 6.3", (77.85, 0), (84.15, 0), "across"),),
+)
+ONE_MILLIMETRE = replace(TUBE, ident="wire", title="wire", parts=(Part((circle(1.0),)),), dimensions=())
+STRIP = replace(
+    TUBE, ident="strip", title="strip 2000 × 1", parts=(Part((rectangle(2000, 1),)),), dimensions=()
+)
+LONG_NAMES = replace(
+    RIB,
+    ident="long",
+    leaders=(Leader("a note that goes on for longer than any place for it could ever be wide", (0, 200)),),
+)
+
+SAGGING = StressDrawing(
+    ident="sagging",
+    title="plate 60 × 240",
+    parts=(PLATE,),
+    centroid=(0, 0),
+    stress=((-120, 104.6), (120, -104.6)),
+    marks=(Mark(120, -104.6, "−104.6 MPa"), Mark(-120, 104.6, "+104.6 MPa")),
+    neutral_axis=0.0,
+    neutral_axis_label="neutral axis, at the centroid",
+    moment=Couple(33.93, "M = 33.93 kN·m"),
+)
+HOGGING = replace(
+    SAGGING,
+    ident="hogging",
+    stress=((-120, -144.6), (120, 64.6)),
+    marks=(Mark(120, 64.6, "+64.6 MPa"), Mark(-120, -144.6, "−144.6 MPa")),
+    neutral_axis=45.9,
+    neutral_axis_label="neutral axis, 45.9 mm above the centroid",
+    moment=Couple(-33.93, "M = −33.93 kN·m"),
+    forces=(Force(0, -156, "N = −156 kN"),),
+    strain=((-120, -0.688), (120, 0.308)),
+    strain_marks=(Mark(120, 0.308, "+0.308 ‰"), Mark(-120, -0.688, "−0.688 ‰")),
+)
+MOSTLY_AXIAL = replace(
+    SAGGING,
+    ident="axial",
+    stress=((-120, -120.0), (120, -160.0)),
+    marks=(Mark(120, -160, "−160.0 MPa"), Mark(-120, -120, "−120.0 MPa")),
+    neutral_axis=None,
+    neutral_axis_label="neutral axis outside the section: 840 mm below the centroid",
+    forces=(Force(0, -547, "N = −547 kN"),),
+)
+PURE_AXIAL = replace(
+    MOSTLY_AXIAL,
+    ident="pure",
+    stress=((-120, 80.0), (120, 80.0)),
+    marks=(Mark(120, 80, "+80.0 MPa"),),
+    neutral_axis_label="no neutral axis: the stress is uniform",
+    moment=None,
+)
+NO_STRESS = replace(
+    PURE_AXIAL,
+    ident="none",
+    stress=((-120, 0.0), (120, 0.0)),
+    marks=(Mark(120, 0.0, "0 MPa"),),
+    neutral_axis_label="no stress",
+    forces=(),
+)
+PLASTIC = replace(
+    SAGGING,
+    ident="plastic",
+    parts=(Part((rectangle(2000, 12),)),),
+    stress=((-6, 235.0), (0, 235.0), (0, -235.0), (6, -235.0)),
+    marks=(Mark(6, -235, "−235 MPa"), Mark(-6, 235, "+235 MPa")),
+    note="Plastic: the stress is at yield over the whole depth.",
+)
+HUGE = replace(
+    SAGGING,
+    ident="huge",
+    stress=((-120, 1e12), (120, -1e12)),
+    marks=(Mark(120, -1e12, "−1 000 000 000 000.0 N/mm²"), Mark(-120, 1e12, "+1 000 000 000 000.0 N/mm²")),
+    edges=("left", "right"),
+)
+
+FIELD_PART = FieldPart(ANGLE, 56.11, -0.5, -0.9)
+FIELD = FieldDrawing(
+    ident="field",
+    title="angle 150 × 100 × 12",
+    parts=(FIELD_PART,),
+    centroid=(24.2, 48.9),
+    marks=(
+        FieldMark((0, 150), -78.9, "−78.9 MPa"),
+        FieldMark((100, 0), 6.1, "+6.1 MPa"),
+        FieldMark((0, 0), 56.1, "+56.1 MPa"),
+    ),
+    neutral_axis_label="neutral axis turned −29.1° from y–y",
+    actions=("M = 5.0 kN·m about y–y (horizontal axis): tension at the bottom",),
+)
+UNIFORM_FIELD = replace(
+    FIELD,
+    ident="even",
+    parts=(FieldPart(ANGLE, 20.0, 0.0, 0.0),),
+    marks=(FieldMark((0, 150), 20.0, "+20.0 MPa"),),
+)
+NO_FIELD = replace(
+    FIELD,
+    ident="nil",
+    parts=(FieldPart(ANGLE, 0.0, 0.0, 0.0),),
+    marks=(FieldMark((0, 150), 0.0, "0 MPa"),),
+)
+
+MOMENT_NOTE = "drawn on the tension side: sagging below the line"
+
+
+def simple_beam(span: float = 6.0, load: float = 10.0) -> BeamDrawing:
+    """V = w(L/2 − x) and M = w·x(L − x)/2 of a simple span (statics)."""
+    x = np.linspace(0, span, 81)
+    shear = tuple((float(a), load * (span / 2 - float(a))) for a in x)
+    moment = tuple((float(a), load * float(a) * (span - float(a)) / 2) for a in x)
+    return BeamDrawing(
+        ident="simple",
+        title="loading, G and Q",
+        start=0.0,
+        end=span,
+        supports=(Support(0.0, "pin", "1: R = 30.0 kN"), Support(span, "roller", "2: R = 30.0 kN")),
+        cases=(
+            LoadCase("G permanent", (Distributed(0, span, 0.31, 0.31, "self-weight 0.31 kN/m"),)),
+            LoadCase(
+                "Q imposed",
+                (
+                    Distributed(0, span, 5, 5, "5.0 kN/m"),
+                    Distributed(0, span / 2, 0, 4, "0 to 4.0 kN/m"),
+                    Distributed(span / 2, span, -1, 2, "−1.0 to 2.0 kN/m"),
+                    PointLoad(span * 0.4, 9, "9.0 kN"),
+                    CoupleLoad(span, span, "4.0 kN·m"),
+                ),
+            ),
+        ),
+        diagrams=(
+            Diagram("shear force V, kN", shear, extremes=(Extreme(0, load * span / 2, "30.0 kN at 0 m"),)),
+            Diagram(
+                "bending moment M, kN·m",
+                moment,
+                extremes=(Extreme(span / 2, load * span**2 / 8, "45.0 kN·m at 3.00 m"),),
+                down=True,
+                note=MOMENT_NOTE,
+            ),
+        ),
+        stretches=(Stretch(0, span, "6.00 m"),),
+    )
+
+
+def envelope_beam() -> BeamDrawing:
+    x = np.linspace(0, 20, 161)
+    upper = tuple((float(a), 30 * float(np.sin(np.pi * a / 20))) for a in x)
+    lower = tuple((float(a), -12 * float(np.sin(np.pi * a / 10)) ** 2) for a in x)
+    return BeamDrawing(
+        ident="envelope",
+        title="loading",
+        start=0.0,
+        end=20.0,
+        supports=(
+            Support(0, "fixed", "A"),
+            Support(10, "spring", "B: 12 kN/mm", turning=True),
+            Support(20, "fixed", "C"),
+        ),
+        cases=(
+            LoadCase("C temperature", (Effect(0, 20, "top 15 K warmer"),)),
+            LoadCase(
+                "W wind", (CoupleLoad(12, 20, "2.0 kN·m/m", clockwise=False), PointLoad(3, -4, "−4.0 kN"))
+            ),
+        ),
+        diagrams=(
+            Diagram(
+                "bending moment M, kN·m, ULS",
+                upper,
+                lower,
+                (
+                    Extreme(10, 30, "30.0 kN·m at 10.00 m"),
+                    Extreme(5, -12, "−12.0 kN·m at 5.00 m"),
+                    Extreme(15, -12, "−12.0 kN·m at 15.00 m"),
+                ),
+                down=True,
+                note="drawn on the tension side; right",
+            ),
+        ),
+        stretches=(Stretch(0, 10, "10.00 m"), Stretch(10, 20, "10.00 m")),
+        hinges=(7.0,),
+        note="Lateral plane: loads act to the right.",
+    )
+
+
+def crowded_beam() -> BeamDrawing:
+    """Twelve spans, thirty point loads, twenty-four extremes."""
+    x = np.linspace(0, 60, 601)
+    wave = tuple((float(a), 8 * float(np.sin(2 * np.pi * a / 5)) * (1 + float(a) / 80)) for a in x)
+    extremes = tuple(
+        Extreme(at, value, f"{value:.2f} kN·m at {at:.2f} m") for at, value in wave[12::25] if abs(value) > 1
+    )
+    return BeamDrawing(
+        ident="crowded",
+        title="twelve spans",
+        start=0.0,
+        end=60.0,
+        supports=tuple(Support(5.0 * i, "roller" if i else "pin", f"{i + 1}") for i in range(13)),
+        cases=(LoadCase("Q", tuple(PointLoad(1 + 2 * i, 4, f"{4 + i / 100:.2f} kN") for i in range(30))),),
+        diagrams=(
+            Diagram("bending moment M, kN·m", wave, extremes=extremes, down=True, note=MOMENT_NOTE),
+            Diagram(
+                "deflection w, mm", ((0.0, 0.0), (60.0, 0.0)), extremes=(Extreme(0, 0, "0 mm throughout"),)
+            ),
+        ),
+        stretches=tuple(Stretch(5.0 * i, 5.0 * i + 5, "5.00 m") for i in range(12)),
+    )
+
+
+def neighbouring_extremes() -> BeamDrawing:
+    """Values so near to each other that their labels must step aside, though there is room for all."""
+    beam = simple_beam()
+    places = (0.0, 2.7, 3.0, 3.2, 3.3)
+    extremes = tuple(
+        Extreme(x, 10 * x * (6 - x) / 2, f"{10 * x * (6 - x) / 2:.1f} kN·m at {x:.2f} m") for x in places
+    )
+    return replace(beam, ident="near", diagrams=(replace(beam.diagrams[1], extremes=extremes),))
+
+
+def long_labels() -> BeamDrawing:
+    beam = simple_beam()
+    name = "an extreme with a name so long that no narrow place has room for it, at 3.00 m"
+    case = LoadCase("Q", (PointLoad(3, 1, name), PointLoad(3, 2, name + " too")))
+    return replace(
+        beam,
+        ident="wordy",
+        cases=(case,),
+        diagrams=(
+            replace(beam.diagrams[0], extremes=(Extreme(0, 30, name), Extreme(6, -30, name + " too"))),
+        ),
+    )
+
+
+Drawing = SectionDrawing | StressDrawing | FieldDrawing | BeamDrawing | ConventionDrawing
+
+_NAMED: dict[str, Drawing] = {
+    "angle": SECTION,
+    "rib": RIB,
+    "tube": TUBE,
+    "one millimetre": ONE_MILLIMETRE,
+    "strip": STRIP,
+    "long note": LONG_NAMES,
+    "sagging": SAGGING,
+    "hogging": HOGGING,
+    "mostly axial": MOSTLY_AXIAL,
+    "axial": PURE_AXIAL,
+    "none": NO_STRESS,
+    "plastic": PLASTIC,
+    "huge": HUGE,
+    "biaxial": FIELD,
+    "uniform": UNIFORM_FIELD,
+    "no field": NO_FIELD,
+    "simple": simple_beam(),
+    "tiny": simple_beam(1e-6, 1e-9),
+    "vast": simple_beam(1e9, 1e12),
+    "envelope": envelope_beam(),
+    "crowded": crowded_beam(),
+    "neighbours": neighbouring_extremes(),
+    "long labels": long_labels(),
+    "eurocode": ConventionDrawing("eurocode", "Axes and signs", "eurocode", "down"),
+    "american": ConventionDrawing("american", "Axes and signs", "american", "up"),
+}
+
+DRAWINGS: dict[str, Drawing] = {
+    f"{type(drawing).__name__.removesuffix('Drawing').lower()}-{name}": drawing
+    for name, drawing in _NAMED.items()
+}
+
+
+def compose(drawing: Drawing, width: Width) -> Picture:
+    match drawing:
+        case SectionDrawing():
+            return compose_section(drawing, width)
+        case StressDrawing():
+            return compose_stress(drawing, width)
+        case FieldDrawing():
+            return compose_field(drawing, width)
+        case BeamDrawing():
+            return compose_beam(drawing, width)
+        case ConventionDrawing():
+            return compose_conventions(drawing, width)
