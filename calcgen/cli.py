@@ -38,9 +38,8 @@ class Commands(click.Group):
             from calcgen.text import nearest
 
             found = nearest(args[0], self.list_commands(ctx)) if args else None
-            if found:
-                fault.message += f" Did you mean '{found}'?"
-            raise
+            hint = f" Did you mean '{found}'?" if found else ""
+            raise click.UsageError(f"{fault.message}{hint}", ctx) from None
 
 
 @click.group(cls=Commands, context_settings={"help_option_names": ["-h", "--help"]})

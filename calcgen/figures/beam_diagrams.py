@@ -157,7 +157,7 @@ def _beside(text: str, point: Point, obstacles: Obstacles) -> _Placed | None:
     places = [
         (gap + 0.12 * abs(shift) + (0.0 if way == out else 10.0), gap, shift, way)
         for gap in np.arange(4.0, 64.0, 4.0)
-        for shift in (0.0, -half - 4, half + 4, -half / 2, half / 2, -1.6 * half, 1.6 * half)
+        for shift in half * np.array([0.0, -0.5, 0.5, -1.1, 1.1, -1.6, 1.6, -2.4, 2.4, -3.4, 3.4])
         for way in (out, -out)
     ]
     for _, gap, shift, way in sorted(places, key=lambda place: place[0]):

@@ -7,7 +7,7 @@ from math import ceil
 import numpy as np
 
 from calcgen.figures.labels import Obstacles, Point, spread, two_lanes
-from calcgen.figures.picture import LINE, SMALL, THIN, Anchor, Label, Sketch, Stroke
+from calcgen.figures.picture import HAIR, LINE, SMALL, THIN, Anchor, Label, Sketch, Stroke
 
 TALL, LOW = 24.0, 9.0  # of the arrows of the largest and of the smallest load
 POINT_ARROW = 32.0
@@ -93,6 +93,8 @@ def draw_case(
     for tier, loads in enumerate(tiers):
         foot = base - sum(tops[:tier])
         for load in loads:
+            if tier:  # the loads below keep this one off the beam
+                sketch.line([(across(load.start), foot - 1), (across(load.end), foot - 1)], HAIR)
             _draw_stretch(sketch, load, foot, across, largest, taken)
     for single in singles:
         _draw_single(sketch, single, base, reach, across)
@@ -159,16 +161,18 @@ def _draw_distributed(
 ) -> None:
     """Draw the block of arrows."""
     left, right = ends
-    values = np.array([load.first, load.last])
-    share = np.abs(values) / largest if largest else np.zeros(2)
-    heights = np.where(values == 0, 0.0, LOW + (TALL - LOW) * share)
     foot -= 2.0
     count = max(ceil((right - left) / PITCH), 1)
     xs = np.linspace(left, right, count + 1)
-    block = np.interp(xs, [left, right], heights)
+    values = np.array([load.first, load.last])
+    if load.first * load.last < 0:  # the block comes down to the line where the load changes its sense
+        zero = left + (right - left) * load.first / (load.first - load.last)
+        xs = np.sort(np.append(xs, zero))
+        block = np.abs(np.interp(xs, [left, right], TALL * values / largest))
+    else:
+        heights = np.where(values == 0, 0.0, LOW + (TALL - LOW) * np.abs(values) / (largest or 1.0))
+        block = np.interp(xs, [left, right], heights)
     signed = np.interp(xs, [left, right], values)
-    if load.first * load.last < 0:  # the block passes through the line where the load changes its sense
-        block = np.abs(np.interp(xs, [left, right], np.copysign(heights, values)))
     sketch.line([(left, foot), *zip(xs, foot - block, strict=True), (right, foot)], LOAD)
     down = [((x, foot - h), (x, foot)) for x, h, s in zip(xs, block, signed, strict=True) if s > 0 and h > 4]
     up = [((x, foot), (x, foot - h)) for x, h, s in zip(xs, block, signed, strict=True) if s < 0 and h > 4]

@@ -87,6 +87,13 @@ PUBLISHED: Mapping[Axes, Mapping[str, tuple[str, Kind]]] = {
     },
 }
 
+# Published properties that integrals over the outline give.
+OF_OUTLINE = frozenset(name for columns in PUBLISHED.values() for name, _ in columns.values()) - {
+    "I_t",
+    "I_w",
+    "mass",
+}
+
 LENGTHS: Mapping[str, float] = {"mm": 1e-3, "cm": 1e-2, "m": 1.0, "in": 0.0254, "ft": 0.3048}
 POUND = 0.45359237  # kg, exact
 

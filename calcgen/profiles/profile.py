@@ -30,6 +30,8 @@ class Profile:
         horizontal axis and v about the vertical one, as the profile normally stands: A, m²; I_h I_v I_1 I_2
         I_t, m⁴; W_el_h W_el_v W_pl_h W_pl_v, m³; I_w, m⁶; i_h i_v i_1 i_2, m; the centroid x_bar from the
         back of the web or the heel and y_bar from the bottom, m; mass, kg/m.
+    tolerances : how far the outline's own A, I, W, i and centroid may lie from the published ones, relative
+        to those: what the catalogue states for its approximations, or half a unit of the last printed digit.
     source : where the row's figures come from.
     file, line : where it stands; lines count from 1.
     """
@@ -41,6 +43,7 @@ class Profile:
     dimensions: Mapping[str, float]
     stated: Mapping[str, float]
     published: Mapping[str, float]
+    tolerances: Mapping[str, float]
     source: str
     file: str
     line: int

@@ -1,8 +1,9 @@
 """Reads one catalogue of sections from its CSV text.
 
-Comment lines `# axes = eurocode`, `# shape = i_shape` and, at will, `# family = IPE` stand above the header,
-whose cells give each column's name and unit: `h [mm]`, `I_y [cm4]`. Every row is one section. An empty cell
-is a size or property that the table does not give.
+Comment lines `# axes = eurocode` and `# shape = i_shape` stand above the header, whose cells give each
+column's name and unit: `h [mm]`, `I_y [cm4]`. Every row is one section. An empty cell is a size or property
+that the table does not give. `# family = IPE` names what they are listed under (else the file's stem) and
+`# tolerance = 1 %` or `# tolerance I_z, W_el_z = 3 %` how far the table's figures may lie from the outline.
 """
 
 from __future__ import annotations
@@ -10,13 +11,15 @@ from __future__ import annotations
 import csv
 import math
 import re
-from collections.abc import Iterator, Sequence
+from collections.abc import Iterator, Mapping, Sequence
+from decimal import Decimal
 from difflib import get_close_matches
 from pathlib import PurePosixPath
 from typing import TypeVar
 
 from calcgen.profiles.columns import (
     KINDS,
+    OF_OUTLINE,
     PUBLISHED,
     SYNONYMS,
     TEXTS,
@@ -34,8 +37,10 @@ from calcgen.profiles.profile import Axes, CatalogueFault, Profile, designation_
 Choice = TypeVar("Choice", bound=str)
 
 AXES: tuple[Axes, ...] = ("eurocode", "american")
+TOLERANCE = 0.005  # relative, where a catalogue states none
+LARGEST_TOLERANCE = 0.10  # beyond it, a table and its outline are of two sections
 
-_DIRECTIVE = re.compile(r"#\s*(axes|shape|family)\s*=\s*(.*?)\s*")
+_DIRECTIVE = re.compile(r"#\s*(axes|shape|family|tolerance(?:\s[^=]*?)?)\s*=\s*(.*?)\s*")
 _HEADER_CELL = re.compile(r"(\S+?)\s*\[\s*(.*?)\s*\]")
 _CELL = re.compile(r'\s*"(?:[^"]|"")*"[^,]*|[^,]*')
 
@@ -79,11 +84,12 @@ class _Reading:
         if axes is None or shape is None or not self.table:
             return
         header = self._header(self.table[0], shape, axes)
-        if header is None:
+        tolerances = self._tolerances(axes)
+        if header is None or tolerances is None:
             return
         lines: dict[str, int] = {}
         for line in self.table[1:]:
-            profile = self._profile(line, header, shape, axes)
+            profile = self._profile(line, header, tolerances, shape, axes)
             if profile is None:
                 continue
             first = lines.setdefault(designation_key(profile.designation), line)
@@ -96,12 +102,13 @@ class _Reading:
         match = _DIRECTIVE.fullmatch(written)
         if match is None:
             return
+        directive = match[1].strip()
         if self.table:
-            self._fault(line, f"'{match[1]}' stands below the header", "move it to the top of the file")
-        elif match[1] in self.directives:
-            self._fault(line, f"'{match[1]}' is set twice")
+            self._fault(line, f"'{directive}' stands below the header", "move it to the top of the file")
+        elif directive in self.directives:
+            self._fault(line, f"'{directive}' is set twice")
         else:
-            self.directives[match[1]] = match[2], line
+            self.directives[directive] = match[2], line
 
     def _choice(self, directive: str, known: Sequence[Choice]) -> Choice | None:
         if directive not in self.directives:
@@ -114,6 +121,28 @@ class _Reading:
                 return choice
         self._fault(line, f"unknown {directive} '{value}'", f"known: {', '.join(known)}")
         return None
+
+    def _tolerances(self, axes: Axes) -> Mapping[str, float] | None:
+        """Relative tolerances by neutral name; None when one that the file states has a fault."""
+        before = len(self.faults)
+        stated: dict[str, float] = {}
+        for directive, (value, line) in self.directives.items():
+            word, *columns = re.split(r"[\s,]+", directive)
+            if word != "tolerance":
+                continue
+            tolerance = _number(value.removesuffix("%")) / 100.0 if value.endswith("%") else math.nan
+            if not 0.0 < tolerance <= LARGEST_TOLERANCE:
+                hint = f"write a percentage up to {100.0 * LARGEST_TOLERANCE:g} %, such as 0.5 %"
+                self._fault(line, f"'{value}' is not a tolerance", hint)
+            for column in columns:
+                if column not in PUBLISHED[axes]:
+                    self._fault(line, f"'{column}' is no property", f"known: {', '.join(PUBLISHED[axes])}")
+                else:
+                    stated[PUBLISHED[axes][column][0]] = tolerance
+            if not columns:
+                stated["*"] = tolerance
+        general = stated.get("*", TOLERANCE)
+        return {n: stated.get(n, general) for n in OF_OUTLINE} if len(self.faults) == before else None
 
     def _header(self, line: int, shape: str, axes: Axes) -> tuple[Column, ...] | None:
         """Read the header; None when it has a fault."""
@@ -161,7 +190,9 @@ class _Reading:
             return None
         return Column(part, name, unit[1])
 
-    def _profile(self, line: int, header: tuple[Column, ...], shape: str, axes: Axes) -> Profile | None:
+    def _profile(
+        self, line: int, header: tuple[Column, ...], stated: Mapping[str, float], shape: str, axes: Axes
+    ) -> Profile | None:
         """Read a row; None when it has a fault."""
         before = len(self.faults)
         cells = self._cells(line)
@@ -172,18 +203,22 @@ class _Reading:
             return None
         texts: dict[str, str] = {}
         values: dict[str, dict[str, float]] = {"dimensions": {}, "stated": {}, "published": {}}
+        tolerances: dict[str, float] = {}
         for n, (column, cell) in enumerate(zip(header, cells, strict=True)):
             if column.part == "text":
                 texts[column.name] = cell
             elif cell:
-                values[column.part][column.name] = self._value(line, n, column, cell)
+                value = self._value(line, n, cell, zero_allowed=column.name in ZERO_ALLOWED)
+                values[column.part][column.name] = value * column.factor
+                if column.part == "published" and column.name in OF_OUTLINE and value > 0.0:
+                    tolerances[column.name] = max(stated[column.name], _half_unit(cell) / value)
         if not texts["designation"]:
             self._fault(line, "the designation is missing")
-        dimensions, stated = values["dimensions"], values["stated"]
+        dimensions, k_des = values["dimensions"], values["stated"].get("k_des")
         if missing := sizes_missing(shape, list(dimensions)):
             self._fault(line, f"{', '.join(missing)} missing: {shape} needs it")
-        if len(self.faults) == before and "k_des" in stated and "t_f" in dimensions and "r" not in dimensions:
-            dimensions["r"] = stated["k_des"] - dimensions["t_f"]
+        elif k_des is not None and "t_f" in dimensions and "r" not in dimensions:
+            dimensions["r"] = k_des - dimensions["t_f"]
             if dimensions["r"] < 0.0:
                 self._fault(line, "k_des is less than t_f")
         if len(self.faults) > before:
@@ -194,22 +229,23 @@ class _Reading:
             shape=shape,
             axes=axes,
             dimensions=dimensions,
-            stated=stated,
+            stated=values["stated"],
             published=values["published"],
+            tolerances=tolerances,
             source=texts.get("source") or self.name,
             file=self.name,
             line=line,
         )
 
-    def _value(self, line: int, n: int, column: Column, cell: str) -> float:
-        """Value of a cell in SI units; NaN with a fault when it has none."""
+    def _value(self, line: int, n: int, cell: str, *, zero_allowed: bool) -> float:
+        """Value of a cell as written; a fault, with NaN perhaps, when it is no size or property."""
         value = _number(cell)
         if math.isnan(value):
             hint = "write a decimal point" if "," in cell else ""
             self._fault(line, f"'{cell}' is not a number", hint, cell=n)
-        elif value < 0.0 or (value == 0.0 and column.name not in ZERO_ALLOWED):
-            self._fault(line, f"{column.name} must be positive", cell=n)
-        return value * column.factor
+        elif value < 0.0 or (value == 0.0 and not zero_allowed):
+            self._fault(line, f"'{cell}' is not positive", cell=n)
+        return value
 
     def _cells(self, line: int) -> list[str]:
         """Cells of a line; none, with a fault, where it is no CSV."""
@@ -240,6 +276,12 @@ def _number(text: str) -> float:
     except ValueError:
         return math.nan
     return value if math.isfinite(value) and "_" not in text else math.nan
+
+
+def _half_unit(text: str) -> float:
+    """Half a unit of the last digit of a number."""
+    exponent = Decimal(text).as_tuple().exponent
+    return 0.5 * 10.0**exponent if isinstance(exponent, int) else math.nan
 
 
 def _hint_for_column(written: str, shape: str, axes: Axes) -> str:

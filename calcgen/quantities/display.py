@@ -152,7 +152,7 @@ def show(value: Measure, style: Style, digits: int | None = None) -> Shown:
 
 
 def number_text(number: float, digits: int = 4) -> str:
-    """Return a number with `digits` significant figures, halves rounded up, never fewer than its integer part has.
+    """Return a number with `digits` significant figures, halves rounded up, never cutting its integer part.
 
     From a million and below a ten-thousandth it is written with a power of ten.
 

@@ -19,6 +19,7 @@ from calcgen.evaluation.results import (
     StressResult,
     WorkingResult,
 )
+from calcgen.language.blocks.assumptions import Assumption
 from calcgen.quantities.display import Style, rounded
 from calcgen.quantities.measure import Measure, magnitude_in
 from calcgen.text import Span
@@ -68,13 +69,7 @@ def _items(calc: EvaluatedCalc, style: Style) -> Iterable[tuple[str, Item]]:
                         yield line.result.address, _check(line.result, line.node.statement)
             case AssumptionsResult(block=block):
                 for a in block.items:
-                    item = {
-                        "kind": "assumption",
-                        "text": a.text.text,
-                        "reference": a.basis.text,
-                        "open": a.open,
-                    }
-                    yield a.number, item
+                    yield a.number, _assumption(a)
             case SectionResult() | BeamResult() | StressResult():
                 yield from _block(segment, _block_text(calc, segment.span), style)
             case _:
@@ -100,6 +95,10 @@ def _block(
             if segment.check is not None:
                 yield segment.check.address, _check(segment.check, f"{segment.name}: limit")
     yield segment.name, {"kind": kind, "text": text, "results": results}
+
+
+def _assumption(a: Assumption) -> Item:
+    return {"kind": "assumption", "text": a.text.text, "reference": a.basis.text, "open": a.open}
 
 
 def _valued(kind: str, text: str, value: Plain, row: InputRow | DerivedRow, style: Style) -> Item:

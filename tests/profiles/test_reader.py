@@ -35,6 +35,7 @@ def test_a_row_becomes_a_profile() -> None:
         dimensions={"h": 0.5, "b": 0.25, "t_w": 0.01, "t_f": 0.02},
         stated={},
         published={"A": 146 * 0.01**2},
+        tolerances={"A": 0.005},
         source="drawing 7, sheet 2",
         file="profiles/office.csv",
         line=5,
@@ -92,6 +93,21 @@ def test_radii_of_american_angles_are_their_fillets() -> None:
     assert profile.published == {"i_2": pytest.approx(0.85 * 0.0254)}
 
 
+@pytest.mark.parametrize(
+    ("stated", "tolerance"),
+    [
+        ("", 0.005),
+        ("# tolerance = 2 %\n", 0.02),
+        ("# tolerance A = 1.5 %\n# tolerance = 2 %\n", 0.015),
+        ("# tolerance I_y, I_z = 3 %\n", 0.005),
+        ("# tolerance = 0.1%\n", 0.5 / 146),  # the printed figure is no better
+    ],
+)
+def test_tolerance_is_what_the_file_states_or_the_rounding(stated: str, tolerance: float) -> None:
+    (profile, _) = read(stated + GOOD)
+    assert profile.tolerances == {"A": pytest.approx(tolerance)}
+
+
 # (what is replaced, by what, line, column, the fault, its hint or a part of it)
 FAULTS = [
     ("# axes = eurocode\n", "", 1, 1, "the file does not say its axes", "# axes = eurocode"),
@@ -99,6 +115,9 @@ FAULTS = [
     ("= i_shape", "= girder", 2, 1, "unknown shape 'girder'", "channel"),
     ("# Girders", "# axes = american\n# Girders", 3, 1, "'axes' is set twice", ""),
     ("WB 400,", "# axes = american\nWB 400,", 7, 1, "'axes' stands below the header", "top of the file"),
+    ("# Girders", "# tolerance = 12 %\n#", 3, 1, "'12 %' is not a tolerance", "a percentage up to 10 %"),
+    ("# Girders", "# tolerance = 0.01\n#", 3, 1, "'0.01' is not a tolerance", ""),
+    ("# Girders", "# tolerance S_x = 1 %\n#", 3, 1, "'S_x' is no property", "known: A, I_1"),
     ("designation", "name", 4, 1, "unknown column 'name'", "known: designation"),
     ("t_w [mm]", "tw [mm]", 4, 27, "unknown column 'tw'", "did you mean t_w?"),
     ("A [cm2]", "S_x [cm3]", 4, 45, "unknown column 'S_x'", "american axes, and the file's are eurocode"),
@@ -112,8 +131,8 @@ FAULTS = [
     ("500,500", '500,"50,5"', 5, 8, "'50,5' is not a number", "write a decimal point"),
     ("500,500", "500,1_000", 5, 8, "'1_000' is not a number", ""),
     ("500,500", "500,inf", 5, 8, "'inf' is not a number", ""),
-    ("500,500", "500,-500", 5, 8, "h must be positive", ""),
-    (",146,", ",  0,", 5, 24, "A must be positive", ""),
+    ("500,500", "500,-500", 5, 8, "'-500' is not positive", ""),
+    (",146,", ",  0,", 5, 24, "'0' is not positive", ""),
     ("500,500", "500,", 5, 1, "h missing: i_shape needs it", ""),
     ("WB 500", "", 5, 1, "the designation is missing", ""),
     ("drawing 7\n", "drawing 7, 8\n", 7, 1, "8 cells stand under 7 columns", "quotes around a text"),
