@@ -92,3 +92,61 @@ class Workshop:
 
     memory: Memory = field(default_factory=Memory)
     studio: Studio = field(default_factory=Studio)
+    calcs: dict[str, tuple[SourceFile, Calc]] = field(default_factory=dict)
+    catalogues: dict[tuple[SourceFile, ...], tuple[Catalogue, tuple[Diagnostic, ...]]] = field(
+        default_factory=dict
+    )
+
+
+def build(
+    request: Request, workshop: Workshop, step: Callable[[str], None] = lambda _: None
+) -> Outcome:
+    """Build the package of a project, and record what changed in its trail.
+
+    A project at fault (no project.toml, say) leaves the package that stands as it was. A calc in error still
+    gets its page. Faults of the system (a full disk) come out as notes of a build that failed.
+    """
+    step("reading")
+    files, found = load_project(request.root)
+    if files.project is None or not files.calcs:
+        return Outcome((), found, published=False)
+    try:
+        recover(request.out)
+        return _build(request, workshop, step, files, files.project, found)
+    except (PublishError, TrailError) as fault:
+        hint = f"\n      hint: {fault.hint}" if fault.hint else ""
+        return Outcome((), found, published=False, notes=(f"error: {fault}{hint}",))
+
+
+def _build(
+    request: Request,
+    workshop: Workshop,
+    step: Callable[[str], None],
+    files: ProjectFiles,
+    project: Project,
+    found: tuple[Diagnostic, ...],
+) -> Outcome:
+    calcs = tuple(_calc(source, workshop) for source in files.calcs)
+    assets = read_assets(request.root, calcs)
+    trail_bytes = _bytes(request.root / TRAIL)
+    key = build_key({**_inputs(files), **assets, TRAIL: trail_bytes}, {"records": str(request.records)})
+    if request.records and is_current(request.out, key):
+        kept = read_manifest(request.out)
+        if kept is not None and kept.data.get("clean") is True:
+            return Outcome(_summaries_kept(kept.data), found, published=False, current=True)
+    step("evaluating")
+    style = Style(project.units, project.digits, project.depth, project.preferred_units)
+    catalogue, faults = _catalogue(files.profiles, workshop)
+    setting = Setting(project.axes, style, catalogue, frozenset(files.references))
+    evaluated = evaluate_all(calcs, setting, workshop.memory)
+    step("comparing with the trail")
+    moved = _trail(request, evaluated, files, style)
+    step("drawing")
+    figures = {
+        (calc.number, name): row
+        for calc in evaluated
+        for name, row in workshop.studio.draw(illustrate(calc, project.axes, style)).items()
+    }
+    conventions_drawn = workshop.studio.draw_one(conventions(project.axes, project.depth))
+    step("writing")
+    ...

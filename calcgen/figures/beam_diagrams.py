@@ -2,6 +2,7 @@
 
 from collections.abc import Callable, Sequence
 from dataclasses import dataclass
+from itertools import pairwise
 
 import numpy as np
 from numpy.typing import NDArray
@@ -137,16 +138,27 @@ def _placed(
     obstacles.add_line(ends)
     for line in lines:
         obstacles.add_line([ends[0], *line, ends[1]])
-    placed = []
+    placed: list[_Placed] = []
     for extreme, point in zip(diagram.extremes, points, strict=True):
         found = _beside(extreme.label, point, obstacles)
-        if found is None:
+        if found is None or not _in_order([*placed, found]):
             return _in_lanes(diagram, lines, points, width)
         obstacles.boxes.append(found.label.box)
         if len(found.leader) > 1:
             obstacles.add_line(found.leader)
         placed.append(found)
     return placed
+
+
+def _in_order(placed: Sequence[_Placed]) -> bool:
+    """Tell whether the labels on each side of the zero line follow each other as their points do."""
+    along = sorted(placed, key=lambda p: p.leader[0][0])
+    sides = [p for p in along if p.label.y > 0], [p for p in along if p.label.y <= 0]
+    return all(
+        a.label.x <= b.label.x or a.leader[0][0] == b.leader[0][0]
+        for side in sides
+        for a, b in pairwise(side)
+    )
 
 
 def _beside(text: str, point: Point, obstacles: Obstacles) -> _Placed | None:
@@ -157,7 +169,7 @@ def _beside(text: str, point: Point, obstacles: Obstacles) -> _Placed | None:
     places = [
         (gap + 0.12 * abs(shift) + (0.0 if way == out else 10.0), gap, shift, way)
         for gap in np.arange(4.0, 64.0, 4.0)
-        for shift in half * np.array([0.0, -0.5, 0.5, -1.1, 1.1, -1.6, 1.6, -2.4, 2.4, -3.4, 3.4])
+        for shift in half * np.array([0.0, -0.5, 0.5, -1.1, 1.1, -1.6, 1.6])
         for way in (out, -out)
     ]
     for _, gap, shift, way in sorted(places, key=lambda place: place[0]):

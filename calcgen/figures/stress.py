@@ -210,7 +210,11 @@ def _draw_strain(
 def _draw_stress(
     sketch: Sketch, drawing: StressDrawing, scale: Scale, row: _Row, obstacles: Obstacles, width: float
 ) -> None:
-    """Draw the tractions on the face with their marks and resultants."""
+    """Draw the tractions on the face with their marks and resultants.
+
+    Both signs stand on the free side of the face, so that each arrow is the traction itself: with its tail
+    on the face in tension, with its head on the face in compression.
+    """
     face = row.face or 0.0
     heights = [scale.at(0.0, y)[1] for y, _ in drawing.stress]
     upper, lower = min(heights), max(heights)

@@ -25,8 +25,8 @@ COLOURS: dict[Colour, str] = {
     "rule": "#b9c0c6",
     "paper": "#fefefe",
     "section": "#e3e8ea",
-    "tension": "#a8431f",
-    "compression": "#245c8c",
+    "tension": "#b5501f",
+    "compression": "#1b4a73",
 }
 VARIABLES: dict[Colour, str] = {
     "ink": "--ink",

@@ -21,9 +21,10 @@ _TIMES = re.compile(r"[-·](\w+)\b")
 _SPACES = " \u00a0\u202f\u2009"
 
 
-def starts_number(text: str, at: int) -> bool:
-    """Return whether a number literal starts at an offset."""
-    return _DECIMAL.match(text, at) is not None
+def digits_end(text: str, at: int) -> int:
+    """Return the end of the digits of a number that starts at an offset; `at` itself where none does."""
+    match = _DECIMAL.match(text, at)
+    return match.end() if match else at
 
 
 def number_at(text: Pieced, at: int, before: str) -> tuple[Number, int]:

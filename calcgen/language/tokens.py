@@ -9,7 +9,7 @@ from typing import Literal, TypeAlias
 from calcgen.language.errors import ReadingError
 from calcgen.language.names import canonical_name, name_end
 from calcgen.language.nodes import WORDS, Name, Number, Text
-from calcgen.language.numbers import number_at, starts_number
+from calcgen.language.numbers import digits_end, number_at
 from calcgen.language.pieced import Pieced
 
 Kind: TypeAlias = Literal["number", "text", "name", "word", "operator", "bad", "end"]
@@ -87,11 +87,12 @@ def tokenize(text: Pieced) -> tuple[Token, ...]:
 
 def _token(text: Pieced, at: int, before: Token | None) -> Token:
     source = text.text
-    if starts_number(source, at):
+    digits = digits_end(source, at)
+    if digits > at:
         try:
             number, end = number_at(text, at, before.text if before and before.kind == "operator" else "")
         except ReadingError as fault:
-            return Token("bad", source[at], at, at + 1, fault)
+            return Token("bad", source[at:digits], at, digits, fault)
         return Token("number", source[at:end], at, end, number)
     if source[at].isalpha():
         return _name(text, at)

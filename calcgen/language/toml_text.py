@@ -19,7 +19,7 @@ _PART = re.compile(r"""[^\s."']+|"[^"]*"|'[^']*'""")
 
 @dataclass(frozen=True)
 class TomlText:
-    """The values of a TOML file, and where keys stand: under (table, key), a table itself under ('', table)."""
+    """The values of a TOML file and where its keys stand: under (table, key), a table under ("", table)."""
 
     values: Mapping[str, object]
     places: Mapping[tuple[str, str], Span]

@@ -92,6 +92,19 @@ class Outline:
         end = np.concatenate([np.roll(ring, -1, axis=0) for ring in self.rings])
         return start, end
 
+    def contains(self, point: Point) -> bool:
+        """Tell whether a point, m, lies in the material or, within 1e-9 of the size, on its edge."""
+        start, end = self.edges
+        along, to_point = end - start, np.array(point) - start
+        share = np.clip(np.sum(along * to_point, axis=1) / np.sum(along * along, axis=1), 0.0, 1.0)
+        gap = np.hypot(*(to_point - share[:, None] * along).T).min()
+        if gap <= 1e-9 * max(self.bounds.width, self.bounds.height):
+            return True
+        astride = (start[:, 1] > point[1]) != (end[:, 1] > point[1])
+        rise = np.where(astride, along[:, 1], 1.0)
+        crossing = start[:, 0] + (point[1] - start[:, 1]) / rise * along[:, 0]
+        return bool(np.count_nonzero(astride & (crossing > point[0])) % 2)
+
     def moved(self, dx: float, dy: float) -> Outline:
         """Return the outline shifted by (dx, dy), m."""
         shift = np.array([dx, dy])

@@ -12,8 +12,8 @@ import csv
 import math
 import re
 from collections.abc import Iterator, Mapping, Sequence
-from decimal import Decimal
 from difflib import get_close_matches
+from functools import cached_property
 from pathlib import PurePosixPath
 from typing import TypeVar
 
@@ -75,6 +75,12 @@ class _Reading:
                 self._directive(line, written.strip())
             elif written.strip(" \t,"):
                 self.table.append(line)
+
+    @cached_property
+    def family(self) -> str:
+        """What the file's sections are listed under."""
+        stated, _ = self.directives.get("family", ("", 0))
+        return stated or PurePosixPath(self.name).stem
 
     def profiles(self) -> Iterator[Profile]:
         """Yield the sections of the rows that have no fault."""
@@ -225,7 +231,7 @@ class _Reading:
             return None
         return Profile(
             designation=texts["designation"],
-            family=self.directives.get("family", (PurePosixPath(self.name).stem, 0))[0],
+            family=self.family,
             shape=shape,
             axes=axes,
             dimensions=dimensions,
@@ -279,9 +285,9 @@ def _number(text: str) -> float:
 
 
 def _half_unit(text: str) -> float:
-    """Half a unit of the last digit of a number."""
-    exponent = Decimal(text).as_tuple().exponent
-    return 0.5 * 10.0**exponent if isinstance(exponent, int) else math.nan
+    """Half a unit of the last digit of a decimal number."""
+    digits, _, exponent = text.lower().partition("e")
+    return 0.5 * 10.0 ** (int(exponent or 0) - len(digits.partition(".")[2]))
 
 
 def _hint_for_column(written: str, shape: str, axes: Axes) -> str:

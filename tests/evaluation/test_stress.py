@@ -110,6 +110,12 @@ def test_results_that_are_not_there(name: str, code: str) -> None:
     assert codes(stress("M = 1 kN·m", working=(f"x = s.{name}",))) == [code]
 
 
+def test_a_point_outside_the_section_is_a_warning() -> None:
+    calc = stress("M = 1 kN·m", "point p = (0 mm, 101 mm)", "point q = (50 mm, 100 mm)")
+    assert codes(calc) == ["point-outside"]
+    assert calc.standing == "no checks"
+
+
 def test_a_shear_force_of_zero_is_none() -> None:
     assert codes(stress("M = 1 kN·m", "V = 0 kN", "V_lat = 0 kN", "T = 0 kN·m", "model = elastic")) == []
 

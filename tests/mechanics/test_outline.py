@@ -138,3 +138,19 @@ def test_thousands_of_corners_are_checked_and_a_late_crossing_found(corners: int
     with pytest.raises(OutlineError, match="crosses") as error:
         outline(ring)
     assert all(vertex >= corners - 5 for vertex in error.value.vertices)
+
+
+@pytest.mark.parametrize(
+    ("point", "inside"),
+    [
+        ((0.5, 0.5), False),
+        ((0.1, 0.5), True),
+        ((0.0, 0.0), True),
+        ((1.0, 0.3), True),
+        ((1.1, 0.3), False),
+        ((0.25, 0.4), True),
+    ],
+)
+def test_contains(point: tuple[float, float], inside: bool) -> None:
+    hole = [(0.25, 0.25), (0.75, 0.25), (0.75, 0.75), (0.25, 0.75)]
+    assert outline([(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (0.0, 1.0)], [hole]).contains(point) is inside

@@ -11,7 +11,6 @@ from calcgen.evaluation.conventions import DIMENSIONS, LATER, PROPERTIES, Axes, 
 from calcgen.evaluation.quantity import quantity_of
 from calcgen.evaluation.results import Plain, Published, Result, SecondRoute, SectionResult
 from calcgen.evaluation.scope import Scope
-from calcgen.evaluation.tables import tolerances
 from calcgen.language.blocks.section import SectionBlock, ShapeLine, ShapeText
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Expression, Name
@@ -117,7 +116,8 @@ def _section(
     if placed is None:
         return None
     computed = section_properties(placed.outline)
-    published = _oriented(profile, text, scope) if profile is not None else {}
+    published = _oriented(profile.published, text, scope) if profile is not None else {}
+    tolerances = _oriented(profile.tolerances, text, scope) if profile is not None else {}
     values = _in_force(_values(computed), published, computed)
     return SectionResult(
         name=name,
@@ -130,8 +130,8 @@ def _section(
         values=values,
         dimensions=_with_synonyms(placed.dimensions, text.shape.name if profile is None else profile.shape),
         results=_results(values, published, scope.style, axes),
-        published=_beside(published, computed, profile, scope.style, axes),
-        second_route=_second_route(name, computed, placed, published, profile, axes),
+        published=_beside(published, tolerances, computed, scope.style, axes),
+        second_route=_second_route(name, computed, placed, published, tolerances, axes),
         note=line.annotations.note,
         reference=line.annotations.reference,
         line=scope.report.source.line_number(block.head_span),
@@ -161,13 +161,12 @@ def _in_force(
 _TURNED = {"I_h": "I_v", "W_el_h": "W_el_v", "W_pl_h": "W_pl_v", "i_h": "i_v"}
 
 
-def _oriented(profile: Profile, text: ShapeText, scope: Scope) -> dict[str, float]:
-    """Return a profile's published values as the section lies: a quarter turn exchanges the axes.
+def _oriented(table: Mapping[str, float], text: ShapeText, scope: Scope) -> dict[str, float]:
+    """Return a profile's published values, or tolerances, as the section lies: a quarter turn exchanges axes.
 
     Turned by another angle, only what has no axis keeps its published value.
     """
-    published = dict(profile.published)
-    published.pop("mass", None)
+    published = {k: v for k, v in table.items() if k != "mass"}
     angle = quantity_of(text.turned, "number", scope) if text.turned is not None else None
     if angle is None:
         return published if not text.mirrored else {k: v for k, v in published.items() if k != "x_bar"}
@@ -214,15 +213,15 @@ def _results(
 
 def _beside(
     published: Mapping[str, float],
+    tolerances: Mapping[str, float],
     computed: SectionProperties,
-    profile: Profile | None,
     style: Style,
     axes: Axes,
 ) -> tuple[Published, ...]:
     """Return each published value beside the outline's own."""
     rows = []
     for p in PROPERTIES:
-        if profile is None or p.key not in published or p.key not in PUBLISHED:
+        if p.key not in published or p.key not in PUBLISHED:
             continue
         unit, si_unit = p.units[1 if style.system == "US" else 0], KINDS[p.kind]
         own = float(getattr(computed, PUBLISHED[p.key][0]))
@@ -232,7 +231,7 @@ def _beside(
                 show(from_si(published[p.key], si_unit).shown_in(unit), style),
                 show(from_si(own, si_unit).shown_in(unit), style),
                 (own - published[p.key]) / abs(published[p.key]),
-                tolerances(profile).get(p.key, math.inf),
+                tolerances.get(p.key, math.inf),
             )
         )
     return tuple(rows)
@@ -243,12 +242,13 @@ def _second_route(
     computed: SectionProperties,
     placed: Shape,
     published: Mapping[str, float],
-    profile: Profile | None,
+    tolerances: Mapping[str, float],
     axes: Axes,
 ) -> tuple[SecondRoute, ...]:
-    found = [*section_residuals(computed, placed.outline)]
-    if profile is not None:
-        found += published_residuals(published, computed, tolerances(profile))
+    found = (
+        *section_residuals(computed, placed.outline),
+        *published_residuals(published, computed, tolerances),
+    )
     symbols = {p.key: p.name(axes) for p in PROPERTIES}
     return tuple(
         SecondRoute.found(name, symbols.get(r.what, r.what), r.residual, r.tolerance, r.quantity)

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 
 from calcgen.evaluation.blocks.section import section_named
@@ -120,6 +121,7 @@ def _stress(name: str, block: StressBlock, scope: Scope, labels: Labels) -> Stre
             return None
     plane = elastic_stress(section.result.computed, forces)
     outline = section.result.outline
+    _warn_of_points_outside(block, points, outline, scope)
     E = modulus.si if modulus is not None else None
     results = stress_results(plane, outline, E, points, scope.style)
     return StressResult(
@@ -211,6 +213,19 @@ def _forces(block: StressBlock, scope: Scope) -> Forces | None:
 def _optional(block: StressBlock, key: str, kind: str, scope: Scope) -> Measure | None:
     setting = block.setting(key)
     return None if setting is None else quantity_of(setting.value, kind, scope)
+
+
+def _warn_of_points_outside(
+    block: StressBlock, points: Mapping[str, Point], outline: Outline, scope: Scope
+) -> None:
+    for line in block.points:
+        if not outline.contains(points[line.target.name]):
+            scope.report.warning(
+                "point-outside",
+                line.point.span,
+                f"the point '{plain(line.target.name)}' lies outside the section",
+                hint="coordinates are the section's own: its bounding box has its middle at (0, 0), or at 'at'",
+            )
 
 
 def _points(block: StressBlock, scope: Scope) -> dict[str, Point] | None:

@@ -94,11 +94,11 @@ def read_beam(block: BlockText, report: Report) -> Outcome[BeamBlock]:
         return node
 
     lines, failed = read_each(block.lines, report, read, STOPS)
-    if failed:
+    if failed or any(
+        isinstance(line, LaterLine) for line in lines
+    ):  # a beam without one of its loads is wrong
         return Outcome(None, frozenset({block.target.name}))
-    later = any(isinstance(line, LaterLine) for line in lines)
-    names = frozenset({block.target.name}) if later else frozenset[str]()
-    return Outcome(BeamBlock(block.target, tuple(lines), block.span, block.head_span), names)
+    return Outcome(BeamBlock(block.target, tuple(lines), block.span, block.head_span))
 
 
 def _span(line: Line, cursor: Cursor) -> SpanLine:

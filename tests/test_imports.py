@@ -1,0 +1,81 @@
+"""Imports point one way, and mechanics needs numpy alone."""
+
+from __future__ import annotations
+
+import ast
+from pathlib import Path
+
+import pytest
+
+PACKAGE = Path(__file__).parent.parent / "calcgen"
+
+# Each room with the rooms that it may import, itself apart.
+ALLOWED = {
+    "text": set(),
+    "quantities": {"text"},
+    "mechanics": set(),
+    "profiles": set(),
+    "language": {"quantities", "text"},
+    "evaluation": {"language", "mechanics", "profiles", "quantities", "text"},
+    "figures": {"evaluation", "language", "mechanics", "quantities", "text"},
+    "site": {"evaluation", "language", "mechanics", "quantities", "text"},
+    "trail": {"evaluation", "language", "quantities", "text"},
+    "publishing": set(),
+    "project": {"language", "quantities", "text"},
+    "pipeline": {
+        "evaluation", "figures", "language", "profiles", "project", "publishing", "quantities", "site", "text", "trail",
+    },
+    "watch": set(),
+    "preview": set(),
+    "start": set(),
+    "cli": {"pipeline", "preview", "start", "text", "watch"},
+    "__main__": {"cli"},
+    "__init__": set(),
+}  # fmt: skip
+
+MODULES = sorted(PACKAGE.rglob("*.py"))
+
+
+def imported(path: Path) -> set[str]:
+    names: set[str] = set()
+    for node in ast.walk(ast.parse(path.read_text(encoding="utf-8"))):
+        if isinstance(node, ast.Import):
+            names.update(alias.name for alias in node.names)
+        elif isinstance(node, ast.ImportFrom) and node.module:
+            names.add(node.module)
+            if node.module == "calcgen":
+                names.update(f"calcgen.{alias.name}" for alias in node.names)
+    return names
+
+
+def room(path: Path) -> str:
+    return path.relative_to(PACKAGE).parts[0].removesuffix(".py")
+
+
+@pytest.mark.parametrize("path", MODULES, ids=lambda p: p.relative_to(PACKAGE).as_posix())
+def test_imports_point_one_way(path: Path) -> None:
+    here = room(path)
+    rooms = {
+        n.split(".")[1] for n in imported(path) if n.startswith("calcgen.") and n != "calcgen.__version__"
+    }
+    assert rooms - {here, "__version__"} <= ALLOWED[here]
+
+
+@pytest.mark.parametrize(
+    "path", [p for p in MODULES if room(p) == "mechanics"], ids=lambda p: p.relative_to(PACKAGE).as_posix()
+)
+def test_mechanics_needs_numpy_alone(path: Path) -> None:
+    import sys
+
+    outside = {n.split(".")[0] for n in imported(path)} - set(sys.stdlib_module_names) - {"calcgen"}
+    assert outside <= {"numpy"}
+
+
+def test_calc_text_is_never_executed() -> None:
+    for path in MODULES:
+        calls = {
+            node.func.id
+            for node in ast.walk(ast.parse(path.read_text(encoding="utf-8")))
+            if isinstance(node, ast.Call) and isinstance(node.func, ast.Name)
+        }
+        assert not calls & {"eval", "exec", "compile", "__import__"}, path
