@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass, field
+from dataclasses import asdict, dataclass, field
 from datetime import datetime
 from pathlib import Path
 
@@ -11,16 +11,30 @@ from calcgen import __version__
 from calcgen.evaluation.calc import Memory, Setting, evaluate_all
 from calcgen.evaluation.results import EvaluatedCalc, Standing
 from calcgen.figures.illustrate import Drawn, Studio, conventions, illustrate
+from calcgen.language.calc import Calc, Prose
 from calcgen.language.document import calc_from
-from calcgen.profiles.catalogue import Catalogue
+from calcgen.profiles import Catalogue, builtin_catalogue, read_catalogue
 from calcgen.project import Project, ProjectFiles, load_project
-from calcgen.publishing import build_key, is_current, publish, read_manifest, recover
+from calcgen.publishing import PublishError, build_key, is_current, publish, read_manifest, recover
 from calcgen.quantities.display import Style
 from calcgen.site.compose import PackageInput, compose
 from calcgen.site.render import render
-from calcgen.text import Diagnostic
-from calcgen.trail import TRAIL, Changes, State, Trail, append, history, load, previous_values, record, replay
-from calcgen.trail.changes import compare
+from calcgen.text import Diagnostic, SourceFile, Span, error
+from calcgen.trail import (
+    TRAIL,
+    Changes,
+    Fault,
+    State,
+    Trail,
+    TrailError,
+    append,
+    compare,
+    history,
+    load,
+    previous_values,
+    record,
+    replay,
+)
 from calcgen.trail.state import state_of
 
 PROGRAM = f"calcgen {__version__}"
@@ -74,11 +88,13 @@ class Outcome:
     published: bool
     current: bool = False
     notes: tuple[str, ...] = ()
+    trail_at_fault: bool = False
 
     @property
     def failed(self) -> bool:
         """Whether there is an error."""
-        return not (self.published or self.current) or any(d.severity == "error" for d in self.diagnostics)
+        standing = self.published or self.current
+        return not standing or self.trail_at_fault or any(d.severity == "error" for d in self.diagnostics)
 
     @property
     def exceeded(self) -> bool:
@@ -98,9 +114,7 @@ class Workshop:
     )
 
 
-def build(
-    request: Request, workshop: Workshop, step: Callable[[str], None] = lambda _: None
-) -> Outcome:
+def build(request: Request, workshop: Workshop, step: Callable[[str], None] = lambda _: None) -> Outcome:
     """Build the package of a project, and record what changed in its trail.
 
     A project at fault (no project.toml, say) leaves the package that stands as it was. A calc in error still
@@ -127,26 +141,177 @@ def _build(
     found: tuple[Diagnostic, ...],
 ) -> Outcome:
     calcs = tuple(_calc(source, workshop) for source in files.calcs)
-    assets = read_assets(request.root, calcs)
-    trail_bytes = _bytes(request.root / TRAIL)
-    key = build_key({**_inputs(files), **assets, TRAIL: trail_bytes}, {"records": str(request.records)})
+    images, missing = read_images(request.root, calcs)
+    key = _key(request, files, images)
     if request.records and is_current(request.out, key):
         kept = read_manifest(request.out)
         if kept is not None and kept.data.get("clean") is True:
-            return Outcome(_summaries_kept(kept.data), found, published=False, current=True)
+            return Outcome(_kept(kept.data), found, published=False, current=True)
     step("evaluating")
     style = Style(project.units, project.digits, project.depth, project.preferred_units)
     catalogue, faults = _catalogue(files.profiles, workshop)
     setting = Setting(project.axes, style, catalogue, frozenset(files.references))
     evaluated = evaluate_all(calcs, setting, workshop.memory)
+    diagnostics = (*found, *faults, *missing, *(d for calc in evaluated for d in calc.diagnostics))
     step("comparing with the trail")
-    moved = _trail(request, evaluated, files, style)
+    trail = _record(request, evaluated, files, style)
     step("drawing")
     figures = {
         (calc.number, name): row
         for calc in evaluated
         for name, row in workshop.studio.draw(illustrate(calc, project.axes, style)).items()
     }
-    conventions_drawn = workshop.studio.draw_one(conventions(project.axes, project.depth))
+    signs = workshop.studio.draw_one(conventions(project.axes, project.depth))
     step("writing")
-    ...
+    package = _package(files, project, style, evaluated, diagnostics, figures, signs, trail, images)
+    summaries = tuple(_summary(calc) for calc in evaluated)
+    publish(
+        render(compose(package)),
+        request.out,
+        {
+            "key": _key(request, files, images),  # again: the trail is one of the inputs
+            "clean": not diagnostics and not trail.notes,
+            "sources": {source.path: source.digest for source in _sources(files)},
+            "trail_head": trail.trail.order[-1].digest if trail.trail.order else "",
+            "calcs": [asdict(summary) for summary in summaries],
+        },
+        durable=request.durable,
+    )
+    return Outcome(summaries, diagnostics, published=True, notes=trail.notes, trail_at_fault=trail.at_fault)
+
+
+def _calc(source: SourceFile, workshop: Workshop) -> Calc:
+    """Read a calc, unless its text is the one read before."""
+    kept = workshop.calcs.get(source.path)
+    if kept is None or kept[0] != source:
+        kept = (source, calc_from(source))
+        workshop.calcs[source.path] = kept
+    return kept[1]
+
+
+def _sources(files: ProjectFiles) -> tuple[SourceFile, ...]:
+    """Return all files of the project that a build reads."""
+    references = (files.references_source,) if files.references_source is not None else ()
+    return (files.settings, *references, *files.calcs, *files.profiles)
+
+
+def _key(request: Request, files: ProjectFiles, images: Mapping[str, bytes]) -> str:
+    inputs = {source.path: source.text.encode() for source in _sources(files)}
+    trail = request.root / TRAIL
+    inputs[TRAIL] = trail.read_bytes() if trail.is_file() else b""
+    return build_key({**inputs, **images}, {"records": str(request.records)})
+
+
+def _catalogue(
+    sources: tuple[SourceFile, ...], workshop: Workshop
+) -> tuple[Catalogue, tuple[Diagnostic, ...]]:
+    """Return the program's catalogue joined by the office's own, and the faults of the latter."""
+    if sources not in workshop.catalogues:
+        catalogue = builtin_catalogue()
+        faults: list[Diagnostic] = []
+        for source in sources:
+            profiles, in_text = read_catalogue(source.path, source.text)
+            catalogue, in_joining = catalogue.joined(profiles)
+            for fault in (*in_text, *in_joining):
+                place = source.line_starts[fault.line - 1] + fault.column - 1
+                faults.append(error("catalogue", source, Span(place, place), fault.message, hint=fault.hint))
+        workshop.catalogues.clear()
+        workshop.catalogues[sources] = (catalogue, tuple(faults))
+    return workshop.catalogues[sources]
+
+
+@dataclass(frozen=True)
+class _Recorded:
+    """The trail as it stands, the changes that the package marks, and what to tell.
+
+    `changes` are pending ones where the build does not record, else those of the last entry.
+    """
+
+    trail: Trail
+    changes: Changes
+    pending: bool
+    notes: tuple[str, ...]
+    at_fault: bool
+
+
+def _record(
+    request: Request, calcs: tuple[EvaluatedCalc, ...], files: ProjectFiles, style: Style
+) -> _Recorded:
+    """Append what changed to the trail, or only compare with it."""
+    references = {key: f"{r.title} {r.edition}".strip() for key, r in files.references.items()}
+    path = request.root / TRAIL
+
+    def state(trail: Trail) -> State:
+        return state_of(calcs, references, replay(trail), style)
+
+    if not request.records:
+        trail, faults = load(path)
+        pending = compare(replay(trail), state(trail))
+        changes = pending or (history(trail)[0].changes if trail.order else pending)
+        return _Recorded(trail, changes, bool(pending), tuple(_told(f) for f in faults), _at_fault(faults))
+    appended = append(
+        path,
+        lambda trail: record(
+            trail, state(trail), when=request.when, who=request.who, why=request.why, program=PROGRAM
+        ),
+    )
+    notes = [_told(f) for f in appended.faults]
+    if appended.set_aside is not None:
+        notes.append(f"warning: a torn last line of {TRAIL} was set aside in {appended.set_aside.name}")
+    if appended.entry is not None:
+        count = len(appended.entry.changes)
+        notes.append(f"{TRAIL}: {count} change{'s' if count > 1 else ''} recorded")
+    entries = history(appended.trail)
+    return _Recorded(
+        appended.trail,
+        entries[0].changes if entries else Changes(()),
+        pending=False,
+        notes=tuple(notes),
+        at_fault=_at_fault(appended.faults),
+    )
+
+
+def _at_fault(faults: tuple[Fault, ...]) -> bool:
+    return any(fault.severity == "error" for fault in faults)
+
+
+def _told(fault: Fault) -> str:
+    hint = f"\n      hint: {fault.hint}" if fault.hint else ""
+    return f"{TRAIL}:{fault.line}: {fault.severity}: {fault.message}{hint}"
+
+
+def _summary(calc: EvaluatedCalc) -> Summary:
+    governing = calc.governing
+    return Summary(
+        calc.number,
+        calc.calc.title,
+        calc.standing,
+        governing.label if governing is not None else calc.reason,
+        governing.utilisation if governing is not None else None,
+    )
+
+
+def _kept(data: Mapping[str, object]) -> tuple[Summary, ...]:
+    """Return the summaries that the manifest of a package holds."""
+    rows = data.get("calcs")
+    return tuple(Summary(**row) for row in rows) if isinstance(rows, list) else ()
+
+
+def read_images(root: Path, calcs: tuple[Calc, ...]) -> tuple[dict[str, bytes], tuple[Diagnostic, ...]]:
+    """Return the images that prose shows, by their path in the project, and a fault for each that is not there.
+
+    An image's address is relative to its calc, as CommonMark has it, and stays inside the project.
+    """
+    images: dict[str, bytes] = {}
+    faults: list[Diagnostic] = []
+    for calc in calcs:
+        for address, span in (i for s in calc.segments if isinstance(s, Prose) for i in s.images):
+            path = image_path(calc, address)
+            target = root / path if path is not None else None
+            if target is None or not target.is_file():
+                message = f"there is no image '{address}' in this project"
+                hint = "the address is relative to the calc's file"
+                faults.append(error("image-missing", calc.source, span, message, hint=hint))
+            elif path is not None:
+                images[path] = target.read_bytes()
+    return images, tuple(faults)

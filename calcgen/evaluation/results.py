@@ -255,20 +255,25 @@ class SectionResult:
 
 @dataclass(frozen=True)
 class CombinationResult:
-    """One combination with the factor of each case, and its solution."""
+    """One combination with the factor of each case, its solution, and every named result of it."""
 
     name: str
     factors: Mapping[str, float]
     solution: CaseSolution
+    results: tuple[Result, ...]
 
 
 @dataclass(frozen=True)
 class GroupResult:
-    """A group of combinations ('' is the beam itself: all cases together) and its results."""
+    """A group of combinations ('' is the beam itself: all cases together).
+
+    `results` are shown in its table; `further` are the same under names that the table does not use.
+    """
 
     name: str
     combinations: tuple[CombinationResult, ...]
     results: tuple[Result, ...]
+    further: tuple[Result, ...]
 
 
 @dataclass(frozen=True)

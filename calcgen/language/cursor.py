@@ -7,7 +7,7 @@ from calcgen.language.nodes import Name, Named, Number, UnitText
 from calcgen.language.pieced import Pieced
 from calcgen.language.tokens import Token, tokenize
 from calcgen.language.units_text import meant_unit, unit_at
-from calcgen.text import Span
+from calcgen.text import Related, Span
 
 MAX_DEPTH = 100
 """Deepest formula that is read; evaluation and typesetting walk formulas by recursion."""
@@ -72,6 +72,19 @@ class Cursor:
         if self.sees(text):
             return self.take()
         raise self.misplaced(f"'{text}' is missing", hint)
+
+    def close(self, opening: Token) -> Token:
+        """Step over the ')' of an opening parenthesis."""
+        if self.sees(")"):
+            return self.take()
+        if self.ended or self.sees("=", "when", "otherwise", "]", *self.stops):
+            raise ReadingError(
+                "unclosed-parenthesis",
+                self.span(self.token),
+                "')' is missing here",
+                related=(Related(self.span(opening), "opened here"),),
+            )
+        raise self.unexpected()
 
     def span(self, token: Token) -> Span:
         """Return the place of a token; just after the statement for its end."""
@@ -181,8 +194,11 @@ class Cursor:
                 hint = f"no space inside a unit: {number.unit.text}·{token.text}; or write * to multiply"
                 return self._missing_operator(before, token, hint)
         if number is not None and token.kind == "number" and len(token.text) == 3:
-            return self._missing_operator(before, token, "digits are not grouped: write 1000")
-        return self._missing_operator(before, token, f"write {before.text}*{token.text} to multiply")
+            return self._missing_operator(
+                before, token, f"digits are not grouped: write {before.text}{token.text}"
+            )
+        product = "*" if before.text == ")" or token.text == "(" else f"{before.text}*{token.text}"
+        return self._missing_operator(before, token, f"write {product} to multiply")
 
     def _missing_operator(self, before: Token, token: Token, hint: str) -> ReadingError:
         message = f"an operator is missing between '{before.text}' and '{token.text}'"

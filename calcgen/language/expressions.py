@@ -24,7 +24,7 @@ from calcgen.language.nodes import (
     Unary,
 )
 from calcgen.language.tokens import Token
-from calcgen.text import Related, Span
+from calcgen.text import Span
 
 Node: TypeAlias = Expression | Condition
 
@@ -56,7 +56,7 @@ _MEANT = {
     "arctan2": "atan2",
     "average": "(a + b)/2",
     "cot": "1/tan(x)",
-    "if": "cases: name = ... when ..., then = ... otherwise",
+    "if": "name = ... when ...' and below it '= ... otherwise",
     "lg": "log10",
     "log": "ln' or 'log10",
     "maximum": "max",
@@ -236,21 +236,8 @@ def _operand(cursor: Cursor) -> Node:
 def _parentheses(cursor: Cursor) -> Node:
     opening = cursor.take()
     node = _nested(cursor, 0, opening)
-    _close(cursor, opening)
+    cursor.close(opening)
     return node
-
-
-def _close(cursor: Cursor, opening: Token) -> Token:
-    if cursor.sees(")"):
-        return cursor.take()
-    if cursor.ended or cursor.sees("=", "when", "otherwise", "]", *cursor.stops):
-        raise ReadingError(
-            "unclosed-parenthesis",
-            cursor.span(cursor.token),
-            "')' is missing here",
-            related=(Related(cursor.span(opening), "opened here"),),
-        )
-    raise cursor.unexpected()
 
 
 def _name(cursor: Cursor, token: Token, name: Name) -> Expression:
@@ -289,7 +276,7 @@ def _arguments(cursor: Cursor) -> tuple[tuple[Expression, ...], Token]:
     while True:
         found.append(_as_value(_nested(cursor, 0, opening)))
         if not cursor.accept(","):
-            return tuple(found), _close(cursor, opening)
+            return tuple(found), cursor.close(opening)
 
 
 def _check_count(function: str, arguments: tuple[Expression, ...], span: Span) -> None:
@@ -309,7 +296,7 @@ def _check_count(function: str, arguments: tuple[Expression, ...], span: Span) -
 
 def _missing(cursor: Cursor) -> ReadingError:
     token, before = cursor.token, cursor.previous
-    if before is None or before.kind != "operator":
+    if before is None or not (before.kind in ("operator", "word") or before.text in cursor.stops):
         where = "here"
     elif before.text == "=":
         where = "on the right side of '='"

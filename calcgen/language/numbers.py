@@ -124,10 +124,10 @@ def _refuse_lookalikes(text: Pieced, number: str, unit: UnitMatch) -> None:
         )
     length = _TIMES.match(text.text, unit.end)
     if length and length[1] in LENGTHS and unit.is_plain("lb", "kg"):
-        force = "lbf" if unit.text == "lb" else "kN"
+        force = "lbf-" if unit.text == "lb" else "kN·"
         raise ReadingError(
             "mass-in-product",
             text.span(unit.end - len(unit.text), length.end()),
             f"'{unit.text}' is a mass, and only a force and a length make a product of units",
-            hint=f"write {number} {force}-{length[1]}",
+            hint=f"a moment is in {force}{length[1]}",
         )

@@ -37,38 +37,39 @@ _OPERATOR = re.compile(r"<=|>=|==|!=|[-+*/^()\[\],=<>]")
 _SYNONYMS = {"≤": "<=", "≥": ">=", "≠": "!=", "−": "-"}
 _TEXT = re.compile(r'"([^"\n]*)"')
 
-_MISTAKES: tuple[tuple[str, str], ...] = (
-    ("**", "write ^ for a power"),
-    (":=", "write = to define a name"),
-    ("=<", "write <="),
-    ("=>", "write >="),
-    ("<>", "write !="),
-    ("&", "write 'and'"),
-    ("!", "write 'not'"),
-    ("·", "write * to multiply; only a force and a length make a unit such as kN·m"),
-    ("⋅", "write * to multiply; only a force and a length make a unit such as kN·m"),
-    ("×", "write * to multiply"),
-    ("÷", "write / to divide"),
-    ("–", "this is a dash; write - to subtract"),
-    ("—", "this is a dash; write - to subtract"),
-    ("√", "write sqrt(...)"),
-    ("²", "write ^2"),
-    ("³", "write ^3"),
-    ("⁴", "write ^4"),
-    ("%", "a per cent follows its number: 4.5 %"),
-    ("°", "write the unit deg after a number"),
-    ("'", 'a text stands in double quotes: "S275"'),
-    ("‘", 'a text stands in straight double quotes: "S275"'),
-    ("’", "write ' in a name, and straight double quotes around a text"),
-    ("′", "write ' in a name, and ft for feet"),
-    ("″", "write in for inches"),
-    ("“", 'write straight quotes: "S275"'),
-    ("”", 'write straight quotes: "S275"'),
-    (";", "one statement a line; put commas between arguments"),
-    ("#", "a comment is a line of its own that starts with #"),
-    ("{", "{name} shows a value in prose; here the name alone is enough"),
-    ("_", "a name starts with a letter"),
-)
+_MISTAKES: dict[str, str] = {
+    "**": "write ^ for a power",
+    ":=": "write = to define a name",
+    "=<": "write <=",
+    "=>": "write >=",
+    "<>": "write !=",
+    "&": "write 'and'",
+    "!": "write 'not'",
+    "·": "write * to multiply; only a force and a length make a unit such as kN·m",
+    "⋅": "write * to multiply; only a force and a length make a unit such as kN·m",
+    "×": "write * to multiply",
+    "÷": "write / to divide",
+    "–": "this is a dash; write - to subtract",
+    "—": "this is a dash; write - to subtract",
+    "√": "write sqrt(...)",
+    "²": "write ^2",
+    "³": "write ^3",
+    "⁴": "write ^4",
+    "%": "a per cent follows its number: 4.5 %",
+    "°": "write the unit deg after a number",
+    "'": 'a text stands in double quotes: "S275"',
+    "‘": 'a text stands in straight double quotes: "S275"',
+    "’": "write ' in a name, and straight double quotes around a text",
+    "′": "write ' in a name, and ft for feet",
+    "″": "write in for inches",
+    "“": 'write straight quotes: "S275"',
+    "”": 'write straight quotes: "S275"',
+    ";": "one statement a line; put commas between arguments",
+    "#": "a comment is a line of its own that starts with #",
+    "{": "{name} shows a value in prose; here the name alone is enough",
+    "_": "a name starts with a letter",
+}
+"""What is typed elsewhere, with what to write here."""
 
 
 def tokenize(text: Pieced) -> tuple[Token, ...]:
@@ -98,14 +99,15 @@ def _token(text: Pieced, at: int, before: Token | None) -> Token:
         return _name(text, at)
     if source[at] == '"':
         return _text(text, at)
-    for mistake, hint in _MISTAKES:
-        if source.startswith(mistake, at):
-            return _bad(text, at, at + len(mistake), f"'{mistake}' has no meaning here", hint)
+    if source[at : at + 2] in _MISTAKES:
+        return _mistake(text, at, at + 2)
     if source[at] in _SYNONYMS:
         return Token("operator", _SYNONYMS[source[at]], at, at + 1)
     operator = _OPERATOR.match(source, at)
     if operator:
         return Token("operator", operator[0], at, operator.end())
+    if source[at] in _MISTAKES:
+        return _mistake(text, at, at + 1)
     if source[at] == ".":
         after_unit = before is not None and before.kind == "number" and before.end == at
         hint = (
@@ -151,6 +153,11 @@ def _name(text: Pieced, at: int) -> Token:
         return Token("word", parts[0], at, end)
     spans = tuple(text.span(a, b) for a, b in bounds)
     return Token("name", ".".join(parts), at, end, Name(tuple(parts), spans, None, text.span(at, end)))
+
+
+def _mistake(text: Pieced, start: int, end: int) -> Token:
+    typed = text.text[start:end]
+    return _bad(text, start, end, f"'{typed}' has no meaning here", _MISTAKES[typed])
 
 
 def _bad(text: Pieced, start: int, end: int, message: str, hint: str, code: str = "stray-character") -> Token:

@@ -97,8 +97,8 @@ point weld = (0 mm, 120 mm)
 
 
 def read(text: str, path: str = "calcs/W-12.md") -> Calc:
-    """Read a calc."""
-    return calc_from(SourceFile(path, text))
+    """Read a calc from its bytes, so that line ends are those of every machine."""
+    return calc_from(SourceFile.from_bytes(path, text.encode()))
 
 
 def found(calc: Calc) -> list[str]:

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Mapping
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
 from calcgen.evaluation.blocks.beam_combinations import Combination
@@ -270,14 +270,15 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         return None
     by_group: dict[str, list[CombinationResult]] = {}
     for c in combinations:
-        combined_solution = combine(solutions, c.factors)
-        by_group.setdefault(c.group or c.name, []).append(
-            CombinationResult(c.name, c.factors, combined_solution)
-        )
-    groups = tuple(
-        GroupResult(group, tuple(members), group_results(members, data.model, scope.style, beam_measure))
-        for group, members in by_group.items()
-    )
+        solution = combine(solutions, c.factors)
+        shown, further = group_results({c.name: solution}, data.model, scope.style, beam_measure)
+        result = CombinationResult(c.name, c.factors, solution, (*shown, *further))
+        by_group.setdefault(c.group or c.name, []).append(result)
+    groups = []
+    for name_of_group, members in by_group.items():
+        states = {m.name: m.solution for m in members}
+        shown, further = group_results(states, data.model, scope.style, beam_measure)
+        groups.append(GroupResult(name_of_group, tuple(members), shown, further))
     for group in groups:
         for case in relieving_cases(group, solutions, data.case_kinds):
             scope.report.warning(
@@ -294,7 +295,7 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         support_kinds=data.support_kinds,
         case_kinds={case: data.case_kinds.get(case, "") for case in data.cases},
         loads=data.rows,
-        groups=groups,
+        groups=tuple(groups),
         settings=_shown_settings(data, scope.style),
         restrained=data.is_restrained if data.restrained is not None else None,
         premises=premises(name, data, groups, scope.style),
@@ -324,7 +325,7 @@ def _lines(block: BeamBlock, scope: Scope) -> tuple[tuple[str, Column, Column, i
     )
 
 
-def _second_route(name: str, data: BeamData, groups: tuple[GroupResult, ...]) -> tuple[SecondRoute, ...]:
+def _second_route(name: str, data: BeamData, groups: Sequence[GroupResult]) -> tuple[SecondRoute, ...]:
     """Return, for each comparison, the worst residual over all combinations."""
     worst: dict[str, SecondRoute] = {}
     for group in groups:

@@ -2,14 +2,15 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping, Sequence
+from collections.abc import Callable, Iterator, Mapping, Sequence
+from dataclasses import dataclass, replace
 from typing import Literal
 
 from calcgen.evaluation.blocks.beam_lines import length_text
 from calcgen.evaluation.blocks.beam_model import BeamData
-from calcgen.evaluation.results import CombinationResult, GroupResult, Premise, Result, Verdict
+from calcgen.evaluation.results import GroupResult, Premise, Result, Verdict
 from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
-from calcgen.mechanics.combinations import Envelope, Governing
+from calcgen.mechanics.combinations import Envelope, Governing, ReactionPart
 from calcgen.quantities.display import Style, number_text, show
 from calcgen.quantities.measure import Measure
 
@@ -30,68 +31,106 @@ SLENDER = 10.0  # span to depth from which shear deflection is commonly left out
 SMALL = 1 / 50  # deflection to span up to which the undeformed shape serves (common practice)
 
 
+@dataclass(frozen=True)
+class _Rows:
+    """Makes the results of one group, or of one combination alone."""
+
+    envelope: Envelope
+    several: bool
+    style: Style
+    measured: Measured
+
+    def row(
+        self, name: str, kind: str, governing: Governing, meaning: str, *, placed: bool = False
+    ) -> Result:
+        """Return a result with its place and, where there are several, its combination."""
+        value = self.measured(kind, governing.value, self.style)
+        says = []
+        if placed and governing.value != 0:
+            says.append(f"at {show(self.measured('x', governing.x, self.style), self.style).text}")
+        if self.several:
+            says.append(governing.combination)
+        return Result(name, meaning, value, show(value, self.style), ", ".join(says))
+
+    def extremes(self, symbol: str, suffix: str) -> Iterator[Result]:
+        """Give the largest and the smallest of M, V or w, and the places of those of M."""
+        word, sense = (_SENSE_LAT if suffix else _SENSE)[symbol]
+        found = self.envelope.extremes(f"{symbol}{suffix}")  # type: ignore[arg-type]
+        for which, adjective, governing in (("max", "largest", found.max), ("min", "smallest", found.min)):
+            name = f"{symbol}_{which}{suffix}"
+            yield self.row(name, symbol, governing, f"{adjective} {word}, {sense}", placed=True)
+            if symbol == "M":
+                place = self.measured("x", governing.x, self.style)
+                yield Result(f"x_{name}", f"place of the {adjective} {word}", place, show(place, self.style))
+
+    def magnitude(self, symbol: str, suffix: str) -> Result:
+        """Give the largest magnitude of M, V or w."""
+        word, _ = (_SENSE_LAT if suffix else _SENSE)[symbol]
+        found = self.envelope.extremes(f"{symbol}{suffix}").abs  # type: ignore[arg-type]
+        found = replace(found, value=abs(found.value))
+        return self.row(f"{symbol}_abs{suffix}", symbol, found, f"largest magnitude of {word}", placed=True)
+
+    def reaction(self, number: int, symbol: str, suffix: str, *, by_extremes: bool) -> Iterator[Result]:
+        """Give the reaction force R or moment M_R of a support, as one value or as largest and smallest."""
+        part: ReactionPart = _PARTS[symbol, suffix]
+        found = self.envelope.reaction(number - 1, part)
+        meaning = f"{_REACTIONS[part]} of support {number}"
+        stem = f"{symbol}_{number}"
+        if by_extremes:
+            yield self.row(f"{stem}_max{suffix}", symbol, found.max, f"largest {meaning}")
+            yield self.row(f"{stem}_min{suffix}", symbol, found.min, f"smallest {meaning}")
+        else:
+            yield self.row(f"{stem}{suffix}", symbol, found.max, meaning)
+
+
+_PARTS: dict[tuple[str, str], ReactionPart] = {
+    ("R", ""): "force",
+    ("M_R", ""): "moment",
+    ("R", "_lat"): "force_lat",
+    ("M_R", "_lat"): "moment_lat",
+}
+_REACTIONS: dict[ReactionPart, str] = {
+    "force": "reaction (positive up)",
+    "moment": "restraining moment (positive anticlockwise)",
+    "force_lat": "sideways reaction (positive to the left)",
+    "moment_lat": "sideways restraining moment (positive anticlockwise seen from above)",
+}
+
+
 def group_results(
-    members: Sequence[CombinationResult], model: BeamModel, style: Style, measured: Measured
-) -> tuple[Result, ...]:
-    """Return the extremes and reactions of a group of combinations, each with its place and combination."""
-    envelope = Envelope({c.name: c.solution for c in members})
-    several = len(members) > 1
-    results: list[Result] = []
+    solutions: Mapping[str, CaseSolution], model: BeamModel, style: Style, measured: Measured
+) -> tuple[tuple[Result, ...], tuple[Result, ...]]:
+    """Return the results of a group of combinations: those that its table shows, and further names for them.
 
-    def add(name: str, kind: str, governing: Governing, meaning: str, where: str = "") -> None:
-        value = measured(kind, governing.value, style)
-        by = (
-            f"{where}, {governing.combination}"
-            if several and where
-            else governing.combination
-            if several
-            else where
-        )
-        results.append(Result(name, meaning, value, show(value, style), by))
-
-    active = _lateral(members)
-    for suffix, senses in (("", _SENSE), ("_lat", _SENSE_LAT)) if active else (("", _SENSE),):
-        for quantity, (word, sense) in senses.items():
-            found = envelope.extremes(f"{quantity}{suffix}")  # type: ignore[arg-type]
-            for which, governing in (("max", found.max), ("min", found.min)):
-                name = f"{quantity}_{which}{suffix}"
-                adjective = "largest" if which == "max" else "smallest"
-                place = measured("x", governing.x, style)
-                where = "" if governing.value == 0 else f"at {show(place, style).text}"
-                add(name, quantity, governing, f"{adjective} {word}, {sense}", where)
-                if quantity == "M" and not suffix:
-                    results.append(
-                        Result(f"x_M_{which}", f"place of the {adjective} moment", place, show(place, style))
-                    )
+    Shown are extremes with place and combination, and reactions; the further ones are magnitudes, and reactions
+    by the names that the table does not use.
+    """
+    rows = _Rows(Envelope(solutions), len(solutions) > 1, style, measured)
+    shown: list[Result] = []
+    further: list[Result] = []
+    planes = ("", "_lat") if _lateral(solutions) else ("",)
+    for suffix in planes:
+        for symbol in _SENSE:
+            shown += rows.extremes(symbol, suffix)
+            further.append(rows.magnitude(symbol, suffix))
     for number, support in enumerate(model.supports, start=1):
-        for suffix in ("", "_lat") if active else ("",):
-            force = support.lateral if suffix else support.w
-            rotation = support.lateral_rotation if suffix else support.rotation
-            sense = "to the left" if suffix else "up"
-            if force:
-                found = envelope.reaction(number - 1, "force_lat" if suffix else "force")
-                meaning = f"reaction of support {number}, positive {sense}"
-                if several:
-                    add(f"R_{number}_max{suffix}", "R", found.max, f"largest {meaning}")
-                    add(f"R_{number}_min{suffix}", "R", found.min, f"smallest {meaning}")
-                else:
-                    add(f"R_{number}{suffix}", "R", found.max, meaning)
-            if rotation:
-                found = envelope.reaction(number - 1, "moment_lat" if suffix else "moment")
-                meaning = f"moment of support {number}, positive anticlockwise"
-                if several:
-                    add(f"M_R_{number}_max{suffix}", "M_R", found.max, f"largest {meaning}")
-                    add(f"M_R_{number}_min{suffix}", "M_R", found.min, f"smallest {meaning}")
-                else:
-                    add(f"M_R_{number}{suffix}", "M_R", found.max, meaning)
-    return tuple(results)
+        for suffix in planes:
+            held, turned = (
+                (support.lateral, support.lateral_rotation) if suffix else (support.w, support.rotation)
+            )
+            for symbol, restraint in (("R", held), ("M_R", turned)):
+                if restraint:
+                    shown += rows.reaction(number, symbol, suffix, by_extremes=rows.several)
+                    if not rows.several:
+                        further += rows.reaction(number, symbol, suffix, by_extremes=True)
+    return tuple(shown), tuple(further)
 
 
-def _lateral(members: Sequence[CombinationResult]) -> bool:
+def _lateral(solutions: Mapping[str, CaseSolution]) -> bool:
     """Whether anything happens in the lateral plane."""
-    if "lateral" not in members[0].solution.model.planes:
-        return False
-    return any(c.solution.extremes(q).abs > 0 for c in members for q in _SIDEWAYS)
+    return any(
+        s.extremes(q).abs > 0 for s in solutions.values() if "lateral" in s.model.planes for q in _SIDEWAYS
+    )
 
 
 def relieving_cases(

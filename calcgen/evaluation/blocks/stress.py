@@ -15,6 +15,7 @@ from calcgen.language.blocks.stress import StressBlock
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Name
 from calcgen.mechanics.arrays import Point
+from calcgen.mechanics.outline import Outline
 from calcgen.mechanics.second_route.stress import stress_residuals
 from calcgen.mechanics.stress import Forces, elastic_stress
 from calcgen.quantities.display import show
@@ -224,7 +225,7 @@ def _warn_of_points_outside(
                 "point-outside",
                 line.point.span,
                 f"the point '{plain(line.target.name)}' lies outside the section",
-                hint="coordinates are the section's own: its bounding box has its middle at (0, 0), or at 'at'",
+                hint="in the section's own coordinates its bounding box has its middle at (0, 0), or at 'at'",
             )
 
 

@@ -267,7 +267,7 @@ def _stretch(cursor: Cursor) -> tuple[Expression | None, Expression | None]:
 
 def _word(cursor: Cursor, known: tuple[str, ...], what: str) -> str:
     token = cursor.token
-    if token.kind not in ("name", "word"):
+    if token.kind not in ("name", "word") or token.text in cursor.stops:
         raise cursor.misplaced(f"the {what} is missing", f"possible are {', '.join(known)}")
     one_of(token.text, cursor.span(token), known, what)
     return cursor.take().text

@@ -17,6 +17,7 @@ from calcgen.language.errors import ReadingError
 from calcgen.language.expressions import expression
 from calcgen.language.lines import Line
 from calcgen.language.nodes import Annotations, Expression, Named
+from calcgen.language.tokens import Token
 from calcgen.text import Report, Span
 
 
@@ -146,8 +147,8 @@ def read_shape(cursor: Cursor) -> ShapeText:
     if name.name in _LATER_SHAPES:
         raise not_available_yet(f"the shape '{name.name}'", name.span)
     one_of(name.name, name.span, (*SHAPES, *_LATER_SHAPES), "shape")
-    cursor.expect("(", hint=f"write the arguments after it: {name.name}(...)")
-    arguments, positional, points = _read_arguments(cursor, name.name)
+    opening = cursor.expect("(", hint=f"write the arguments after it: {name.name}(...)")
+    arguments, positional, points = _read_arguments(cursor, name.name, opening)
     mirrored = cursor.accept("mirrored") is not None
     turned = expression(cursor) if cursor.accept("turned") else None
     at = read_point(cursor) if cursor.accept("at") else None
@@ -169,12 +170,12 @@ def read_point(cursor: Cursor) -> Point:
     x = expression(cursor)
     cursor.expect(",", hint="a point is written (x, y)")
     y = expression(cursor)
-    closing = cursor.expect(")", hint="a point is written (x, y)")
+    closing = cursor.close(opening)
     return Point(x, y, cursor.text.span(opening.start, closing.end))
 
 
 def _read_arguments(
-    cursor: Cursor, shape: str
+    cursor: Cursor, shape: str, opening: Token
 ) -> tuple[tuple[Argument, ...], tuple[Expression, ...], tuple[Point, ...]]:
     arguments: list[Argument] = []
     positional: list[Expression] = []
@@ -187,10 +188,9 @@ def _read_arguments(
             arguments.append(_read_argument(cursor, shape, seen))
         else:
             positional.append(_read_positional(cursor, shape, first=not positional))
-        if not cursor.accept(",") and not cursor.sees(")"):
-            if cursor.ended or cursor.sees(*_STOPS):
-                cursor.expect(")")
-            raise cursor.unexpected()
+        if not cursor.accept(","):
+            cursor.close(opening)
+            break
     return tuple(arguments), tuple(positional), tuple(points)
 
 

@@ -1,0 +1,1 @@
+"""Evaluated calcs -> pages -> the files of the package."""
