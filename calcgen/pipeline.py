@@ -6,6 +6,8 @@ from collections.abc import Callable, Mapping
 from dataclasses import asdict, dataclass, field
 from datetime import datetime
 from pathlib import Path
+from posixpath import normpath
+from urllib.parse import unquote
 
 from calcgen import __version__
 from calcgen.evaluation.calc import Memory, Setting, evaluate_all
@@ -14,10 +16,12 @@ from calcgen.figures.illustrate import Drawn, Studio, conventions, illustrate
 from calcgen.language.calc import Calc, Prose
 from calcgen.language.document import calc_from
 from calcgen.profiles import Catalogue, builtin_catalogue, read_catalogue
-from calcgen.project import Project, ProjectFiles, load_project
+from calcgen.project import Project, ProjectFiles, Reference, load_project
 from calcgen.publishing import PublishError, build_key, is_current, publish, read_manifest, recover
 from calcgen.quantities.display import Style
-from calcgen.site.compose import PackageInput, compose
+from calcgen.site.compose import compose
+from calcgen.site.facts import PackageInput, ProjectFacts, ReferenceFacts
+from calcgen.site.figure import FigureSvg
 from calcgen.site.render import render
 from calcgen.text import Diagnostic, SourceFile, Span, error
 from calcgen.trail import (
@@ -31,11 +35,11 @@ from calcgen.trail import (
     compare,
     history,
     load,
-    previous_values,
     record,
     replay,
 )
 from calcgen.trail.state import state_of
+from calcgen.views import history_views, previous_views
 
 PROGRAM = f"calcgen {__version__}"
 
@@ -163,7 +167,20 @@ def _build(
     }
     signs = workshop.studio.draw_one(conventions(project.axes, project.depth))
     step("writing")
-    package = _package(files, project, style, evaluated, diagnostics, figures, signs, trail, images)
+    package = PackageInput(
+        project=_facts(project),
+        calcs=evaluated,
+        references={key: _reference(r) for key, r in files.references.items()},
+        figures={address: tuple(_figure(d) for d in row) for address, row in figures.items()},
+        conventions=(_figure(signs),),
+        previous=previous_views(trail.trail, trail.changes, style),
+        history=history_views(trail.trail, style),
+        pending=trail.pending,
+        version=__version__,
+        diagnostics=(*found, *faults, *missing),
+        built=trail.trail.order[-1].when if trail.trail.order else "",
+        images=images,
+    )
     summaries = tuple(_summary(calc) for calc in evaluated)
     publish(
         render(compose(package)),
@@ -178,6 +195,36 @@ def _build(
         durable=request.durable,
     )
     return Outcome(summaries, diagnostics, published=True, notes=trail.notes, trail_at_fault=trail.at_fault)
+
+
+def _facts(project: Project) -> ProjectFacts:
+    return ProjectFacts(
+        title=project.title,
+        axes=project.axes,
+        number=project.number,
+        client=project.client,
+        originator=project.originator,
+        checker=project.checker,
+        depth=project.depth,
+        units=project.units,
+        digits=project.digits,
+    )
+
+
+def _reference(r: Reference) -> ReferenceFacts:
+    return ReferenceFacts(
+        title=r.title,
+        number=r.number,
+        edition=r.edition,
+        author=r.author,
+        publisher=r.publisher,
+        year=r.year,
+        note=r.note,
+    )
+
+
+def _figure(drawn: Drawn) -> FigureSvg:
+    return FigureSvg(drawn.title, drawn.description, drawn.wide, drawn.narrow)
 
 
 def _calc(source: SourceFile, workshop: Workshop) -> Calc:
@@ -297,8 +344,15 @@ def _kept(data: Mapping[str, object]) -> tuple[Summary, ...]:
     return tuple(Summary(**row) for row in rows) if isinstance(rows, list) else ()
 
 
+def image_path(calc: Calc, address: str) -> str | None:
+    """Return the path in the project of an image that a calc shows; None where it leaves the project."""
+    path = normpath(f"{calc.source.path.rpartition('/')[0]}/{unquote(address)}")
+    outside = path.startswith(("..", "/")) or "://" in address or "\\" in path
+    return None if outside else path
+
+
 def read_images(root: Path, calcs: tuple[Calc, ...]) -> tuple[dict[str, bytes], tuple[Diagnostic, ...]]:
-    """Return the images that prose shows, by their path in the project, and a fault for each that is not there.
+    """Return the images that prose shows, by path in the project, and a fault for each that is missing.
 
     An image's address is relative to its calc, as CommonMark has it, and stays inside the project.
     """

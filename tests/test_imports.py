@@ -23,8 +23,9 @@ ALLOWED = {
     "publishing": set(),
     "project": {"language", "quantities", "text"},
     "pipeline": {
-        "evaluation", "figures", "language", "profiles", "project", "publishing", "quantities", "site", "text", "trail",
+        "evaluation", "figures", "language", "profiles", "project", "publishing", "quantities", "site", "text", "trail", "views",
     },
+    "views": {"quantities", "site", "trail"},
     "watch": set(),
     "preview": set(),
     "start": set(),

@@ -19,6 +19,7 @@ from calcgen.language.nodes import WORDS, Named
 from calcgen.language.prose import read_prose
 from calcgen.text import Diagnostic, Report, SourceFile, Span, error, nearest
 
+_DEFINING = ("inputs", "working")  # in the other kinds the left sides belong to the block
 _NUMBER = re.compile(r"[A-Za-z][A-Za-z0-9-]*")
 _OPENING = re.compile(r"( {0,3})(`{3,}|~{3,})[ \t]*(.*?)[ \t]*")
 _CLOSING = re.compile(r" {0,3}(`{3,}|~{3,})[ \t]*")
@@ -139,7 +140,7 @@ def _read_fence(fence: Token, report: Report) -> tuple[Block | FailedBlock, froz
         name = _block_name(kind, head, source)
     except ReadingError as fault:
         fault.report_to(report)
-        return FailedBlock(kind, span), _names_in(fence)
+        return FailedBlock(kind, span), _names_in(fence, source)
     lines = read_lines(source, content, report)
     outcome = READERS[kind](BlockText(kind, name, head, span, lines), report)
     return outcome.block or FailedBlock(kind, span), outcome.failed_names
@@ -192,7 +193,7 @@ def _check_fence(fence: Token, report: Report) -> frozenset[str]:
             f"the block '{kind}' stands inside a list or a quotation",
             hint="a live block stands at the left margin of the calc",
         )
-        return _names_in(fence)
+        return _names_in(fence, source)
     if fence.level == 0 and not _is_closed(fence, source):
         _unclosed(head).report_to(report)
         return frozenset()
@@ -204,7 +205,7 @@ def _check_fence(fence: Token, report: Report) -> frozenset[str]:
             f"'{kind}' is no live block, so this one is shown as code",
             hint=f"the nearest is '{near}'",
         )
-        return _names_in(fence)
+        return _names_in(fence, source)
     return frozenset()
 
 
@@ -223,11 +224,12 @@ def _is_closed(fence: Token, source: SourceFile) -> bool:
     return closing is not None and closing[1][0] == fence.markup[0] and len(closing[1]) >= len(fence.markup)
 
 
-def _names_in(fence: Token) -> frozenset[str]:
+def _names_in(fence: Token, source: SourceFile) -> frozenset[str]:
     """Return the names that a fence would define; one that is not closed has swallowed other blocks."""
     found = _head_names(fence.info)
     lines = fence.content.split("\n")
-    if fence.info.split()[:1] not in [[kind] for kind in NAMED]:
+    kind = _kind(fence)
+    if kind in _DEFINING or kind not in (*READERS, *LATER) or not _is_closed(fence, source):
         found = found.union(*(defined_names(line) for line in lines))
     heads = (opening[3] for opening in map(_OPENING.fullmatch, lines) if opening)
     return found.union(*map(_head_names, heads))
@@ -236,6 +238,6 @@ def _names_in(fence: Token) -> frozenset[str]:
 def _head_names(head: str) -> frozenset[str]:
     """Return the name that the head of a block defines: `beam NAME`, `method FILE as NAME`."""
     words = head.split("|")[0].split()
-    named = words[:1] == ["method"] or words[:1] in [[kind] for kind in NAMED]
-    found = canonical_name(words[-1]) if named and len(words) > 1 else None
+    named = len(words) > 1 and words[0] in (*NAMED, "method")
+    found = canonical_name(words[-1]) if named else None
     return frozenset({found}) if found else frozenset()

@@ -9,6 +9,8 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from calcgen.language.calc import Calc
+from calcgen.project import project_from, references_from
+from calcgen.text import SourceFile
 from calcgen.text.codes import CODES
 from calcgen.text.terminal import render
 from tests.language.helpers import VALID, read
@@ -39,6 +41,20 @@ def test_any_text(text: str) -> None:
 def test_any_pieces_in_a_block(text: str) -> None:
     for kind in ("inputs", "working", "section a", "beam b", "stress c", "sheet", "assumptions"):
         assert sound(read(f"# T\n```{kind}\n{text}\n```\n"))
+
+
+@given(
+    st.lists(
+        st.sampled_from(
+            ["title", "axes", " = ", '"eurocode"', "\n", "[preferred_units]\n", "[[a]]\n", "3", ".", "x"]
+        ),
+        max_size=30,
+    ).map("".join)
+)
+def test_any_toml(text: str) -> None:
+    source = SourceFile("project.toml", text)
+    for _, diagnostics in (project_from(source), references_from(source)):
+        assert all(d.code in CODES and 0 <= d.span.start <= d.span.end <= len(text) for d in diagnostics)
 
 
 @settings(max_examples=200)

@@ -9,7 +9,7 @@ import pytest
 
 from calcgen.language.document import calc_from
 from calcgen.text.codes import CODES
-from tests.specimens import Specimen, check, specimens
+from tests.language.specimens import Specimen, check, specimens
 
 _FOLDER = Path(__file__).parent.parent / "invalid"
 _ROOT = Path(__file__).parent.parent.parent

@@ -100,10 +100,10 @@ _REACTIONS: dict[ReactionPart, str] = {
 def group_results(
     solutions: Mapping[str, CaseSolution], model: BeamModel, style: Style, measured: Measured
 ) -> tuple[tuple[Result, ...], tuple[Result, ...]]:
-    """Return the results of a group of combinations: those that its table shows, and further names for them.
+    """Return the results of a group of combinations: those its table shows, and further names for them.
 
-    Shown are extremes with place and combination, and reactions; the further ones are magnitudes, and reactions
-    by the names that the table does not use.
+    Shown are extremes with place and combination, and reactions; the further ones are magnitudes, and
+    reactions by the names that the table does not use.
     """
     rows = _Rows(Envelope(solutions), len(solutions) > 1, style, measured)
     shown: list[Result] = []

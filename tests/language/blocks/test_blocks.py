@@ -88,7 +88,8 @@ def test_working(calc: Calc) -> None:
     assert isinstance(moment, Derivation)
     assert moment.unit is not None
     assert written(moment.formula) == "(/ (* (* w s) (^ L 2)) 8)"
-    assert moment.annotations.reference.text == "statics of a simple beam"
+    assert moment.annotations.note.text == "midspan moment of a simple beam"
+    assert moment.annotations.reference.text == "statics"
     assert isinstance(check, Check)
     assert (check.statement, check.annotations.note.text) == ("M_Ed <= M_c_Rd", "bending at midspan")
     assert isinstance(factor, Derivation)
@@ -191,7 +192,8 @@ def test_beam(calc: Calc) -> None:
 
 def test_units_and_words_of_beams_do_not_meet() -> None:
     calc = read(
-        "# T\n```beam b\nsupport pin at 24 in settles 1/4 in in S\nload Q uniform 2 klf from 0 in to 9 ft\n```\n"
+        "# T\n```beam b\nsupport pin at 24 in settles 1/4 in in S\n"
+        "load Q uniform 2 klf from 0 in to 9 ft\n```\n"
     )
     assert not calc.diagnostics
     support, load = block(calc, BeamBlock).lines
@@ -221,7 +223,7 @@ def test_stress(calc: Calc) -> None:
         ("```stress c\nM = 2 L\n```", {"c"}),
         ("```table k | source\n```", {"k"}),
         ("```method en1993/buckling as ltb\nL_cr = 3 m\n```", {"ltb"}),
-        ("```vary\nL = 26 steps from 4 m to 9 m\n```", {"L"}),
+        ("```vary\nL = 26 steps from 4 m to 9 m\n```", set()),
         ("- ```inputs\n  a = 3 m\n  ```", {"a"}),
         ("```inputs\na = 3 m\n\n```section b\n", {"a", "b"}),
         ("```inptus\na = 3 m\n```", {"a"}),
@@ -244,6 +246,5 @@ def test_later_lines_of_a_section_are_kept() -> None:
 
 
 def test_every_kind_of_the_language_is_in_the_table() -> None:
-    assert {*READERS, *LATER} == set(
-        "sheet assumptions inputs working section beam stress table method vary takes proof".split()
-    )
+    words = "sheet, assumptions, inputs, working, section, beam, stress, table, method, vary, takes, proof"
+    assert ", ".join((*READERS, *LATER)) == words

@@ -1,0 +1,106 @@
+"""A line of working as an equation: formula = numbers put in = result, in parts that may stand below each other."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping
+from dataclasses import dataclass
+
+from markupsafe import Markup
+
+from calcgen.evaluation.results import CheckRow, DerivedRow, Operand
+from calcgen.language.nodes import Cases, Expression, Formula, Name, Number, Text, Truth
+from calcgen.quantities.display import Shown
+from calcgen.site.mathml import PutIn, formula, math, quantity, relation, symbol
+from calcgen.text import SourceFile
+
+_OPPOSITE = {"<": ">=", "<=": ">", ">": "<=", ">=": "<"}
+_EQUALS = "<mo>=</mo>"
+
+
+@dataclass(frozen=True)
+class Equation:
+    """An equation as MathML elements.
+
+    Attributes
+    ----------
+    left : what stands before the first sign; it keeps its place when the parts break.
+    parts : each starts with its sign; as many stand on a line as fit.
+    aside : a remark below, such as which case was taken; empty where there is none.
+    """
+
+    left: Markup
+    parts: tuple[Markup, ...]
+    aside: Markup = Markup("")
+
+
+def derived(row: DerivedRow, source: SourceFile) -> Equation:
+    """Return a derived value; a step that would only repeat the next one is left out."""
+    put_in = put_in_from(row.operands, source)
+    node = row.node.formula
+    steps: list[str] = []
+    aside = ""
+    taken: Formula = node
+    if isinstance(node, Cases) and row.branch is not None:
+        branch = node.branches[row.branch]
+        taken = branch.value
+        steps.append(formula(node))
+        if branch.condition is not None:
+            aside = f"<mtext>as&#xA0;</mtext>{formula(branch.condition, put_in)}"
+    elif not isinstance(node, Number):
+        steps.append(formula(node))
+    if not isinstance(taken, Number | Text | Truth):
+        steps.append(formula(taken, put_in))
+    result = quantity(row.shown)
+    steps.append(result)
+    return Equation(
+        _element(symbol(row.name)),
+        tuple(_element(_EQUALS + step) for step in _without_repeats(steps)),
+        _element(aside) if aside else Markup(""),
+    )
+
+
+def stated(name: str, shown: Shown) -> Equation:
+    """Return a value that is given: symbol = value."""
+    return Equation(_element(symbol(name)), (_element(_EQUALS + quantity(shown)),))
+
+
+def check(row: CheckRow, source: SourceFile) -> Equation:
+    """Return a check: its statement, its sides with numbers put in, and how they stand to each other."""
+    node, result = row.node.comparison, row.result
+    parts = [formula(node)]
+    if not (_plain(node.left) and _plain(node.right)):
+        parts.append(formula(node, put_in_from(row.operands, source)))
+    parts.append(
+        compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
+    )
+    first, *others = _without_repeats(parts)
+    return Equation(_element(first), tuple(_element(part) for part in others))
+
+
+def compared(left: Shown, operator: str, right: Shown, *, satisfied: bool) -> str:
+    """Return the MathML of two sides with the relation in which they stand; one unit serves both."""
+    sign = operator if satisfied else _OPPOSITE[operator]
+    first = Shown(left.number) if left.unit == right.unit else left
+    return f"{quantity(first)}{relation(sign)}{quantity(right)}"
+
+
+def put_in_from(operands: Mapping[str, Operand], source: SourceFile) -> PutIn:
+    """Return what stands for each name of a line: operands are kept by the name's text as typed."""
+
+    def put_in(name: Name) -> Shown | None:
+        operand = operands.get(source.slice(name.span).strip())
+        return operand.shown if operand is not None else None
+
+    return put_in
+
+
+def _plain(node: Expression) -> bool:
+    return isinstance(node, Name | Number)
+
+
+def _without_repeats(steps: list[str]) -> list[str]:
+    return [step for step, following in zip(steps, [*steps[1:], ""], strict=True) if step != following]
+
+
+def _element(content: str) -> Markup:
+    return Markup(math(content, display=True))  # noqa: S704 - mathml escapes what was typed
