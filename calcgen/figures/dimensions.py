@@ -2,9 +2,10 @@
 
 from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
+from math import inf
 from typing import Literal
 
-from calcgen.figures.labels import Box, Point
+from calcgen.figures.labels import Box, Obstacles, Point
 from calcgen.figures.outline import Scale
 from calcgen.figures.picture import HAIR, SMALL, THIN, Label, Sketch
 
@@ -113,14 +114,32 @@ def _draw_across(sketch: Sketch, scale: Scale, dimension: Dimension) -> None:
     _draw_measure(sketch, start, end, outside=True)
     if abs(end[0] - start[0]) >= abs(end[1] - start[1]):
         label = Label(end[0] + 16, end[1] + 0.36 * SMALL, dimension.label, SMALL, "left", halo=True)
-        step = (3, 0)
+        step, aside = (3.0, 0.0), (0.0, 8.0)
     else:
         label = Label(start[0], min(start[1], end[1]) - 16, dimension.label, SMALL, halo=True)
-        step = (0, -3)
-    taken = [item.box for item in sketch.items if isinstance(item, Label)]
-    while any(label.box.overlaps(other, 2) for other in taken):
+        width = label.box.right - label.box.left
+        step, aside = (0.0, -3.0), (width / 2 + 3, 0.0)
+    taken = _labels_and_axes(sketch)
+    while True:
+        # in line with the dimension, or beside the axis that lies in its line
+        for side in (0, -1, 1):
+            place = label.moved(side * aside[0], side * aside[1])
+            if taken.free(place.box):
+                sketch.label(place)
+                return
         label = label.moved(*step)
-    sketch.label(label)
+
+
+def _labels_and_axes(sketch: Sketch) -> Obstacles:
+    """Give what a label on the section keeps clear of: labels, and axes by their dashes."""
+    taken = Obstacles(-inf, inf)
+    for item in sketch.items:
+        if isinstance(item, Label):
+            taken.boxes.append(item.box)
+        elif item.stroke and item.stroke.dash:
+            for ring in item.rings:
+                taken.add_line(ring)
+    return taken
 
 
 def _draw_measure(sketch: Sketch, start: Point, end: Point, *, outside: bool = False) -> None:

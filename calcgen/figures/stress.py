@@ -16,6 +16,7 @@ from calcgen.figures.picture import (
     SMALL,
     TEXT,
     WIDTHS,
+    Anchor,
     Colour,
     Label,
     Picture,
@@ -89,25 +90,37 @@ def draw_stress(drawing: StressDrawing, width: Width) -> str:
     return render(compose_stress(drawing, width))
 
 
+LEAST_DEPTH = 90.0  # pixels; a shallower section is drawn narrower than to scale, and that is said
+REACH = 100.0  # pixels from the zero line to the largest value, at most
+FACE_NOTE = "Cut face of the part towards the start: tension leaves it, compression enters it."
+
+
 @dataclass(frozen=True)
 class _Row:
-    """Where one row of panels stands across the figure, in pixels."""
+    """Where one row of panels stands across the figure, from left to right in pixels."""
 
     section: tuple[float, float]
-    strain: float | None
-    face: float | None
-    reach: float
+    strain: tuple[float, float] | None
+    stress: tuple[float, float] | None
     height: float
 
 
-LEAST_DEPTH = 90.0  # pixels; a shallower section is drawn narrower than to scale, and that is said
-FACE_NOTE = "Cut face of the part towards the start: tension leaves it, compression enters it."
+@dataclass(frozen=True)
+class _Values:
+    """From values to pixels across, positive to the right of the zero line."""
+
+    zero: float
+    factor: float
+
+    def at(self, value: float) -> float:
+        """Give the pixel of a value."""
+        return self.zero + self.factor * value
 
 
 def compose_stress(drawing: StressDrawing, width: Width) -> Picture:
     """Compose the panels side by side, or the strain in a second row where the place is narrow."""
     sketch = Sketch()
-    for row in _rows(width, strain=bool(drawing.strain)):
+    for row in _rows(drawing, width):
         _draw_row(sketch, drawing, row, sketch.box().bottom + 24 if sketch.items else 0.0, WIDTHS[width])
     notes = [note for note in (drawing.note, FACE_NOTE if _largest(drawing.stress) else "") if note]
     if drawing.neutral_axis_label not in {i.text for i in sketch.items if isinstance(i, Label)}:
@@ -121,19 +134,24 @@ def compose_stress(drawing: StressDrawing, width: Width) -> Picture:
     return sketch.picture(f"{drawing.ident}-{width}", drawing.title, description, width=WIDTHS[width])
 
 
-def _rows(width: Width, *, strain: bool) -> tuple[_Row, ...]:
+def _rows(drawing: StressDrawing, width: Width) -> tuple[_Row, ...]:
+    names = [force.label for force in drawing.forces]
+    if drawing.moment is not None:
+        names.append(drawing.moment.label)
+    longest = max((_width(Label(0, 0, name, SMALL)) for name in names), default=0.0)
+    end = WIDTHS[width] - (min(max(longest + 16, 70.0), 110.0) if names else 6.0)
     if width == "wide":
-        if strain:
-            return (_Row((12, 122), 208, 330, 100, 190),)
-        return (_Row((24, 174), None, 262, 140, 200),)
-    first = _Row((6, 92), None, 124, 84, 170)
-    return (first, _Row((6, 92), 215, None, 0, 130)) if strain else (first,)
+        if drawing.strain:
+            return (_Row((14, 124), (152, 232), (262, end), 190),)
+        return (_Row((24, 174), None, (200, end), 200),)
+    first = _Row((14, 92), None, (104, end), 170)
+    return (first, _Row((14, 92), (150, 290), None, 130)) if drawing.strain else (first,)
 
 
 def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, width: float) -> None:
     """Draw the panels of one row with their titles; the neutral axis runs through all of them."""
     left, bottom, right, upper = bounds(drawing.parts)
-    head = top + 18
+    head = top + (44 if row.stress else 30)  # the values of the top fibre stand under the titles
     room = row.section[1] - row.section[0]
     depth, breadth = max(upper - bottom, 1e-300), max(right - left, 1e-300)
     factor = max(min(row.height / depth, room / breadth), LEAST_DEPTH / depth)
@@ -142,7 +160,7 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
     scale, box = place(drawing.parts, factor, x, head, across=across)
     draw_parts(sketch, scale, drawing.parts)
     draw_cross(sketch, scale.at(*drawing.centroid), 4.0)
-    obstacles = Obstacles(3.0, width - 3.0)
+    obstacles = Obstacles(3.0, width - 3.0, [box])
     middle = (box.left + box.right) / 2
     titles = [Label(middle, top, drawing.title)]
     if drawing.edges != ("top", "bottom"):
@@ -150,28 +168,28 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
         titles += [Label(middle, y, text, SMALL, colour="muted") for text, y in edges]
     if across < factor:
         titles.append(Label(middle, box.bottom + 25, "width not to scale", SMALL, colour="muted"))
-    if row.strain is not None:
-        titles.append(Label(row.strain, top, drawing.strain_title))
-    if row.face is not None:
-        titles.append(Label(row.face + row.reach / 2, top, drawing.stress_title))
+    for panel, title in ((row.strain, drawing.strain_title), (row.stress, drawing.stress_title)):
+        if panel:
+            titles.append(Label(sum(panel) / 2, top, title))
     for title in titles:
         placed = _stepped(title.within(3.0, width - 3.0), obstacles, -1 if title.y == top else 1)
         obstacles.boxes.append(sketch.label(placed).box)
-    axis = None
+    axis = []
     if drawing.neutral_axis is not None:
         y = scale.at(0.0, drawing.neutral_axis)[1]
-        end = width - 70.0 if row.face is not None or row.strain is None else row.strain + 60
-        axis = [(max(box.left - 12, 2.0), y), (end, y)]
+        end = row.stress or row.strain or (box.left, box.right + 12)
+        axis = [(box.left - 10, y), (end[1], y)]
         obstacles.add_line(axis)
-    if row.strain is not None:
+    if row.strain:
         _draw_strain(sketch, drawing, scale, row.strain, obstacles)
-    if row.face is not None:
-        _draw_stress(sketch, drawing, scale, row, obstacles, width)
-    if axis is not None:
+    if row.stress:
+        _draw_stress(sketch, drawing, scale, row.stress, obstacles)
+        _draw_resultants(sketch, drawing, scale, width, (box.top + box.bottom) / 2, obstacles)
+    if axis:
         sketch.line(axis, Stroke("ink", 0.9, CHAIN))
-        _draw_axis_label(
-            sketch, drawing.neutral_axis_label, axis[0][1], (box.right + 8, axis[1][0]), obstacles
-        )
+    if axis and row.stress:  # a second row only repeats the axis
+        ends = (box.right + 8, axis[1][0])
+        _draw_axis_label(sketch, drawing.neutral_axis_label, axis[0][1], ends, obstacles)
 
 
 def _draw_axis_label(
@@ -181,71 +199,71 @@ def _draw_axis_label(
     for text in (sentence, "neutral axis"):
         for baseline in (y - 4, y + 11.5):
             label = Label(0.0, baseline, text, SMALL, "left", halo=True)
-            length = label.box.right
-            for x in np.arange(ends[1] - length - 2, ends[0], -4.0):
+            for x in np.arange(ends[0], ends[1] - _width(label) - 2, 4.0):
                 if obstacles.clear(label.moved(float(x), 0).box.grown(2.0), 0.5):
                     obstacles.boxes.append(sketch.label(label.moved(float(x), 0)).box)
                     return
 
 
+def _values(profile: Sequence[Point], panel: tuple[float, float]) -> _Values:
+    """Give the scale that puts a profile and its zero line in the middle of a panel."""
+    low, high = min(0.0, *(v for _, v in profile)), max(0.0, *(v for _, v in profile))
+    middle = sum(panel) / 2
+    if low == high:
+        return _Values(middle, 0.0)
+    factor = min(REACH / max(high, -low), (panel[1] - panel[0]) / (high - low))
+    return _Values(middle - factor * (low + high) / 2, factor)
+
+
 def _draw_strain(
-    sketch: Sketch, drawing: StressDrawing, scale: Scale, axis: float, obstacles: Obstacles
+    sketch: Sketch, drawing: StressDrawing, scale: Scale, panel: tuple[float, float], obstacles: Obstacles
 ) -> None:
     """Draw the strain as a signed profile about its zero line: lengthening to the right."""
-    largest = _largest(drawing.strain) or 1.0
+    values = _values(drawing.strain, panel)
     heights = [scale.at(0.0, y)[1] for y, _ in drawing.strain]
-    profile = [(axis + 34 * e / largest, y) for (_, e), y in zip(drawing.strain, heights, strict=True)]
-    sketch.fill([[(axis, heights[0]), *profile, (axis, heights[-1])]], "section")
-    sketch.line([(axis, heights[0]), *profile, (axis, heights[-1])], Stroke("ink", 1.2))
-    sketch.line([(axis, min(heights)), (axis, max(heights))], FIRM)
-    obstacles.add_line([(axis, heights[0]), *profile, (axis, heights[-1])])
+    profile = [(values.at(e), y) for (_, e), y in zip(drawing.strain, heights, strict=True)]
+    zero = [(values.zero, heights[-1]), (values.zero, heights[0])]
+    sketch.fill([[*profile, *zero]], "section")
+    sketch.line([zero[1], *profile, zero[0]], Stroke("ink", 1.2))
+    sketch.line(zero, FIRM)
+    obstacles.add_line([zero[1], *profile, *zero])
     middle = (min(heights) + max(heights)) / 2
     for mark in drawing.strain_marks:
-        x, y = axis + 34 * mark.value / largest, scale.at(0.0, mark.y)[1]
+        x, y = (values.zero + values.at(mark.value)) / 2, scale.at(0.0, mark.y)[1]
         way, clear_of = (-1, -5.0) if y < middle else (1, 12.0)
-        label = Label((axis + x) / 2, y + clear_of, mark.label, SMALL, colour=_colour(mark.value))
+        label = Label(x, y + clear_of, mark.label, SMALL, colour=_colour(mark.value))
         obstacles.boxes.append(sketch.label(_stepped(label, obstacles, way)).box)
 
 
 def _draw_stress(
-    sketch: Sketch, drawing: StressDrawing, scale: Scale, row: _Row, obstacles: Obstacles, width: float
+    sketch: Sketch, drawing: StressDrawing, scale: Scale, panel: tuple[float, float], obstacles: Obstacles
 ) -> None:
-    """Draw the tractions on the face with their marks and resultants.
+    """Draw the tractions on the face, which is the zero line, with their values.
 
-    Both signs stand on the free side of the face, so that each arrow is the traction itself: with its tail
-    on the face in tension, with its head on the face in compression.
+    The body lies to the left of its face, so each arrow is the traction itself: from the face to the right,
+    out of the body, in tension; from the face to the left, into the body, in compression.
     """
-    face = row.face or 0.0
+    values = _values(drawing.stress, panel)
+    face = values.zero
     heights = [scale.at(0.0, y)[1] for y, _ in drawing.stress]
-    upper, lower = min(heights), max(heights)
-    column = 70.0 if drawing.moment or drawing.forces else 4.0
-    longest = max((Label(0, 0, m.label, TEXT, bold=True).box.right * 2 for m in drawing.marks), default=0.0)
-    reach = max(min(row.reach, width - column - face - 12 - longest), 36.0)
-    per_value = reach / (_largest(drawing.stress) or 1.0)
-    _draw_stub(sketch, face, upper, lower)
     for sign in (1.0, -1.0):
         colour = _colour(sign)
         for lobe in _lobes(drawing.stress, sign):
-            points = [(face + per_value * abs(s), scale.at(0.0, y)[1]) for y, s in lobe]
+            points = [(values.at(s), scale.at(0.0, y)[1]) for y, s in lobe]
             ring = [(face, points[0][1]), *points, (face, points[-1][1])]
+            arrows = _tractions(points, face)
             sketch.fill([ring], colour, opacity=0.16)
             sketch.line(ring, Stroke(colour, 1.2))
-            sketch.arrows(_tractions(points, face, sign), Stroke(colour, 0.9))
-            obstacles.add_line(ring)
-    sketch.line([(face, upper), (face, lower)], Stroke("ink", 1.6))
+            sketch.arrows(arrows, Stroke(colour, 0.9))
+            for line in (ring, *arrows):
+                obstacles.add_line(line)
+    ends = min(heights), max(heights)
+    sketch.line([(face, ends[0]), (face, ends[1])], Stroke("ink", 1.6))
+    obstacles.add_line([(face, ends[0]), (face, ends[1])])
     for mark in drawing.marks:
-        _draw_mark(sketch, mark, face + per_value * abs(mark.value), scale, (upper, lower), obstacles)
-    _draw_resultants(sketch, drawing, scale, width, (upper + lower) / 2, obstacles)
-
-
-def _draw_stub(sketch: Sketch, face: float, upper: float, lower: float) -> None:
-    """Draw a short piece of the beam behind the face, broken off at its left."""
-    back, middle = face - 13.0, (upper + lower) / 2
-    zigzag = [(back, middle + 7), (back - 4, middle + 3), (back + 4, middle - 3), (back, middle - 7)]
-    broken = [(back, lower), *zigzag, (back, upper)]
-    sketch.fill([[(face, upper), (face, lower), *broken]], "section")
-    sketch.line(broken, Stroke("muted", 0.7))
-    sketch.lines([((back, y), (face, y)) for y in (upper, lower)], Stroke("ink", 1.0))
+        tip = (values.at(mark.value), scale.at(0.0, mark.y)[1])
+        for label in _mark_labels(mark, tip, ends, panel, _way(mark, drawing.stress), obstacles):
+            obstacles.boxes.append(sketch.label(label).box)
 
 
 def _lobes(profile: Sequence[Point], sign: float) -> list[list[Point]]:
@@ -265,40 +283,61 @@ def _lobes(profile: Sequence[Point], sign: float) -> list[list[Point]]:
     return [lobe for lobe in lobes if lobe]
 
 
-def _tractions(points: Sequence[Point], face: float, sign: float) -> list[tuple[Point, Point]]:
-    """Arrows between the face and the profile: away from the face in tension, to it in compression."""
+def _tractions(points: Sequence[Point], face: float) -> list[tuple[Point, Point]]:
+    """Arrows from the face to the profile."""
     xs, ys = zip(*reversed(points), strict=True)  # from the top down, as interpolation wants it
     count = max(int((ys[-1] - ys[0]) / 17), 1) + 1
-    arrows = []
-    for y in np.linspace(ys[0], ys[-1], count):
-        x = float(np.interp(y, ys, xs))
-        if x - face > 7:
-            ends = ((face, float(y)), (x, float(y)))
-            arrows.append(ends if sign > 0 else ends[::-1])
-    return [(tail, tip) for tail, tip in arrows]
+    tips = [(float(np.interp(y, ys, xs)), float(y)) for y in np.linspace(ys[0], ys[-1], count)]
+    return [((face, y), (x, y)) for x, y in tips if abs(x - face) > 7]
 
 
-def _draw_mark(
-    sketch: Sketch, mark: Mark, tip: float, scale: Scale, ends: tuple[float, float], obstacles: Obstacles
-) -> None:
-    """Write a value, and under or over it the word, to the right of the profile."""
-    y = scale.at(0.0, mark.y)[1]
-    inward = -1 if y > sum(ends) / 2 else 1
+def _way(mark: Mark, profile: Sequence[Point]) -> int:
+    """Way to step with a mark inside the depth: up (-1) from the upper value of a jump, else down (1)."""
+    at = [value for y, value in profile if y == mark.y]
+    return -1 if len(at) > 1 and mark.value == at[-1] else 1
+
+
+def _mark_labels(
+    mark: Mark,
+    tip: Point,
+    ends: tuple[float, float],
+    panel: tuple[float, float],
+    way: int,
+    obstacles: Obstacles,
+) -> list[Label]:
+    """Give the value of a mark and its word, in clear space.
+
+    They stand over the top fibre and under the bottom fibre, the word nearer to the profile; at other heights
+    beside the tip, whence they step `way`.
+    """
+    x, y = tip
+    anchor: Anchor = "center"
+    if abs(y - ends[0]) < 1:
+        way, value_at, word_at = -1, y - 18, y - 5.5
+    elif abs(y - ends[1]) < 1:
+        way, value_at, word_at = 1, y + 25, y + 12.5
+    else:
+        value_at, word_at = y + 4, y + 4 + 12.5 * way
+        x, anchor = (x + 6, "left") if mark.value > 0 else (x - 6, "right")
     colour = _colour(mark.value)
-    value = Label(tip + 6, y + 4, mark.label, TEXT, "left", colour, bold=True)
-    placed = _stepped(value.within(obstacles.left, obstacles.right), obstacles, inward, LINE)
-    obstacles.boxes.append(sketch.label(placed).box)
+    if not mark.value:
+        value_at = word_at
+    labels = [Label(x, value_at, mark.label, TEXT, anchor, colour, bold=True)]
     if mark.value:
-        word = Label(placed.x, placed.y + 12.5 * inward, _word(mark.value), SMALL, "left", colour)
-        obstacles.boxes.append(sketch.label(word).box)
+        labels.append(Label(x, word_at, _word(mark.value), SMALL, anchor, colour))
+    longest = max(labels, key=_width)
+    shift = longest.within(*panel).within(obstacles.left, obstacles.right).x - x
+    labels = [label.moved(shift, 0.0) for label in labels]
+    while not obstacles.free(around(label.box for label in labels), 1.0):
+        labels = [label.moved(0.0, way * 3.0) for label in labels]
+    return labels
 
 
-def _stepped(label: Label, obstacles: Obstacles, way: int, room: float = 0.0) -> Label:
-    """Give the label moved up (`way` -1) or down (1) until it and `room` beyond it are clear."""
-    moved = label
-    while not obstacles.free(around([moved.box, moved.box.moved(0.0, way * room)]), 1.0):
-        moved = moved.moved(0.0, way * 3.0)
-    return moved
+def _stepped(label: Label, obstacles: Obstacles, way: int) -> Label:
+    """Give the label moved up (`way` -1) or down (1) until it is clear."""
+    while not obstacles.free(label.box, 1.0):
+        label = label.moved(0.0, way * 3.0)
+    return label
 
 
 def _draw_resultants(
@@ -324,6 +363,10 @@ def _draw_resultants(
         labels.insert(0, (Label(right, middle - 42, drawing.moment.label, SMALL, "right"), -1))
     for label, way in labels:
         obstacles.boxes.append(sketch.label(_stepped(label.within(3, width - 3), obstacles, way)).box)
+
+
+def _width(label: Label) -> float:
+    return label.box.right - label.box.left
 
 
 def _largest(profile: Sequence[Point]) -> float:

@@ -17,6 +17,7 @@ _INCHES = re.compile(
     r"[ \u00a0](?:([0-9]+(?:\.[0-9]+)?)(?![0-9]*/))?(?:[ \u00a0]?([0-9]+)/([0-9]+))?(?=[ \u00a0]?in\b)"
 )
 _BELOW = re.compile(r"/(\w+[2-6])\b")
+_DASH_INCHES = re.compile(r"-[0-9][0-9./ \u00a0]*in\b")
 _TIMES = re.compile(r"[-·](\w+)\b")
 _SPACES = " \u00a0\u202f\u2009"
 
@@ -70,7 +71,8 @@ def _fraction(text: Pieced, at: int, before: str) -> tuple[Number, int] | None:
 
 def _decimal(text: Pieced, at: int) -> tuple[Number, int]:
     match = _DECIMAL.match(text.text, at)
-    assert match is not None  # noqa: S101 - the caller looked
+    if match is None:
+        raise TypeError("the caller looks whether a number starts here")
     value = float(match[0])
     unit, unit_start = _unit(text.text, match.end())
     if unit is None:
@@ -112,7 +114,11 @@ def _ratio(text: Pieced, match: re.Match[str], above: int, below: int) -> float:
 
 
 def _refuse_lookalikes(text: Pieced, number: str, unit: UnitMatch) -> None:
-    """Report `3 kN/m2`, where m2 may be meant for m² or for a name, and `3 lb-ft`, where lb is a mass."""
+    """Report what is easily read in another way.
+
+    `3 kN/m2`, where m2 may be meant for m² or for a name; `6 ft-3 in`, a length or a difference; `3 lb-ft`,
+    where lb is a mass.
+    """
     digit = _BELOW.match(text.text, unit.end)
     meant = meant_unit(digit[1]) if digit else None
     if digit and meant and meant[:-1] == digit[1][:-1]:
@@ -121,6 +127,15 @@ def _refuse_lookalikes(text: Pieced, number: str, unit: UnitMatch) -> None:
             text.span(*digit.span(1)),
             f"'{digit[1]}' is no unit",
             hint=f"write {number} {unit.text}/{meant}, or put spaces around / to divide by a name",
+        )
+    inches = _DASH_INCHES.match(text.text, unit.end) if unit.is_plain("ft") else None
+    if inches:
+        typed = f"{number} ft"
+        raise ReadingError(
+            "dash-with-two-readings",
+            text.span(unit.end, inches.end()),
+            f"'{typed}{inches[0]}' has two readings",
+            hint=f"write {typed} {inches[0][1:]} for a length, or {typed} - {inches[0][1:]} to subtract",
         )
     length = _TIMES.match(text.text, unit.end)
     if length and length[1] in LENGTHS and unit.is_plain("lb", "kg"):

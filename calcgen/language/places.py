@@ -43,11 +43,11 @@ def unclosed_place(span: Span) -> ReadingError:
 
 
 def read_pieces(text: Pieced, report: Report) -> tuple[str | Place, ...]:
-    """Split plain text at its places; a place in error stays as typed."""
+    """Split plain text at its places; a place in error stays as typed, a line feed becomes a space."""
     pieces: list[str | Place] = []
     plain, at = "", 0
     for match in _BRACE.finditer(text.text):
-        plain += text.text[at : match.start()]
+        plain += text.text[at : match.start()].replace("\n", " ")
         at = match.end()
         if match[0].startswith("\\"):
             plain += match[0][1:]
@@ -63,5 +63,5 @@ def read_pieces(text: Pieced, report: Report) -> tuple[str | Place, ...]:
             continue
         pieces += [plain, place] if plain else [place]
         plain = ""
-    plain += text.text[at:]
+    plain += text.text[at:].replace("\n", " ")
     return (*pieces, plain) if plain else tuple(pieces)

@@ -2,9 +2,21 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterator
 from urllib.parse import quote
 
-from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.evaluation.results import (
+    BeamResult,
+    CheckRow,
+    DerivedRow,
+    EvaluatedCalc,
+    InputRow,
+    InputsResult,
+    Segment,
+    SectionResult,
+    StressResult,
+    WorkingResult,
+)
 from calcgen.language.blocks.assumptions import Assumption, AssumptionsBlock
 from calcgen.language.blocks.beam import BeamBlock
 from calcgen.language.blocks.section import SectionBlock
@@ -63,3 +75,42 @@ def assumptions_of(calc: EvaluatedCalc) -> tuple[tuple[str, Assumption], ...]:
                     anchor = f"{stem}-{count}"
                 found.append((anchor, item))
     return tuple(found)
+
+
+def anchors_of(calc: EvaluatedCalc) -> frozenset[str]:
+    """Return the anchors of values, checks, blocks and their results on a calc's page."""
+    return frozenset(anchor for segment in calc.segments for anchor in _anchors(segment))
+
+
+def nearest_anchor(name: str, anchors: frozenset[str]) -> str:
+    """Return the anchor of a dotted name, or of what owns it: `b.M(2 m)` stands at `b`; '' where there is none."""
+    parts = name.partition("(")[0].split(".")
+    owners = (".".join(parts[:count]) for count in range(len(parts), 0, -1))
+    return next((owner for owner in owners if owner in anchors), "")
+
+
+def _anchors(segment: Segment) -> Iterator[str]:
+    match segment:
+        case InputsResult(rows=inputs):
+            yield from (row.name for row in inputs if isinstance(row, InputRow))
+        case WorkingResult(rows=lines):
+            yield from (row.name for row in lines if isinstance(row, DerivedRow))
+            yield from (row.result.address for row in lines if isinstance(row, CheckRow))
+        case SectionResult():
+            yield segment.name
+            yield from (f"{segment.name}.{r.name}" for r in segment.results)
+        case StressResult():
+            yield segment.name
+            yield from (f"{segment.name}.{r.name}" for r in segment.results)
+            yield from (c.address for c in [segment.check] if c is not None)
+        case BeamResult():
+            yield segment.name
+            for group in segment.groups:
+                yield from (result_anchor(segment.name, group.name, r.name) for r in group.results)
+        case _:
+            pass
+
+
+def result_anchor(beam: str, group: str, name: str) -> str:
+    """Return the anchor of a result of a beam; '' is the group of a beam without combinations."""
+    return ".".join(part for part in (beam, group, name) if part)

@@ -8,30 +8,20 @@ import re
 from collections.abc import Mapping, Sequence
 from html import escape
 from typing import Any
-from urllib.parse import unquote, urlsplit
+from urllib.parse import SplitResult, unquote, urlsplit
 
 from markdown_it.renderer import RendererHTML
 from markdown_it.token import Token
-from markdown_it.utils import OptionsDict, OptionsType
+from markdown_it.utils import OptionsDict
 from markupsafe import Markup
 
 from calcgen.evaluation.results import ProseResult
+from calcgen.language.markdown import parser
 from calcgen.quantities.display import Shown
-from calcgen.site.addresses import calc_page, link
+from calcgen.site.addresses import calc_page, link, nearest_anchor
 from calcgen.site.tex import mathml_of
 
 _IMAGES = frozenset({".png", ".jpg", ".jpeg", ".gif", ".webp", ".svg"})
-_OPTIONS: OptionsType = {
-    "maxNesting": 20,
-    "html": False,
-    "linkify": False,
-    "typographer": False,
-    "quotes": "“”‘’",
-    "xhtmlOut": False,
-    "breaks": False,
-    "langPrefix": "language-",
-    "highlight": None,
-}
 
 
 def image_path(calc: str, source: str) -> str | None:
@@ -39,8 +29,8 @@ def image_path(calc: str, source: str) -> str | None:
 
     `calc` is the path of the calc's file, to which `source` is relative.
     """
-    parts = urlsplit(source)
-    if parts.scheme or parts.netloc or not parts.path or parts.path.startswith("/"):
+    parts = _split(source)
+    if parts is None or parts.scheme or parts.netloc or not parts.path or parts.path.startswith("/"):
         return None
     path = posixpath.normpath(posixpath.join(posixpath.dirname(calc), unquote(parts.path)))
     return None if path.startswith("..") else path
@@ -62,13 +52,17 @@ class ProseRenderer(RendererHTML):
     path : of the calc's file in the project.
     images : path in the package by path in the project.
     calcs : numbers of the calcs that have a page.
+    anchors : those on the calc's page.
     """
 
-    def __init__(self, path: str, images: Mapping[str, str], calcs: frozenset[str]) -> None:
+    def __init__(
+        self, path: str, images: Mapping[str, str], calcs: frozenset[str], anchors: frozenset[str]
+    ) -> None:
         super().__init__()
         self._path = path
         self._images = images
         self._calcs = calcs
+        self._anchors = anchors
         self._values: list[Shown | None] = []
         self._level = 1
         self._closing: list[str] = []
@@ -77,7 +71,7 @@ class ProseRenderer(RendererHTML):
         """Return a run of prose; the n-th value stands at the n-th place."""
         self._values = list(result.values)
         tokens = self._levelled(result.prose.tokens)
-        return Markup(self.render(tokens, OptionsDict(_OPTIONS), {}))  # noqa: S704 - html is off
+        return Markup(self.render(tokens, parser().options, {}))  # noqa: S704 - html is off
 
     def _levelled(self, tokens: Sequence[Token]) -> list[Token]:
         """Return the tokens with headings below the title's, none of which skips a level."""
@@ -98,7 +92,9 @@ class ProseRenderer(RendererHTML):
         name = tokens[idx].content
         if shown is None:
             return f'<span class="missing">{escape(name)} has no value</span>'
-        anchor = name.partition("(")[0]
+        anchor = nearest_anchor(name, self._anchors)
+        if not anchor:
+            return f'<span class="value">{escape(shown.text)}</span>'
         return f'<a class="value" href="{link("", anchor)}">{escape(shown.text)}</a>'
 
     def math_inline(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
@@ -153,7 +149,9 @@ class ProseRenderer(RendererHTML):
         return f"<td{_alignment(tokens[idx])}>"
 
     def _href(self, target: str) -> str | None:
-        parts = urlsplit(target)
+        parts = _split(target)
+        if parts is None:
+            return None
         if parts.scheme in ("http", "https", "mailto"):
             return target
         if parts.scheme or parts.netloc:
@@ -163,6 +161,13 @@ class ProseRenderer(RendererHTML):
         match = re.fullmatch(r"(?:.*/)?([A-Za-z][A-Za-z0-9-]*)\.(?:md|html)", unquote(parts.path))
         if match and match[1] in self._calcs:
             return link(calc_page(match[1]), unquote(parts.fragment))
+        return None
+
+
+def _split(target: str) -> SplitResult | None:
+    try:
+        return urlsplit(target)
+    except ValueError:  # no address at all
         return None
 
 

@@ -1,4 +1,4 @@
-"""The manual as the tests read it: its chapters, its examples, and the diagnostics it explains."""
+"""The manual as the tests read it: its chapters, its examples, and the messages it explains."""
 
 from __future__ import annotations
 
@@ -7,10 +7,13 @@ from dataclasses import dataclass
 from functools import cache
 from pathlib import Path
 
+from calcgen.language.blocks import LATER, READERS
+
 MANUAL = Path(__file__).parents[2] / "projects" / "manual"
 
-_FENCE = re.compile(r"^````(?P<info>[^\n`]*)\n(?P<text>.*?)^````$", re.MULTILINE | re.DOTALL)
-_LIVE = re.compile(r"^```(\w+)[^\n]*\n.*?^```$", re.MULTILINE | re.DOTALL)
+_SHOWN = re.compile(r"^````(?P<info>[^\n`]*)\n(?P<text>.*?)^````$", re.MULTILINE | re.DOTALL)
+_FENCE = re.compile(r"^```(?P<kind>\w+)[^\n]*\n.*?^```$", re.MULTILINE | re.DOTALL)
+_CODE = re.compile(r"^(`{3,})[^\n]*\n.*?^\1$", re.MULTILINE | re.DOTALL)
 _MESSAGE = re.compile(
     r"^## (?P<code>[a-z0-9-]+)\n\n(?P<text>[^\n]+)\n\n"
     r"````bad(?P<kind>[^\n]*)\n(?P<bad>.*?)^````\n\n````good(?P=kind)\n(?P<good>.*?)^````$",
@@ -19,9 +22,11 @@ _MESSAGE = re.compile(
 
 
 @dataclass(frozen=True)
-class Explained:
-    """A diagnostic as the manual explains it; `kind` is '' for blocks of a calc, 'file' for a whole calc
-    file, and otherwise the path of the file that the examples are.
+class Message:
+    """A diagnostic as the manual explains it, with a text that gives it and one that does not.
+
+    `kind` is '' where the texts are blocks of a calc, 'file' for a whole calc file, and otherwise the path of
+    the project's file that they are.
     """
 
     code: str
@@ -43,36 +48,44 @@ def everything() -> str:
     return "\n".join(chapters().values())
 
 
-def words() -> frozenset[str]:
-    """Return every text that stands in `code` marks in the manual's prose, and each word of it."""
-    prose = re.sub(r"^(`{3,})[^\n]*\n.*?^\1$", "", everything(), flags=re.MULTILINE | re.DOTALL)
-    marked = re.findall(r"(?<!`)`([^`\n]+)`(?!`)", prose)
-    return frozenset(marked) | {word for text in marked for word in re.findall(r"[\w'°%]+", text)}
-
-
-def shown_and_live(chapter: str) -> list[tuple[str, str]]:
-    """Return each source shown in a fence of four marks without info, with the text that follows it."""
-    text = chapters()[chapter]
-    found = []
-    for match in _FENCE.finditer(text):
-        if not match["info"]:
-            below = text[match.end() :].lstrip("\n")
-            found.append((match["text"], below[: len(match["text"])]))
-    return found
-
-
-def live_blocks(chapter: str) -> list[str]:
-    """Return the kinds of the live blocks of a chapter, those that are shown as source left out."""
-    from calcgen.language.blocks import LATER, READERS
-
-    outside = _FENCE.sub("", chapters()[chapter])
-    return [m[1] for m in _LIVE.finditer(outside) if m[1] in (*READERS, *LATER)]
+@cache
+def prose() -> str:
+    """Return the manual without what stands in fences."""
+    return _CODE.sub("", everything())
 
 
 @cache
-def explained() -> tuple[Explained, ...]:
-    """Return every diagnostic that the manual explains with examples."""
+def words() -> frozenset[str]:
+    """Return each text that stands in code marks in the manual's prose, and each word of it."""
+    marked = re.findall(r"(?<!`)`([^`\n]+)`(?!`)", prose())
+    return frozenset(marked) | {word for text in marked for word in re.findall(r"[\w'°%.-]+", text)}
+
+
+def rows(chapter: str) -> list[tuple[str, ...]]:
+    """Return the rows of all tables of a chapter, each as the text of its cells."""
+    lines = (line for line in _CODE.sub("", chapters()[chapter]).splitlines() if line.startswith("|"))
+    return [tuple(cell.strip() for cell in line.strip("|").split("|")) for line in lines]
+
+
+def shown_and_live(chapter: str) -> list[tuple[str, str]]:
+    """Return each source that is shown as such, and as much of the text that follows it."""
+    text = chapters()[chapter]
+    return [
+        (m["text"], text[m.end() :].lstrip("\n")[: len(m["text"])])
+        for m in _SHOWN.finditer(text)
+        if not m["info"]
+    ]
+
+
+def live_kinds(text: str) -> list[str]:
+    """Return the kinds of the live blocks of a text, those in fences of four marks left out."""
+    return [m["kind"] for m in _FENCE.finditer(_SHOWN.sub("", text)) if m["kind"] in (*READERS, *LATER)]
+
+
+@cache
+def messages() -> tuple[Message, ...]:
+    """Return every message that the manual explains with examples."""
     return tuple(
-        Explained(m["code"], m["text"], m["kind"].strip(), m["bad"], m["good"])
+        Message(m["code"], m["text"], m["kind"].strip(), m["bad"], m["good"])
         for m in _MESSAGE.finditer(everything())
     )

@@ -2,8 +2,13 @@
 
 from __future__ import annotations
 
+import ast
+import re
+from pathlib import Path
+
 import pytest
 
+import calcgen
 from calcgen.text import Related, Report, SourceFile, Span, nearest
 from calcgen.text.codes import CODES
 from calcgen.text.terminal import render
@@ -50,3 +55,22 @@ def test_a_diagnostic_on_a_terminal() -> None:
 )
 def test_nearest(word: str, name: str | None) -> None:
     assert nearest(word, ["working", "inputs", "beam"]) == name
+
+
+def test_every_code_that_the_program_reports_is_in_the_table_and_the_other_way_round() -> None:
+    reported = set()
+    for path in Path(calcgen.__file__).parent.rglob("*.py"):
+        for node in ast.walk(ast.parse(path.read_text(encoding="utf-8"))):
+            if isinstance(node, ast.Constant) and isinstance(node.value, str) and path.name != "codes.py":
+                reported.add(node.value)
+    assert set(CODES) <= reported
+    calls = {"error", "warning", "fault", "_fault", "ReadingError"}
+    for path in Path(calcgen.__file__).parent.rglob("*.py"):
+        for node in ast.walk(ast.parse(path.read_text(encoding="utf-8"))):
+            if isinstance(node, ast.Call) and node.args and isinstance(node.args[0], ast.Constant):
+                name = (
+                    node.func.attr if isinstance(node.func, ast.Attribute) else getattr(node.func, "id", "")
+                )
+                code = node.args[0].value
+                if name in calls and isinstance(code, str) and re.fullmatch(r"[a-z]+(-[a-z]+)*", code):
+                    assert code in CODES, (path, code)

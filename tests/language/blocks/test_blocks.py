@@ -53,7 +53,7 @@ def test_sheet(calc: Calc) -> None:
     assert sheet.get("checker") == ""
     purpose = sheet.entries[1]
     before, place, after = purpose.pieces
-    assert (before, after) == ("Confirm the stringer for ", "\non the whole length")
+    assert (before, after) == ("Confirm the stringer for ", " on the whole length")
     assert isinstance(place, Place)
     assert (place.name.dotted, calc.source.slice(place.span)) == ("q_k", "{q_k}")
 
