@@ -114,11 +114,11 @@ def _draw_across(sketch: Sketch, scale: Scale, dimension: Dimension) -> None:
     _draw_measure(sketch, start, end, outside=True)
     if abs(end[0] - start[0]) >= abs(end[1] - start[1]):
         label = Label(end[0] + 16, end[1] + 0.36 * SMALL, dimension.label, SMALL, "left", halo=True)
-        step, aside = (3.0, 0.0), (0.0, 8.0)
+        step, aside = (3.0, 0.0), (0.0, 13.0)
     else:
         label = Label(start[0], min(start[1], end[1]) - 16, dimension.label, SMALL, halo=True)
         width = label.box.right - label.box.left
-        step, aside = (0.0, -3.0), (width / 2 + 3, 0.0)
+        step, aside = (0.0, -3.0), (width / 2 + 8, 0.0)
     taken = _labels_and_axes(sketch)
     while True:
         # in line with the dimension, or beside the axis that lies in its line

@@ -91,6 +91,7 @@ def draw_stress(drawing: StressDrawing, width: Width) -> str:
 
 
 LEAST_DEPTH = 90.0  # pixels; a shallower section is drawn narrower than to scale, and that is said
+STEPS = 400  # of three pixels, in search of a clear place for a value
 REACH = 100.0  # pixels from the zero line to the largest value, at most
 FACE_NOTE = "Cut face of the part towards the start: tension leaves it, compression enters it."
 
@@ -139,7 +140,7 @@ def _rows(drawing: StressDrawing, width: Width) -> tuple[_Row, ...]:
     if drawing.moment is not None:
         names.append(drawing.moment.label)
     longest = max((_width(Label(0, 0, name, SMALL)) for name in names), default=0.0)
-    end = WIDTHS[width] - (min(max(longest + 16, 70.0), 110.0) if names else 6.0)
+    end = WIDTHS[width] - (min(max(longest + 16, 92.0), 112.0) if names else 6.0)
     if width == "wide":
         if drawing.strain:
             return (_Row((14, 124), (152, 232), (262, end), 190),)
@@ -161,19 +162,7 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
     draw_parts(sketch, scale, drawing.parts)
     draw_cross(sketch, scale.at(*drawing.centroid), 4.0)
     obstacles = Obstacles(3.0, width - 3.0, [box])
-    middle = (box.left + box.right) / 2
-    titles = [Label(middle, top, drawing.title)]
-    if drawing.edges != ("top", "bottom"):
-        edges = zip(drawing.edges, (box.top - 5, box.bottom + 12), strict=True)
-        titles += [Label(middle, y, text, SMALL, colour="muted") for text, y in edges]
-    if across < factor:
-        titles.append(Label(middle, box.bottom + 25, "width not to scale", SMALL, colour="muted"))
-    for panel, title in ((row.strain, drawing.strain_title), (row.stress, drawing.stress_title)):
-        if panel:
-            titles.append(Label(sum(panel) / 2, top, title))
-    for title in titles:
-        placed = _stepped(title.within(3.0, width - 3.0), obstacles, -1 if title.y == top else 1)
-        obstacles.boxes.append(sketch.label(placed).box)
+    _draw_titles(sketch, drawing, row, box, top, obstacles, to_scale=across == factor)
     axis = []
     if drawing.neutral_axis is not None:
         y = scale.at(0.0, drawing.neutral_axis)[1]
@@ -183,8 +172,13 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
     if row.strain:
         _draw_strain(sketch, drawing, scale, row.strain, obstacles)
     if row.stress:
-        _draw_stress(sketch, drawing, scale, row.stress, obstacles)
+        values = _values(drawing.stress, row.stress)
+        _draw_stress(sketch, drawing, scale, values, obstacles)
         _draw_resultants(sketch, drawing, scale, width, (box.top + box.bottom) / 2, obstacles)
+        for mark in drawing.marks:
+            tip = (values.at(mark.value), scale.at(0.0, mark.y)[1])
+            for label in _mark_labels(mark, drawing, tip, box, row.stress, obstacles):
+                obstacles.boxes.append(sketch.label(label).box)
     if axis:
         sketch.line(axis, Stroke("ink", 0.9, CHAIN))
     if axis and row.stress:  # a second row only repeats the axis
@@ -192,22 +186,52 @@ def _draw_row(sketch: Sketch, drawing: StressDrawing, row: _Row, top: float, wid
         _draw_axis_label(sketch, drawing.neutral_axis_label, axis[0][1], ends, obstacles)
 
 
+def _draw_titles(
+    sketch: Sketch,
+    drawing: StressDrawing,
+    row: _Row,
+    box: Box,
+    top: float,
+    obstacles: Obstacles,
+    *,
+    to_scale: bool,
+) -> None:
+    """Write the title of each panel, and what is to be said of the section in the box."""
+    middle = (box.left + box.right) / 2
+    titles = [Label(middle, top, drawing.title)]
+    if drawing.edges != ("top", "bottom"):
+        edges = zip(drawing.edges, (box.top - 5, box.bottom + 12), strict=True)
+        titles += [Label(middle, y, text, SMALL, colour="muted") for text, y in edges]
+    if not to_scale:
+        titles.append(Label(middle, box.bottom + 25, "width not to scale", SMALL, colour="muted"))
+    named = ((row.strain, drawing.strain_title), (row.stress, drawing.stress_title))
+    titles += [Label(sum(panel) / 2, top, text) for panel, text in named if panel]
+    for title in titles:
+        placed = _stepped(
+            title.within(obstacles.left, obstacles.right), obstacles, -1 if title.y == top else 1
+        )
+        obstacles.boxes.append(sketch.label(placed).box)
+
+
 def _draw_axis_label(
     sketch: Sketch, sentence: str, y: float, ends: tuple[float, float], obstacles: Obstacles
 ) -> None:
     """Write the neutral axis's sentence along it where that fits, else its name alone."""
     for text in (sentence, "neutral axis"):
-        for baseline in (y - 4, y + 11.5):
+        for baseline in (y - 5.5, y + 11.5):
             label = Label(0.0, baseline, text, SMALL, "left", halo=True)
             for x in np.arange(ends[0], ends[1] - _width(label) - 2, 4.0):
-                if obstacles.clear(label.moved(float(x), 0).box.grown(2.0), 0.5):
-                    obstacles.boxes.append(sketch.label(label.moved(float(x), 0)).box)
+                placed = label.moved(float(x), 0.0)
+                room = placed.box.grown(2.0)
+                if all(obstacles.clear(room.moved(aside, 0.0), 0.5) for aside in (-4.0, 4.0)):
+                    obstacles.boxes.append(sketch.label(placed).box)
                     return
 
 
 def _values(profile: Sequence[Point], panel: tuple[float, float]) -> _Values:
     """Give the scale that puts a profile and its zero line in the middle of a panel."""
-    low, high = min(0.0, *(v for _, v in profile)), max(0.0, *(v for _, v in profile))
+    reached = [0.0, *(value for _, value in profile)]
+    low, high = min(reached), max(reached)
     middle = sum(panel) / 2
     if low == high:
         return _Values(middle, 0.0)
@@ -236,14 +260,13 @@ def _draw_strain(
 
 
 def _draw_stress(
-    sketch: Sketch, drawing: StressDrawing, scale: Scale, panel: tuple[float, float], obstacles: Obstacles
+    sketch: Sketch, drawing: StressDrawing, scale: Scale, values: _Values, obstacles: Obstacles
 ) -> None:
-    """Draw the tractions on the face, which is the zero line, with their values.
+    """Draw the tractions on the face, which is the zero line.
 
     The body lies to the left of its face, so each arrow is the traction itself: from the face to the right,
     out of the body, in tension; from the face to the left, into the body, in compression.
     """
-    values = _values(drawing.stress, panel)
     face = values.zero
     heights = [scale.at(0.0, y)[1] for y, _ in drawing.stress]
     for sign in (1.0, -1.0):
@@ -251,19 +274,14 @@ def _draw_stress(
         for lobe in _lobes(drawing.stress, sign):
             points = [(values.at(s), scale.at(0.0, y)[1]) for y, s in lobe]
             ring = [(face, points[0][1]), *points, (face, points[-1][1])]
-            arrows = _tractions(points, face)
             sketch.fill([ring], colour, opacity=0.16)
             sketch.line(ring, Stroke(colour, 1.2))
-            sketch.arrows(arrows, Stroke(colour, 0.9))
-            for line in (ring, *arrows):
+            sketch.arrows(_tractions(points, face, 17.0), Stroke(colour, 0.9))
+            for line in (ring, *_tractions(points, face, 4.0)):  # so close that no label fits between
                 obstacles.add_line(line)
-    ends = min(heights), max(heights)
-    sketch.line([(face, ends[0]), (face, ends[1])], Stroke("ink", 1.6))
-    obstacles.add_line([(face, ends[0]), (face, ends[1])])
-    for mark in drawing.marks:
-        tip = (values.at(mark.value), scale.at(0.0, mark.y)[1])
-        for label in _mark_labels(mark, tip, ends, panel, _way(mark, drawing.stress), obstacles):
-            obstacles.boxes.append(sketch.label(label).box)
+    ends = [(face, min(heights)), (face, max(heights))]
+    sketch.line(ends, Stroke("ink", 1.6))
+    obstacles.add_line(ends)
 
 
 def _lobes(profile: Sequence[Point], sign: float) -> list[list[Point]]:
@@ -283,54 +301,56 @@ def _lobes(profile: Sequence[Point], sign: float) -> list[list[Point]]:
     return [lobe for lobe in lobes if lobe]
 
 
-def _tractions(points: Sequence[Point], face: float) -> list[tuple[Point, Point]]:
-    """Arrows from the face to the profile."""
+def _tractions(points: Sequence[Point], face: float, pitch: float) -> list[tuple[Point, Point]]:
+    """Arrows from the face to the profile, about `pitch` pixels apart."""
     xs, ys = zip(*reversed(points), strict=True)  # from the top down, as interpolation wants it
-    count = max(int((ys[-1] - ys[0]) / 17), 1) + 1
-    tips = [(float(np.interp(y, ys, xs)), float(y)) for y in np.linspace(ys[0], ys[-1], count)]
+    levels = np.linspace(ys[0], ys[-1], max(int((ys[-1] - ys[0]) / pitch), 1) + 1)
+    tips = [(float(np.interp(y, ys, xs)), float(y)) for y in levels]
     return [((face, y), (x, y)) for x, y in tips if abs(x - face) > 7]
-
-
-def _way(mark: Mark, profile: Sequence[Point]) -> int:
-    """Way to step with a mark inside the depth: up (-1) from the upper value of a jump, else down (1)."""
-    at = [value for y, value in profile if y == mark.y]
-    return -1 if len(at) > 1 and mark.value == at[-1] else 1
 
 
 def _mark_labels(
     mark: Mark,
+    drawing: StressDrawing,
     tip: Point,
-    ends: tuple[float, float],
+    section: Box,
     panel: tuple[float, float],
-    way: int,
     obstacles: Obstacles,
 ) -> list[Label]:
-    """Give the value of a mark and its word, in clear space.
+    """Give the value of a mark and its word, in the nearest clear place.
 
-    They stand over the top fibre and under the bottom fibre, the word nearer to the profile; at other heights
-    beside the tip, whence they step `way`.
+    They stand over the top fibre and under the bottom fibre, the word nearer to the profile, and at other
+    heights beside the tip, on the mark's own side of a jump if there is room.
     """
     x, y = tip
-    anchor: Anchor = "center"
-    if abs(y - ends[0]) < 1:
-        way, value_at, word_at = -1, y - 18, y - 5.5
-    elif abs(y - ends[1]) < 1:
-        way, value_at, word_at = 1, y + 25, y + 12.5
+    if abs(y - section.top) < 1:
+        labels = _value_and_word(mark, x, y - 18, y - 5.5, "center")
+        steps = [-3.0 * n for n in range(STEPS)]
+    elif abs(y - section.bottom) < 1:
+        labels = _value_and_word(mark, x, y + 25, y + 12.5, "center")
+        steps = [3.0 * n for n in range(STEPS)]
     else:
-        value_at, word_at = y + 4, y + 4 + 12.5 * way
-        x, anchor = (x + 6, "left") if mark.value > 0 else (x - 6, "right")
-    colour = _colour(mark.value)
-    if not mark.value:
-        value_at = word_at
-    labels = [Label(x, value_at, mark.label, TEXT, anchor, colour, bold=True)]
-    if mark.value:
-        labels.append(Label(x, word_at, _word(mark.value), SMALL, anchor, colour))
+        panel = (obstacles.left, obstacles.right)
+        values = [value for height, value in drawing.stress if height == mark.y]
+        way = -1 if len(values) > 1 and mark.value == values[-1] else 1
+        side: Anchor = "left" if mark.value > 0 else "right"
+        beside = x + 6 if mark.value > 0 else x - 6
+        labels = _value_and_word(mark, beside, y + 4, y + 4 + 12.5 * way, side)
+        steps = [sign * way * 3.0 * n for n in range(STEPS) for sign in (1, -1)]
+        # a value of the inside is not to be read as one of the end fibres
+        steps.sort(key=lambda step: not section.top <= y + step <= section.bottom - 6)
     longest = max(labels, key=_width)
-    shift = longest.within(*panel).within(obstacles.left, obstacles.right).x - x
-    labels = [label.moved(shift, 0.0) for label in labels]
-    while not obstacles.free(around(label.box for label in labels), 1.0):
-        labels = [label.moved(0.0, way * 3.0) for label in labels]
-    return labels
+    shift = longest.within(*panel).within(obstacles.left, obstacles.right).x - longest.x
+    box = around(label.box.moved(shift, 0.0) for label in labels)
+    step = next(step for step in steps if obstacles.free(box.moved(0.0, step), 1.0))
+    return [label.moved(shift, step) for label in labels]
+
+
+def _value_and_word(mark: Mark, x: float, value_at: float, word_at: float, anchor: Anchor) -> list[Label]:
+    """Give the labels of a mark at two baselines; a zero has no word, and stands where that would."""
+    colour = _colour(mark.value)
+    value = Label(x, value_at if mark.value else word_at, mark.label, TEXT, anchor, colour, bold=True)
+    return [value, Label(x, word_at, _word(mark.value), SMALL, anchor, colour)] if mark.value else [value]
 
 
 def _stepped(label: Label, obstacles: Obstacles, way: int) -> Label:
@@ -349,11 +369,11 @@ def _draw_resultants(
     for force in drawing.forces:
         y = scale.at(0.0, force.y)[1]
         if force.value:
-            ends = ((right - 62, y), (right - 12, y))  # clear of the bow of the moment
+            ends = ((right - 80, y), (right - 30, y))  # clear of the bow of the moment
             colour = _colour(force.value)
             sketch.arrows([ends if force.value > 0 else ends[::-1]], Stroke(colour, 1.8), 8.0)
             obstacles.add_line(ends)
-        labels.append((Label(right, y + 13, force.label, SMALL, "right"), 1))
+        labels.append((Label(right - 26, y + 13, force.label, SMALL, "right"), 1))
     if drawing.moment is not None:
         if drawing.moment.value:
             sweep = 116.0 if drawing.moment.value > 0 else -116.0

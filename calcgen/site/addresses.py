@@ -12,8 +12,8 @@ from calcgen.evaluation.results import (
     EvaluatedCalc,
     InputRow,
     InputsResult,
-    Segment,
     SectionResult,
+    Segment,
     StressResult,
     WorkingResult,
 )
@@ -83,7 +83,7 @@ def anchors_of(calc: EvaluatedCalc) -> frozenset[str]:
 
 
 def nearest_anchor(name: str, anchors: frozenset[str]) -> str:
-    """Return the anchor of a dotted name, or of what owns it: `b.M(2 m)` stands at `b`; '' where there is none."""
+    """Return the anchor of a dotted name, or of what owns it: `b.M(2 m)` is at `b`; '' if neither is."""
     parts = name.partition("(")[0].split(".")
     owners = (".".join(parts[:count]) for count in range(len(parts), 0, -1))
     return next((owner for owner in owners if owner in anchors), "")

@@ -1,4 +1,4 @@
-"""A line of working as an equation: formula = numbers put in = result, in parts that may stand below each other."""
+"""A line of working as an equation, in parts that may stand below each other."""
 
 from __future__ import annotations
 
@@ -15,6 +15,7 @@ from calcgen.text import SourceFile
 
 _OPPOSITE = {"<": ">=", "<=": ">", ">": "<=", ">=": "<"}
 _EQUALS = "<mo>=</mo>"
+_NOTHING = Markup("")
 
 
 @dataclass(frozen=True)
@@ -30,7 +31,7 @@ class Equation:
 
     left: Markup
     parts: tuple[Markup, ...]
-    aside: Markup = Markup("")
+    aside: Markup = _NOTHING
 
 
 def derived(row: DerivedRow, source: SourceFile) -> Equation:
@@ -55,7 +56,7 @@ def derived(row: DerivedRow, source: SourceFile) -> Equation:
     return Equation(
         _element(symbol(row.name)),
         tuple(_element(_EQUALS + step) for step in _without_repeats(steps)),
-        _element(aside) if aside else Markup(""),
+        _element(aside) if aside else _NOTHING,
     )
 
 
@@ -70,9 +71,7 @@ def check(row: CheckRow, source: SourceFile) -> Equation:
     parts = [formula(node)]
     if not (_plain(node.left) and _plain(node.right)):
         parts.append(formula(node, put_in_from(row.operands, source)))
-    parts.append(
-        compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
-    )
+    parts.append(compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied))
     first, *others = _without_repeats(parts)
     return Equation(_element(first), tuple(_element(part) for part in others))
 

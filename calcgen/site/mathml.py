@@ -140,14 +140,14 @@ def _quantity(shown: Shown) -> Piece:
         setting = f"<mn>{number}</mn>"
     else:
         return Piece(f"<mtext>“{escape(shown.number)}”</mtext>", first="word", last="word")
-    return _with_unit(setting, shown.unit, number != shown.number, several=scientific is not None)
+    return _with_unit(setting, shown.unit, negative=number != shown.number, several=scientific is not None)
 
 
-def _with_unit(number: str, unit: str, negative: bool, *, several: bool) -> Piece:  # noqa: FBT001
+def _with_unit(number: str, unit: str, *, negative: bool = False, several: bool = False) -> Piece:
     gap = "" if unit == "°" else _THIN
     setting = f"{number}{gap}<mtext>{escape(unit)}</mtext>" if unit else number
     if negative:
-        return Piece(f"<mrow><mo form=\"prefix\">−</mo>{setting}</mrow>", Level.SIGN, "number", "quantity")
+        return Piece(f'<mrow><mo form="prefix">−</mo>{setting}</mrow>', Level.SIGN, "number", "quantity")
     if unit or several:
         return Piece(f"<mrow>{setting}</mrow>", Level.QUANTITY, "number", "quantity")
     return Piece(number, Level.ATOM, "number", "number")
@@ -164,10 +164,10 @@ def _literal(node: Number) -> Piece:
     power = _TYPED_POWER.fullmatch(typed)
     if power:
         sign = "−" if power[2] == "-" else ""
-        return _with_unit(_power_of_ten(power[1], sign + power[3]), pretty(unit), False, several=True)
+        return _with_unit(_power_of_ten(power[1], sign + power[3]), pretty(unit), several=True)
     if not typed.replace(".", "").isdigit():  # 6 ft 3 in, 3/8 in
         return Piece(f"<mtext>{escape(node.text)}</mtext>", Level.QUANTITY, "number", "quantity")
-    return _with_unit(f"<mn>{typed}</mn>", pretty(unit), False, several=False)
+    return _with_unit(f"<mn>{typed}</mn>", pretty(unit))
 
 
 def _fenced(piece: Piece, opening: str = "(", closing: str = ")") -> Piece:

@@ -5,14 +5,13 @@ from __future__ import annotations
 import hashlib
 import posixpath
 import re
-from collections.abc import Mapping, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from html import escape
-from typing import Any
+from types import MethodType
 from urllib.parse import SplitResult, unquote, urlsplit
 
 from markdown_it.renderer import RendererHTML
 from markdown_it.token import Token
-from markdown_it.utils import OptionsDict
 from markupsafe import Markup
 
 from calcgen.evaluation.results import ProseResult
@@ -66,30 +65,41 @@ class ProseRenderer(RendererHTML):
         self._values: list[Shown | None] = []
         self._level = 1
         self._closing: list[str] = []
+        own: dict[str, Callable[[Token], str]] = {
+            "value": self._value,
+            "math_inline": lambda token: _mathematics(token.content, block=False),
+            "math_inline_double": lambda token: _mathematics(token.content, block=False),
+            "math_block": lambda token: (
+                f'<div class="scrolls">{_mathematics(token.content, block=True)}</div>\n'
+            ),
+            "image": self._image,
+            "link_open": self._link_open,
+            "link_close": lambda _: self._closing.pop(),
+            "table_open": lambda _: '<div class="scrolls"><table>\n',
+            "table_close": lambda _: "</table></div>\n",
+            "th_open": lambda token: f'<th scope="col"{_alignment(token)}>',
+            "td_open": lambda token: f"<td{_alignment(token)}>",
+        }
+        self.rules |= {kind: _rule(write, self) for kind, write in own.items()}
 
     def render_prose(self, result: ProseResult) -> Markup:
         """Return a run of prose; the n-th value stands at the n-th place."""
         self._values = list(result.values)
         tokens = self._levelled(result.prose.tokens)
-        return Markup(self.render(tokens, parser().options, {}))  # noqa: S704 - html is off
+        return Markup(self.render(tokens, parser().options, {}))  # noqa: S704 - raw HTML is off
 
     def _levelled(self, tokens: Sequence[Token]) -> list[Token]:
         """Return the tokens with headings below the title's, none of which skips a level."""
         levelled = []
-        heading = ""
         for token in tokens:
             if token.type == "heading_open":
                 self._level = min(max(2, int(token.tag[1:])), self._level + 1)
-                heading = f"h{self._level}"
-            levelled.append(token.copy(tag=heading) if token.type.startswith("heading_") else token)
+            heading = token.type in ("heading_open", "heading_close")
+            levelled.append(token.copy(tag=f"h{self._level}") if heading else token)
         return levelled
 
-    # The names of these methods are types of tokens, by which the renderer finds them.
-
-    def value(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render the value of a name."""
-        shown = self._values.pop(0) if self._values else None
-        name = tokens[idx].content
+    def _value(self, token: Token) -> str:
+        shown, name = self._values.pop(0), token.content
         if shown is None:
             return f'<span class="missing">{escape(name)} has no value</span>'
         anchor = nearest_anchor(name, self._anchors)
@@ -97,56 +107,20 @@ class ProseRenderer(RendererHTML):
             return f'<span class="value">{escape(shown.text)}</span>'
         return f'<a class="value" href="{link("", anchor)}">{escape(shown.text)}</a>'
 
-    def math_inline(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render `$...$`."""
-        return _mathematics(tokens[idx].content, block=False)
-
-    def math_inline_double(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render `$$...$$` within a line."""
-        return _mathematics(tokens[idx].content, block=False)
-
-    def math_block(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render a paragraph of mathematics."""
-        return f'<div class="scrolls">{_mathematics(tokens[idx].content, block=True)}</div>\n'
-
-    def image(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render an image of the project; its description where the file is none."""
-        token = tokens[idx]
-        description = self.renderInlineAsText(token.children or [], options, env)
+    def _image(self, token: Token) -> str:
+        """Return an image of the project; its description where the file is none."""
+        description = self.renderInlineAsText(token.children or [], parser().options, {})
         path = image_path(self._path, str(token.attrGet("src") or ""))
         asset = self._images.get(path) if path is not None else None
         if asset is None:
             return f'<span class="missing">image not found: {escape(description or str(path or ""))}</span>'
         return f'<img src="{link(asset)}" alt="{escape(description)}">'
 
-    def link_open(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render a link; one that leads nowhere in the package keeps its text alone."""
-        href = self._href(str(tokens[idx].attrGet("href") or ""))
-        if href is None:
-            self._closing.append("")
-            return ""
-        self._closing.append("</a>")
-        return f'<a href="{escape(href)}">'
-
-    def link_close(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render the end of a link."""
-        return self._closing.pop() if self._closing else ""
-
-    def table_open(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render the start of a table, which scrolls within its own width."""
-        return '<div class="scrolls"><table>\n'
-
-    def table_close(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render the end of a table."""
-        return "</table></div>\n"
-
-    def th_open(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render the head of a column."""
-        return f'<th scope="col"{_alignment(tokens[idx])}>'
-
-    def td_open(self, tokens: Sequence[Token], idx: int, options: OptionsDict, env: Any) -> str:
-        """Render a cell."""
-        return f"<td{_alignment(tokens[idx])}>"
+    def _link_open(self, token: Token) -> str:
+        """Return the start of a link; one that leads nowhere in the package keeps its text alone."""
+        href = self._href(str(token.attrGet("href") or ""))
+        self._closing.append("" if href is None else "</a>")
+        return "" if href is None else f'<a href="{escape(href)}">'
 
     def _href(self, target: str) -> str | None:
         parts = _split(target)
@@ -171,6 +145,15 @@ def _split(target: str) -> SplitResult | None:
         return None
 
 
+def _rule(write: Callable[[Token], str], renderer: RendererHTML) -> MethodType:
+    """Return a rule as the renderer calls it."""
+
+    def rule(_self: RendererHTML, tokens: Sequence[Token], index: int, _options: object, _env: object) -> str:
+        return write(tokens[index])
+
+    return MethodType(rule, renderer)
+
+
 def _alignment(token: Token) -> str:
     style = str(token.attrGet("style") or "")
     match = re.fullmatch(r"text-align:(left|right|center)", style)
@@ -180,5 +163,5 @@ def _alignment(token: Token) -> str:
 def _mathematics(tex: str, *, block: bool) -> str:
     found = mathml_of(tex, block=block)
     if found is not None:
-        return found
-    return f'<code class="missing">{escape(tex.strip())}</code> <span class="missing">(not readable as TeX)</span>'
+        return f'<div class="scrolls">{found}</div>\n' if block else found
+    return f'<code class="missing">{escape(tex.strip())}</code> <span>(not readable as TeX)</span>'

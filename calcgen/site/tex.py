@@ -9,13 +9,70 @@ from latex2mathml.converter import convert
 _NAMESPACE = "{http://www.w3.org/1998/Math/MathML}"
 ET.register_namespace("", _NAMESPACE.strip("{}"))
 _ELEMENTS = frozenset(
-    "math mrow mi mn mo ms mtext mspace mfrac msqrt mroot mstyle merror mpadded mphantom msub msup msubsup "
-    "munder mover munderover mmultiscripts mprescripts none mtable mtr mtd menclose mfenced".split()
+    [
+        "math",
+        "mrow",
+        "mi",
+        "mn",
+        "mo",
+        "ms",
+        "mtext",
+        "mspace",
+        "mfrac",
+        "msqrt",
+        "mroot",
+        "mstyle",
+        "merror",
+        "mpadded",
+        "mphantom",
+        "msub",
+        "msup",
+        "msubsup",
+        "munder",
+        "mover",
+        "munderover",
+        "mmultiscripts",
+        "mprescripts",
+        "none",
+        "mtable",
+        "mtr",
+        "mtd",
+        "menclose",
+        "mfenced",
+    ]
 )
 _ATTRIBUTES = frozenset(
-    "display displaystyle mathvariant scriptlevel width height depth linethickness form fence separator "
-    "stretchy symmetric lspace rspace minsize maxsize largeop movablelimits accent accentunder columnalign "
-    "rowspan columnspan columnspacing rowspacing notation open close".split()
+    [
+        "display",
+        "displaystyle",
+        "mathvariant",
+        "scriptlevel",
+        "width",
+        "height",
+        "depth",
+        "linethickness",
+        "form",
+        "fence",
+        "separator",
+        "stretchy",
+        "symmetric",
+        "lspace",
+        "rspace",
+        "minsize",
+        "maxsize",
+        "largeop",
+        "movablelimits",
+        "accent",
+        "accentunder",
+        "columnalign",
+        "rowspan",
+        "columnspan",
+        "columnspacing",
+        "rowspacing",
+        "notation",
+        "open",
+        "close",
+    ]
 )
 
 

@@ -49,6 +49,7 @@ class ValueRow:
     row: RowView
     equation: Equation
     flag: str = ""
+    kind: str = "value"
 
 
 @dataclass(frozen=True)
@@ -59,6 +60,7 @@ class CheckRowView:
     word: str
     equation: Equation
     utilisation: str
+    kind: str = "check"
 
 
 @dataclass(frozen=True)
@@ -68,6 +70,7 @@ class TextRow:
     row: RowView
     text: str
     failed: str = ""
+    kind: str = "text"
 
 
 @dataclass(frozen=True)

@@ -31,6 +31,14 @@ def circle(d: float, x: float = 0.0, y: float = 0.0, *, hole: bool = False) -> R
 
 
 ANGLE = Part((np.array([(0, 0), (100, 0), (100, 12), (12, 12), (12, 150), (0, 150)], dtype=float),))
+TEE = Part(
+    (
+        np.array(
+            [(-6, 0), (6, 0), (6, 188), (100, 188), (100, 200), (-100, 200), (-100, 188), (-6, 188)],
+            dtype=float,
+        ),
+    )
+)
 PLATE = Part((rectangle(60, 240),))
 BARS = tuple(Part((circle(20, x, -200),), "steel, E = 200 GPa", "solid") for x in (-100, -33, 33, 100))
 
@@ -65,6 +73,25 @@ TUBE = SectionDrawing(
     centroid=(0, 0),
     dimensions=(Dimension("t = 6.3", (77.85, 0), (84.15, 0), "across"),),
 )
+BEAM_I = SectionDrawing(
+    ident="i",
+    title="I 240 × 120",
+    parts=tuple(Part((rectangle(b, h, 0, y),)) for b, h, y in ((120, 10, 5), (6, 220, 120), (120, 10, 235))),
+    centroid=(0, 120),
+    dimensions=(
+        Dimension("240", (-60, 0), (-60, 240), "left"),
+        Dimension("120", (-60, 0), (60, 0), "bottom"),
+        Dimension("10", (60, 230), (60, 240), "right"),
+        Dimension("6", (-3, 120), (3, 120), "across"),
+    ),
+)
+ON_ITS_SIDE = SectionDrawing(
+    ident="side",
+    title="plate, a thickness on the vertical axis",
+    parts=(Part((rectangle(240, 20),)),),
+    centroid=(0, 0),
+    dimensions=(Dimension("t = 20", (0, -10), (0, 10), "across"),),
+)
 ONE_MILLIMETRE = replace(TUBE, ident="wire", title="wire", parts=(Part((circle(1.0),)),), dimensions=())
 STRIP = replace(
     TUBE, ident="strip", title="strip 2000 × 1", parts=(Part((rectangle(2000, 1),)),), dimensions=()
@@ -84,7 +111,7 @@ SAGGING = StressDrawing(
     marks=(Mark(120, -104.6, "−104.6 MPa"), Mark(-120, 104.6, "+104.6 MPa")),
     neutral_axis=0.0,
     neutral_axis_label="neutral axis, at the centroid",
-    moment=Couple(33.93, "M = 33.93 kN·m"),
+    moment=Couple(60.2, "M = 60.2 kN·m"),
 )
 HOGGING = replace(
     SAGGING,
@@ -93,8 +120,8 @@ HOGGING = replace(
     marks=(Mark(120, 64.6, "+64.6 MPa"), Mark(-120, -144.6, "−144.6 MPa")),
     neutral_axis=45.9,
     neutral_axis_label="neutral axis, 45.9 mm above the centroid",
-    moment=Couple(-33.93, "M = −33.93 kN·m"),
-    forces=(Force(0, -156, "N = −156 kN"),),
+    moment=Couple(-60.2, "M = −60.2 kN·m"),
+    forces=(Force(0, -576, "N = −576 kN"),),
     strain=((-120, -0.688), (120, 0.308)),
     strain_marks=(Mark(120, 0.308, "+0.308 ‰"), Mark(-120, -0.688, "−0.688 ‰")),
 )
@@ -105,7 +132,8 @@ MOSTLY_AXIAL = replace(
     marks=(Mark(120, -160, "−160.0 MPa"), Mark(-120, -120, "−120.0 MPa")),
     neutral_axis=None,
     neutral_axis_label="neutral axis outside the section: 840 mm below the centroid",
-    forces=(Force(0, -547, "N = −547 kN"),),
+    moment=Couple(11.5, "M = 11.5 kN·m"),
+    forces=(Force(0, -2016, "N = −2016 kN"),),
 )
 PURE_AXIAL = replace(
     MOSTLY_AXIAL,
@@ -114,6 +142,14 @@ PURE_AXIAL = replace(
     marks=(Mark(120, 80, "+80.0 MPa"),),
     neutral_axis_label="no neutral axis: the stress is uniform",
     moment=None,
+    forces=(Force(0, 1152, "N = 1152 kN"),),
+)
+PURE_COMPRESSION = replace(
+    PURE_AXIAL,
+    ident="pressed",
+    stress=((-120, -80.0), (120, -80.0)),
+    marks=(Mark(120, -80, "−80.0 MPa"), Mark(-120, -80, "−80.0 MPa")),
+    forces=(Force(0, -1152, "N = −1152 kN"),),
 )
 NO_STRESS = replace(
     PURE_AXIAL,
@@ -129,7 +165,57 @@ PLASTIC = replace(
     parts=(Part((rectangle(2000, 12),)),),
     stress=((-6, 235.0), (0, 235.0), (0, -235.0), (6, -235.0)),
     marks=(Mark(6, -235, "−235 MPa"), Mark(-6, 235, "+235 MPa")),
+    moment=Couple(16.9, "M = 16.9 kN·m"),
     note="Plastic: the stress is at yield over the whole depth.",
+)
+UNEVEN = replace(
+    SAGGING,
+    ident="uneven",
+    title="tee 200 × 200 × 12",
+    parts=(TEE,),
+    centroid=(0, 145.5),
+    stress=((0, 187.1), (200, -7.4)),
+    marks=(Mark(200, -7.4, "−7.4 MPa"), Mark(0, 187.1, "+187.1 MPa")),
+    neutral_axis=192.4,
+    neutral_axis_label="neutral axis, 46.8 mm above the centroid",
+    moment=Couple(17.8, "M = 17.8 kN·m"),
+    forces=(Force(145.5, 212, "N = 212 kN"),),
+)
+TIMBER_ON_STEEL = replace(  # E = 11 GPa on 210 GPa: the stress jumps at the joint, the strain doesn't
+    SAGGING,
+    ident="jump",
+    title="timber on steel",
+    parts=(Part((rectangle(100, 200, 0, 110),), "timber"), Part((rectangle(100, 10, 0, 5),), "steel")),
+    centroid=(0, 58.7),
+    stress=((0, 218.0), (10, 180.8), (10, 9.5), (210, -29.4)),
+    marks=(
+        Mark(210, -29.4, "−29.4 MPa"),
+        Mark(10, 9.5, "+9.5 MPa"),
+        Mark(10, 180.8, "+180.8 MPa"),
+        Mark(0, 218.0, "+218.0 MPa"),
+    ),
+    neutral_axis=58.7,
+    moment=Couple(33.93, "M = 33.93 kN·m"),
+    strain=((0, 1.04), (210, -2.67)),
+    strain_marks=(Mark(210, -2.67, "−2.67 ‰"), Mark(0, 1.04, "+1.04 ‰")),
+)
+LOCKED_IN = replace(
+    SAGGING,
+    ident="locked",
+    title="welded plates",
+    stress=((-120, -60.0), (-40, 20.0), (-40, -35.0), (60, -35.0), (60, 90.0), (120, 30.0)),
+    marks=(
+        Mark(120, 30.0, "+30.0 MPa"),
+        Mark(60, 90.0, "+90.0 MPa"),
+        Mark(60, -35.0, "−35.0 MPa"),
+        Mark(-40, -35.0, "−35.0 MPa"),
+        Mark(-40, 20.0, "+20.0 MPa"),
+        Mark(-120, -60.0, "−60.0 MPa"),
+    ),
+    neutral_axis=None,
+    neutral_axis_label="more than one zero of stress",
+    moment=None,
+    edges=("left", "right"),
 )
 HUGE = replace(
     SAGGING,
@@ -301,6 +387,8 @@ _NAMED: dict[str, Drawing] = {
     "angle": SECTION,
     "rib": RIB,
     "tube": TUBE,
+    "i": BEAM_I,
+    "on its side": ON_ITS_SIDE,
     "one millimetre": ONE_MILLIMETRE,
     "strip": STRIP,
     "long note": LONG_NAMES,
@@ -308,8 +396,12 @@ _NAMED: dict[str, Drawing] = {
     "hogging": HOGGING,
     "mostly axial": MOSTLY_AXIAL,
     "axial": PURE_AXIAL,
+    "pure compression": PURE_COMPRESSION,
     "none": NO_STRESS,
     "plastic": PLASTIC,
+    "uneven": UNEVEN,
+    "jump": TIMBER_ON_STEEL,
+    "locked in": LOCKED_IN,
     "huge": HUGE,
     "biaxial": FIELD,
     "uniform": UNIFORM_FIELD,

@@ -2,50 +2,129 @@
 
 import pytest
 
-from calcgen.figures.picture import WIDTHS, Picture, Shape, Width, label_boxes
+from calcgen.figures.picture import CHAIN, WIDTHS, Label, Picture, Shape, Width, label_boxes
 from calcgen.figures.stress import FACE_NOTE, StressDrawing, compose_stress
-from tests.figures.drawings import HOGGING, MOSTLY_AXIAL, NO_STRESS, PLASTIC, PURE_AXIAL, SAGGING
+from tests.figures.drawings import (
+    HOGGING,
+    MOSTLY_AXIAL,
+    NO_STRESS,
+    PLASTIC,
+    PURE_AXIAL,
+    PURE_COMPRESSION,
+    SAGGING,
+    TIMBER_ON_STEEL,
+    UNEVEN,
+)
 
-TRACTION_HEAD = 5.0
 places = pytest.mark.parametrize("width", list(WIDTHS))
+stressed = pytest.mark.parametrize(
+    "drawing",
+    [
+        SAGGING,
+        HOGGING,
+        MOSTLY_AXIAL,
+        PURE_AXIAL,
+        PURE_COMPRESSION,
+        PLASTIC,
+        UNEVEN,
+        TIMBER_ON_STEEL,
+    ],
+    ids=lambda d: d.ident,
+)
 
 
-def heads(picture: Picture, colour: str) -> list[tuple[float, float, float]]:
-    """Tip (x, y) and direction (+1 to the right) of the arrow heads of the tractions of one colour."""
+def arrows(picture: Picture, colour: str) -> list[tuple[float, float, float]]:
+    """Tractions of one colour as (tail x, head x, y); the arrow of a force is thicker than theirs."""
+    pairs = zip(picture.items, picture.items[1:], strict=False)
     return [
-        (tip[0], tip[1], 1.0 if tip[0] > back[0] else -1.0)
-        for item in picture.items
-        if isinstance(item, Shape) and item.fill == colour and item.opacity == 1.0
-        for tip, back, other in item.rings
-        if abs(back[0] - tip[0]) < TRACTION_HEAD
+        (line[0][0], head[0][0], head[0][1])
+        for shafts, heads in pairs
+        if isinstance(shafts, Shape) and isinstance(heads, Shape) and not shafts.closed
+        if shafts.stroke and shafts.stroke.weight < 1 and heads.fill == colour
+        for line, head in zip(shafts.rings, heads.rings, strict=True)
     ]
+
+
+def face_of(picture: Picture) -> float:
+    """Place of the zero line of stress, the heaviest upright line."""
+    upright = [
+        item
+        for item in picture.items
+        if isinstance(item, Shape) and not item.closed and item.stroke and item.stroke.colour == "ink"
+        if item.box.left == item.box.right
+    ]
+    return max(upright, key=lambda item: item.stroke.weight if item.stroke else 0.0).box.left
+
+
+@places
+@stressed
+def test_tension_leaves_the_face_and_compression_enters_the_body(
+    drawing: StressDrawing, width: Width
+) -> None:
+    picture = compose_stress(drawing, width)
+    face = face_of(picture)
+    tension, compression = arrows(picture, "tension"), arrows(picture, "compression")
+    assert {tail for tail, *_ in tension + compression} == {face}
+    assert all(head > face for _, head, _ in tension)
+    assert all(head < face for _, head, _ in compression)
+    assert bool(tension) == any(s > 0 for _, s in drawing.stress)
+    assert bool(compression) == any(s < 0 and abs(s) > 10 for _, s in drawing.stress)
 
 
 @places
 @pytest.mark.parametrize(
-    "drawing", [SAGGING, HOGGING, MOSTLY_AXIAL, PURE_AXIAL, PLASTIC], ids=lambda d: d.ident
+    "drawing", [SAGGING, HOGGING, MOSTLY_AXIAL, PURE_AXIAL, UNEVEN], ids=lambda d: d.ident
 )
-def test_tension_leaves_the_face_and_compression_enters_it(drawing: StressDrawing, width: Width) -> None:
+def test_the_heads_lie_on_one_straight_line(drawing: StressDrawing, width: Width) -> None:
     picture = compose_stress(drawing, width)
-    tension, compression = heads(picture, "tension"), heads(picture, "compression")
-    assert {way for *_, way in tension} <= {1.0}
-    assert {way for *_, way in compression} <= {-1.0}
-    # all compression ends at the face, and no tension does
-    assert len({round(x, 6) for x, *_ in compression}) <= 1
-    for face in {x for x, *_ in compression}:
-        assert all(x > face + 1 for x, *_ in tension)
-    assert bool(tension) == any(s > 0 for _, s in drawing.stress)
-    assert bool(compression) == any(s < 0 for _, s in drawing.stress)
+    heads = sorted((y, x) for colour in ("tension", "compression") for _, x, y in arrows(picture, colour))
+    (y_1, x_1), (y_2, x_2) = heads[0], heads[-1]
+    for y, x in heads:
+        assert x == pytest.approx(x_1 + (x_2 - x_1) * (y - y_1) / (y_2 - y_1), abs=1e-9)
+
+
+@places
+@pytest.mark.parametrize("drawing", [SAGGING, HOGGING, UNEVEN, TIMBER_ON_STEEL], ids=lambda d: d.ident)
+def test_the_neutral_axis_runs_through_every_panel_and_is_named_once(
+    drawing: StressDrawing, width: Width
+) -> None:
+    picture = compose_stress(drawing, width)
+    chains = [i for i in picture.items if isinstance(i, Shape) and i.stroke and i.stroke.dash == CHAIN]
+    rows = 2 if drawing.strain and width == "narrow" else 1
+    assert len(chains) == rows
+    section, *_ = [i.box for i in picture.items if isinstance(i, Shape) and i.fill == "section"]
+    lobes = [i.box for i in picture.items if isinstance(i, Shape) and i.fill and i.opacity < 1]
+    assert chains[0].box.left < section.left
+    assert chains[0].box.right >= max(lobe.right for lobe in lobes)
+    # once along the axis; the sentence below says where it lies if it didn't fit there
+    shown = [i for i in picture.items if isinstance(i, Label) and i.text.startswith("neutral axis")]
+    assert sum(i.colour == "ink" for i in shown) == 1
+
+
+@places
+@stressed
+def test_values_stand_clear_of_the_profile_and_the_section(drawing: StressDrawing, width: Width) -> None:
+    picture = compose_stress(drawing, width)
+    values = [(i.text, i.box) for i in picture.items if isinstance(i, Label) and i.bold]
+    filled = [i.box for i in picture.items if isinstance(i, Shape) and i.closed and i.fill == "section"]
+    assert [text for text, _ in values] == [mark.label for mark in drawing.marks]
+    for text, box in values:
+        assert not any(box.overlaps(part) for part in filled), text
+        for colour in ("tension", "compression"):
+            for tail, head, y in arrows(picture, colour):
+                assert not (
+                    box.top < y < box.bottom and box.left < max(tail, head) and min(tail, head) < box.right
+                ), text
 
 
 @places
 @pytest.mark.parametrize(("drawing", "sense"), [(SAGGING, 1), (HOGGING, -1)], ids=["sagging", "hogging"])
 def test_the_moment_turns_as_the_tractions_do(drawing: StressDrawing, sense: int, width: Width) -> None:
     picture = compose_stress(drawing, width)
-    arrows = heads(picture, "tension") + heads(picture, "compression")
-    middle = sum(y for _, y, _ in arrows) / len(arrows)
+    tractions = arrows(picture, "tension") + arrows(picture, "compression")
+    middle = sum(y for *_, y in tractions) / len(tractions)
     # pixels run down: a pull to the right below the middle turns counter-clockwise
-    turning = sum(way * (y - middle) for _, y, way in arrows)
+    turning = sum((head - tail) * (y - middle) for tail, head, y in tractions)
     (head,) = [item for item in picture.items if isinstance(item, Shape) and item.fill == "ink"]
     tip, *back = head.rings[0]
     upward = tip[1] < min(y for _, y in back)  # on the right-hand side of the turn, up is counter-clockwise
@@ -72,5 +151,5 @@ def test_a_neutral_axis_outside_the_section_is_told_in_words(drawing: StressDraw
 @places
 def test_no_stress_has_no_arrows(width: Width) -> None:
     picture = compose_stress(NO_STRESS, width)
-    assert heads(picture, "tension") == heads(picture, "compression") == []
+    assert arrows(picture, "tension") == arrows(picture, "compression") == []
     assert FACE_NOTE not in " ".join(text for text, _ in label_boxes(picture))

@@ -1,0 +1,1 @@
+"""Results of blocks -> what their templates show: one file a block kind."""

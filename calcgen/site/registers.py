@@ -1,0 +1,230 @@
+"""The registers over all calcs: inputs, assumptions, checks, references, and which calc feeds which."""
+
+from __future__ import annotations
+
+from collections.abc import Iterator
+from dataclasses import dataclass
+
+from markupsafe import Markup
+
+from calcgen.evaluation.results import EvaluatedCalc, InputRow, InputsResult
+from calcgen.language.blocks.inputs import Feed, InputsBlock
+from calcgen.language.nodes import Citation, Column
+from calcgen.site import addresses
+from calcgen.site.citations import cited_lines
+from calcgen.site.facts import PackageInput, ReferenceFacts
+from calcgen.site.mathml import dotted, math
+from calcgen.site.views import BarView, Link, bar, mathematical, utilisation_text, words
+
+
+@dataclass(frozen=True)
+class InputEntry:
+    """An input of the register."""
+
+    calc: Link
+    symbol: Markup
+    href: str
+    value: str
+    note: Markup
+    reference: Markup
+    referenced: bool
+
+
+@dataclass(frozen=True)
+class AssumptionEntry:
+    """An assumption of the register."""
+
+    calc: Link
+    number: str
+    href: str
+    text: Markup
+    basis: Markup
+    open: bool
+
+
+@dataclass(frozen=True)
+class CheckEntry:
+    """A check of the register; `order` sorts by utilisation, exceeded ones first."""
+
+    calc: Link
+    check: Link
+    word: str
+    utilisation: str
+    order: str
+    bar: BarView | None
+    reference: Markup
+
+
+@dataclass(frozen=True)
+class ReferenceEntry:
+    """A document with the places that cite it."""
+
+    key: str
+    title: str
+    facts: str
+    note: str
+    places: tuple[Link, ...]
+
+
+@dataclass(frozen=True)
+class FeedEntry:
+    """A value that one calc takes from another."""
+
+    giver: Link
+    given: Markup
+    given_href: str
+    taker: Link
+    taken: Markup
+    taken_href: str
+    value: str
+
+
+@dataclass(frozen=True)
+class MapView:
+    """Which calc feeds which; `alone` are the calcs that neither feed nor are fed."""
+
+    feeds: tuple[FeedEntry, ...]
+    alone: tuple[Link, ...]
+
+
+def calc_link(calc: EvaluatedCalc) -> Link:
+    """Return the link to a calc's page."""
+    return Link(calc.number, addresses.link(addresses.calc_page(calc.number)))
+
+
+def input_entries(package: PackageInput) -> tuple[InputEntry, ...]:
+    """Return all inputs, unreferenced ones first."""
+    found = [
+        InputEntry(
+            calc_link(calc),
+            mathematical(row.name),
+            _on_page(calc, row.name),
+            row.shown.text,
+            words(row.node.annotations.note, package.references),
+            _source_of(row, package),
+            row.referenced,
+        )
+        for calc, row in _inputs(package)
+    ]
+    return tuple(sorted(found, key=lambda e: e.referenced))
+
+
+def assumption_entries(package: PackageInput) -> tuple[AssumptionEntry, ...]:
+    """Return all assumptions, open ones first."""
+    found = [
+        AssumptionEntry(
+            calc_link(calc),
+            item.number,
+            _on_page(calc, anchor) if calc.segments else addresses.source_line(calc.number, line),
+            words(item.text, package.references),
+            words(item.basis, package.references),
+            item.open,
+        )
+        for calc in package.calcs
+        for anchor, item in addresses.assumptions_of(calc)
+        for line in [calc.calc.source.line_number(item.span)]
+    ]
+    return tuple(sorted(found, key=lambda e: not e.open))
+
+
+def check_entries(package: PackageInput) -> tuple[CheckEntry, ...]:
+    """Return all checks, exceeded ones first, then by utilisation."""
+    ranked = [
+        (
+            (not check.satisfied, check.utilisation if check.utilisation is not None else -1.0),
+            CheckEntry(
+                calc_link(calc),
+                Link(check.label, _on_page(calc, check.address)),
+                "satisfied" if check.satisfied else "exceeded",
+                utilisation_text(check.utilisation),
+                f"{check.utilisation if check.utilisation is not None else -1.0:.12g}",
+                bar(check),
+                words(check.reference, package.references),
+            ),
+        )
+        for calc in package.calcs
+        for check in calc.checks
+    ]
+    return tuple(entry for _, entry in sorted(ranked, key=lambda pair: pair[0], reverse=True))
+
+
+def reference_entries(package: PackageInput) -> tuple[ReferenceEntry, ...]:
+    """Return the documents by key, each with the places that cite it."""
+    places: dict[str, list[Link]] = {key: [] for key in package.references}
+    for calc in package.calcs:
+        for citation, anchor, line in cited_lines(calc):
+            if citation.key in places:
+                href = _on_page(calc, anchor) if anchor else addresses.source_line(calc.number, line)
+                places[citation.key].append(Link(_cited_as(calc, citation, line), href))
+    return tuple(
+        ReferenceEntry(key, facts.title, _bibliography(facts), facts.note, tuple(dict.fromkeys(places[key])))
+        for key, facts in sorted(package.references.items())
+    )
+
+
+def map_view(package: PackageInput) -> MapView:
+    """Return which calc feeds which."""
+    by_number = {calc.number: calc for calc in package.calcs}
+    feeds = []
+    linked: set[str] = set()
+    for calc, row in _inputs(package):
+        if row.origin is not None and row.origin.calc in by_number:
+            giver = by_number[row.origin.calc]
+            anchor = addresses.nearest_anchor(row.origin.name, addresses.anchors_of(giver))
+            linked |= {giver.number, calc.number}
+            feeds.append(
+                FeedEntry(
+                    calc_link(giver),
+                    Markup(math(dotted(tuple(row.origin.name.split("."))))),  # noqa: S704 - mathml escapes
+                    addresses.link(addresses.calc_page(giver.number), anchor),
+                    calc_link(calc),
+                    mathematical(row.name),
+                    _on_page(calc, row.name),
+                    row.shown.text,
+                )
+            )
+    for calc, feed in _unevaluated_feeds(package):
+        if feed.calc in by_number:
+            giver = by_number[feed.calc]
+            linked |= {giver.number, calc.number}
+            name = Markup(math(dotted(feed.name.parts)))  # noqa: S704 - mathml escapes
+            source = addresses.source_line(calc.number, calc.calc.source.line_number(feed.span))
+            feeds.append(
+                FeedEntry(calc_link(giver), name, calc_link(giver).href, calc_link(calc), name, source, "—")
+            )
+    return MapView(tuple(feeds), tuple(calc_link(c) for c in package.calcs if c.number not in linked))
+
+
+def _inputs(package: PackageInput) -> Iterator[tuple[EvaluatedCalc, InputRow]]:
+    for calc in package.calcs:
+        for segment in calc.segments:
+            if isinstance(segment, InputsResult):
+                yield from ((calc, row) for row in segment.rows if isinstance(row, InputRow))
+
+
+def _unevaluated_feeds(package: PackageInput) -> Iterator[tuple[EvaluatedCalc, Feed]]:
+    for calc in package.calcs:
+        for block in calc.calc.segments:
+            if isinstance(block, InputsBlock) and not calc.segments:
+                yield from ((calc, i.value) for i in block.items if isinstance(i.value, Feed))
+
+
+def _source_of(row: InputRow, package: PackageInput) -> Markup:
+    reference: Column = row.node.annotations.reference
+    if row.origin is None:
+        return words(reference, package.references)
+    href = addresses.link(addresses.calc_page(row.origin.calc))
+    return Markup('<a href="{}">{} of {}</a>').format(href, row.origin.name, row.origin.calc)
+
+
+def _on_page(calc: EvaluatedCalc, anchor: str) -> str:
+    return addresses.link(addresses.calc_page(calc.number), anchor)
+
+
+def _cited_as(calc: EvaluatedCalc, citation: Citation, line: int) -> str:
+    place = f", {citation.place}" if citation.place else ""
+    return f"{calc.number}, line {line}{place}"
+
+
+def _bibliography(facts: ReferenceFacts) -> str:
+    return ", ".join(p for p in (facts.author, facts.number, facts.edition, facts.publisher, facts.year) if p)

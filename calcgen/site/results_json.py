@@ -1,0 +1,161 @@
+"""`results.json`: the results of a package for other programs."""
+
+from __future__ import annotations
+
+import json
+import math
+from collections.abc import Iterable
+from typing import TypeAlias
+
+from calcgen.evaluation.results import (
+    BeamResult,
+    CheckResult,
+    DerivedRow,
+    EvaluatedCalc,
+    InputRow,
+    InputsResult,
+    Plain,
+    Result,
+    SectionResult,
+    StressResult,
+    WorkingResult,
+)
+from calcgen.language.blocks.assumptions import AssumptionsBlock
+from calcgen.quantities.display import Shown, rounded
+from calcgen.quantities.measure import Measure, magnitude_in
+from calcgen.site.facts import PackageInput
+
+Json: TypeAlias = "dict[str, Json] | list[Json] | str | float | bool | None"
+
+PATH = "results.json"
+
+
+def results_file(package: PackageInput) -> bytes:
+    """Return the contents of results.json: sorted keys, UTF-8, a line feed at its end."""
+    text = json.dumps(results(package), ensure_ascii=False, allow_nan=False, indent=1, sort_keys=True)
+    return f"{text}\n".encode()
+
+
+def results(package: PackageInput) -> Json:
+    """Return the results as JSON holds them."""
+    project = package.project
+    return {
+        "program": {"name": "calcgen", "version": package.version},
+        "project": {
+            "title": project.title,
+            "number": project.number,
+            "axes": project.axes,
+            "depth": project.depth,
+            "units": project.units,
+        },
+        "calcs": {calc.number: _calc(calc) for calc in package.calcs},
+    }
+
+
+def _calc(calc: EvaluatedCalc) -> Json:
+    sections: dict[str, Json] = {}
+    beams: dict[str, Json] = {}
+    stresses: dict[str, Json] = {}
+    inputs: dict[str, Json] = {}
+    values: dict[str, Json] = {}
+    for segment in calc.segments:
+        match segment:
+            case InputsResult(rows=given):
+                inputs |= {row.name: _input(row) for row in given if isinstance(row, InputRow)}
+            case WorkingResult(rows=lines):
+                values |= {row.name: _derived(row) for row in lines if isinstance(row, DerivedRow)}
+            case SectionResult():
+                sections[segment.name] = _results(segment.results)
+            case BeamResult():
+                beams[segment.name] = _beam(segment)
+            case StressResult():
+                stresses[segment.name] = _results(segment.results)
+            case _:
+                pass
+    return {
+        "title": calc.calc.title,
+        "file": calc.calc.source.path,
+        "standing": calc.standing,
+        "inputs": inputs,
+        "values": values,
+        "sections": sections,
+        "assumptions": _assumptions(calc),
+        "beams": beams,
+        "stresses": stresses,
+        "methods": {},
+        "checks": [_check(check) for check in calc.checks],
+        "premises": [{"of": p.of, "premise": p.premise, "verdict": p.verdict} for p in calc.premises],
+        "residuals": [
+            {"of": r.of, "what": r.what, "residual": _number(r.residual), "tolerance": _number(r.tolerance)}
+            for r in calc.second_route
+        ],
+        "diagnostics": [
+            {
+                "severity": d.severity,
+                "line": d.line,
+                "column": d.column,
+                "message": d.message,
+                "hint": d.hint,
+            }
+            for d in calc.diagnostics
+        ],
+    }
+
+
+def _input(row: InputRow) -> Json:
+    annotations = row.node.annotations
+    texts: dict[str, Json] = {"note": annotations.note.text, "reference": annotations.reference.text}
+    return {**_value(row.value, row.shown), **texts, "line": row.line}
+
+
+def _derived(row: DerivedRow) -> Json:
+    return {**_value(row.value, row.shown), "line": row.line}
+
+
+def _assumptions(calc: EvaluatedCalc) -> Json:
+    return [
+        {"number": a.number, "text": a.text.text, "open": a.open, "basis": a.basis.text}
+        for block in calc.calc.segments
+        if isinstance(block, AssumptionsBlock)
+        for a in block.items
+    ]
+
+
+def _beam(beam: BeamResult) -> Json:
+    """Return the results by group; those of a beam without combinations hang on the beam itself."""
+    groups: dict[str, Json] = {}
+    for group in beam.groups:
+        found = _results(group.results)
+        groups |= {group.name: found} if group.name else found
+    return groups
+
+
+def _results(results: Iterable[Result]) -> dict[str, Json]:
+    return {r.name: _value(r.value, r.shown) for r in results}
+
+
+def _check(check: CheckResult) -> Json:
+    unit = check.left_shown.unit
+    return {
+        "label": check.label,
+        "demand": _quantity(check.demand, unit),
+        "capacity": _quantity(check.capacity, unit),
+        "utilisation": None if check.utilisation is None else _number(check.utilisation),
+        "satisfied": check.satisfied,
+        "reference": check.reference.text,
+        "line": check.line,
+    }
+
+
+def _value(value: Plain, shown: Shown) -> dict[str, Json]:
+    if isinstance(value, Measure):
+        return _quantity(value, shown.unit)
+    return {"value": value, "unit": ""}
+
+
+def _quantity(value: Measure, unit: str) -> dict[str, Json]:
+    return {"value": _number(magnitude_in(value, unit)), "unit": unit}
+
+
+def _number(value: float) -> float | None:
+    return rounded(value) if math.isfinite(value) else None
