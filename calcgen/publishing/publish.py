@@ -17,6 +17,7 @@ from contextlib import contextmanager
 from dataclasses import dataclass
 from pathlib import Path, PurePosixPath
 
+from calcgen.disk import sync_folder
 from calcgen.publishing.errors import NotAPackageError, PackageBusyError, UnlistedFilesError, WriteError
 from calcgen.publishing.lock import locked
 from calcgen.publishing.manifest import MANIFEST, check_path, compose, read_manifest, unlisted_files
@@ -80,7 +81,7 @@ def publish(
         finally:
             shutil.rmtree(places.staging, ignore_errors=True)
         if durable:
-            _sync_folder(places.destination.parent)
+            sync_folder(places.destination.parent)
         shutil.rmtree(places.old, ignore_errors=True)
 
 
@@ -166,7 +167,7 @@ def _stage(contents: Mapping[str, bytes], staging: Path, *, durable: bool) -> No
             raise
     if durable:
         for parent, _, _ in os.walk(staging):
-            _sync_folder(Path(parent))
+            sync_folder(Path(parent))
 
 
 def _replace(places: _Places) -> None:
@@ -178,13 +179,3 @@ def _replace(places: _Places) -> None:
         if places.old.exists() and not places.destination.exists():
             places.old.rename(places.destination)
         raise
-
-
-def _sync_folder(folder: Path) -> None:
-    if os.name == "nt":  # folders cannot be opened there
-        return
-    descriptor = os.open(folder, os.O_RDONLY)
-    try:
-        os.fsync(descriptor)
-    finally:
-        os.close(descriptor)

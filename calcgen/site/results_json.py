@@ -122,12 +122,14 @@ def _assumptions(calc: EvaluatedCalc) -> Json:
 
 
 def _beam(beam: BeamResult) -> Json:
-    """Return the results by group; those of a beam without combinations hang on the beam itself."""
-    groups: dict[str, Json] = {}
+    """Return the results by combination and group; without combinations they hang on the beam itself."""
+    found: dict[str, Json] = {}
     for group in beam.groups:
-        found = _results(group.results)
-        groups |= {group.name: found} if group.name else found
-    return groups
+        if not group.name:
+            return _results((*group.results, *group.further))
+        found |= {c.name: _results(c.results) for c in group.combinations}
+        found[group.name] = _results((*group.results, *group.further))
+    return found
 
 
 def _results(results: Iterable[Result]) -> dict[str, Json]:

@@ -5,7 +5,6 @@ from __future__ import annotations
 import errno
 import hashlib
 import os
-import sys
 import time
 from collections.abc import Callable, Iterator
 from contextlib import contextmanager, suppress
@@ -13,15 +12,11 @@ from dataclasses import dataclass
 from io import FileIO
 from pathlib import Path
 
+from calcgen.disk import is_at, sync_folder, try_lock
 from calcgen.trail.entry import Entry, write_line
 from calcgen.trail.errors import TrailBusyError, TrailConflictError, TrailWriteError
 from calcgen.trail.reading import Fault, read_trail
 from calcgen.trail.trail import Trail
-
-if sys.platform == "win32":
-    import msvcrt
-else:
-    import fcntl
 
 TRAIL = "trail.jsonl"
 PATIENCE = 10.0  # seconds to wait for another build
@@ -96,7 +91,7 @@ def append(path: Path, make: Callable[[Trail], Entry | None], *, patience: float
                 missing_end = b"" if not kept or kept.endswith(b"\n") else b"\n"
                 _write_whole(file, missing_end + write_line(entry).encode() + b"\n", end=len(kept))
                 if not kept:
-                    _sync_folder(path.parent)
+                    sync_folder(path.parent)
     except TimeoutError as error:
         raise TrailBusyError(path, patience) from error
     except OSError as error:
@@ -132,7 +127,7 @@ def _set_aside(path: Path, torn: bytes) -> Path:
         file.write(torn)
         file.flush()
         os.fsync(file.fileno())
-    _sync_folder(path.parent)
+    sync_folder(path.parent)
     return aside
 
 
@@ -143,9 +138,9 @@ def _held(path: Path, patience: float) -> Iterator[FileIO]:
     while True:
         file = path.open("a+b", buffering=0)
         try:
-            if _try_lock(file.fileno()):
+            if try_lock(file.fileno()):
                 # A checkout may have put another file in its place while we waited.
-                if _is_at(path, file.fileno()):
+                if is_at(path, file.fileno()):
                     file.seek(0)
                     yield file
                     return
@@ -154,33 +149,3 @@ def _held(path: Path, patience: float) -> Iterator[FileIO]:
         finally:
             file.close()
         time.sleep(_PAUSE)
-
-
-def _try_lock(descriptor: int) -> bool:
-    try:
-        if sys.platform == "win32":
-            # Locked bytes cannot be read by others there, so the one locked lies far beyond the text.
-            os.lseek(descriptor, 1 << 40, os.SEEK_SET)
-            msvcrt.locking(descriptor, msvcrt.LK_NBLCK, 1)
-        else:
-            fcntl.flock(descriptor, fcntl.LOCK_EX | fcntl.LOCK_NB)
-    except (BlockingIOError, PermissionError):
-        return False
-    return True
-
-
-def _is_at(path: Path, descriptor: int) -> bool:
-    try:
-        return os.path.samestat(path.stat(), os.fstat(descriptor))
-    except FileNotFoundError:
-        return False
-
-
-def _sync_folder(folder: Path) -> None:
-    if os.name == "nt":  # folders cannot be opened there
-        return
-    descriptor = os.open(folder, os.O_RDONLY)
-    try:
-        os.fsync(descriptor)
-    finally:
-        os.close(descriptor)

@@ -15,8 +15,8 @@ _SHOWN = re.compile(r"^````(?P<info>[^\n`]*)\n(?P<text>.*?)^````$", re.MULTILINE
 _FENCE = re.compile(r"^```(?P<kind>\w+)[^\n]*\n.*?^```$", re.MULTILINE | re.DOTALL)
 _CODE = re.compile(r"^(`{3,})[^\n]*\n.*?^\1$", re.MULTILINE | re.DOTALL)
 _MESSAGE = re.compile(
-    r"^## (?P<code>[a-z0-9-]+)\n\n(?P<text>[^\n]+)\n\n"
-    r"````bad(?P<kind>[^\n]*)\n(?P<bad>.*?)^````\n\n````good(?P=kind)\n(?P<good>.*?)^````$",
+    r"^## (?P<code>[a-z0-9-]+)\n\n(?P<text>(?:[^\n]+\n)+)\n"
+    r"Wrong:\n\n````bad(?P<kind>[^\n]*)\n(?P<bad>.*?)^````\n\nRight:\n\n````good(?P=kind)\n(?P<good>.*?)^````$",
     re.MULTILINE | re.DOTALL,
 )
 

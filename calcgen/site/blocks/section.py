@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 
@@ -58,9 +57,7 @@ def _property(owner: str, result: Result, beside: Mapping[str, Published], line:
     published = beside.get(result.name)
     where: Markup
     if published is not None:
-        limit = f" (allowed {100 * published.tolerance:.2g} %)" if math.isfinite(published.tolerance) else ""
-        difference = f"{100 * published.difference:+.2f} %".replace("-", "−")
-        where = escape(f"published; outline {published.outline.number}, {difference}{limit}")
+        where = escape(f"published (outline {published.outline.number})")
     else:
         where = escape({"published": "published", "outline": "from the outline"}.get(result.provenance, ""))
     row = RowView(f"{owner}.{result.name}", escape(result.meaning), where, line)
