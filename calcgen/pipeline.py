@@ -187,7 +187,7 @@ def _build(
         request.out,
         {
             "key": _key(request, files, images),  # again: the trail is one of the inputs
-            "clean": not diagnostics and not trail.notes,
+            "clean": not diagnostics and trail.whole,
             "sources": {source.path: source.digest for source in _sources(files)},
             "trail_head": trail.trail.order[-1].digest if trail.trail.order else "",
             "calcs": [asdict(summary) for summary in summaries],
@@ -271,7 +271,8 @@ def _catalogue(
 class _Recorded:
     """The trail as it stands, the changes that the package marks, and what to tell.
 
-    `changes` are pending ones where the build does not record, else those of the last entry.
+    `changes` are pending ones where the build does not record, else those of the last entry; `whole` says that
+    nothing was wrong with the file.
     """
 
     trail: Trail
@@ -279,6 +280,7 @@ class _Recorded:
     pending: bool
     notes: tuple[str, ...]
     at_fault: bool
+    whole: bool
 
 
 def _record(
@@ -295,7 +297,8 @@ def _record(
         trail, faults = load(path)
         pending = compare(replay(trail), state(trail))
         changes = pending or (history(trail)[0].changes if trail.order else pending)
-        return _Recorded(trail, changes, bool(pending), tuple(_told(f) for f in faults), _at_fault(faults))
+        notes = [_told(f) for f in faults]
+        return _Recorded(trail, changes, bool(pending), tuple(notes), _at_fault(faults), whole=not faults)
     appended = append(
         path,
         lambda trail: record(
@@ -315,6 +318,7 @@ def _record(
         pending=False,
         notes=tuple(notes),
         at_fault=_at_fault(appended.faults),
+        whole=not appended.faults and appended.set_aside is None,
     )
 
 

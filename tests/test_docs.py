@@ -29,6 +29,7 @@ from calcgen.quantities.display import KINDS, Style
 from calcgen.quantities.measure import dimension_of, unit_size
 from calcgen.quantities.units import SYMBOLS
 from calcgen.text.codes import CODES
+from calcgen.text.terminal import render
 from tests.projects.evaluating import diagnosed, evaluated_manual
 from tests.projects.manual import Message, chapters, everything, messages, rows, words
 
@@ -336,6 +337,11 @@ def test_every_message_is_explained_and_no_other() -> None:
     assert sorted([*explained, *WITHOUT_EXAMPLE]) == sorted(CODES)
     assert set(words()) >= WITHOUT_EXAMPLE
     assert len(explained) == everything().count("\n````bad")
+
+
+def test_the_form_of_a_message() -> None:
+    (found,) = diagnosed("# Example\n\n```working\na = 2*L\n```\n")
+    assert f"\n```\n{render(found)}\n```\n" in chapters()["M-18-reading"]
 
 
 OF_CALCS = [m for m in messages() if m.kind in ("", "file")]

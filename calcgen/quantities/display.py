@@ -83,6 +83,8 @@ KINDS: dict[str, str] = {
 }
 """Kinds of quantity by the field's word, each with a unit of its dimension."""
 
+WHOLE = 1e6  # up to here a whole plain number is written out
+
 
 def describe(dimension: Dimension) -> str:
     """Return a dimension in words: 'force', 'length', or 'mass·length²·time⁻³' where there is no word."""
@@ -146,9 +148,12 @@ class Shown:
 
 
 def show(value: Measure, style: Style, digits: int | None = None) -> Shown:
-    """Return a value in its unit with the style's significant figures."""
+    """Return a value in its unit with the style's significant figures; a whole plain number stays whole."""
     unit = style.unit_of(value)
-    return Shown(number_text(magnitude_in(value, unit), digits or style.digits), unit)
+    number = rounded(magnitude_in(value, unit))
+    if unit == "" and number.is_integer() and abs(number) < WHOLE:
+        return Shown(f"{number:.0f}".replace("-", "−"))
+    return Shown(number_text(number, digits or style.digits), unit)
 
 
 def number_text(number: float, digits: int = 4) -> str:

@@ -10,7 +10,7 @@ from dataclasses import dataclass
 from calcgen.evaluation.blocks.beam_combinations import Combination
 from calcgen.evaluation.blocks.beam_lines import EXTREME, REACTION, SPAN, STATE, is_result, length_text
 from calcgen.evaluation.blocks.beam_model import BeamData, read_beam
-from calcgen.evaluation.blocks.beam_results import group_results, premises, relieving_cases
+from calcgen.evaluation.blocks.beam_results import group_results, moves_sideways, premises, relieving_cases
 from calcgen.evaluation.results import (
     BeamResult,
     CombinationResult,
@@ -332,6 +332,8 @@ def _second_route(name: str, data: BeamData, groups: Sequence[GroupResult]) -> t
         for c in group.combinations:
             loads = combined(data.cases, c.factors)
             for r in beam_residuals(data.model, loads, c.solution):
+                if r.what.endswith("_lat") and not moves_sideways(c.solution):
+                    continue
                 row = SecondRoute.found(name, r.what, r.residual, r.tolerance, r.quantity)
                 held = worst.get(r.what)
                 if held is None or not abs(r.residual) <= abs(held.residual):

@@ -108,7 +108,7 @@ def group_results(
     rows = _Rows(Envelope(solutions), len(solutions) > 1, style, measured)
     shown: list[Result] = []
     further: list[Result] = []
-    planes = ("", "_lat") if _lateral(solutions) else ("",)
+    planes = ("", "_lat") if any(moves_sideways(s) for s in solutions.values()) else ("",)
     for suffix in planes:
         for symbol in _SENSE:
             shown += rows.extremes(symbol, suffix)
@@ -126,11 +126,9 @@ def group_results(
     return tuple(shown), tuple(further)
 
 
-def _lateral(solutions: Mapping[str, CaseSolution]) -> bool:
+def moves_sideways(solution: CaseSolution) -> bool:
     """Whether anything happens in the lateral plane."""
-    return any(
-        s.extremes(q).abs > 0 for s in solutions.values() if "lateral" in s.model.planes for q in _SIDEWAYS
-    )
+    return "lateral" in solution.model.planes and any(solution.extremes(q).abs > 0 for q in _SIDEWAYS)
 
 
 def relieving_cases(

@@ -66,7 +66,7 @@ def section_residuals(first: SectionProperties, *outlines: Outline) -> tuple[Res
             I_hv,
             first.I_hv,
             math.sqrt(first.I_h * first.I_v),
-            "product moment, relative to √(I_h I_v)",
+            "product moment, relative to the geometric mean of the second moments",
         ),
         *_plastic("y_p", "W_pl_h", "horizontal", level.area, level.y - first.y_p, first.W_pl_h),
         *_plastic("x_p", "W_pl_v", "vertical", upright.area, upright.y - first.x_p, first.W_pl_v),
