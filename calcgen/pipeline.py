@@ -271,8 +271,8 @@ def _catalogue(
 class _Recorded:
     """The trail as it stands, the changes that the package marks, and what to tell.
 
-    `changes` are pending ones where the build does not record, else those of the last entry; `whole` says that
-    nothing was wrong with the file.
+    `changes` are pending ones where the build does not record, else those of the last entry; `whole` says
+    that nothing was wrong with the file.
     """
 
     trail: Trail

@@ -323,8 +323,6 @@ def test_nothing_else_is_listed_as_not_available_yet() -> None:
 # --- messages ---------------------------------------------------------------------------------------------
 
 WITHOUT_EXAMPLE = {
-    "argument-without-name",
-    "no-shape",
     "no-project",
     "no-calcs",
     "not-utf-8",

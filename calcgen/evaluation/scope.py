@@ -59,6 +59,8 @@ class Scope:
                 f"'{name}' is reserved",
                 hint="choose another name, or add a subscript",
             )
+            self.failed.add(name)
+            self.failed.add(name)
             return False
         if name in self.places:
             first = self.places[name]

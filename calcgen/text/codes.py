@@ -5,7 +5,6 @@ from __future__ import annotations
 CODES: dict[str, str] = {
     "argument-count": "a function or shape has too few or too many arguments",
     "argument-missing": "a shape lacks one of its sizes",
-    "argument-without-name": "a size of a shape has no name",
     "bad-calc-number": "a calc's number is not a letter followed by letters, digits and -",
     "bad-name": "a name has characters other than letters, digits, _ and '",
     "bad-place": "braces in prose do not hold the name of a value",
@@ -53,7 +52,6 @@ CODES: dict[str, str] = {
     "no-case-holds": "no case of a value is true",
     "no-length": "a load or stretch has no length",
     "no-project": "a folder is no project",
-    "no-shape": "a section has no shape",
     "no-stretch": "a setting that holds for the whole beam is given for a stretch",
     "no-such-result": "a block has no result of that name",
     "not-a-check": "a comparison makes no check",

@@ -89,8 +89,6 @@ def evaluate_section(
             "a section has one shape",
             hint="several shapes are parts of a section",
         )
-    if not lines and not block.items:
-        scope.report.error("no-shape", block.head_span, f"the section '{plain(name)}' has no shape")
     result = None
     if len(lines) == len(block.items) == 1:
         result = _section(name, lines[0], block, scope, axes, catalogue)
@@ -129,7 +127,7 @@ def _section(
         computed=computed,
         values=values,
         dimensions=_with_synonyms(placed.dimensions, text.shape.name if profile is None else profile.shape),
-        results=_results(values, published, scope.style, axes),
+        results=_results(values, _values(computed), scope.style, axes),
         published=_beside(published, tolerances, computed, scope.style, axes),
         second_route=_second_route(name, computed, placed, published, tolerances, axes),
         note=line.annotations.note,
@@ -155,6 +153,9 @@ def _in_force(
     for i, inertia in (("i_h", "I_h"), ("i_v", "I_v"), ("i_1", "I_1"), ("i_2", "I_2")):
         if i not in published and inertia in published:
             values[i] = math.sqrt(values[inertia] / values["A"])
+    if computed.I_hv == 0.0:  # the reference axes are the principal ones
+        values["I_2"], values["I_1"] = sorted((values["I_h"], values["I_v"]))
+        values["i_2"], values["i_1"] = sorted((values["i_h"], values["i_v"]))
     return values
 
 
@@ -190,7 +191,7 @@ def _with_synonyms(dimensions: Mapping[str, float], shape: str) -> dict[str, flo
 
 
 def _results(
-    values: Mapping[str, float], published: Mapping[str, float], style: Style, axes: Axes
+    values: Mapping[str, float], outline: Mapping[str, float], style: Style, axes: Axes
 ) -> tuple[Result, ...]:
     results = []
     for p in PROPERTIES:
@@ -205,7 +206,7 @@ def _results(
                 p.meaning,
                 value,
                 show(value, style),
-                provenance="published" if p.key in published else "outline",
+                provenance="outline" if values[p.key] == outline.get(p.key) else "published",
             )
         )
     return tuple(results)

@@ -97,14 +97,6 @@ def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, floa
     complete = True
     given: dict[str, float] = {}
     kinds = {p.name: p.kind for p in form.parameters}
-    for node in text.positional:
-        complete = False
-        scope.report.error(
-            "argument-without-name",
-            node.span,
-            "arguments of a shape are always named",
-            hint=f"write {word}({', '.join(f'{p.name} = …' for p in form.parameters if not p.optional)})",
-        )
     for argument in text.arguments:
         name = canonical(form, argument.name.name)
         if name not in kinds:
