@@ -18,7 +18,7 @@ import click
 from calcgen import __version__
 
 if TYPE_CHECKING:
-    from calcgen.pipeline import Outcome, Request
+    from calcgen.outcome import Outcome, Request
     from calcgen.watch import Change
 
 FAILED = 1
@@ -73,13 +73,11 @@ def start(folder: Path) -> None:
 @click.option("--open", "opens", is_flag=True, help="Open the package in a browser.")
 def build(folder: Path, out: Path | None, because: str | None, *, strict: bool, opens: bool) -> None:
     """Build the package of the project in DIR."""
-    from calcgen.pipeline import Workshop
-    from calcgen.pipeline import build as run
+    from calcgen.current import standing_package
 
     request = _request(_project(folder), out, because)
     began = time.perf_counter()
-    with _progress() as step:
-        outcome = run(request, Workshop(), step)
+    outcome = standing_package(request) or _built(request)
     _tell(outcome)
     if outcome.published or outcome.current:
         state = "is up to date" if outcome.current else "built"
@@ -88,6 +86,14 @@ def build(folder: Path, out: Path | None, because: str | None, *, strict: bool, 
             webbrowser.open((request.out / "index.html").resolve().as_uri())
     if outcome.failed or (strict and outcome.exceeded):
         sys.exit(FAILED)
+
+
+def _built(request: Request) -> Outcome:
+    """Build; the stages are loaded here, so that a package that is current does not wait for them."""
+    from calcgen.pipeline import Workshop, build
+
+    with _progress() as step:
+        return build(request, Workshop(), step)
 
 
 @main.command()
@@ -146,7 +152,7 @@ def _neighbour(folder: Path) -> str:
 
 
 def _request(root: Path, out: Path | None, why: str | None, *, records: bool = True) -> Request:
-    from calcgen.pipeline import Request
+    from calcgen.outcome import Request
 
     return Request(
         root=root,

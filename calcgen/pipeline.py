@@ -2,22 +2,23 @@
 
 from __future__ import annotations
 
-from collections.abc import Callable, Mapping
+from collections.abc import Callable
 from dataclasses import asdict, dataclass, field
-from datetime import datetime
 from pathlib import Path
 from posixpath import normpath
 from urllib.parse import unquote
 
 from calcgen import __version__
+from calcgen.current import key_of
 from calcgen.evaluation.calc import Memory, Setting, evaluate_all
-from calcgen.evaluation.results import EvaluatedCalc, Standing
-from calcgen.figures.illustrate import Drawn, Studio, conventions, illustrate
+from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.figures.illustrate import Drawn, Studio, conventions
 from calcgen.language.calc import Calc, Prose
 from calcgen.language.document import calc_from
+from calcgen.outcome import Outcome, Request, Summary
 from calcgen.profiles import Catalogue, builtin_catalogue, read_catalogue
 from calcgen.project import Project, ProjectFiles, Reference, load_project
-from calcgen.publishing import PublishError, build_key, is_current, publish, read_manifest, recover
+from calcgen.publishing import PublishError, publish, recover
 from calcgen.quantities.display import Style
 from calcgen.site.compose import compose
 from calcgen.site.facts import PackageInput, ProjectFacts, ReferenceFacts
@@ -42,68 +43,6 @@ from calcgen.trail.state import state_of
 from calcgen.views import history_views, previous_views
 
 PROGRAM = f"calcgen {__version__}"
-
-
-@dataclass(frozen=True)
-class Request:
-    """What is asked of a build.
-
-    Attributes
-    ----------
-    root : the project's folder; out : where the package goes.
-    when : the time recorded in the trail, with its zone; who and why : as recorded there.
-    records : whether the trail gets an entry (`watch` only shows what is pending).
-    durable : whether to wait until the disk has it all.
-    """
-
-    root: Path
-    out: Path
-    when: datetime
-    who: str
-    why: str | None = None
-    records: bool = True
-    durable: bool = True
-
-
-@dataclass(frozen=True)
-class Summary:
-    """A calc as the command line lists it."""
-
-    number: str
-    title: str
-    standing: Standing
-    governing: str
-    utilisation: float | None
-
-
-@dataclass(frozen=True)
-class Outcome:
-    """What came of a build.
-
-    Attributes
-    ----------
-    published : whether the package was written; False where the project itself is at fault.
-    current : whether the package already stood as it would be built.
-    notes : what else to tell: a torn line of the trail set aside, changes recorded.
-    """
-
-    calcs: tuple[Summary, ...]
-    diagnostics: tuple[Diagnostic, ...]
-    published: bool
-    current: bool = False
-    notes: tuple[str, ...] = ()
-    trail_at_fault: bool = False
-
-    @property
-    def failed(self) -> bool:
-        """Whether there is an error."""
-        standing = self.published or self.current
-        return not standing or self.trail_at_fault or any(d.severity == "error" for d in self.diagnostics)
-
-    @property
-    def exceeded(self) -> bool:
-        """Whether a check is exceeded."""
-        return any(c.standing == "exceeded" for c in self.calcs)
 
 
 @dataclass
@@ -146,11 +85,6 @@ def _build(
 ) -> Outcome:
     calcs = tuple(_calc(source, workshop) for source in files.calcs)
     images, missing = read_images(request.root, calcs)
-    key = _key(request, files, images)
-    if request.records and is_current(request.out, key):
-        kept = read_manifest(request.out)
-        if kept is not None and kept.data.get("clean") is True:
-            return Outcome(_kept(kept.data), found, published=False, current=True)
     step("evaluating")
     style = Style(project.units, project.digits, project.depth, project.preferred_units)
     catalogue, faults = _catalogue(files.profiles, workshop)
@@ -163,7 +97,7 @@ def _build(
     figures = {
         (calc.number, name): row
         for calc in evaluated
-        for name, row in workshop.studio.draw(illustrate(calc, project.axes, style)).items()
+        for name, row in workshop.studio.draw(calc, project.axes, style).items()
     }
     signs = workshop.studio.draw_one(conventions(project.axes, project.depth))
     step("writing")
@@ -186,7 +120,8 @@ def _build(
         render(compose(package)),
         request.out,
         {
-            "key": _key(request, files, images),  # again: the trail is one of the inputs
+            "key": key_of(request.root, images, records=request.records),
+            "images": sorted(images),
             "clean": not diagnostics and trail.whole,
             "sources": {source.path: source.digest for source in _sources(files)},
             "trail_head": trail.trail.order[-1].digest if trail.trail.order else "",
@@ -240,13 +175,6 @@ def _sources(files: ProjectFiles) -> tuple[SourceFile, ...]:
     """Return all files of the project that a build reads."""
     references = (files.references_source,) if files.references_source is not None else ()
     return (files.settings, *references, *files.calcs, *files.profiles)
-
-
-def _key(request: Request, files: ProjectFiles, images: Mapping[str, bytes]) -> str:
-    inputs = {source.path: source.text.encode() for source in _sources(files)}
-    trail = request.root / TRAIL
-    inputs[TRAIL] = trail.read_bytes() if trail.is_file() else b""
-    return build_key({**inputs, **images}, {"records": str(request.records)})
 
 
 def _catalogue(
@@ -340,12 +268,6 @@ def _summary(calc: EvaluatedCalc) -> Summary:
         governing.label if governing is not None else calc.reason,
         governing.utilisation if governing is not None else None,
     )
-
-
-def _kept(data: Mapping[str, object]) -> tuple[Summary, ...]:
-    """Return the summaries that the manifest of a package holds."""
-    rows = data.get("calcs")
-    return tuple(Summary(**row) for row in rows) if isinstance(rows, list) else ()
 
 
 def image_path(calc: Calc, address: str) -> str | None:

@@ -24,14 +24,16 @@ ALLOWED = {
     "disk": set(),
     "project": {"language", "quantities", "text"},
     "pipeline": {
-        *("evaluation", "figures", "language", "profiles", "project", "publishing"),
+        *("current", "evaluation", "figures", "language", "outcome", "profiles", "project", "publishing"),
         *("quantities", "site", "text", "trail", "views"),
     },
+    "outcome": {"text"},
+    "current": {"outcome", "publishing"},
     "views": {"quantities", "site", "trail"},
     "watch": set(),
     "preview": set(),
     "start": set(),
-    "cli": {"pipeline", "preview", "start", "text", "watch"},
+    "cli": {"current", "outcome", "pipeline", "preview", "start", "text", "watch"},
     "__main__": {"cli"},
     "__init__": set(),
 }  # fmt: skip

@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Literal
 
@@ -79,11 +78,16 @@ class Studio:
     """Draws figures and remembers them, so that a figure that has not changed is not drawn again."""
 
     def __init__(self) -> None:
+        self._composed: dict[str, tuple[EvaluatedCalc, Axes, Style, dict[str, tuple[Figure, ...]]]] = {}
         self._drawn: dict[Figure, Drawn] = {}
 
-    def draw(self, figures: Mapping[str, tuple[Figure, ...]]) -> dict[str, tuple[Drawn, ...]]:
-        """Return the SVG of figures by the name of their block."""
-        return {name: tuple(self.draw_one(figure) for figure in row) for name, row in figures.items()}
+    def draw(self, calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple[Drawn, ...]]:
+        """Return the figures of a calc as SVG by the name of their block."""
+        kept = self._composed.get(calc.number)
+        if kept is None or kept[0] is not calc or kept[1:3] != (axes, style):
+            kept = (calc, axes, style, illustrate(calc, axes, style))
+            self._composed[calc.number] = kept
+        return {name: tuple(self.draw_one(figure) for figure in row) for name, row in kept[3].items()}
 
     def draw_one(self, figure: Figure) -> Drawn:
         """Return the SVG of a figure."""

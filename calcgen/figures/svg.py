@@ -3,6 +3,7 @@
 import re
 import warnings
 from collections.abc import Iterable
+from functools import cache
 from html import escape
 from io import StringIO
 from typing import TYPE_CHECKING
@@ -15,7 +16,9 @@ from calcgen.figures.picture import Colour, Label, Picture, Shape
 
 if TYPE_CHECKING:
     from matplotlib.artist import Artist
+    from matplotlib.backend_bases import RendererBase
     from matplotlib.path import Path
+    from matplotlib.text import Text
     from matplotlib.transforms import Transform
 
 # The colours on paper; a page overrides each through its CSS variable, on dark ground too.
@@ -80,12 +83,31 @@ def render(picture: Picture) -> str:
     return _own(out.getvalue(), picture, float(width), float(height))
 
 
-def _artist(item: Shape | Label, to_paper: "Transform") -> "Artist":
-    from matplotlib.patches import PathPatch
+@cache
+def _line_type() -> "type[Text]":
+    """Return the artist of one line of text, without the layout of paragraphs, which takes most time."""
     from matplotlib.text import Text
 
+    class Line(Text):
+        def draw(self, renderer: "RendererBase") -> None:
+            gc = renderer.new_gc()
+            gc.set_foreground(self.get_color())
+            x, y = self.get_transform().transform(self.get_position())
+            renderer.open_group("text", self.get_gid())
+            renderer.draw_text(
+                gc, x, y, self.get_text(), self.get_fontproperties(), self.get_rotation(), mtext=self
+            )
+            renderer.close_group("text")
+            gc.restore()
+
+    return Line
+
+
+def _artist(item: Shape | Label, to_paper: "Transform") -> "Artist":
+    from matplotlib.patches import PathPatch
+
     if isinstance(item, Label):
-        return Text(
+        return _line_type()(
             round(item.x, 2),
             round(item.y, 2),
             item.text,

@@ -58,7 +58,12 @@ class Measure:
 
 def dimension_of(quantity: Quantity) -> Dimension:
     """Return the dimension of a pint quantity (angles have none)."""
-    cleaned = ((name, round(float(str(power)), 9)) for name, power in quantity.dimensionality.items())
+    return _dimension(quantity.units)
+
+
+@cache
+def _dimension(units: pint.Unit) -> Dimension:
+    cleaned = ((name, round(float(str(power)), 9)) for name, power in units.dimensionality.items())
     return tuple(sorted((n, int(p) if p == int(p) else p) for n, p in cleaned if p))
 
 

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from functools import cached_property
 from typing import Final, Literal, TypeAlias
 
 import numpy as np
@@ -113,6 +114,16 @@ class CaseSolution:
         At `start` and `end` themselves the inner side counts. Equal extremes are named at the leftmost of
         their places.
         """
+        asked = (quantity, start, end)
+        if asked not in self._extremes:  # asked again by groups, tables and figures
+            self._extremes[asked] = self._find_extremes(*asked)
+        return self._extremes[asked]
+
+    @cached_property
+    def _extremes(self) -> dict[tuple[Quantity, float | None, float | None], Extremes]:
+        return {}
+
+    def _find_extremes(self, quantity: Quantity, start: float | None, end: float | None) -> Extremes:
         pieces, noise = self._pieces(quantity)
         first, last, low, high = self._range(start, end)
         pieces, low, high = pieces[first:last], low[first:last], high[first:last]

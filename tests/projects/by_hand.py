@@ -1,0 +1,131 @@
+"""Closed forms with which the demo projects are worked by hand; any consistent units, M sags, w is down."""
+
+from __future__ import annotations
+
+from collections.abc import Callable
+from itertools import pairwise
+from typing import NamedTuple, TypeAlias
+
+import numpy as np
+from numpy.typing import NDArray
+from scipy.integrate import cumulative_simpson, quad
+
+Array: TypeAlias = NDArray[np.float64]
+
+EXACT = 1e-9  # closed form against closed form: rounding alone lies between
+GRID = 1e-6  # largest deflection on a grid of 20 001 points
+FACETS = 1e-5  # true arcs against the facets of an outline
+PRINTED = 3e-3  # three figures printed in the AISC Manual
+
+
+class Worked(NamedTuple):
+    """One value: in `unit`, with the way it was found; `within` is a relative tolerance."""
+
+    calc: str
+    name: str
+    value: float
+    unit: str
+    how: str
+    within: float = EXACT
+
+
+class Overhang(NamedTuple):
+    """A beam on supports at 0 and L with an overhang a; w on the span, v on the overhang (a force by length).
+
+    Source: statics, and the slopes of a simple beam under a uniform load, w L³/24 EI, and under a moment M at
+    one end, M L/3 EI there and M L/6 EI at the other.
+    """
+
+    L: float
+    a: float
+    w: float
+    v: float
+
+    @property
+    def M_support(self) -> float:
+        """The moment over the support."""
+        return -self.v * self.a**2 / 2
+
+    @property
+    def R_1(self) -> float:
+        """The reaction at 0."""
+        return self.w * self.L / 2 + self.M_support / self.L
+
+    @property
+    def V_left(self) -> float:
+        """The shear left of the support at L."""
+        return self.R_1 - self.w * self.L
+
+    @property
+    def R_2(self) -> float:
+        """The reaction at L."""
+        return self.v * self.a - self.V_left
+
+    @property
+    def M_span(self) -> float:
+        """The largest sagging moment."""
+        return self.R_1**2 / (2 * self.w)
+
+    def w_tip(self, EI: float) -> float:
+        """Return the deflection of the tip."""
+        slope = (self.w * self.L**3 / 24 + self.M_support * self.L / 3) / EI
+        return -slope * self.a + self.v * self.a**4 / (8 * EI)
+
+    def w_span(self, EI: float) -> float:
+        """Return the largest deflection of the span."""
+        return sag(lambda x: self.R_1 * x - self.w * x**2 / 2, self.L, EI)
+
+
+def sag(M: Callable[[Array], Array], L: float, EI: float) -> float:
+    """Return the largest deflection of a simple span by double integration of -M/EI on a grid."""
+    x = np.linspace(0, L, 20_001)
+    slope = cumulative_simpson(-M(x) / EI, x=x, initial=0)
+    w = cumulative_simpson(slope, x=x, initial=0)
+    return float(np.max(w - x / L * w[-1]))
+
+
+def two_span_point(P: float, a: float, L: float) -> float:
+    """Return the moment over the middle support of two equal spans, P at a from the outer support.
+
+    Source: three-moment equation, M = -P a (L² - a²)/(4 L²).
+    """
+    return -P * a * (L**2 - a**2) / (4 * L**2)
+
+
+class Angle(NamedTuple):
+    """An angle, heel at (0, 0), legs up (h) and right (b), root and toe radii, integrated by scipy."""
+
+    h: float
+    b: float
+    t: float
+    r_1: float
+    r_2: float
+
+    def width(self, y: float) -> float:
+        """Return the width at height y; every horizontal cut is one piece from the back of the leg."""
+        h, b, t, r_1, r_2 = self
+        if y <= t - r_2:
+            return b
+        if y <= t:
+            return float(b - r_2 + np.sqrt(r_2**2 - (y - t + r_2) ** 2))
+        if y <= t + r_1:
+            return float(t + r_1 - np.sqrt(r_1**2 - (t + r_1 - y) ** 2))
+        if y <= h - r_2:
+            return t
+        return float(t - r_2 + np.sqrt(max(r_2**2 - (y - h + r_2) ** 2, 0.0)))
+
+    def integral(self, f: Callable[[float, float], float]) -> float:
+        """Return ∫f(y, width) dy over the height, piece by piece between the ends of the arcs."""
+        h, _, t, r_1, r_2 = self
+        ends = (0.0, t - r_2, t, t + r_1, h - r_2, h)
+        parts = [quad(lambda y: f(y, self.width(y)), p, q, epsabs=0, epsrel=1e-10) for p, q in pairwise(ends)]
+        return float(sum(value for value, _ in parts))
+
+    def properties(self) -> tuple[float, float, float, float, float, float]:
+        """Return A, x_bar, y_bar, ∫y² dA, ∫x² dA, ∫xy dA, the last three about the centroid."""
+        A = self.integral(lambda _, X: X)
+        x, y = self.integral(lambda _, X: X**2 / 2) / A, self.integral(lambda y, X: y * X) / A
+        I_h = self.integral(lambda y, X: y**2 * X) - A * y**2
+        I_v = self.integral(lambda _, X: X**3 / 3) - A * x**2
+        I_hv = self.integral(lambda y, X: y * X**2 / 2) - A * x * y
+        return A, x, y, I_h, I_v, I_hv

@@ -1,0 +1,162 @@
+"""The values of `projects/heron-lock` worked by hand, in kN and m. Section figures: EN 10365, from memory."""
+
+from __future__ import annotations
+
+from math import pi, sqrt
+
+import numpy as np
+
+from tests.projects.by_hand import EXACT, FACETS, GRID, Angle, Overhang, Worked, two_span_point
+
+E = 210e6  # kN/m²
+F_Y = 275e3  # kN/m²
+G, Q = 1.35, 1.5  # factors
+
+
+# W-07, IPE 220: A 33.4 cm², I_y 2772 cm⁴, W_pl,y 285.4 cm³, 220 x 110 x 5.9 x 9.2, r 12 mm
+_g = 78.5 * 33.4e-4 + 0.38 * 0.9
+_q = 5.0 * 0.9
+_EI = E * 2772e-8
+_U1 = Overhang(6.0, 1.2, G * _g + Q * _q, G * _g)
+_U2 = Overhang(6.0, 1.2, G * _g + Q * _q, G * _g + Q * _q)
+_EQU = Overhang(6.0, 1.2, 0.9 * _g, 0.9 * _g + Q * _q)
+_S1, _S2 = Overhang(6.0, 1.2, _g + _q, _g), Overhang(6.0, 1.2, _g, _g + _q)
+_GK, _QK = Overhang(6.0, 1.2, _g, _g), Overhang(6.0, 1.2, _q, _q)
+_A_V = 33.4e-4 - 2 * 0.11 * 0.0092 + (0.0059 + 0.024) * 0.0092
+
+W_07 = (
+    Worked("W-07", "M_Ed", _U1.M_span, "kN·m", "R_1²/2w, most in the span with the overhang unloaded"),
+    Worked("W-07", "M_c_Rd", 285.4e-6 * F_Y, "kN·m", "W_pl f_y"),
+    Worked("W-07", "M_P", 1.5 * 4 * 6 / 4, "kN·m", "P L/4"),
+    Worked("W-07", "V_Ed", -_U2.V_left, "kN", "left of the east trestle, all loaded"),
+    Worked("W-07", "V_pl_Rd", _A_V * F_Y / sqrt(3), "kN", "EN 1993-1-1 6.2.6"),
+    Worked("W-07", "w_span", _S1.w_span(_EI) * 1e3, "mm", "double integration", GRID),
+    Worked("W-07", "tip_up", -_S1.w_tip(_EI) * 1e3, "mm", "slope at the trestle times a, less the sag of g"),
+    Worked("W-07", "tip_down", _S2.w_tip(_EI) * 1e3, "mm", "the same, overhang loaded"),
+)
+
+# W-12, HEA 140: A 31.4 cm², I_y 1033 cm⁴, W_pl,y 173.5 cm³, 133 x 140 x 5.5 x 8.5, r 12 mm
+_own = 78.5 * 31.4e-4
+_mid = G * _GK.R_2 + Q * _QK.R_2
+_out = G * _GK.R_2 + Q * _QK.R_2 / 2
+_mid_k, _out_k = _GK.R_2 + _QK.R_2, _GK.R_2 + _QK.R_2 / 2
+_A_V12 = 31.4e-4 - 2 * 0.14 * 0.0085 + (0.0055 + 0.024) * 0.0085
+_h_w = 0.133 - 2 * 0.0085
+_l_y = 0.080 + 2 * 0.0085 * (1 + sqrt(0.14 / 0.0055))
+_F_cr = 0.9 * (6 + 2 * (_h_w / 2.4) ** 2) * E * 0.0055**3 / _h_w
+
+W_12 = (
+    Worked("W-12", "R_G", _GK.R_2, "kN", "g (L + a)²/2L"),
+    Worked("W-12", "R_Q", 4.5 * 7.2**2 / 12, "kN", "q (L + a)²/2L"),
+    Worked("W-12", "M_Ed", _mid * 0.6 + _out * 0.3 + G * _own * 0.72, "kN·m", "P L/4 + P_1 e + g L²/8"),
+    Worked("W-12", "M_c_Rd", 173.5e-6 * F_Y, "kN·m", "W_pl f_y"),
+    Worked("W-12", "V_Ed", _mid / 2 + _out + G * _own * 1.2, "kN", "half of all loads"),
+    Worked("W-12", "V_pl_Rd", _A_V12 * F_Y / sqrt(3), "kN", "EN 1993-1-1 6.2.6"),
+    Worked("W-12", "F_cr", _F_cr, "kN", "EN 1993-1-5 6.4"),
+    Worked("W-12", "λ_F", sqrt(_l_y * 0.0055 * F_Y / _F_cr), "", "EN 1993-1-5 6.4"),
+    Worked("W-12", "F_Rd", _l_y * 0.0055 * F_Y, "kN", "EN 1993-1-5 6.2, no reduction below 0.5"),
+    Worked(
+        "W-12",
+        "w_max",
+        (_mid_k * 2.4**3 / 48 + _out_k * 0.3 * (3 * 2.4**2 - 4 * 0.3**2) / 24 + 5 * _own * 2.4**4 / 384)
+        / (E * 1033e-8)
+        * 1e3,
+        "mm",
+        "P L³/48 + P_1 e (3L² - 4e²)/24 + 5 g L⁴/384, over EI",
+    ),
+)
+
+# B-03, angle 150 x 90 x 12, r 12 and 6 mm, in m
+_A, _x, _y, _I_h, _I_v, _I_hv = Angle(0.150, 0.090, 0.012, 0.012, 0.006).properties()
+_gb = 78.5 * _A + 1.6 * 1.5
+_M_y = -(G * _gb * 1.6**2 / 2 + Q * 1.5 * 1.6)
+_M_z = -Q * 0.6 * 1.6
+# σ = k_x x + k_y y with ∫σ x dA = M_lat and -∫σ y dA = M
+_k_x, _k_y = np.linalg.solve([[_I_v, _I_hv], [-_I_hv, -_I_h]], [_M_z, _M_y])
+_area = _gb * 1.6**4 / 8 + 1.5 * 1.6**3 / 3  # first moment of M about the tip
+# E I u = ∫M x dx in matrix form: the tip moves by (1/E) [∫x² ∫xy; ∫xy ∫y²]⁻¹ (0, -area), x right and y up
+_right, _up = np.linalg.solve([[_I_v, _I_hv], [_I_hv, _I_h]], [0.0, -_area]) / E
+_W_TOP = _I_h / (0.150 - _y)
+
+B_03 = (
+    Worked("B-03", "M_y_Ed", _M_y, "kN·m", "-(g L²/2 + Q L)", FACETS),
+    Worked("B-03", "M_z_Ed", _M_z, "kN·m", "-H L, tension on the left"),
+    Worked("B-03", "σ_simple", -_M_y / _W_TOP / 1e3, "MPa", "M/W_el", FACETS),
+    Worked("B-03", "τ_Ed", 1.5 * (G * _gb * 1.6 + Q * 1.5) / 1.8e-3 / 1e3, "MPa", "1.5 V/(h t)", FACETS),
+    Worked("B-03", "w_tip", -_up * 1e3, "mm", "general formula", FACETS),
+    Worked("B-03", "v_tip", _right * 1e3, "mm", "general formula, to the left", FACETS),
+)
+STRESSES = {
+    "toe": (_k_x * (0.006 - _x) + _k_y * (0.150 - _y)) / 1e3,
+    "heel": (_k_x * -_x + _k_y * -_y) / 1e3,
+    "end": (_k_x * (0.090 - _x) + _k_y * (0.006 - _y)) / 1e3,
+}
+"""MPa at the points of the stress block, from the equilibrium of a plane stress."""
+
+# D-04, board 195 x 50 mm on two spans of 0.8 m
+_W_B, _EI_B = 0.195 * 0.05**2 / 6, 11e6 * 0.195 * 0.05**3 / 12
+_g4, _q4, _P, _a = 5.0 * 0.195 * 0.05, 5.0 * 0.195, 4.0, 0.43 * 0.8
+_M_B, _M_Bj = two_span_point(_P, _a, 0.8), two_span_point(_P, 0.7, 0.8)
+_M_P = Q * (_P * _a * (0.8 - _a) / 0.8 + _M_B * _a / 0.8) + G * _g4 * (3 / 8 * 0.8 * _a - _a**2 / 2)
+_V_P = Q * (_P * 0.7 / 0.8 - _M_Bj / 0.8) + G * _g4 * 5 / 8 * 0.8
+_R_P = Q * (_P * 0.7 / 0.8 - 2 * _M_Bj / 0.8) + G * _g4 * 1.25 * 0.8
+_s = 0.42 * 0.8
+_w_G = _g4 * _s * (0.8**3 - 3 * 0.8 * _s**2 + 2 * _s**3) / 48 / _EI_B
+_w_Q = (
+    _q4 * _s * (0.8**3 - 2 * 0.8 * _s**2 + _s**3) / 24 - _q4 * 0.8**2 / 16 * _s * (0.8**2 - _s**2) / (6 * 0.8)
+) / _EI_B
+
+D_04 = (
+    Worked("D-04", "k_h", 3**0.2, "", "(150/50)^0.2"),
+    Worked("D-04", "f_m_d", 0.7 * 3**0.2 * 24 / 1.3, "MPa", "EN 1995-1-1 2.4.1"),
+    Worked("D-04", "σ_m_d", _M_P / _W_B / 1e3, "MPa", "under the load: P a b/L + M_B a/L, and g"),
+    Worked("D-04", "τ_d", 1.5 * _V_P / (0.67 * 0.195 * 0.05) / 1e3, "MPa", "P a/L - M_B/L, and 5/8 g L"),
+    Worked("D-04", "σ_c90_d", _R_P / (0.195 * 0.135) / 1e3, "MPa", "P a/L - 2 M_B/L, and 5/4 g L"),
+    Worked("D-04", "w_fin", (3 * _w_G + 2.2 * _w_Q) * 1e3, "mm", "1 + k_def, and 1 + ψ_2 k_def"),
+)
+
+# P-05, IPE 180: A 23.9 cm², I_y 1317 cm⁴, W_el,y 146.3 cm³
+_L, _EI5 = 5.6, E * 1317e-8
+_g5, _q5 = 0.45 * 1.3 + 78.5 * 23.9e-4, 5.0 * 1.3
+_w5 = G * _g5 + Q * _q5
+_M_set = 1.2 * 3 * _EI5 * 0.008 / _L**2
+_M_5 = _w5 * _L**2 / 8 + _M_set
+_x5 = _L * (15 - sqrt(33)) / 16
+
+P_05 = (
+    Worked("P-05", "M_Ed", _M_5, "kN·m", "w L²/8 + 3EIδ/L²"),
+    Worked("P-05", "M_set", _M_set, "kN·m", "1.2 times 3EIδ/L²"),
+    Worked("P-05", "M_el_Rd", 146.3e-6 * F_Y, "kN·m", "W_el f_y"),
+    Worked("P-05", "q_adm", 5 - (_M_5 - 146.3e-6 * F_Y) * 8 / (_L**2 * Q * 1.3), "kPa", "solved for q"),
+    Worked("P-05", "q_post", 4.0, "kPa", "down to half a kPa"),
+    Worked("P-05", "M_f_Ed", 9 / 128 * _w5 * _L**2, "kN·m", "9 w L²/128, prop as built"),
+    Worked("P-05", "V_Ed", 5 / 8 * _w5 * _L + _M_set / _L, "kN", "5 w L/8 + 3EIδ/L³"),
+    Worked(
+        "P-05",
+        "w_max",
+        (_g5 + _q5) * _x5**2 * (_L - _x5) * (3 * _L - 2 * _x5) / (48 * _EI5) * 1e3,
+        "mm",
+        "w x² (L - x)(3L - 2x)/48EI at x = (15 - √33) L/16 from the wall",
+    ),
+)
+
+# H-06, tube 60.3 x 5
+_d, _i = 0.0603, 0.0503
+H_06 = (
+    Worked("H-06", "M_Ed", 1.5 * 1.5 * 1.1, "kN·m", "P h"),
+    Worked("H-06", "M_c_Rd", (_d**3 - _i**3) / 6 * F_Y, "kN·m", "(d³ - d_i³)/6 · f_y", FACETS),
+    Worked("H-06", "V_pl_Rd", 2 / pi * pi / 4 * (_d**2 - _i**2) * F_Y / sqrt(3), "kN", "2A/π", EXACT),
+    Worked(
+        "H-06",
+        "w_r",
+        1.5 * 1.1**3 / (3 * E * pi / 64 * (_d**4 - _i**4)) * 1e3,
+        "mm",
+        "P h³/3EI",
+        FACETS,
+    ),
+)
+
+CASES = (*W_07, *W_12, *B_03, *D_04, *P_05, *H_06)
+
+EXCEEDED = {("P-05", "bending at the wall"): _M_5 / (146.3e-6 * F_Y)}
+UPLIFT = {("W-07", "no uplift at the west trestle"): _EQU.R_1}
