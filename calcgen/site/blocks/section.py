@@ -57,7 +57,7 @@ def _property(owner: str, result: Result, beside: Mapping[str, Published], line:
     published = beside.get(result.name)
     where: Markup
     if published is not None:
-        where = escape(f"published (outline {published.outline.number})")
+        where = escape(f"published; outline {published.outline.number}")
     else:
         where = escape({"published": "published", "outline": "from the outline"}.get(result.provenance, ""))
     row = RowView(f"{owner}.{result.name}", escape(result.meaning), where, line)
