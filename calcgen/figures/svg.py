@@ -92,7 +92,8 @@ def _line_type() -> "type[Text]":
         def draw(self, renderer: "RendererBase") -> None:
             gc = renderer.new_gc()
             gc.set_foreground(self.get_color())
-            x, y = self.get_transform().transform(self.get_position())
+            x, up = self.get_transform().transform(self.get_position())
+            y = renderer.get_canvas_width_height()[1] - up  # the renderer of SVG counts down
             renderer.open_group("text", self.get_gid())
             renderer.draw_text(
                 gc, x, y, self.get_text(), self.get_fontproperties(), self.get_rotation(), mtext=self

@@ -4,17 +4,20 @@ from __future__ import annotations
 
 from collections.abc import Mapping
 from dataclasses import dataclass
+from typing import TypeAlias
 
 from markupsafe import Markup
 
 from calcgen.evaluation.results import CheckRow, DerivedRow, Operand
 from calcgen.language.nodes import Cases, Expression, Formula, Name, Number, Text, Truth
 from calcgen.quantities.display import Shown
-from calcgen.site.mathml import PutIn, formula, math, quantity, relation, symbol
+from calcgen.site.mathml import PutIn, formula, math, quantity, relation, symbol, terms
 from calcgen.text import SourceFile
 
 _OPPOSITE = {"<": ">=", "<=": ">", ">": "<=", ">=": "<"}
-_EQUALS = "<mo>=</mo>"
+_Step: TypeAlias = tuple[str, ...]
+
+_EQUALS = '<mo form="infix">=</mo>'
 _NOTHING = Markup("")
 
 
@@ -24,8 +27,8 @@ class Equation:
 
     Attributes
     ----------
-    left : what stands before the first sign; it keeps its place when the parts break.
-    parts : each starts with its sign; as many stand on a line as fit.
+    left : what stands before the first sign and keeps its place when the parts break; empty for a check.
+    parts : as many stand on a line as fit.
     aside : a remark below, such as which case was taken; empty where there is none.
     """
 
@@ -38,24 +41,23 @@ def derived(row: DerivedRow, source: SourceFile) -> Equation:
     """Return a derived value; a step that would only repeat the next one is left out."""
     put_in = put_in_from(row.operands, source)
     node = row.node.formula
-    steps: list[str] = []
+    steps: list[_Step] = []
     aside = ""
     taken: Formula = node
     if isinstance(node, Cases) and row.branch is not None:
         branch = node.branches[row.branch]
         taken = branch.value
-        steps.append(formula(node))
+        steps.append((formula(node),))
         if branch.condition is not None:
             aside = f"<mtext>as&#xA0;</mtext>{formula(branch.condition, put_in)}"
     elif not isinstance(node, Number):
-        steps.append(formula(node))
+        steps.append(terms(node))
     if not isinstance(taken, Number | Text | Truth):
-        steps.append(formula(taken, put_in))
-    result = quantity(row.shown)
-    steps.append(result)
+        steps.append(terms(taken, put_in))
+    steps.append((quantity(row.shown),))
     return Equation(
         _element(symbol(row.name)),
-        tuple(_element(_EQUALS + step) for step in _without_repeats(steps)),
+        tuple(_element(part) for step in _without_repeats(steps) for part in _led(step, _EQUALS)),
         _element(aside) if aside else _NOTHING,
     )
 
@@ -68,12 +70,12 @@ def stated(name: str, shown: Shown) -> Equation:
 def check(row: CheckRow, source: SourceFile) -> Equation:
     """Return a check: its statement, its sides with numbers put in, and how they stand to each other."""
     node, result = row.node.comparison, row.result
-    parts = [formula(node)]
+    steps: list[_Step] = [(formula(node),)]
     if not (_plain(node.left) and _plain(node.right)):
-        parts.append(formula(node, put_in_from(row.operands, source)))
-    parts.append(compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied))
-    first, *others = _without_repeats(parts)
-    return Equation(_element(first), tuple(_element(part) for part in others))
+        steps.append((formula(node, put_in_from(row.operands, source)),))
+    sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
+    steps.append((sides,))
+    return Equation(_NOTHING, tuple(_element("".join(step)) for step in _without_repeats(steps)))
 
 
 def compared(left: Shown, operator: str, right: Shown, *, satisfied: bool) -> str:
@@ -93,12 +95,17 @@ def put_in_from(operands: Mapping[str, Operand], source: SourceFile) -> PutIn:
     return put_in
 
 
+def _led(step: _Step, sign: str) -> _Step:
+    """Return a step with its sign before it."""
+    return (sign + step[0], *step[1:])
+
+
 def _plain(node: Expression) -> bool:
     return isinstance(node, Name | Number)
 
 
-def _without_repeats(steps: list[str]) -> list[str]:
-    return [step for step, following in zip(steps, [*steps[1:], ""], strict=True) if step != following]
+def _without_repeats(steps: list[_Step]) -> list[_Step]:
+    return [step for step, following in zip(steps, [*steps[1:], ()], strict=True) if step != following]
 
 
 def _element(content: str) -> Markup:

@@ -92,6 +92,14 @@ def formula(node: Formula | Condition, put_in: PutIn | None = None) -> str:
     return _Setter(put_in).set(node).mathml
 
 
+def terms(node: Formula, put_in: PutIn | None = None) -> tuple[str, ...]:
+    """Return the MathML of a sum term by term, each but the first with its sign; of all else in one piece."""
+    if not (isinstance(node, Binary) and node.operator in ("+", "-")):
+        return (formula(node, put_in),)
+    setter = _Setter(put_in)
+    return (*terms(node.left, put_in), setter.signed(node))
+
+
 def math(content: str, *, display: bool = False) -> str:
     """Return MathML content as an element of a page."""
     style = ' displaystyle="true"' if display else ""
@@ -100,7 +108,7 @@ def math(content: str, *, display: bool = False) -> str:
 
 def relation(operator: str) -> str:
     """Return the MathML of a relation: `<=` is ≤."""
-    return f"<mo>{RELATIONS[operator]}</mo>"
+    return f'<mo form="infix">{RELATIONS[operator]}</mo>'
 
 
 def _symbol(name: str) -> Piece:
@@ -138,6 +146,8 @@ def _quantity(shown: Shown) -> Piece:
         setting = _power_of_ten(scientific[1], scientific[2].translate(_RAISED))
     elif number[:1].isdigit() or number == "not finite":
         setting = f"<mn>{number}</mn>"
+    elif shown.number in ("yes", "no"):
+        return Piece(f"<mtext>{shown.number}</mtext>", first="word", last="word")
     else:
         return Piece(f"<mtext>“{escape(shown.number)}”</mtext>", first="word", last="word")
     return _with_unit(setting, shown.unit, negative=number != shown.number, several=scientific is not None)
@@ -248,11 +258,16 @@ class _Setter:
                 return self._power(node)
 
     def _sum(self, node: Binary) -> Piece:
-        left, right = self.set(node.left), self.set(node.right)
+        left, right = self.set(node.left), self.signed(node)
+        return Piece(f"{left.mathml}{right}", Level.SUM, left.first)
+
+    def signed(self, node: Binary) -> str:
+        """Return the second operand of a sum or difference, with its sign before it."""
+        right = self.set(node.right)
         if right.level == Level.SIGN or (right.level == Level.SUM and node.operator == "-"):
             right = _fenced(right)
         sign = "−" if node.operator == "-" else "+"
-        return Piece(f"{left.mathml}<mo>{sign}</mo>{right.mathml}", Level.SUM, left.first, right.last)
+        return f'<mo form="infix">{sign}</mo>{right.mathml}'
 
     def _product(self, node: Binary) -> Piece:
         left, right = self.set(node.left), self.set(node.right)

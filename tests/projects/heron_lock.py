@@ -112,6 +112,7 @@ D_04 = (
     Worked("D-04", "σ_m_d", _M_P / _W_B / 1e3, "MPa", "under the load: P a b/L + M_B a/L, and g"),
     Worked("D-04", "τ_d", 1.5 * _V_P / (0.67 * 0.195 * 0.05) / 1e3, "MPa", "P a/L - M_B/L, and 5/8 g L"),
     Worked("D-04", "σ_c90_d", _R_P / (0.195 * 0.135) / 1e3, "MPa", "P a/L - 2 M_B/L, and 5/4 g L"),
+    Worked("D-04", "R_up", -Q * _M_B / 0.8 - _g4 * 3 / 8 * 0.8, "kN", "M_B/L less 3/8 g L, g at 1.0"),
     Worked("D-04", "w_fin", (3 * _w_G + 2.2 * _w_Q) * 1e3, "mm", "1 + k_def, and 1 + ψ_2 k_def"),
 )
 

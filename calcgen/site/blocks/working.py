@@ -55,4 +55,4 @@ def limit_equation(result: CheckResult) -> equations.Equation:
     sides = equations.compared(
         result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied
     )
-    return equations.Equation(Markup(math(f"<mtext>largest |σ|</mtext><mo>:</mo>{sides}")), ())  # noqa: S704
+    return equations.Equation(Markup(""), (Markup(math(f"<mtext>largest |σ|:&#xA0;</mtext>{sides}")),))  # noqa: S704
