@@ -2,11 +2,23 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable
+from collections import Counter
+from collections.abc import Iterable, Mapping, Sequence
 
 from calcgen.quantities.display import Style, number_text
+from calcgen.quantities.symbols import plain
 from calcgen.site.facts import ChangeView, HistoryView, PreviousValue
-from calcgen.trail import Change, Changes, Entry, Item, Previous, Trail, history, previous_values
+from calcgen.trail import (
+    Change,
+    Changes,
+    Entry,
+    HistoryEntry,
+    Item,
+    Previous,
+    Trail,
+    history,
+    previous_values,
+)
 
 _WORDS = {"added": "added", "removed": "removed", "edited": "edited", "moved": "follows"}
 
@@ -17,12 +29,12 @@ def previous_views(trail: Trail, changes: Changes, style: Style) -> dict[str, Pr
     Items of an entry that only added things have no previous value.
     """
     found = previous_values(trail, changes)
-    return {address: _previous(p, style) for address, p in found.items()}
+    texts = {change.address: _change(change, style).before for change in changes}
+    return {address: PreviousValue(texts[address], _when(p)) for address, p in found.items()}
 
 
-def _previous(p: Previous, style: Style) -> PreviousValue:
-    when = f"at {p.issue.more['revision']}" if p.issue is not None else f"on {p.entry.when[:10]}"
-    return PreviousValue(item_text(p.item, style), when)
+def _when(p: Previous) -> str:
+    return f"at {p.issue.more['revision']}" if p.issue is not None else f"on {p.entry.when[:10]}"
 
 
 def history_views(trail: Trail, style: Style) -> tuple[HistoryView, ...]:
@@ -32,15 +44,26 @@ def history_views(trail: Trail, style: Style) -> tuple[HistoryView, ...]:
             when=h.entry.when,
             who=h.entry.who,
             why=h.entry.why or "",
-            changes=tuple(_change(c, style) for c in _edits_first(h.changes)),
+            changes=tuple(_first_record(h) if not h.entry.parents else _changes(h.changes, style)),
             heading=_heading(h.number, h.entry),
         )
         for h in history(trail)
     )
 
 
-def _edits_first(changes: Changes) -> Iterable[Change]:
-    return (*changes.by_hand, *changes.downstream)
+def _changes(changes: Changes, style: Style) -> Iterable[ChangeView]:
+    """Yield what was edited by hand, then the checks that moved, then all else that follows."""
+    rank = {"check": 0}
+    downstream = sorted(changes.downstream, key=lambda c: rank.get(c.kind, 1))
+    return (_change(c, style) for c in (*changes.by_hand, *downstream))
+
+
+def _first_record(entry: HistoryEntry) -> Iterable[ChangeView]:
+    """Yield one line for each calc of the entry that starts a trail: everything in it is new."""
+    for calc in entry.changes.calcs:
+        kinds = Counter(c.kind for c in entry.changes if c.calc == calc)
+        counted = ", ".join(f"{n} {kind}{'s' if n > 1 else ''}" for kind, n in sorted(kinds.items()))
+        yield ChangeView(calc, "first recorded", "", counted.replace("stresss", "stresses"))
 
 
 def _heading(number: int, entry: Entry) -> str:
@@ -50,12 +73,44 @@ def _heading(number: int, entry: Entry) -> str:
 
 
 def _change(change: Change, style: Style) -> ChangeView:
-    return ChangeView(
-        address=change.address,
-        what=f"{change.kind} {_WORDS[change.how]}",
-        before=item_text(change.before, style) if change.before is not None else "",
-        after=item_text(change.after, style) if change.after is not None else "",
-    )
+    before, after = change.before, change.after
+    if before is not None and after is not None and "results" in after:
+        was, now = _block_texts(before, after, style)
+    else:
+        was = item_text(before, style) if before is not None else ""
+        now = item_text(after, style) if after is not None else ""
+    return ChangeView(change.address, f"{change.kind} {_WORDS[change.how]}", was, now)
+
+
+def _block_texts(before: Item, after: Item, style: Style) -> tuple[str, str]:
+    """Return how a section, beam or stress differs: its lines where they were edited, else its results."""
+    old, new = _lines(before), _lines(after)
+    if old != new:
+        removed = [line for line in old if line not in new]
+        added = [line for line in new if line not in old]
+        return _few(removed), _few(added)
+    was, now = _results(before, style), _results(after, style)
+    names = [name for name in now if now[name] != was.get(name)]
+    names.sort(key=lambda name: name.startswith("x_") or ".x_" in name)
+    return _few([f"{n} = {was.get(n, '—')}" for n in names]), _few([f"{n} = {now[n]}" for n in names])
+
+
+def _lines(item: Item) -> list[str]:
+    return [" ".join(line.split()) for line in str(item.get("text", "")).splitlines()]
+
+
+def _results(item: Item, style: Style) -> dict[str, str]:
+    results = item.get("results")
+    found: dict[str, str] = {}
+    for name, pair in results.items() if isinstance(results, Mapping) else ():
+        if isinstance(pair, Sequence) and len(pair) == 2:
+            found[plain(name)] = item_text({"value": pair[0], "unit": pair[1]}, style)
+    return found
+
+
+def _few(texts: list[str], most: int = 3) -> str:
+    more = f"; and {len(texts) - most} more" if len(texts) > most else ""
+    return "; ".join(texts[:most]) + more
 
 
 def item_text(item: Item, style: Style) -> str:

@@ -298,7 +298,7 @@ class BeamResult:
     """A beam with its model, loads, and results by group; numbers in SI.
 
     `spans` are the stretches of the `span` line, from and to; `support_kinds` has the word of each support of
-    the model; `lines` each line as typed, with its columns.
+    the model, `support_notes` how it settles; `lines` each line as typed, with its columns.
     """
 
     name: str
@@ -306,6 +306,7 @@ class BeamResult:
     model: BeamModel
     spans: tuple[tuple[float, float], ...]
     support_kinds: tuple[str, ...]
+    support_notes: tuple[str, ...]
     case_kinds: Mapping[str, str]
     loads: tuple[LoadRow, ...]
     groups: tuple[GroupResult, ...]

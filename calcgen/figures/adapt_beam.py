@@ -16,7 +16,7 @@ from calcgen.quantities.display import Style, number_text, show
 from calcgen.quantities.measure import from_si, magnitude_in
 from calcgen.quantities.symbols import plain
 
-_POINTS = 12  # a curve of the fifth degree at most, between two loads
+_POINTS = 40  # an element may be the whole beam; points on straight stretches are thinned when drawn
 
 _TITLES: dict[str, tuple[str, str, bool]] = {
     "V": ("shear force V", "N", False),
@@ -95,7 +95,7 @@ def _active(group: GroupResult) -> bool:
 
 def _supports(beam: BeamResult, suffix: str, style: Style) -> tuple[Support, ...]:
     supports = []
-    for support, word in zip(beam.model.supports, beam.support_kinds, strict=True):
+    for support, word, note in zip(beam.model.supports, beam.support_kinds, beam.support_notes, strict=True):
         held = support.lateral if suffix else support.w
         turning = support.lateral_rotation if suffix else support.rotation
         if not held and not turning:
@@ -104,7 +104,7 @@ def _supports(beam: BeamResult, suffix: str, style: Style) -> tuple[Support, ...
         if word in ("roller", "fixed", "spring"):
             kind = word  # type: ignore[assignment]
         supports.append(
-            Support(support.x * _per_metre(style), kind, turning=word == "spring" and turning > 0)
+            Support(support.x * _per_metre(style), kind, note, turning=word == "spring" and turning > 0)
         )
     return tuple(supports)
 

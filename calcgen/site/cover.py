@@ -58,6 +58,7 @@ class CoverView:
 
 def cover_view(package: PackageInput) -> CoverView:
     """Return the cover of a package."""
+    by_path = {calc.calc.source.path: calc.number for calc in package.calcs}
     kinds = (
         Matters("in error", tuple(_errors(package))),
         Matters("not evaluated", tuple(_unevaluated(package))),
@@ -75,7 +76,8 @@ def cover_view(package: PackageInput) -> CoverView:
         facts=_facts(package),
         calcs=tuple(_entry(calc) for calc in package.calcs),
         diagnostics=tuple(
-            diagnostic_view(d, f"diagnostic-{n}", "") for n, d in enumerate(package.diagnostics, start=1)
+            diagnostic_view(d, f"diagnostic-{n}", by_path.get(d.source.path, ""))
+            for n, d in enumerate(package.diagnostics, start=1)
         ),
         matters=tuple(k for k in kinds if k.items),
         nothing=", ".join(k.heading for k in kinds if not k.items),
@@ -179,23 +181,25 @@ def _inputs(package: PackageInput) -> Iterator[Matter]:
 
 
 def _changes(package: PackageInput) -> Iterator[Matter]:
-    """Yield the changes of the newest entry: those pending where there are any."""
-    for change in package.history[0].changes if package.history else ():
-        yield Matter(change_link(change, package), change_text(change))
+    """Yield the pending changes where there are any, else those of the newest entry."""
+    if package.pending:
+        for address, previous in package.previous.items():
+            yield Matter(change_link(address, package), previous.was)
+    elif package.history:
+        for change in package.history[0].changes:
+            yield Matter(change_link(change.address, package), change_text(change))
 
 
-def change_link(change: ChangeView, package: PackageInput) -> Link:
-    """Return the link to the item of a change, or to the trail where it is on no page any more."""
-    number, _, anchor = change.address.partition("#")
+def change_link(address: str, package: PackageInput) -> Link:
+    """Return the link to an item of the trail, or to the trail where it is on no page any more."""
+    number, _, anchor = address.partition("#")
     if number == "references" and anchor in package.references:
         return Link(anchor, addresses.link(addresses.REFERENCES, anchor))
     calc = next((c for c in package.calcs if c.number == number), None)
     if calc is None:
-        return Link(change.address, addresses.link(addresses.TRAIL))
+        return Link(address, addresses.link(addresses.TRAIL))
     known = addresses.anchors_of(calc) | {a for a, _ in addresses.assumptions_of(calc) if calc.segments}
-    return Link(
-        change.address, addresses.link(addresses.calc_page(number), anchor if anchor in known else "")
-    )
+    return Link(address, addresses.link(addresses.calc_page(number), anchor if anchor in known else ""))
 
 
 def change_text(change: ChangeView) -> str:

@@ -2,7 +2,8 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+import math
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 from typing import TypeAlias
 
@@ -11,7 +12,9 @@ from markupsafe import Markup
 from calcgen.evaluation.results import CheckRow, DerivedRow, Operand
 from calcgen.language.nodes import Cases, Expression, Formula, Name, Number, Text, Truth
 from calcgen.quantities.display import Shown
-from calcgen.site.mathml import PutIn, formula, math, quantity, relation, symbol, terms
+from calcgen.site import mathml
+from calcgen.site.extent import extent
+from calcgen.site.mathml import PutIn, formula, quantity, relation, symbol, terms
 from calcgen.text import SourceFile
 
 _OPPOSITE = {"<": ">=", "<=": ">", ">": "<=", ">=": "<"}
@@ -19,6 +22,8 @@ _Step: TypeAlias = tuple[str, ...]
 
 _EQUALS = '<mo form="infix">=</mo>'
 _NOTHING = Markup("")
+_NARROW = 33  # characters in the column of a printed sheet
+_WIDE = 66  # characters in the column of a wide screen
 
 
 @dataclass(frozen=True)
@@ -30,11 +35,18 @@ class Equation:
     left : what stands before the first sign and keeps its place when the parts break; empty for a check.
     parts : as many stand on a line as fit.
     aside : a remark below, such as which case was taken; empty where there is none.
+    length : of the longest part, in characters.
     """
 
     left: Markup
     parts: tuple[Markup, ...]
     aside: Markup = _NOTHING
+    length: int = 0
+
+    @property
+    def room(self) -> str:
+        """What it needs on a sheet: '' within the column of a printed page, 'broad' more, 'broadest' all."""
+        return "" if self.length <= _NARROW else "broad" if self.length <= _WIDE else "broadest"
 
 
 def derived(row: DerivedRow, source: SourceFile) -> Equation:
@@ -55,11 +67,8 @@ def derived(row: DerivedRow, source: SourceFile) -> Equation:
     if not isinstance(taken, Number | Text | Truth):
         steps.append(terms(taken, put_in))
     steps.append((quantity(row.shown),))
-    return Equation(
-        _element(symbol(row.name)),
-        tuple(_element(part) for step in _without_repeats(steps) for part in _led(step, _EQUALS)),
-        _element(aside) if aside else _NOTHING,
-    )
+    parts = [part for step in _without_repeats(steps) for part in _led(step, _EQUALS)]
+    return _equation(_element(symbol(row.name)), parts, _element(aside) if aside else _NOTHING)
 
 
 def stated(name: str, shown: Shown) -> Equation:
@@ -75,7 +84,12 @@ def check(row: CheckRow, source: SourceFile) -> Equation:
         steps.append((formula(node, put_in_from(row.operands, source)),))
     sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
     steps.append((sides,))
-    return Equation(_NOTHING, tuple(_element("".join(step)) for step in _without_repeats(steps)))
+    return _equation(_NOTHING, ["".join(step) for step in _without_repeats(steps)])
+
+
+def _equation(left: Markup, parts: Sequence[str], aside: Markup = _NOTHING) -> Equation:
+    length = math.ceil(max(map(extent, parts)))
+    return Equation(left, tuple(_element(part) for part in parts), aside, length)
 
 
 def compared(left: Shown, operator: str, right: Shown, *, satisfied: bool) -> str:
@@ -109,4 +123,4 @@ def _without_repeats(steps: list[_Step]) -> list[_Step]:
 
 
 def _element(content: str) -> Markup:
-    return Markup(math(content, display=True))  # noqa: S704 - mathml escapes what was typed
+    return Markup(mathml.math(content, display=True))  # noqa: S704 - mathml escapes what was typed

@@ -314,14 +314,15 @@ class _Setter:
                 return Piece(applied, Level.QUANTITY, "word", "fence")
 
     def _logic(self, node: Logic) -> Piece:
-        pieces = [self.set(o) for o in node.operands]
-        inner = [
-            _fenced(p).mathml if isinstance(o, Logic) else p.mathml
-            for o, p in zip(node.operands, pieces, strict=True)
-        ]
         if node.operator == "not":
-            return Piece(f"<mtext>not&#xA0;</mtext>{_fenced(pieces[0]).mathml}", Level.SUM)
-        return Piece(f"<mtext>&#xA0;{node.operator}&#xA0;</mtext>".join(inner), Level.SUM)
+            inside = _fenced(self.set(node.operands[0])).mathml
+            return Piece(f"<mtext>not&#xA0;</mtext>{inside}", Level.SUM)
+        pieces = (self.set(operand) for operand in node.operands)
+        joined = [
+            _fenced(piece).mathml if isinstance(o, Logic) and o.operator != "not" else piece.mathml
+            for o, piece in zip(node.operands, pieces, strict=True)
+        ]
+        return Piece(f"<mtext>&#xA0;{node.operator}&#xA0;</mtext>".join(joined), Level.SUM)
 
     def _cases(self, node: Cases) -> Piece:
         rows = []

@@ -50,7 +50,10 @@ def trail_view(package: PackageInput) -> TrailView:
                 entry.when,
                 entry.who,
                 entry.why,
-                tuple(ChangeRow(change_link(c, package), c.what, c.before, c.after) for c in entry.changes),
+                tuple(
+                    ChangeRow(change_link(c.address, package), c.what, c.before, c.after)
+                    for c in entry.changes
+                ),
             )
             for index, entry in enumerate(package.history)
         ),

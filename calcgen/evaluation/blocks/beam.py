@@ -293,6 +293,7 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         model=data.model,
         spans=_ends(data.spans),
         support_kinds=data.support_kinds,
+        support_notes=data.support_notes,
         case_kinds={case: data.case_kinds.get(case, "") for case in data.cases},
         loads=data.rows,
         groups=tuple(groups),

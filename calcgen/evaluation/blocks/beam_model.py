@@ -43,6 +43,7 @@ class BeamData:
     sections: tuple[SectionThing, ...]
     E: Measure | None
     support_kinds: tuple[str, ...]
+    support_notes: tuple[str, ...]
     restrained: BeamSetting | None
     is_restrained: bool
     spans: tuple[float, ...]
@@ -85,6 +86,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         sections=tuple(p.section for p in properties if p.section is not None),
         E=E,
         support_kinds=supports.kinds,
+        support_notes=supports.notes,
         restrained=settings.get("restrained"),
         is_restrained=is_restrained,
         spans=spans,

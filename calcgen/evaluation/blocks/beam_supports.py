@@ -19,15 +19,20 @@ from calcgen.mechanics.beam import (
     Settlement,
     Support,
 )
+from calcgen.quantities.symbols import plain
 from calcgen.text import Related
 
 
 @dataclass(frozen=True)
 class Supports:
-    """The supports from left to right, the word of each, and the settlements with their cases."""
+    """The supports from left to right, the word of each, and the settlements with their cases.
+
+    `notes` say of each how it settles: 'settles 8 mm in S'; '' where it does not.
+    """
 
     all: tuple[Support, ...]
     kinds: tuple[str, ...]
+    notes: tuple[str, ...]
     settling: tuple[tuple[str, Settlement], ...]
 
 
@@ -37,7 +42,7 @@ def supports_of(lines: Lines, spans: tuple[float, ...]) -> Supports:
     if not typed:
         ends = [math.fsum(spans[:i]) for i in range(len(spans) + 1)]
         kinds = ("pin", *["roller"] * len(spans))
-        return Supports(tuple(Support(x) for x in ends), kinds, ())
+        return Supports(tuple(Support(x) for x in ends), kinds, ("",) * len(ends), ())
     placed: list[tuple[float, SupportLine]] = sorted(
         ((lines.place(line.at), line) for line in typed), key=lambda item: item[0]
     )
@@ -51,13 +56,16 @@ def supports_of(lines: Lines, spans: tuple[float, ...]) -> Supports:
             )
     supports = tuple(_support(lines, x, line) for x, line in placed)
     settling: list[tuple[str, Settlement]] = []
+    notes = [""] * len(placed)
     for index, (_, line) in enumerate(placed):
         if line.settles is not None:
             value = lines.number(line.settles, "length")
             case = line.settles_case.name if line.settles_case is not None else ""
             plane: Plane = "lateral" if line.plane == "lateral" else "vertical"
             settling.append((case, Settlement(index, value, plane)))
-    return Supports(supports, tuple(line.kind for _, line in placed), tuple(settling))
+            unit = lines.unit_of(line.settles)
+            notes[index] = f"settles {lines.text(value, unit)}{f' in {plain(case)}' if case else ''}"
+    return Supports(supports, tuple(line.kind for _, line in placed), tuple(notes), tuple(settling))
 
 
 def _support(lines: Lines, x: float, line: SupportLine) -> Support:

@@ -82,9 +82,22 @@ def _length(value: float, style: Style) -> str:
     return show(from_si(value, "m").shown_in("in" if style.system == "US" else "mm"), style).text
 
 
+def _without_noise(extreme: Extreme) -> Extreme:
+    """Return an extreme whose coordinates are zero where they differ from it by rounding alone."""
+    size = max(abs(c) for point in extreme.ends for c in point)
+
+    def clean(value: float) -> float:
+        return 0.0 if abs(value) < 1e-12 * size else value
+
+    (x_1, y_1), (x_2, y_2) = extreme.ends
+    ends = ((clean(x_1), clean(y_1)), (clean(x_2), clean(y_2)))
+    return Extreme(extreme.value, clean(extreme.x), clean(extreme.y), ends)
+
+
 def _place(extreme: Extreme, plane: StressPlane, style: Style) -> str:
     if plane.uniform:
         return "everywhere"
+    extreme = _without_noise(extreme)
     (x_1, y_1), (x_2, y_2) = extreme.ends
     if (x_1, y_1) != (x_2, y_2) and y_1 == y_2:
         return "at the top" if extreme.y > plane.y_bar else "at the bottom"
