@@ -15,9 +15,16 @@ _READ = ("project.toml", "references.toml", "trail.jsonl", "calcs/*.md", "profil
 def key_of(root: Path, images: Iterable[str], *, records: bool) -> str:
     """Return the key of a build: a digest of every file it reads, of the program, and of what is asked."""
     paths = {p.relative_to(root).as_posix() for pattern in _READ for p in root.glob(pattern) if p.is_file()}
-    found = {path: root / path for path in sorted(paths | set(images))}
-    inputs = {path: file.read_bytes() if file.is_file() else b"" for path, file in found.items()}
+    inputs = {path: _bytes(root / path) for path in sorted(paths | set(images))}
     return build_key(inputs, {"records": str(records), "program": _program()})
+
+
+def _bytes(path: Path) -> bytes:
+    """Return a file's contents; nothing for one that is not there or cannot be read, which is said elsewhere."""
+    try:
+        return path.read_bytes()
+    except OSError:
+        return b""
 
 
 def _program() -> str:

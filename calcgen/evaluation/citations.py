@@ -2,12 +2,15 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Iterator
 from dataclasses import fields, is_dataclass
 
 from calcgen.language.calc import Calc, Prose
 from calcgen.language.nodes import Citation, Column
 from calcgen.text import Report, nearest
+
+_CITED = re.compile(r"\[([^\s\[\]|]+)[^\[\]]*\]")
 
 
 def citations_of(calc: Calc) -> tuple[Citation, ...]:
@@ -32,6 +35,16 @@ def check_citations(calc: Calc, known: frozenset[str], report: Report) -> None:
                 citation.span,
                 f"'{citation.key}' is not in references.toml",
                 hint=f"the nearest key is '{found}'" if found else "add it there, with its title and edition",
+            )
+
+    for column in (c for s in calc.segments if not isinstance(s, Prose) for c in _columns(s)):
+        found_here = [] if column.citations else _CITED.findall(column.text)
+        if any(key in known for key in found_here):
+            report.warning(
+                "citation-in-note",
+                column.span,
+                "a citation in the second column is not a reference",
+                hint="citations stand in the third column: statement | what it is | [KEY place]",
             )
 
 

@@ -9,7 +9,7 @@ from typing import TypeAlias
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import CheckRow, DerivedRow, Operand
+from calcgen.evaluation.results import CheckResult, CheckRow, DerivedRow, Operand
 from calcgen.language.nodes import Cases, Expression, Formula, Name, Number, Text, Truth
 from calcgen.quantities.display import Shown
 from calcgen.site import mathml
@@ -23,6 +23,7 @@ _Step: TypeAlias = tuple[str, ...]
 _EQUALS = '<mo form="infix">=</mo>'
 _NOTHING = Markup("")
 _NARROW = 33  # characters in the column of a printed sheet
+_VERDICT = 14  # characters of the verdict and the utilisation beside a check
 _WIDE = 66  # characters in the column of a wide screen
 
 
@@ -84,11 +85,18 @@ def check(row: CheckRow, source: SourceFile) -> Equation:
         steps.append((formula(node, put_in_from(row.operands, source)),))
     sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
     steps.append((sides,))
-    return _equation(_NOTHING, ["".join(step) for step in _without_repeats(steps)])
+    return _equation(_NOTHING, ["".join(step) for step in _without_repeats(steps)], beside=_VERDICT)
 
 
-def _equation(left: Markup, parts: Sequence[str], aside: Markup = _NOTHING) -> Equation:
-    length = math.ceil(max(map(extent, parts)))
+def limit(result: CheckResult) -> Equation:
+    """Return the check that a stress makes by its limit: the largest stress against it."""
+    sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
+    return _equation(_NOTHING, [f"<mtext>largest |σ|:&#xA0;</mtext>{sides}"], beside=_VERDICT)
+
+
+def _equation(left: Markup, parts: Sequence[str], aside: Markup = _NOTHING, *, beside: int = 0) -> Equation:
+    """Return an equation that shares its line with `beside` other characters."""
+    length = math.ceil(max(map(extent, parts))) + beside
     return Equation(left, tuple(_element(part) for part in parts), aside, length)
 
 

@@ -9,12 +9,13 @@ _SPACED = frozenset("=+−·×≤≥<>≠")
 
 
 def extent(mathml: str) -> float:
-    """Return the length of MathML content in average characters, to about a tenth."""
-    return _of(ET.fromstring(f"<math>{mathml}</math>"))  # noqa: S314 - our own text
+    """Return the length of MathML content, set in display style, in average characters, to about a tenth."""
+    return _of(ET.fromstring(f"<math>{mathml}</math>"), display=True)  # noqa: S314 - our own text
 
 
-def _of(element: ET.Element) -> float:
-    children = [_of(child) for child in element]
+def _of(element: ET.Element, *, display: bool) -> float:
+    inner = display and element.tag not in ("mfrac", "mtable")
+    children = [_of(child, display=inner) for child in element]
     match element.tag:
         case "mo":
             text = element.text or ""
@@ -24,14 +25,15 @@ def _of(element: ET.Element) -> float:
         case "mspace":
             return 0.3
         case "mfrac":
-            return max(children) + 0.4
+            return (1.0 if display else _SCRIPT) * max(children) + 0.4
         case "msup" | "msub":
             return children[0] + _SCRIPT * children[1]
         case "msubsup":
             return children[0] + _SCRIPT * max(children[1:])
         case "mtable":
-            return sum(max(column) for column in zip(*(map(_of, row) for row in element), strict=True)) + 2.0
+            cells = ([_of(cell, display=False) for cell in row] for row in element)
+            return 2.0 + sum(max(column) for column in zip(*cells, strict=True))
         case "msqrt" | "mroot":
-            return sum(children) + 1.5
+            return 1.5 + sum(children)
         case _:
-            return sum(children)
+            return 0.0 + sum(children)

@@ -17,6 +17,7 @@ CODES: dict[str, str] = {
     "case-without-condition": "a case does not say when it holds",
     "cases-differ": "the cases of a value have different dimensions",
     "catalogue": "a row of the office's catalogue is wrong",
+    "citation-in-note": "a citation stands in the second column",
     "comparison-chain": "a comparison has more than two sides",
     "continues-nothing": "an indented line has no line above to continue",
     "cycle": "calcs feed each other in a loop",

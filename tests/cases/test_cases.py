@@ -22,8 +22,8 @@ Axes = Literal["eurocode", "american"]
 
 _FOLDER = Path(__file__).parent
 _CASE = re.compile(
-    r"^## ([^\n]+)\n(?:(?!## |````).*\n)*?````calc (eurocode|american)\n(.*?)^````\n+((?:^\|.*\n)+)",
-    re.MULTILINE | re.DOTALL,
+    r"^## .+\n(?:(?!## |````).*\n)*````calc (eurocode|american)\n((?:(?!````).*\n)*)````\n\n((?:\|.*\n)+)",
+    re.MULTILINE,
 )
 _HEAD = ["name", "value", "unit", "rel. tolerance", "source"]
 _DIGITS = 12  # significant digits down to which a value on the border of its tolerance is judged
@@ -53,7 +53,7 @@ def cases(path: Path) -> list[Case]:
     """Return the cases of a suite."""
     text = path.read_text(encoding="utf-8")
     found = [
-        Case(f"{path.name}:{text.count(chr(10), 0, m.start()) + 1}", cast("Axes", m[2]), m[3], _rows(m[4]))
+        Case(f"{path.name}:{text.count(chr(10), 0, m.start()) + 1}", cast("Axes", m[1]), m[2], _rows(m[3]))
         for m in _CASE.finditer(text)
     ]
     headings = len(re.findall(r"^## ", re.sub(r"^````.*?^````$", "", text, flags=re.M | re.S), re.M))

@@ -7,9 +7,9 @@ from dataclasses import dataclass
 from markupsafe import Markup
 
 from calcgen.evaluation.results import Premise, StressResult
-from calcgen.site.blocks.working import check_view, limit_equation
+from calcgen.site.blocks.working import check_view
 from calcgen.site.context import Context
-from calcgen.site.equations import Equation, stated
+from calcgen.site.equations import Equation, limit, stated
 from calcgen.site.figure import FigureSvg
 from calcgen.site.views import (
     CheckRowView,
@@ -47,7 +47,7 @@ def stress_view(result: StressResult, context: Context) -> StressView:
         forces=tuple(stated(name, shown) for name, shown in result.forces_shown.items()),
         figures=context.figures(result.name),
         results=tuple(result_row(r, f"{result.name}.{r.name}", result.line) for r in result.results),
-        check=None if check is None else check_view(check, limit_equation(check), context),
+        check=None if check is None else check_view(check, limit(check), context),
         premises=result.premises,
         second_route=tuple(route_row(r) for r in result.second_route),
     )

@@ -4,12 +4,11 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from markupsafe import Markup, escape
+from markupsafe import escape
 
 from calcgen.evaluation.results import CheckResult, CheckRow, DerivedRow, FailedRow, WorkingResult
 from calcgen.site import equations
 from calcgen.site.context import Context
-from calcgen.site.mathml import math
 from calcgen.site.views import CheckRowView, RowView, TextRow, ValueRow, utilisation_text
 
 
@@ -48,11 +47,3 @@ def check_view(result: CheckResult, equation: equations.Equation, context: Conte
     )
     word = "satisfied" if result.satisfied else "exceeded"
     return CheckRowView(view, word, equation, utilisation_text(result.utilisation))
-
-
-def limit_equation(result: CheckResult) -> equations.Equation:
-    """Return the sides of a check that a block makes by its `limit`."""
-    sides = equations.compared(
-        result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied
-    )
-    return equations.Equation(Markup(""), (Markup(math(f"<mtext>largest |σ|:&#xA0;</mtext>{sides}")),))  # noqa: S704
