@@ -20,7 +20,7 @@ def key_of(root: Path, images: Iterable[str], *, records: bool) -> str:
 
 
 def _bytes(path: Path) -> bytes:
-    """Return a file's contents; nothing for one that is not there or cannot be read, which is said elsewhere."""
+    """Return what is in a file; nothing where it is missing or cannot be read, which is said elsewhere."""
     try:
         return path.read_bytes()
     except OSError:

@@ -33,14 +33,14 @@ class Equation:
 
     Attributes
     ----------
-    left : what stands before the first sign and keeps its place when the parts break; empty for a check.
-    parts : as many stand on a line as fit.
+    left : what stands before the first sign and keeps its place when the steps break; empty for a check.
+    steps : as many stand on a line as fit; a step too long for a line breaks between its terms.
     aside : a remark below, such as which case was taken; empty where there is none.
-    length : of the longest part, in characters.
+    length : of the longest term, in characters.
     """
 
     left: Markup
-    parts: tuple[Markup, ...]
+    steps: tuple[tuple[Markup, ...], ...]
     aside: Markup = _NOTHING
     length: int = 0
 
@@ -68,13 +68,13 @@ def derived(row: DerivedRow, source: SourceFile) -> Equation:
     if not isinstance(taken, Number | Text | Truth):
         steps.append(terms(taken, put_in))
     steps.append((quantity(row.shown),))
-    parts = [part for step in _without_repeats(steps) for part in _led(step, _EQUALS)]
-    return _equation(_element(symbol(row.name)), parts, _element(aside) if aside else _NOTHING)
+    led = [(_EQUALS + step[0], *step[1:]) for step in _without_repeats(steps)]
+    return _equation(_element(symbol(row.name)), led, _element(aside) if aside else _NOTHING)
 
 
 def stated(name: str, shown: Shown) -> Equation:
     """Return a value that is given: symbol = value."""
-    return Equation(_element(symbol(name)), (_element(_EQUALS + quantity(shown)),))
+    return _equation(_element(symbol(name)), [(_EQUALS + quantity(shown),)])
 
 
 def check(row: CheckRow, source: SourceFile) -> Equation:
@@ -85,19 +85,25 @@ def check(row: CheckRow, source: SourceFile) -> Equation:
         steps.append((formula(node, put_in_from(row.operands, source)),))
     sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
     steps.append((sides,))
-    return _equation(_NOTHING, ["".join(step) for step in _without_repeats(steps)], beside=_VERDICT)
+    return _equation(_NOTHING, _without_repeats(steps), beside=_VERDICT)
 
 
 def limit(result: CheckResult) -> Equation:
     """Return the check that a stress makes by its limit: the largest stress against it."""
     sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
-    return _equation(_NOTHING, [f"<mtext>largest |σ|:&#xA0;</mtext>{sides}"], beside=_VERDICT)
+    return _equation(_NOTHING, [(f"<mtext>largest |σ|:&#xA0;</mtext>{sides}",)], beside=_VERDICT)
 
 
-def _equation(left: Markup, parts: Sequence[str], aside: Markup = _NOTHING, *, beside: int = 0) -> Equation:
+def combination(name: str, terms: Sequence[str]) -> Equation:
+    """Return a combination of load cases; each term but the first has its sign."""
+    first, *others = terms
+    return _equation(_element(symbol(name)), [(_EQUALS + first, *others)])
+
+
+def _equation(left: Markup, steps: Sequence[_Step], aside: Markup = _NOTHING, *, beside: int = 0) -> Equation:
     """Return an equation that shares its line with `beside` other characters."""
-    length = math.ceil(max(map(extent, parts))) + beside
-    return Equation(left, tuple(_element(part) for part in parts), aside, length)
+    length = math.ceil(max(extent(term) for step in steps for term in step)) + beside
+    return Equation(left, tuple(tuple(map(_element, step)) for step in steps), aside, length)
 
 
 def compared(left: Shown, operator: str, right: Shown, *, satisfied: bool) -> str:
@@ -115,11 +121,6 @@ def put_in_from(operands: Mapping[str, Operand], source: SourceFile) -> PutIn:
         return operand.shown if operand is not None else None
 
     return put_in
-
-
-def _led(step: _Step, sign: str) -> _Step:
-    """Return a step with its sign before it."""
-    return (sign + step[0], *step[1:])
 
 
 def _plain(node: Expression) -> bool:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from xml.etree import ElementTree as ET
 
 _SCRIPT = 0.7  # size of a sub- or superscript, and of a fraction within a fraction, against its base
@@ -32,8 +33,9 @@ def _of(element: ET.Element, *, display: bool) -> float:
             return children[0] + _SCRIPT * max(children[1:])
         case "mtable":
             cells = ([_of(cell, display=False) for cell in row] for row in element)
-            return 2.0 + sum(max(column) for column in zip(*cells, strict=True))
+            columns: Iterable[tuple[float, ...]] = zip(*cells, strict=True)
+            return 2.0 + sum(max(column) for column in columns)
         case "msqrt" | "mroot":
             return 1.5 + sum(children)
         case _:
-            return 0.0 + sum(children)
+            return sum(children)

@@ -8,13 +8,12 @@ from markupsafe import Markup
 
 from calcgen.evaluation.results import BeamResult, CombinationResult, GroupResult, Premise
 from calcgen.language.nodes import Column
-from calcgen.quantities.display import number_text
 from calcgen.quantities.symbols import canonical, plain
 from calcgen.site.addresses import result_anchor
 from calcgen.site.context import Context
-from calcgen.site.equations import Equation, stated
+from calcgen.site.equations import Equation, combination, stated
 from calcgen.site.figure import FigureSvg
-from calcgen.site.mathml import math, symbol
+from calcgen.site.mathml import symbol
 from calcgen.site.views import RouteRow, RowView, ValueRow, result_row, route_row
 
 
@@ -79,9 +78,9 @@ def _line(
             sideways = "lateral " if load.plane == "lateral" else ""
             kind = load.kind.replace("_", " ")
             return BeamLineView(row, f"load {plain(load.case)}", f"{sideways}{kind} {load.text}")
-    for combination in _combinations(beam):
-        if word == "combination" and canonical(rest.split(maxsplit=1)[0]) == combination.name:
-            return BeamLineView(row, "combination", "", _factors(combination))
+    for solved in _combinations(beam):
+        if word == "combination" and canonical(rest.split(maxsplit=1)[0]) == solved.name:
+            return BeamLineView(row, "combination", "", _factors(solved))
     return BeamLineView(row, word, rest)
 
 
@@ -89,15 +88,15 @@ def _combinations(beam: BeamResult) -> tuple[CombinationResult, ...]:
     return tuple(c for group in beam.groups for c in group.combinations if c.name)
 
 
-def _factors(combination: CombinationResult) -> Equation:
+def _factors(solved: CombinationResult) -> Equation:
     """Return a combination as the sum of its cases with their factors."""
     terms: list[str] = []
-    for case, factor in combination.factors.items():
-        size = number_text(abs(factor), 12).rstrip("0").rstrip(".")
-        sign = "<mo>−</mo>" if factor < 0 else "<mo>+</mo>" if terms else ""
+    for case, factor in solved.factors.items():
+        size = f"{abs(factor):.12g}"
+        sign = '<mo form="infix">−</mo>' if factor < 0 else '<mo form="infix">+</mo>' if terms else ""
         times = "" if size == "1" else f'<mn>{size}</mn><mspace width="0.17em"/>'
         terms.append(f"{sign}{times}{symbol(case)}")
-    return Equation(Markup(math(symbol(combination.name))), (Markup(math(f"<mo>=</mo>{''.join(terms)}")),))  # noqa: S704
+    return combination(solved.name, terms)
 
 
 def _group(beam: BeamResult, group: GroupResult) -> GroupView:
