@@ -231,8 +231,8 @@ class SectionResult:
     published : what a catalogue gives, beside the outline's own.
     computed : properties of the outline.
     values : the values in force in SI, published ones first, by keys neutral of convention (`I_h`).
-    dimensions : the shape's dimensions in SI.
     results : the properties under the names of the project's axes.
+    further : the shape's dimensions by their symbols.
     """
 
     name: str
@@ -243,8 +243,8 @@ class SectionResult:
     marks: tuple[DimensionMark, ...]
     computed: SectionProperties
     values: Mapping[str, float]
-    dimensions: Mapping[str, float]
     results: tuple[Result, ...]
+    further: tuple[Result, ...]
     published: tuple[Published, ...]
     second_route: tuple[SecondRoute, ...]
     note: Column

@@ -65,7 +65,7 @@ def _calc(calc: EvaluatedCalc) -> Json:
             case WorkingResult(rows=lines):
                 values |= {row.name: _derived(row) for row in lines if isinstance(row, DerivedRow)}
             case SectionResult():
-                sections[segment.name] = _results(segment.results)
+                sections[segment.name] = _results((*segment.results, *segment.further))
             case BeamResult():
                 beams[segment.name] = _beam(segment)
             case StressResult():

@@ -1,9 +1,9 @@
 """Calcs with published answers, evaluated whole: see the suites `*.md` in this folder.
 
-A heading names a case; the fence of four marks, `calc` and the convention of axes, holds the calc; each row of the
-table below it is an expected value `name | value | unit | rel. tolerance | source`. A name is an expression of
-the language over the calc, a plain number has the unit `-`. Tolerances cover the rounding of the source, 'from
-memory' says that it was not at hand when its number was written down.
+A heading names a case; the fence of four marks, `calc` and the convention of axes, holds the calc; each row of
+the table below it is an expected value `name | value | unit | rel. tolerance | source`. A name is an expression
+of the language over the calc; a plain number has the unit `-`. Tolerances cover the rounding of the source;
+'from memory' says that the source was not at hand when its number was written down.
 """
 
 from __future__ import annotations

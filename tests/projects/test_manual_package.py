@@ -8,7 +8,8 @@ from pathlib import Path
 
 import pytest
 
-from calcgen.pipeline import Outcome, Request, Workshop, build
+from calcgen.outcome import Outcome, Request
+from calcgen.pipeline import Workshop, build
 from calcgen.quantities.measure import Measure, magnitude_in
 from tests.projects.evaluating import evaluated_manual
 from tests.projects.manual import MANUAL, Message, chapters, messages

@@ -35,16 +35,10 @@ class SectionThing:
     def read(self, name: Name, arguments: tuple[Plain, ...] | None, report: Report) -> Measure | None:
         """Return a property; report an unknown one, and one of the other convention with the name to use."""
         wanted, span = name.parts[1], name.spans[1]
-        found = next((r for r in self.result.results if r.name == wanted), None)
+        known = (*self.result.results, *self.result.further)
+        found = next((r for r in known if r.name == wanted), None)
         if found is not None and arguments is None and len(name.parts) == 2:
             return found.value
-        if (
-            len(name.parts) == 2
-            and arguments is None
-            and wanted in DIMENSIONS
-            and wanted in self.result.dimensions
-        ):
-            return from_si(self.result.dimensions[wanted], "mm").shown_in(None)
         self._missing(wanted, span, report)
         return None
 
@@ -70,7 +64,7 @@ class SectionThing:
                 hint="it is known for catalogued sections with a published value only",
             )
             return
-        found = nearest(wanted, [*known, *self.result.dimensions])
+        found = nearest(wanted, [*known, *(r.name for r in self.result.further)])
         hint = f"the nearest property is '{found}'" if found else f"properties are {', '.join(known)}"
         report.error("no-such-result", span, f"a section has no property '{plain(wanted)}'", hint=hint)
 
@@ -126,8 +120,10 @@ def _section(
         marks=placed.marks,
         computed=computed,
         values=values,
-        dimensions=_with_synonyms(placed.dimensions, text.shape.name if profile is None else profile.shape),
         results=_results(values, _values(computed), scope.style, axes),
+        further=_dimensions(
+            placed.dimensions, text.shape.name if profile is None else profile.shape, scope.style
+        ),
         published=_beside(published, tolerances, computed, scope.style, axes),
         second_route=_second_route(name, computed, placed, published, tolerances, axes),
         note=line.annotations.note,
@@ -180,14 +176,16 @@ def _oriented(table: Mapping[str, float], text: ShapeText, scope: Scope) -> dict
     return free | {(swap[k] if exchanged else k): v for k, v in published.items() if k in swap}
 
 
-def _with_synonyms(dimensions: Mapping[str, float], shape: str) -> dict[str, float]:
-    """Return a shape's dimensions with `d` beside `h` and `b_f` beside `b`."""
+def _dimensions(dimensions: Mapping[str, float], shape: str, style: Style) -> tuple[Result, ...]:
+    """Return a shape's dimensions by symbol, with `d` beside `h` and `b_f` beside `b`."""
     known = {k: v for k, v in dimensions.items() if k in DIMENSIONS}
     if "h" in known:
         known.setdefault("d", known["h"])
     if "b" in known and shape in ("i_shape", "channel", "tee"):
         known.setdefault("b_f", known["b"])
-    return known
+    unit = "in" if style.system == "US" else "mm"
+    values = {k: from_si(v, "m").shown_in(unit) for k, v in known.items()}
+    return tuple(Result(k, DIMENSIONS[k], v, show(v, style)) for k, v in values.items())
 
 
 def _results(
