@@ -1,9 +1,9 @@
 """Calcs with published answers, evaluated whole: see the suites `*.md` in this folder.
 
-A heading names a case; the fence of four marks, `calc` and the convention of axes, holds the calc; each row of
-the table below it is an expected value `name | value | unit | rel. tolerance | source`. A name is an expression
-of the language over the calc; a plain number has the unit `-`. Tolerances cover the rounding of the source;
-'from memory' says that the source was not at hand when its number was written down.
+A heading names a case; the fence of four marks, `calc` and the convention of axes, holds the calc; each row
+of the table below it is an expected value `name | value | unit | rel. tolerance | source`. A name is an
+expression of the language over the calc; a plain number has the unit `-`. Tolerances cover the rounding of
+the source; 'from memory' says that the source was not at hand when its number was written down.
 """
 
 from __future__ import annotations
@@ -80,6 +80,7 @@ def test_published_values(case: Case) -> None:
     asked = fence("working", *(f"{name} = {e.name}" for name, e in names.items()))
     (calc,) = evaluated(f"{case.text}\n{asked}", axes=case.axes)
     assert [d.message for d in calc.diagnostics] == []
+    assert [c.label for c in calc.checks if not c.satisfied] == []
     assert [r for r in calc.second_route if not r.holds] == []
     found = {e: calc.values[name][0] for name, e in names.items()}
     assert [said for e, value in found.items() if (said := _difference(e, value))] == []

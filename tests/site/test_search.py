@@ -25,7 +25,7 @@ WHOLE = package(STRINGER, FAULTY)
         ("General arrangement", "references.html#DWG"),
         ("heavier load", "trail.html#entry-1"),
         ("adds length", "C-2.html#diagnostic-1"),
-        ("see 36.45", "C-1.html#text-12"),
+        ("see 30.38 kN·m", "C-1.html#text-12"),
     ],
 )
 def test_found(words: str, href: str) -> None:

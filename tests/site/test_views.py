@@ -35,7 +35,7 @@ def per_cent(text: str) -> float:
     return float(text.removesuffix("%"))
 
 
-@pytest.mark.parametrize("ratio", [0.0, 0.5, 1.0, 1.05, 1.9, 3.5])
+@pytest.mark.parametrize("ratio", [0.01, 0.5, 1.0, 1.05, 1.9, 3.5])
 def test_a_bar_is_drawn_to_scale_with_room_beyond_its_limit(ratio: float) -> None:
     found = bar(check(ratio))
     assert found is not None
