@@ -143,9 +143,18 @@ class Evaluator:
 
     def _unary(self, node: Unary) -> Measure | None:
         operand = self.measure(node.operand)
-        if operand is None:
-            return None
-        return Measure(-operand.quantity, operand.unit) if node.operator == "-" else operand
+        if operand is None or node.operator == "+":
+            return operand
+        if operand.unit == "°C":  # -10 °C is ten degrees below zero; any other temperature has no opposite
+            if isinstance(node.operand, Number) and node.operand.unit is not None:
+                return measure(-node.operand.value, "°C", node.operand.unit.factors)
+            return self._fault(
+                "outside-domain",
+                node.operator_span,
+                "a temperature has no opposite; differences are in K",
+                None,
+            )
+        return Measure(-operand.quantity, operand.unit)
 
     def _binary(self, node: Binary) -> Measure | None:
         left, right = self.measure(node.left), self.measure(node.right)

@@ -78,9 +78,11 @@ def tube(*, d: float, t: float) -> Shape:
 def box(*, b: float, h: float, t: float, r_o: float = 0.0, r_i: float | None = None) -> Shape:
     """Rectangular hollow section, `b` wide and `h` high, wall `t`, corner radii `r_o` and `r_i`.
 
-    The inside radius `r_i` is r_o - t where it is not given, and not less than zero.
+    The inside radius `r_i` is r_o - t where it is not given, and not less than zero; with r_o = 1.5 t it is
+    t, the radii with which EN 10210-2 computes hot-finished sections.
     """
-    inner = max(r_o - t, 0.0) if r_i is None else r_i
+    hot_finished = math.isclose(r_o, 1.5 * t, rel_tol=1e-9)
+    inner = r_i if r_i is not None else t if hot_finished else max(r_o - t, 0.0)
     _positive(b=b, h=h, t=t)
     _not_negative(r_o=r_o, r_i=inner)
     _require(2.0 * t < b, "t", t, "must be less than b/2")

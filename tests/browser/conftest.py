@@ -5,17 +5,20 @@ from __future__ import annotations
 import os
 import shutil
 from collections.abc import Iterator
+from dataclasses import dataclass
 from datetime import UTC, datetime
 from pathlib import Path
 
 import pytest
 from playwright.sync_api import Browser, sync_playwright
 
-from calcgen.pipeline import Request, Workshop, build
+from calcgen.outcome import Request
+from calcgen.pipeline import Workshop, build
 from calcgen.publishing import publish
 from calcgen.site.compose import compose
 from calcgen.site.render import render
 from tests.browser.extreme import extreme
+from tests.browser.walk import Survey, survey
 
 PROJECTS = Path(__file__).parents[2] / "projects"
 _NAMES = ("chromium", "chromium-browser", "google-chrome")
@@ -38,16 +41,27 @@ def browser() -> Iterator[Browser]:
         started.close()
 
 
+@dataclass(frozen=True)
+class Walked:
+    """A package on disk and what a walk over it found."""
+
+    package: Path
+    survey: Survey
+
+
 @pytest.fixture(scope="session", params=["heron-lock", "mill-loft", "manual", "extreme"])
-def built(request: pytest.FixtureRequest, tmp_path_factory: pytest.TempPathFactory) -> Path:
-    """Return the folder of a package."""
+def walked(
+    request: pytest.FixtureRequest, browser: Browser, tmp_path_factory: pytest.TempPathFactory
+) -> Walked:
+    """Return a package: the two demo projects, the manual, and one with whatever could break a page."""
     name = str(request.param)
     out = tmp_path_factory.mktemp("package") / name
     if name == "extreme":
         publish(render(compose(extreme())), out, {"key": ""}, durable=False)
-        return out
-    when = datetime(2026, 12, 1, 9, 30, tzinfo=UTC)
-    request_ = Request(PROJECTS / name, out, when, "A. Mason", records=False, durable=False)
-    outcome = build(request_, Workshop())
-    assert outcome.published
-    return out
+    else:
+        when = datetime(2026, 12, 1, 9, 30, tzinfo=UTC)
+        outcome = build(
+            Request(PROJECTS / name, out, when, "A. Mason", records=False, durable=False), Workshop()
+        )
+        assert outcome.published
+    return Walked(out, survey(browser, out))

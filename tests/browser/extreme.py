@@ -5,6 +5,8 @@ from __future__ import annotations
 from calcgen.site.facts import PackageInput
 from tests.site.helpers import FAULTY, FED, STRINGER, package
 
+_SUM = "+".join([r"\frac{N}{A}"] * 16)
+
 LONG = f"""\
 # {"Averylongtitlewithoutanyspace" * 3}
 
@@ -16,13 +18,13 @@ A1 | {"assumed" * 20} | {"tobeconfirmed" * 9}
 ```
 {"wordwithoutspaces" * 12} and a value {{M_long_result}}.
 
-    code that is indented and goes on for longer than any phone is wide, and longer than a printed sheet too, on and on
+    {"code that goes on and on, " * 6}
 
 | a table | with many | columns | that | need | much | more | room | than | a | phone | has | to | give |
 |---|---|---|---|---|---|---|---|---|---|---|---|---|---|
 | 1 | 2 | 3 | 4 | 5 | 6 | 7 | 8 | 9 | 10 | 11 | 12 | 13 | {"fourteen" * 5} |
 
-$$ \\sigma = \\frac{{N}}{{A}} + \\frac{{M_y z}}{{I_y}} + \\frac{{M_z y}}{{I_z}} + \\frac{{N}}{{A}} + \\frac{{M_y z}}{{I_y}} + \\frac{{M_z y}}{{I_z}} $$
+$$ \\sigma = {_SUM} $$
 
 ```inputs
 L_span_between_bearings_of_the_east_trestle = 6.0 m | {"note" * 20} | {"reference" * 9}

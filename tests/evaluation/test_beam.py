@@ -210,3 +210,62 @@ def test_a_stretch_of_its_own_stiffness() -> None:
     # P/3·(L³ - a³)/EI_1 + P/3·a³/EI_2 with a the outer part: (8 - 1)/2000 + 1/1000 kN·m³ units
     assert codes(calc) == []
     assert shown(calc, "w") == "4.500 mm"
+
+
+def test_one_modulus_for_the_whole_beam() -> None:
+    section = fence("section s", "shape = rectangle(b = 100 mm, h = 200 mm)")
+    calc = beam(
+        "span = 2 m", "section = s", "E = 10 GPa from 0 m to 1 m", "load G uniform 1 kN/m", before=section
+    )
+    assert codes(calc) == ["no-stretch"]
+
+
+@pytest.mark.parametrize(
+    ("support", "found"),
+    [
+        ("support roller at 5 m settles 15 mm", ["unknown-case"]),  # it would be in no combination
+        ("support roller at 5 m settles 15 mm in S", ["case-unused"]),
+    ],
+)
+def test_a_settlement_that_no_combination_has_is_said(support: str, found: list[str]) -> None:
+    lines = (
+        "span = 5 m, 5 m",
+        "EI = 17547.6 kN·m^2",
+        "support pin at 0 m",
+        support,
+        "support roller at 10 m",
+    )
+    assert codes(beam(*lines, "load G uniform 10 kN/m", "combination C1 = G")) == found
+    together = beam(*lines[:3], "support roller at 5 m settles 15 mm", lines[4], "load G uniform 10 kN/m")
+    assert codes(together) == []  # without combinations all acts together
+
+
+def test_a_lateral_support_takes_the_place_of_the_other_in_its_plane() -> None:
+    section = fence("section s", "shape = rectangle(b = 100 mm, h = 200 mm)")
+    calc = beam(
+        "span = 2 m",
+        "section = s",
+        "E = 10 GPa",
+        "support pin at 0 m",
+        "support lateral fixed at 0 m",
+        "support pin at 2 m",
+        "load H lateral uniform 8 kN/m",
+        "load G uniform 8 kN/m",
+        working=("a = b.M_R_1_lat", "m = b.M_min", "n = b.M_min_lat"),
+        before=section,
+    )
+    assert codes(calc) == []
+    assert shown(calc, "m") == "0 kN·m"  # pinned in the vertical plane
+    assert shown(calc, "n") == "−4.000 kN·m"  # w·L²/8, fixed in the lateral one
+    assert len(result(calc).model.supports) == 2
+
+
+def test_an_unrestrained_rolled_angle_bends_by_one_consistent_set_of_values() -> None:
+    section = fence("section s", 'shape = rolled("L6x4x1/2")')
+    lines = ("span = 2 m", "section = s", "E = 200 GPa", "support fixed at 0 m", "load G point 1 kN at 2 m")
+    calc = beam(*lines, working=("w = b.w(2 m)", "v = b.w_lat(2 m)"), before=section)
+    own = next(s for s in calc.segments if getattr(s, "name", "") == "s").computed  # type: ignore[union-attr]
+    factor = 1e3 * 2.0**3 / (3 * 200e9 * (own.I_h * own.I_v - own.I_hv**2))
+    w, v = (calc.values[n][0].si for n in ("w", "v"))  # type: ignore[union-attr]
+    assert w == pytest.approx(factor * own.I_v, rel=1e-9)  # P·L³/(3E) times the inverse of the matrix
+    assert v == pytest.approx(factor * own.I_hv, rel=1e-9)

@@ -59,6 +59,8 @@ INPUTS = (
         ("10 kg*g_n", "0.09807 kN"),
         ("T_1 + 15 K", "35.00 °C"),
         ("T_1 - 5 °C", "15.00 K"),
+        ("-10 °C", "−10.00 °C"),  # below zero, not the opposite of a temperature
+        ("T_1 - -10 °C", "30.00 K"),
         ("5 %*P", "2.000 kN"),
         ("n*P", "160.0 kN"),
         ("P/n", "10.00 kN"),
@@ -89,6 +91,7 @@ def test_value(formula: str, text: str) -> None:
         ("x = interpolate(2 m, 1 m, 1, 1 m, 2)", "division-by-zero", 5),
         ("x = round(L, 0 mm)", "outside-domain", 5),
         ("x = exp(1000)", "outside-domain", 5),
+        ("x = -T_1", "outside-domain", 5),
         ("x = 1e200*1e200", "not-finite", 10),
         ("x = 2^5000", "not-finite", 6),
         ("x = grade + 1", "not-a-number", 5),

@@ -49,6 +49,20 @@ def test_property(shape: str, name: str, text: str) -> None:
     assert found.get(name, shown(calc, "x")) == text
 
 
+@pytest.mark.parametrize(
+    ("radii", "area"),
+    [  # 100 x 100 x 5 from memory of EN 10210-2 (1.5 t and 1.0 t) and EN 10219-2 (2.0 t and 1.0 t)
+        ("r_o = 7.5 mm", 18.7),
+        ("r_o = 7.5 mm, r_i = 5 mm", 18.7),
+        ("r_o = 10 mm", 18.4),
+    ],
+)
+def test_corner_radii_of_hollow_sections(radii: str, area: float) -> None:
+    calc = section(f"box(b = 100 mm, h = 100 mm, t = 5 mm, {radii})")
+    (A,) = (r for r in result(calc).results if r.name == "A")
+    assert A.value.si == pytest.approx(area * 1e-4, rel=0.003)
+
+
 def test_american_names() -> None:
     calc = section(
         'rolled("W18x50")', "Z = main.Z_x", "S = main.S_x", "r = main.r_y", "t = main.t_f", axes="american"

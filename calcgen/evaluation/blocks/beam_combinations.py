@@ -10,6 +10,7 @@ from calcgen.language.blocks.beam import (
     CaseLine,
     CombinationLine,
     LoadLine,
+    SupportLine,
 )
 from calcgen.mechanics.beam import (
     Load,
@@ -70,7 +71,18 @@ def combinations_of(
         group = line.group.name if line.group is not None else ""
         found.append(Combination(name, group, factors, line.span))
     used = {case for c in found for case in c.factors}
-    for target in [c.target for c in lines.of(CaseLine)] + [c.case for c in lines.of(LoadLine)]:
+    settling = [s for s in lines.of(SupportLine) if s.settles is not None]
+    for support in settling if found else ():
+        if support.settles_case is None:
+            lines.fault(
+                "unknown-case",
+                support.span,
+                "this settlement belongs to no load case, so no combination has it",
+                hint="write in which case it acts: settles 5 mm in S",
+            )
+    named = [c.target for c in lines.of(CaseLine)] + [c.case for c in lines.of(LoadLine)]
+    named += [s.settles_case for s in settling if s.settles_case is not None]
+    for target in named:
         if found and not lines.failed and target.name not in used:
             used.add(target.name)
             lines.report.warning(

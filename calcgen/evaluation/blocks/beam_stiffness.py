@@ -107,10 +107,14 @@ def _uncovered(lines: Lines, start: float, end: float) -> None:
 
 
 def stiffness_of(p: Property, E: Measure | None, *, restrained: bool) -> BendingStiffness:
-    """Return the bending stiffness of a stretch, with the section's values in force."""
+    """Return the bending stiffness of a stretch, with the section's values in force.
+
+    A section off its principal axes that is free to bend about them takes all three second moments from the
+    outline: a catalogue publishes no product moment, and values of two origins make no consistent set.
+    """
     if p.section is None or E is None:
         return BendingStiffness(p.EI or 0.0)
-    values = p.section.result.values
-    return BendingStiffness.of_section(
-        E.si, values["I_h"], values["I_v"], values["I_hv"], restrained=restrained
-    )
+    own, values = p.section.result.computed, p.section.result.values
+    if own.I_hv != 0.0 and not restrained:
+        return BendingStiffness.of_section(E.si, own.I_h, own.I_v, own.I_hv)
+    return BendingStiffness.of_section(E.si, values["I_h"], values["I_v"], own.I_hv, restrained=restrained)

@@ -3,8 +3,7 @@
 from __future__ import annotations
 
 import math
-from dataclasses import dataclass
-from itertools import pairwise
+from dataclasses import dataclass, replace
 
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.language.blocks.beam import (
@@ -46,26 +45,47 @@ def supports_of(lines: Lines, spans: tuple[float, ...]) -> Supports:
     placed: list[tuple[float, SupportLine]] = sorted(
         ((lines.place(line.at), line) for line in typed), key=lambda item: item[0]
     )
-    for (x_1, first), (x_2, second) in pairwise(placed):
-        if x_2 - x_1 <= 1e-9 * lines.length:
-            lines.fault(
-                "two-supports",
-                second.span,
-                f"there is a support at {lines.text(x_2)} already",
-                related=(Related(first.span, "here"),),
-            )
-    supports = tuple(_support(lines, x, line) for x, line in placed)
+    groups: list[list[tuple[float, SupportLine]]] = []
+    for x, line in placed:
+        if groups and x - groups[-1][0][0] <= 1e-9 * lines.length:
+            groups[-1].append((x, line))
+        else:
+            groups.append([(x, line)])
+    found: list[tuple[Support, str, str]] = []
     settling: list[tuple[str, Settlement]] = []
-    notes = [""] * len(placed)
-    for index, (_, line) in enumerate(placed):
-        if line.settles is not None:
-            value = lines.number(line.settles, "length")
-            case = line.settles_case.name if line.settles_case is not None else ""
-            plane: Plane = "lateral" if line.plane == "lateral" else "vertical"
-            settling.append((case, Settlement(index, value, plane)))
-            unit = lines.unit_of(line.settles)
-            notes[index] = f"settles {lines.text(value, unit)}{f' in {plain(case)}' if case else ''}"
-    return Supports(supports, tuple(line.kind for _, line in placed), tuple(notes), tuple(settling))
+    for index, group in enumerate(groups):
+        main, *others = sorted(group, key=lambda item: item[1].plane == "lateral")
+        support = _support(lines, *main)
+        for x, line in others:
+            if line.plane != "lateral" or main[1].plane == "lateral" or len(others) > 1:
+                lines.fault(
+                    "two-supports",
+                    line.span,
+                    f"there is a support at {lines.text(x)} already",
+                    related=(Related(main[1].span, "here"),),
+                )
+            sideways = _support(lines, x, line)  # takes the place of the other one in the lateral plane
+            support = replace(support, lateral=sideways.lateral, lateral_rotation=sideways.lateral_rotation)
+        notes = [_settles(lines, line, index, settling) for _, line in group if line.settles is not None]
+        found.append((support, main[1].kind, ", ".join(notes)))
+    return Supports(
+        tuple(support for support, _, _ in found),
+        tuple(kind for _, kind, _ in found),
+        tuple(note for _, _, note in found),
+        tuple(settling),
+    )
+
+
+def _settles(lines: Lines, line: SupportLine, index: int, settling: list[tuple[str, Settlement]]) -> str:
+    """Add the settlement of a support to those found, and return it in words."""
+    if line.settles is None:
+        return ""
+    value = lines.number(line.settles, "length")
+    case = line.settles_case.name if line.settles_case is not None else ""
+    plane: Plane = "lateral" if line.plane == "lateral" else "vertical"
+    settling.append((case, Settlement(index, value, plane)))
+    text = lines.text(value, lines.unit_of(line.settles))
+    return f"settles {text}{f' in {plain(case)}' if case else ''}"
 
 
 def _support(lines: Lines, x: float, line: SupportLine) -> Support:

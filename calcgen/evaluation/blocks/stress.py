@@ -65,7 +65,7 @@ class StressThing:
                 "no-such-result",
                 span,
                 f"'{plain(wanted)}' does not exist here: the stress does not vary along the depth",
-                hint="a uniform stress has no neutral axis and no curvature",
+                hint="na_angle tells where it varies across the width alone; a uniform stress has no axis",
             )
         else:
             close = nearest(wanted, known)

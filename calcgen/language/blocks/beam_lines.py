@@ -31,7 +31,7 @@ STOPS = frozenset({"at", "from", "to", "in", "settles", "rotation", "lateral", "
 """Words that end an expression in a beam."""
 
 SETTINGS = ("section", "E", "EI", "restrained")
-STRETCHES = ("section", "E", "EI")
+STRETCHES = ("section", "EI")
 LATER_SETTINGS = ("GA_s", "shear_deformation", "expansion")
 LATER_LOADS = ("train", "gradient")
 CASE_KINDS = (
@@ -121,7 +121,7 @@ def _setting(line: Line, cursor: Cursor) -> BeamSetting:
             "no-stretch",
             cursor.span(stretch),
             f"'{key.name}' holds for the whole beam",
-            hint="only section, E and EI change along a beam",
+            hint="only section and EI change along a beam",
         )
     return BeamSetting(key, value, start, end, line.annotations, line.span, line.statement_span)
 
