@@ -69,12 +69,12 @@ def derived(row: DerivedRow, source: SourceFile) -> Equation:
         steps.append(terms(taken, put_in))
     steps.append((quantity(row.shown),))
     led = [(_EQUALS + step[0], *step[1:]) for step in _without_repeats(steps)]
-    return _equation(_element(symbol(row.name)), led, _element(aside) if aside else _NOTHING)
+    return _equation(symbol(row.name), led, aside)
 
 
 def stated(name: str, shown: Shown) -> Equation:
     """Return a value that is given: symbol = value."""
-    return _equation(_element(symbol(name)), [(_EQUALS + quantity(shown),)])
+    return _equation(symbol(name), [(_EQUALS + quantity(shown),)])
 
 
 def check(row: CheckRow, source: SourceFile) -> Equation:
@@ -85,25 +85,30 @@ def check(row: CheckRow, source: SourceFile) -> Equation:
         steps.append((formula(node, put_in_from(row.operands, source)),))
     sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
     steps.append((sides,))
-    return _equation(_NOTHING, _without_repeats(steps), beside=_VERDICT)
+    return _equation("", _without_repeats(steps), beside=_VERDICT)
 
 
 def limit(result: CheckResult) -> Equation:
     """Return the check that a stress makes by its limit: the largest stress against it."""
     sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
-    return _equation(_NOTHING, [(f"<mtext>largest |σ|:&#xA0;</mtext>{sides}",)], beside=_VERDICT)
+    return _equation("", [(f"<mtext>largest |σ|:&#xA0;</mtext>{sides}",)], beside=_VERDICT)
 
 
 def combination(name: str, terms: Sequence[str]) -> Equation:
     """Return a combination of load cases; each term but the first has its sign."""
     first, *others = terms
-    return _equation(_element(symbol(name)), [(_EQUALS + first, *others)])
+    return _equation(symbol(name), [(_EQUALS + first, *others)])
 
 
-def _equation(left: Markup, steps: Sequence[_Step], aside: Markup = _NOTHING, *, beside: int = 0) -> Equation:
+def _equation(left: str, steps: Sequence[_Step], aside: str = "", *, beside: int = 0) -> Equation:
     """Return an equation that shares its line with `beside` other characters."""
-    length = math.ceil(max(extent(term) for step in steps for term in step)) + beside
-    return Equation(left, tuple(tuple(map(_element, step)) for step in steps), aside, length)
+    lengths = [extent(left), *(extent(term) for step in steps for term in step)]
+    return Equation(
+        _element(left),
+        tuple(tuple(map(_element, step)) for step in steps),
+        _element(aside),
+        math.ceil(max(lengths)) + beside,
+    )
 
 
 def compared(left: Shown, operator: str, right: Shown, *, satisfied: bool) -> str:
@@ -132,4 +137,5 @@ def _without_repeats(steps: list[_Step]) -> list[_Step]:
 
 
 def _element(content: str) -> Markup:
-    return Markup(mathml.math(content, display=True))  # noqa: S704 - mathml escapes what was typed
+    """Return MathML content as an element; nothing where there is none."""
+    return Markup(mathml.math(content, display=True)) if content else _NOTHING  # noqa: S704 - escaped there

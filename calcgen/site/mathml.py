@@ -77,11 +77,6 @@ def symbol(name: str) -> str:
     return _symbol(name).mathml
 
 
-def dotted(parts: tuple[str, ...]) -> str:
-    """Return the MathML of a dotted name; its owners stand small before the symbol."""
-    return _dotted(parts).mathml
-
-
 def quantity(shown: Shown) -> str:
     """Return the MathML of a value with its unit; a text is set in quotes."""
     return _quantity(shown).mathml
@@ -130,6 +125,7 @@ def _symbol(name: str) -> Piece:
 
 
 def _dotted(parts: tuple[str, ...], arguments: str = "") -> Piece:
+    """Return a dotted name; its owners stand small before the symbol."""
     own = _symbol(parts[-1])
     if len(parts) == 1 and not arguments:
         return own

@@ -13,8 +13,7 @@ from calcgen.language.nodes import Citation, Column
 from calcgen.site import addresses
 from calcgen.site.citations import cited_lines
 from calcgen.site.facts import PackageInput, ReferenceFacts
-from calcgen.site.mathml import dotted, math
-from calcgen.site.views import BarView, Link, bar, mathematical, utilisation_text, words
+from calcgen.site.views import BarView, Link, bar, lettered, utilisation_text, words
 
 
 @dataclass(frozen=True)
@@ -97,7 +96,7 @@ def input_entries(package: PackageInput) -> tuple[InputEntry, ...]:
     found = [
         InputEntry(
             calc_link(calc),
-            mathematical(row.name),
+            lettered((row.name,)),
             _on_page(calc, row.name),
             row.shown.text,
             words(row.node.annotations.note, package.references),
@@ -175,10 +174,10 @@ def map_view(package: PackageInput) -> MapView:
             feeds.append(
                 FeedEntry(
                     calc_link(giver),
-                    Markup(math(dotted(tuple(row.origin.name.split("."))))),  # noqa: S704 - mathml escapes
+                    lettered(tuple(row.origin.name.split("."))),
                     addresses.link(addresses.calc_page(giver.number), anchor),
                     calc_link(calc),
-                    mathematical(row.name),
+                    lettered((row.name,)),
                     _on_page(calc, row.name),
                     row.shown.text,
                 )
@@ -187,7 +186,7 @@ def map_view(package: PackageInput) -> MapView:
         if feed.calc in by_number:
             giver = by_number[feed.calc]
             linked |= {giver.number, calc.number}
-            name = Markup(math(dotted(feed.name.parts)))  # noqa: S704 - mathml escapes
+            name = lettered(feed.name.parts)
             source = addresses.source_line(calc.number, calc.calc.source.line_number(feed.span))
             feeds.append(
                 FeedEntry(calc_link(giver), name, calc_link(giver).href, calc_link(calc), name, source, "—")

@@ -11,10 +11,10 @@ from markupsafe import Markup, escape
 from calcgen.evaluation.results import CheckResult, Result, SecondRoute
 from calcgen.language.nodes import Column
 from calcgen.quantities.display import number_text
+from calcgen.quantities.symbols import symbol as symbol_of
 from calcgen.site import addresses
 from calcgen.site.equations import Equation, stated
 from calcgen.site.facts import ReferenceFacts
-from calcgen.site.mathml import math, symbol
 from calcgen.text import Diagnostic
 from calcgen.text.terminal import place_lines
 
@@ -125,9 +125,13 @@ def words(column: Column, references: Mapping[str, ReferenceFacts]) -> Markup:
     return out + escape(column.text[at:])
 
 
-def mathematical(name: str) -> Markup:
-    """Return a name as a symbol on a page."""
-    return Markup(math(symbol(name)))  # noqa: S704 - mathml escapes names
+def lettered(parts: tuple[str, ...]) -> Markup:
+    """Return a dotted name as letters with a subscript, which unlike mathematics may break in a table."""
+    letters = symbol_of(parts[-1])
+    owner = Markup('<span class="owner">{}</span>').format("".join(f"{p}." for p in parts[:-1]))
+    base = Markup("<i>{}</i>").format(letters.base) if len(letters.base) == 1 else escape(letters.base)
+    below = Markup("<sub>{}</sub>").format(letters.subscript) if letters.subscripts else Markup("")
+    return Markup('<span class="symbol">{}{}{}</span>').format(owner if parts[1:] else "", base, below)
 
 
 def result_row(result: Result, anchor: str, line: int, source: str = "") -> ValueRow:
@@ -139,7 +143,7 @@ def result_row(result: Result, anchor: str, line: int, source: str = "") -> Valu
 def route_row(route: SecondRoute) -> RouteRow:
     """Return a comparison of the two routes."""
     name = re.fullmatch(r"[^\W\d_]+'*(?:_\w+)*", route.what)
-    what = mathematical(route.what) if name else escape(route.what)
+    what = lettered((route.what,)) if name else escape(route.what)
     residual = "0" if route.residual == 0 else number_text(route.residual, 2)
     return RouteRow(what, route.scale, residual, number_text(route.tolerance, 2), route.holds)
 
@@ -148,6 +152,8 @@ def utilisation_text(value: float | None) -> str:
     """Return a utilisation with three decimals, more where it would read 1.000 without being 1."""
     if value is None:
         return "—"
+    if abs(value) >= 10:
+        return number_text(value, 4)
     texts = (f"{value:.{places}f}" for places in range(3, 13))
     return next((t for t in texts if value == 1 or float(t) != 1), f"{value:.3f}").replace("-", "−")
 

@@ -5,7 +5,7 @@ from __future__ import annotations
 from calcgen.site.facts import PackageInput
 from tests.site.helpers import FAULTY, FED, STRINGER, package
 
-_SUM = "+".join([r"\frac{N}{A}"] * 16)
+_SUM = "+".join([r"\frac{N}{A}"] * 10)
 
 LONG = f"""\
 # {"Averylongtitlewithoutanyspace" * 3}

@@ -35,7 +35,7 @@
       found.push(`"${text}" in ${name(part)} is cut: ${part.scrollWidth} in ${part.clientWidth}`);
     }
   }
-  for (const whole of document.querySelectorAll("main tr, main figure")) {
+  for (const whole of document.querySelectorAll("main tr:not(.drawn), main figure")) {
     if (whole.checkVisibility() && getComputedStyle(whole).breakInside !== "avoid" && !whole.closest("thead")) {
       found.push(`${name(whole)} may be split between sheets`);
     }

@@ -92,8 +92,8 @@ e = 2*a   | stands
 DRAWN = FigureSvg(
     "IPE 240",
     "The outline with its dimensions",
-    '<svg viewBox="0 0 9 9" role="img"><text>zeroline</text></svg>',
-    '<svg viewBox="0 0 5 9" role="img"><text>zeroline</text></svg>',
+    '<svg viewBox="0 0 90 90" role="img" style="max-width: 90px"><text y="50">zeroline</text></svg>',
+    '<svg viewBox="0 0 50 90" role="img" style="max-width: 50px"><text y="50">zeroline</text></svg>',
 )
 
 CHANGED = HistoryView(

@@ -19,7 +19,8 @@ from tests.evaluation.helpers import working
         (1.0, "1.000"),
         (1.0002, "1.0002"),  # not 1.000, which would read as satisfied
         (0.99999, "0.99999"),
-        (12.5, "12.500"),
+        (12.5, "12.50"),
+        (3000.0, "3000"),
         (None, "—"),
     ],
 )
