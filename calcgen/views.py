@@ -63,7 +63,7 @@ def _first_record(entry: HistoryEntry) -> Iterable[ChangeView]:
     for calc in entry.changes.calcs:
         kinds = Counter(c.kind for c in entry.changes if c.calc == calc)
         counted = ", ".join(f"{n} {kind}{'s' if n > 1 else ''}" for kind, n in sorted(kinds.items()))
-        yield ChangeView(calc, "first recorded", "", counted.replace("stresss", "stresses"))
+        yield ChangeView(calc, calc, "first recorded", "", counted.replace("stresss", "stresses"))
 
 
 def _heading(number: int, entry: Entry) -> str:
@@ -79,7 +79,14 @@ def _change(change: Change, style: Style) -> ChangeView:
     else:
         was = item_text(before, style) if before is not None else ""
         now = item_text(after, style) if after is not None else ""
-    return ChangeView(change.address, f"{change.kind} {_WORDS[change.how]}", was, now)
+    return ChangeView(change.address, _name(change), f"{change.kind} {_WORDS[change.how]}", was, now)
+
+
+def _name(change: Change) -> str:
+    """Return an item as it is called: 'W-12 bending at midspan', 'W-12 M_c,Rd'."""
+    item = change.after or change.before or {}
+    calc, _, anchor = change.address.partition("#")
+    return f"{calc} {item.get('label') or plain(anchor)}"
 
 
 def _block_texts(before: Item, after: Item, style: Style) -> tuple[str, str]:

@@ -351,7 +351,7 @@ Segment: TypeAlias = (
 )
 
 
-@dataclass(frozen=True)
+@dataclass(frozen=True, eq=False)
 class EvaluatedCalc:
     """A calc with everything that could be evaluated.
 

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Iterator
+from functools import lru_cache
 from urllib.parse import quote
 
 from calcgen.evaluation.results import (
@@ -77,6 +78,7 @@ def assumptions_of(calc: EvaluatedCalc) -> tuple[tuple[str, Assumption], ...]:
     return tuple(found)
 
 
+@lru_cache(maxsize=256)  # asked for each change of the trail
 def anchors_of(calc: EvaluatedCalc) -> frozenset[str]:
     """Return the anchors of values, checks, blocks and their results on a calc's page."""
     return frozenset(anchor for segment in calc.segments for anchor in _anchors(segment))

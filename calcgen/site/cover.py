@@ -13,6 +13,7 @@ from calcgen.site.registers import calc_link
 from calcgen.site.standing import StandingView, standing_view
 from calcgen.site.views import DiagnosticView, Link, diagnostic_view, utilisation_text
 
+MOST_CHANGES = 12  # listed on the cover; the trail has all
 NEAR = 0.95  # of its limit: a check from here on is looked at first
 
 
@@ -186,12 +187,21 @@ def _changes(package: PackageInput) -> Iterator[Matter]:
         for address, previous in package.previous.items():
             yield Matter(change_link(address, package), previous.was)
     elif package.history:
-        for change in package.history[0].changes:
-            yield Matter(change_link(change.address, package), change_text(change))
+        changes = package.history[0].changes
+        for change in changes[:MOST_CHANGES]:
+            yield Matter(change_link(change.address, package, change.name), change_text(change))
+        if len(changes) > MOST_CHANGES:
+            rest = f"{len(changes) - MOST_CHANGES} more changes follow from these"
+            yield Matter(Link("trail", addresses.link(addresses.TRAIL)), rest)
 
 
-def change_link(address: str, package: PackageInput) -> Link:
+def change_link(address: str, package: PackageInput, name: str = "") -> Link:
     """Return the link to an item of the trail, or to the trail where it is on no page any more."""
+    link = _item_link(address, package)
+    return Link(name or link.text, link.href)
+
+
+def _item_link(address: str, package: PackageInput) -> Link:
     number, _, anchor = address.partition("#")
     if number == "references" and anchor in package.references:
         return Link(anchor, addresses.link(addresses.REFERENCES, anchor))

@@ -56,10 +56,12 @@ class PreviousValue:
 class ChangeView:
     """One change of an entry; `before` or `after` is empty where the item did not exist.
 
-    `address` is as the trail has it, 'W-12#M_Ed'; `what` says what kind of item it is and how it changed.
+    `address` is as the trail has it, 'W-12#M_Ed', `name` as it is read, 'W-12 M_Ed'; `what` says what kind of
+    item it is and how it changed.
     """
 
     address: str
+    name: str
     what: str
     before: str
     after: str

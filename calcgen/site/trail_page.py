@@ -51,7 +51,7 @@ def trail_view(package: PackageInput) -> TrailView:
                 entry.who,
                 entry.why,
                 tuple(
-                    ChangeRow(change_link(c.address, package), c.what, c.before, c.after)
+                    ChangeRow(change_link(c.address, package, c.name), c.what, c.before, c.after)
                     for c in entry.changes
                 ),
             )

@@ -100,7 +100,7 @@ CHANGED = HistoryView(
     "2026-12-01T09:30:00Z",
     "A. Mason",
     "heavier load",
-    (ChangeView("C-1#q_k", "input edited", "4.000 kPa", "5.000 kPa"),),
+    (ChangeView("C-1#q_k", "C-1 q_k", "input edited", "4.000 kPa", "5.000 kPa"),),
     "Entry 2",
 )
 

@@ -194,7 +194,7 @@ class TestRegisters:
         assert 'href="C-2.html#R"' in site["map.html"]
 
     def test_the_trail_shows_before_and_after(self, site: Mapping[str, str]) -> None:
-        assert "C-1#q_k input edited 4.000 kPa 5.000 kPa" in words(site["trail.html"])
+        assert "C-1 q_k input edited 4.000 kPa 5.000 kPa" in words(site["trail.html"])
 
 
 def test_the_source_has_an_address_for_each_line(outlines: Mapping[str, Outline]) -> None:
