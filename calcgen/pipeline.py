@@ -20,10 +20,10 @@ from calcgen.profiles import Catalogue, builtin_catalogue, read_catalogue
 from calcgen.project import Project, ProjectFiles, Reference, load_project
 from calcgen.publishing import PublishError, publish, recover
 from calcgen.quantities.display import Style
-from calcgen.site.compose import compose
+from calcgen.site.compose import Composed, compose
 from calcgen.site.facts import PackageInput, ProjectFacts, ReferenceFacts
 from calcgen.site.figure import FigureSvg
-from calcgen.site.render import render
+from calcgen.site.render import Rendered, render
 from calcgen.text import Diagnostic, SourceFile, Span, error
 from calcgen.trail import (
     TRAIL,
@@ -51,6 +51,8 @@ class Workshop:
 
     memory: Memory = field(default_factory=Memory)
     studio: Studio = field(default_factory=Studio)
+    composed: Composed = field(default_factory=Composed)
+    rendered: Rendered = field(default_factory=Rendered)
     calcs: dict[str, tuple[SourceFile, Calc]] = field(default_factory=dict)
     catalogues: dict[tuple[SourceFile, ...], tuple[Catalogue, tuple[Diagnostic, ...]]] = field(
         default_factory=dict
@@ -117,7 +119,7 @@ def _build(
     )
     summaries = tuple(_summary(calc) for calc in evaluated)
     publish(
-        render(compose(package)),
+        render(compose(package, workshop.composed), workshop.rendered),
         request.out,
         {
             "key": key_of(request.root, images, records=request.records),

@@ -16,7 +16,7 @@ from watchdog.observers import Observer
 from watchdog.observers.api import BaseObserver
 from watchdog.observers.polling import PollingObserver
 
-QUIET = 0.05  # seconds without events after which a burst is over
+QUIET = 0.03  # seconds without events after which a burst is over
 CEILING = 0.5  # seconds after which a burst is taken as it is
 _TICK = 0.2  # seconds between looks at the stop event and at the root itself
 

@@ -98,12 +98,13 @@ class Obstacles:
     left: float
     right: float
     boxes: list[Box] = field(default_factory=list)
-    segments: list[tuple[NDArray[np.float64], NDArray[np.float64]]] = field(default_factory=list)
+    segments: list[tuple[Box, NDArray[np.float64], NDArray[np.float64]]] = field(default_factory=list)
 
     def add_line(self, points: Sequence[Point] | NDArray[np.float64]) -> None:
         """Add a polyline in pixels to keep clear of."""
         vertices = np.asarray(points, dtype=float)
-        self.segments.append((vertices[:-1], vertices[1:]))
+        (left, top), (right, bottom) = vertices.min(axis=0).tolist(), vertices.max(axis=0).tolist()
+        self.segments.append((Box(left, top, right, bottom), vertices[:-1], vertices[1:]))
 
     def clear(self, box: Box, gap: float = 2.0) -> bool:
         """Tell whether `box` is inside the frame and free of everything placed so far."""
@@ -111,9 +112,11 @@ class Obstacles:
 
     def free(self, box: Box, gap: float = 2.0) -> bool:
         """Tell whether `box` is free of everything placed so far, inside the frame or not."""
-        return not any(box.overlaps(other, gap) for other in self.boxes) and not any(
-            box.grown(gap / 2).crosses(start, end) for start, end in self.segments
-        )
+        if any(box.overlaps(other, gap) for other in self.boxes):
+            return False
+        grown = box.grown(gap / 2)
+        near = (line for line in self.segments if grown.overlaps(line[0], 1e-9))
+        return not any(grown.crosses(start, end) for _, start, end in near)
 
 
 def spread(wanted: Sequence[float], widths: Sequence[float], low: float, high: float) -> list[float] | None:

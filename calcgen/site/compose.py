@@ -3,8 +3,9 @@
 from __future__ import annotations
 
 import hashlib
-from collections.abc import Iterable, Iterator
+from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass
+from functools import partial
 
 from calcgen.evaluation.results import EvaluatedCalc
 from calcgen.site import addresses, registers
@@ -43,18 +44,32 @@ class ConventionsView:
     figures: tuple[FigureSvg, ...]
 
 
-def compose(package: PackageInput) -> tuple[Page, ...]:
+class Composed:
+    """The pages of calcs by what they were composed from: one that nothing touched is the same object again."""
+
+    def __init__(self) -> None:
+        self._kept: dict[str, tuple[object, HtmlPage]] = {}
+
+    def page(self, path: str, made_from: object, make: Callable[[], HtmlPage]) -> HtmlPage:
+        """Return the page made before from equal things, or make it."""
+        kept = self._kept.get(path)
+        if kept is None or kept[0] != made_from:
+            kept = self._kept[path] = (made_from, make())
+        return kept[1]
+
+
+def compose(package: PackageInput, composed: Composed | None = None) -> tuple[Page, ...]:
     """Return all pages and files of a package, but those that every package has alike."""
     images = dict(_images(package))
     return (
-        *_pages(package, {path: asset.path for path, asset in images.items()}),
+        *_pages(package, {path: asset.path for path, asset in images.items()}, composed or Composed()),
         *{asset.path: asset for asset in images.values()}.values(),
         FilePage(INDEX, index_file(package)),
         FilePage(RESULTS, results_file(package)),
     )
 
 
-def _pages(package: PackageInput, images: dict[str, str]) -> Iterator[HtmlPage]:
+def _pages(package: PackageInput, images: dict[str, str], composed: Composed) -> Iterator[HtmlPage]:
     project = package.project
     frame = Frame(project.title, project.number, PAGES, f"calcgen {package.version}", package.built)
     named = f"{project.number} {project.title}".strip()
@@ -64,15 +79,28 @@ def _pages(package: PackageInput, images: dict[str, str]) -> Iterator[HtmlPage]:
         template = f"pages/{path.removesuffix('.html')}.html"
         return HtmlPage(path, template, title, content, frame, whole, f"{named} · {title}")
 
-    def of_calc(calc: EvaluatedCalc, path: str, template: str, title: str, content: object) -> HtmlPage:
+    around = (
+        project,
+        package.references,
+        images,
+        frame,
+        tuple((c.number, c.calc.title) for c in package.calcs),
+    )
+
+    def of_calc(
+        calc: EvaluatedCalc, path: str, template: str, title: str, view: Callable[[], object]
+    ) -> HtmlPage:
+        def make() -> HtmlPage:
+            return HtmlPage(path, template, title, view(), frame, calc.calc.source.digest, head)
+
         head = f"{named} · {calc.number} {calc.calc.title}"
-        return HtmlPage(path, template, title, content, frame, calc.calc.source.digest, head)
+        return composed.page(path, (_behind(calc, package), around), make)
 
     yield page(addresses.COVER, "Cover", cover_view(package))
     for calc in package.calcs:
         path = addresses.calc_page(calc.number)
         title = f"{calc.number} {calc.calc.title}"
-        yield of_calc(calc, path, "pages/calc.html", title, calc_view(calc, package, images))
+        yield of_calc(calc, path, "pages/calc.html", title, partial(calc_view, calc, package, images))
     yield page(addresses.CHECKS, "Checks", registers.check_entries(package))
     yield page(addresses.INPUTS, "Inputs", registers.input_entries(package))
     yield page(addresses.ASSUMPTIONS, "Assumptions", registers.assumption_entries(package))
@@ -84,7 +112,15 @@ def _pages(package: PackageInput, images: dict[str, str]) -> Iterator[HtmlPage]:
     yield page(addresses.SEARCH, "Search", None)
     for calc in package.calcs:
         path = addresses.source_page(calc.number)
-        yield of_calc(calc, path, "pages/source.html", f"Source of {calc.number}", source_view(calc))
+        yield of_calc(calc, path, "pages/source.html", f"Source of {calc.number}", partial(source_view, calc))
+
+
+def _behind(calc: EvaluatedCalc, package: PackageInput) -> tuple[object, ...]:
+    """Return what of a package the page of a calc shows: the calc, what feeds it, its figures, its marks."""
+    feeders = {origin.calc for origin in calc.depends}
+    marks = tuple((a, p) for a, p in package.previous.items() if a.partition("#")[0] == calc.number)
+    figures = tuple((name, row) for (number, name), row in package.figures.items() if number == calc.number)
+    return (calc, tuple(c for c in package.calcs if c.number in feeders), figures, marks)
 
 
 def _images(package: PackageInput) -> Iterator[tuple[str, FilePage]]:

@@ -11,19 +11,34 @@ from urllib.parse import quote
 
 from jinja2 import Environment, FileSystemLoader, StrictUndefined
 
-from calcgen.site.page import FilePage, Page
+from calcgen.site.page import FilePage, HtmlPage, Page
 
 
-def render(pages: Iterable[Page]) -> dict[str, bytes]:
+class Rendered:
+    """The bytes of pages: a page that is the same object as before is not laid out again."""
+
+    def __init__(self) -> None:
+        self._kept: dict[str, tuple[HtmlPage, bytes]] = {}
+
+    def bytes_of(self, page: HtmlPage) -> bytes:
+        """Return the bytes of a page."""
+        kept = self._kept.get(page.path)
+        if kept is None or kept[0] is not page:
+            template = _environment().get_template(page.template)
+            text = template.render(page=page, frame=page.frame, root=page.root, content=page.content)
+            kept = self._kept[page.path] = (page, text.encode())
+        return kept[1]
+
+
+def render(pages: Iterable[Page], rendered_before: Rendered | None = None) -> dict[str, bytes]:
     """Return the contents of a package by path: its pages, its files, and the shared assets."""
     rendered = dict(_assets())
+    before = rendered_before or Rendered()
     for page in pages:
         if isinstance(page, FilePage):
             rendered[page.path] = page.content
         else:
-            template = _environment().get_template(page.template)
-            text = template.render(page=page, frame=page.frame, root=page.root, content=page.content)
-            rendered[page.path] = text.encode()
+            rendered[page.path] = before.bytes_of(page)
     return rendered
 
 

@@ -4,8 +4,6 @@ from __future__ import annotations
 
 from xml.etree import ElementTree as ET
 
-from latex2mathml.converter import convert
-
 _NAMESPACE = "{http://www.w3.org/1998/Math/MathML}"
 ET.register_namespace("", _NAMESPACE.strip("{}"))
 _ELEMENTS = frozenset(
@@ -81,6 +79,8 @@ def mathml_of(tex: str, *, block: bool) -> str | None:
 
     Elements and attributes outside mathematics, such as the target of `\href`, are left out.
     """
+    from latex2mathml.converter import convert  # here, since few calcs hold TeX and it loads slowly
+
     try:
         root = ET.fromstring(convert(tex, display="block" if block else "inline"))  # noqa: S314 - our own text
     except Exception:  # noqa: BLE001, RUF100 - the converter raises whatever it stumbles over
