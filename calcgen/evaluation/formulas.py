@@ -6,16 +6,14 @@ import math
 from collections.abc import Callable
 from dataclasses import dataclass, replace
 
-from calcgen.evaluation.results import Operand, Plain
+from calcgen.evaluation.results import Plain
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import (
     Binary,
     Call,
-    Cases,
     Comparison,
     Condition,
     Expression,
-    Formula,
     Logic,
     Name,
     Number,
@@ -37,44 +35,6 @@ _COMPARE: dict[str, Callable[[float, float], bool]] = {
     "==": lambda a, b: a == b,
     "!=": lambda a, b: a != b,
 }
-
-
-def evaluate(formula: Formula, scope: Scope) -> tuple[Plain | None, int | None]:
-    """Return the value of a formula and the index of the case taken.
-
-    Every case is evaluated, so that its names and dimensions are checked even where it is not taken;
-    arithmetic faults (a root of a negative number) count only in the case that is.
-    """
-    if not isinstance(formula, Cases):
-        return Evaluator(scope).value(formula), None
-    taken: int | None = None
-    value: Plain | None = None
-    dimension: object = None
-    whole = True
-    for index, branch in enumerate(formula.branches):
-        held: bool | None = True
-        if branch.condition is not None:
-            held = Evaluator(scope, quiet=taken is not None).condition(branch.condition)
-        whole = whole and (held is not None or taken is not None)
-        here = taken is None and held is True and whole
-        found = Evaluator(scope, quiet=not here).value(branch.value)
-        if here:
-            taken, value = index, found
-        if isinstance(found, Measure):
-            if dimension is not None and found.dimension != dimension:
-                scope.report.error(
-                    "cases-differ",
-                    branch.value.span,
-                    f"this case is {describe(found.dimension)}, the first one is {describe(dimension)}",  # type: ignore[arg-type]
-                    hint="all cases of a value have one dimension",
-                )
-                whole = False
-            dimension = found.dimension if dimension is None else dimension
-    if taken is None and whole:
-        scope.report.error(
-            "no-case-holds", formula.span, "no case is true here", hint="add a last case with 'otherwise'"
-        )
-    return (value if whole else None), taken
 
 
 @dataclass(frozen=True)
@@ -397,46 +357,6 @@ def with_unit(value: Plain, unit: UnitText | None, report: Report) -> Plain | No
         )
         return None
     return value.shown_in(pretty(unit.text))
-
-
-def names_in(node: Formula | Condition) -> tuple[Name, ...]:
-    """Return the names of a formula in the order written, those in arguments after their owner."""
-    match node:
-        case Name():
-            inner = (n for a in node.arguments or () for n in names_in(a))
-            return (node, *inner)
-        case Unary():
-            return names_in(node.operand)
-        case Binary() | Comparison():
-            return names_in(node.left) + names_in(node.right)
-        case Call():
-            return tuple(n for a in node.arguments for n in names_in(a))
-        case Logic():
-            return tuple(n for o in node.operands for n in names_in(o))
-        case Cases():
-            found: tuple[Name, ...] = ()
-            for branch in node.branches:
-                found += names_in(branch.value)
-                found += names_in(branch.condition) if branch.condition is not None else ()
-            return found
-        case _:
-            return ()
-
-
-def operands_of(node: Formula | Condition, scope: Scope) -> dict[str, Operand]:
-    """Return what stands for each name of a formula, by the name's text as typed.
-
-    Read after the formula was evaluated without a fault; names without a value are left out.
-    """
-    silent = Report(scope.report.source)
-    reader = Evaluator(replace(scope, report=silent), quiet=True)
-    operands: dict[str, Operand] = {}
-    for name in names_in(node):
-        value = reader.value(name)
-        if value is not None:
-            text = scope.report.source.slice(name.span).strip()
-            operands[text] = Operand(name.dotted, shown(value, scope))
-    return operands
 
 
 def shown(value: Plain, scope: Scope) -> Shown:

@@ -11,7 +11,7 @@ from calcgen.figures.dimensions import Dimension, Side
 from calcgen.figures.field import FieldDrawing, FieldMark, FieldPart
 from calcgen.figures.outline import AMERICAN, EUROCODE, AxisNames, Part
 from calcgen.figures.section import SectionDrawing
-from calcgen.figures.stress import Couple, Force, Mark, StressDrawing
+from calcgen.figures.stress_drawing import Couple, Force, Mark, StressDrawing
 from calcgen.mechanics.shapes import DimensionMark
 from calcgen.quantities.display import Shown, Style, number_text
 from calcgen.quantities.measure import from_si, magnitude_in

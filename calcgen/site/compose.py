@@ -45,7 +45,7 @@ class ConventionsView:
 
 
 class Composed:
-    """The pages of calcs by what they were composed from: one that nothing touched is the same object again."""
+    """The pages of calcs by what they were composed from: one that nothing touched is the same object."""
 
     def __init__(self) -> None:
         self._kept: dict[str, tuple[object, HtmlPage]] = {}

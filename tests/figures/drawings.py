@@ -15,7 +15,8 @@ from calcgen.figures.field import FieldDrawing, FieldMark, FieldPart, compose_fi
 from calcgen.figures.outline import AMERICAN, Part
 from calcgen.figures.picture import Picture, Width
 from calcgen.figures.section import Leader, SectionDrawing, compose_section
-from calcgen.figures.stress import Couple, Force, Mark, StressDrawing, compose_stress
+from calcgen.figures.stress import compose_stress
+from calcgen.figures.stress_drawing import Couple, Force, Mark, StressDrawing
 
 Ring = NDArray[np.float64]
 

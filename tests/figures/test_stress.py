@@ -3,7 +3,8 @@
 import pytest
 
 from calcgen.figures.picture import CHAIN, WIDTHS, Label, Picture, Shape, Width, label_boxes
-from calcgen.figures.stress import FACE_NOTE, StressDrawing, compose_stress
+from calcgen.figures.stress import FACE_NOTE, compose_stress
+from calcgen.figures.stress_drawing import StressDrawing
 from tests.figures.drawings import (
     HOGGING,
     MOSTLY_AXIAL,
