@@ -114,8 +114,9 @@ class StressPlane:
         """The line of zero stress, inside the section or not; None where the stress is uniform."""
         if self.uniform:
             return None
-        square = self.g_x**2 + self.g_y**2
-        to_x, to_y = -self.sigma_0 * self.g_x / square, -self.sigma_0 * self.g_y / square
+        steepest = math.hypot(self.g_x, self.g_y)  # a sum of squares would vanish for the smallest forces
+        distance = -self.sigma_0 / steepest
+        to_x, to_y = distance * (self.g_x / steepest), distance * (self.g_y / steepest)
         along = math.atan2(-self.g_x + 0.0, self.g_y)
         if along <= -0.5 * math.pi:
             along += math.pi

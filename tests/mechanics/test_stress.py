@@ -4,7 +4,7 @@ import math
 
 import numpy as np
 import pytest
-from hypothesis import given, settings
+from hypothesis import example, given, settings
 from hypothesis import strategies as st
 
 from calcgen.mechanics.outline import Outline, outline
@@ -210,6 +210,7 @@ def test_angle_of_the_neutral_axis(moment: float, lateral: float, degrees: float
 
 
 @given(outlines(), forces)
+@example(circle(d=1.0).outline, Forces(M_lat=5e-167))  # its square is no number any more
 @settings(max_examples=60, deadline=None)
 def test_stress_vanishes_along_the_neutral_axis(part: Outline, applied: Forces) -> None:
     plane = elastic_stress(section_properties(part), applied)
