@@ -269,3 +269,8 @@ def test_an_unrestrained_rolled_angle_bends_by_one_consistent_set_of_values() ->
     w, v = (calc.values[n][0].si for n in ("w", "v"))  # type: ignore[union-attr]
     assert w == pytest.approx(factor * own.I_v, rel=1e-9)  # P·L³/(3E) times the inverse of the matrix
     assert v == pytest.approx(factor * own.I_hv, rel=1e-9)
+
+
+def test_a_fault_of_the_spans_hides_no_fault_of_the_section() -> None:
+    calc = beam("span = 0 m", "section = mian", "E = 3 kN", "load G uniform 1 kN/m")
+    assert codes(calc) == ["not-positive", "not-a-section", "wrong-dimension"]

@@ -10,7 +10,7 @@ from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.blocks.beam_loads import loads_of
 from calcgen.evaluation.blocks.beam_stiffness import modulus_of, properties_of, stiffness_of
 from calcgen.evaluation.blocks.beam_supports import hinges_of, supports_of
-from calcgen.evaluation.blocks.section import SectionThing
+from calcgen.evaluation.blocks.section import SectionThing, section_named
 from calcgen.evaluation.formulas import Evaluator
 from calcgen.evaluation.results import LoadRow
 from calcgen.evaluation.scope import Scope
@@ -54,6 +54,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
     lines = Lines(block, scope)
     spans = _spans(lines)
     if spans is None:
+        _read_what_needs_no_length(lines)
         return None
     lines.length = sum(spans)
     settings = _settings(lines)
@@ -91,6 +92,15 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         is_restrained=is_restrained,
         spans=spans,
     )
+
+
+def _read_what_needs_no_length(lines: Lines) -> None:
+    """Report the faults of the sections and the modulus of a beam whose spans are at fault."""
+    for setting in lines.of(BeamSetting):
+        if setting.key.name == "section":
+            section_named(setting.value, lines.scope)
+        elif setting.key.name == "E":
+            modulus_of(lines, setting)
 
 
 def _spans(lines: Lines) -> tuple[float, ...] | None:
