@@ -196,5 +196,11 @@ _BASE_SYMBOLS: Mapping[str, str] = {"[length]": "m", "[mass]": "kg", "[time]": "
 
 
 def _base_unit(dimension: Dimension) -> str:
-    parts = [f"{_BASE_SYMBOLS[name]}{'' if power == 1 else _superscript(power)}" for name, power in dimension]
-    return "·".join(parts)
+    return "·".join(f"{_BASE_SYMBOLS[name]}{_raised(power)}" for name, power in dimension)
+
+
+def _raised(power: float) -> str:
+    """Return an exponent as written behind a unit; one that is not whole has no superscript of its own."""
+    if power == 1:
+        return ""
+    return _superscript(power) if isinstance(power, int) else f"^{power!r}"

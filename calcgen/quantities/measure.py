@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import math
+import re
 from dataclasses import dataclass
 from functools import cache
 from typing import TypeAlias
@@ -19,7 +20,7 @@ Quantity: TypeAlias = PlainQuantity[float]
 Dimension: TypeAlias = tuple[tuple[str, int | float], ...]
 """Exponents of the base dimensions, sorted, without zeros: (('[length]', 1),)."""
 
-UnitFactors: TypeAlias = tuple[tuple[str, int], ...]
+UnitFactors: TypeAlias = tuple[tuple[str, float], ...]
 """Symbols of the closed list with their exponents, in the order written."""
 
 
@@ -125,22 +126,27 @@ _TO_SUPERSCRIPTS = str.maketrans("0123456789-", "⁰¹²³⁴⁵⁶⁷⁸⁹⁻"
 _SUPERSCRIPTS = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻", "0123456789-")
 
 
+_BETWEEN = re.compile(r"·|-(?=[^\d.])")  # a hyphen before a symbol joins; one before digits is a sign
+_FACTOR = re.compile(r"([^\d^⁰¹²³⁴⁵⁶⁷⁸⁹⁻.]+)(?:([⁰¹²³⁴⁵⁶⁷⁸⁹⁻]+)|\^(-?\d*\.?\d+(?:e-?\d+)?))?")
+
+
 @cache
 def unit_factors(unit: str) -> UnitFactors:
-    """Split a unit in the program's own form (`kN·m/m`, `kip-ft`, `mm⁴`) into symbols and exponents.
+    """Split a unit in the program's own form into symbols and exponents: `kN·m/m`, `kip-ft`, `mm⁴`, `kg^0.5`.
 
     Raises
     ------
     ValueError
         When a symbol is not in the closed list.
     """
-    factors: list[tuple[str, int]] = []
+    factors: list[tuple[str, float]] = []
     for sign, part in zip([1] + [-1] * unit.count("/"), unit.split("/"), strict=True):
-        for item in part.replace("-", "·").split("·"):
-            symbol = item.rstrip("⁰¹²³⁴⁵⁶⁷⁸⁹⁻")
-            power = item[len(symbol) :].translate(_SUPERSCRIPTS)
-            if symbol in SYMBOLS:
-                factors.append((symbol, sign * int(power or 1)))
+        for item in _BETWEEN.split(part):
+            match = _FACTOR.fullmatch(item)
+            if match and match[1] in SYMBOLS:
+                raised = match[2].translate(_SUPERSCRIPTS) if match[2] else match[3] or "1"
+                power = float(raised)
+                factors.append((match[1], sign * (int(power) if power.is_integer() else power)))
             elif item not in ("", "1"):
                 raise ValueError(f"unknown unit {item!r} in {unit!r}")
     return tuple(factors)

@@ -133,6 +133,7 @@ def test_every_symbol_of_the_list_is_a_unit(symbol: str) -> None:
 def test_unit_texts() -> None:
     assert pretty("mm^4") == "mm⁴"
     assert pretty("kN/m^2") == "kN/m²"
+    assert unit_factors("kg^0.5·m^-0.5·s⁻¹") == (("kg", 0.5), ("m", -0.5), ("s", -1))
     assert unit_factors("kip-ft") == (("kip", 1), ("ft", 1))
     with pytest.raises(ValueError, match="furlong"):
         unit_factors("furlong")
