@@ -21,6 +21,7 @@ from calcgen import __version__
 
 if TYPE_CHECKING:
     from calcgen.outcome import Outcome, Request
+    from calcgen.text import Diagnostic
     from calcgen.watch import Change
 
 FAILED = 1
@@ -133,6 +134,44 @@ def watch(folder: Path, port: int, out: Path | None) -> None:
     click.echo("ended")
 
 
+@main.command()
+@click.argument("words", metavar="[PATTERN]", nargs=-1)
+@click.option(
+    "--project",
+    "folder",
+    metavar="DIR",
+    type=click.Path(path_type=Path),
+    help="Also list the office's profiles/*.csv of this project (default: the working folder, if it is one).",
+)
+def profiles(words: tuple[str, ...], folder: Path | None) -> None:
+    """List catalogued sections: the families, or the sections that PATTERN names.
+
+    In PATTERN * stands for any characters and ? for one: "IPE *", "W18x*", "ipe 2?0".
+    """
+    from calcgen.catalogues import joined_catalogue, of_outline
+    from calcgen.profiles import listing
+    from calcgen.project import load_project
+
+    here = Path() if Path("project.toml").is_file() else None
+    root = _project(folder) if folder else here
+    files, reading = load_project(root) if root else (None, ())
+    catalogue, joining = joined_catalogue(files.profiles if files else ())
+    faults = (*(d for d in reading if d.source.path.startswith("profiles/")), *joining)
+    _tell_diagnostics(faults)
+    pattern = " ".join(words)
+    found = listing.matching(catalogue, pattern) if words else ()
+    if found:
+        click.echo(listing.table(found, of_outline))
+    elif not words:
+        click.echo(listing.families(catalogue))
+    else:
+        near = ", ".join(listing.near(catalogue, pattern))
+        hint = f"the nearest are {near}" if near else f"families are {', '.join(catalogue.families)}"
+        raise click.ClickException(f"no section matches '{pattern}'; {hint}")
+    if faults:
+        sys.exit(FAILED)
+
+
 def _project(folder: Path) -> Path:
     """Return the folder of a project, or fail as wrong usage."""
     if folder.is_file() and folder.name == "project.toml":
@@ -215,13 +254,7 @@ class _progress:  # noqa: N801  a function to its callers
 
 def _tell(outcome: Outcome, *, brief: bool = False) -> None:
     """Print diagnostics on the error stream, then the standing of each calc."""
-    from calcgen.text.terminal import render
-
-    for diagnostic in outcome.diagnostics:
-        colour = "red" if diagnostic.severity == "error" else "yellow"
-        head, _, rest = render(diagnostic).partition("\n")
-        click.secho(head, fg=colour, err=True)
-        click.echo(rest, err=True)
+    _tell_diagnostics(outcome.diagnostics)
     for note in outcome.notes:
         click.echo(note, err=True)
     if brief:
@@ -231,6 +264,16 @@ def _tell(outcome: Outcome, *, brief: bool = False) -> None:
         standing = click.style(f"{calc.standing:13}", fg=_WORDS.get(calc.standing))
         ratio = f"{calc.utilisation:6.3f}" if calc.utilisation is not None else " " * 6
         click.echo(f"{calc.number:{width}}  {standing} {ratio}  {calc.title}{_governing(calc.governing)}")
+
+
+def _tell_diagnostics(diagnostics: Sequence[Diagnostic]) -> None:
+    from calcgen.text.terminal import render
+
+    for diagnostic in diagnostics:
+        colour = "red" if diagnostic.severity == "error" else "yellow"
+        head, _, rest = render(diagnostic).partition("\n")
+        click.secho(head, fg=colour, err=True)
+        click.echo(rest, err=True)
 
 
 def _governing(label: str) -> str:

@@ -9,6 +9,7 @@ from posixpath import normpath
 from urllib.parse import unquote
 
 from calcgen import __version__
+from calcgen.catalogues import joined_catalogue
 from calcgen.current import key_of
 from calcgen.evaluation.calc import Memory, Setting, evaluate_all
 from calcgen.evaluation.results import EvaluatedCalc
@@ -16,7 +17,7 @@ from calcgen.figures.illustrate import Drawn, Studio, conventions
 from calcgen.language.calc import Calc, Prose
 from calcgen.language.document import calc_from
 from calcgen.outcome import Outcome, Request, Summary
-from calcgen.profiles import Catalogue, builtin_catalogue, read_catalogue
+from calcgen.profiles import Catalogue
 from calcgen.project import Project, ProjectFiles, Reference, load_project
 from calcgen.publishing import PublishError, publish, recover
 from calcgen.quantities.display import Style
@@ -24,7 +25,7 @@ from calcgen.site.compose import Composed, compose
 from calcgen.site.facts import PackageInput, ProjectFacts, ReferenceFacts
 from calcgen.site.figure import FigureSvg
 from calcgen.site.render import Rendered, render
-from calcgen.text import Diagnostic, SourceFile, Span, error
+from calcgen.text import Diagnostic, SourceFile, error
 from calcgen.trail import (
     TRAIL,
     Changes,
@@ -184,16 +185,8 @@ def _catalogue(
 ) -> tuple[Catalogue, tuple[Diagnostic, ...]]:
     """Return the program's catalogue joined by the office's own, and the faults of the latter."""
     if sources not in workshop.catalogues:
-        catalogue = builtin_catalogue()
-        faults: list[Diagnostic] = []
-        for source in sources:
-            profiles, in_text = read_catalogue(source.path, source.text)
-            catalogue, in_joining = catalogue.joined(profiles)
-            for fault in (*in_text, *in_joining):
-                place = source.line_starts[fault.line - 1] + fault.column - 1
-                faults.append(error("catalogue", source, Span(place, place), fault.message, hint=fault.hint))
         workshop.catalogues.clear()
-        workshop.catalogues[sources] = (catalogue, tuple(faults))
+        workshop.catalogues[sources] = joined_catalogue(sources)
     return workshop.catalogues[sources]
 
 

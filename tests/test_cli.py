@@ -109,9 +109,64 @@ def test_the_same_sources_give_the_same_bytes(project: Path, tmp_path: Path) -> 
     assert first == {p.relative_to(second): p.read_bytes() for p in second.rglob("*") if p.is_file()}
 
 
+OFFICE = """\
+# axes = eurocode
+# shape = rectangle
+designation,h [mm],b [mm]
+plank 50,50,200
+plank 75,75,{}
+"""
+
+
+def test_profiles_lists_families_and_sections(tmp_path: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    monkeypatch.chdir(tmp_path)
+    listed = run("profiles")
+    assert listed.exit_code == 0
+    assert "IPE " in listed.output
+    sections = run("profiles", "ipe", "2?0")  # words are joined
+    assert sections.exit_code == 0
+    assert sections.output == run("profiles", "IPE 2?0").output
+    assert [line.split()[1] for line in sections.output.splitlines()[3:]] == ["200", "220", "240", "270"]
+    assert "about the horizontal axis y-y" in sections.output
+    manual = Path(__file__).parent.parent / "projects" / "manual" / "calcs" / "M-17-commands.md"
+    assert f"\n```\n{sections.output}```\n" in manual.read_text(encoding="utf-8")
+
+
+def test_profiles_holds_those_of_the_project(project: Path, monkeypatch: pytest.MonkeyPatch) -> None:
+    (project / "profiles").mkdir()
+    (project / "profiles" / "timber.csv").write_text(OFFICE.format(200), encoding="utf-8")
+    listed = run("profiles", "plank *", "--project", project)
+    assert listed.exit_code == 0, listed.output
+    assert "not published" in listed.output  # its properties are of the outline
+    assert "timber" in run("profiles", "--project", project).output
+    assert run("profiles", "plank *").exit_code == 1
+    monkeypatch.chdir(project)
+    assert run("profiles", "plank *").output == listed.output
+
+
+def test_profiles_lists_what_is_sound_beside_a_fault(project: Path) -> None:
+    (project / "profiles").mkdir()
+    (project / "profiles" / "timber.csv").write_text(OFFICE.format("2OO"), encoding="utf-8")
+    listed = run("profiles", "plank *", "--project", project)
+    assert listed.exit_code == 1
+    assert "profiles/timber.csv:5:13: error: '2OO' is not a number" in listed.output
+    assert "plank 50" in listed.output
+
+
+@pytest.mark.parametrize(
+    ("pattern", "hint"),
+    [("IPE 245", "the nearest are IPE 240,"), ("IPF *", "the nearest are IPE"), ("oak", "families are C,")],
+)
+def test_profiles_without_a_match_tells_what_is_near(pattern: str, hint: str) -> None:
+    result = run("profiles", pattern)
+    assert result.exit_code == 1
+    assert f"no section matches '{pattern}'; {hint}" in result.output
+
+
 @pytest.mark.parametrize(
     ("arguments", "said"),
     [
+        (["profiles", "IPE *", "--project", "no-such-folder"], "there is no folder"),
         (["biuld"], "Did you mean 'build'?"),
         (["build", "--becuase", "x"], "--because"),
         (["build", "no-such-folder"], "there is no folder"),

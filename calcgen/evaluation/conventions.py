@@ -23,7 +23,7 @@ class PropertyName:
     Attributes
     ----------
     key : its name in mechanics and catalogues.
-    eurocode, american : its name under each convention.
+    eurocode, american : its name under each convention, '' where the convention has none.
     meaning : in words, with the axis.
     kind : kind of quantity (`calcgen.quantities.display.KINDS`), 'angle' or 'number'.
     units : unit it is shown in, SI and US.
@@ -43,6 +43,8 @@ class PropertyName:
 
 _LENGTH, _AREA, _CUBE = ("mm", "in"), ("cm²", "in²"), ("cm³", "in³")
 _FOURTH, _SIXTH = ("cm⁴", "in⁴"), ("cm⁶", "in⁶")
+
+_MONOSYMMETRY = f"monosymmetry constant, bending {HORIZONTAL}, negative with the larger flange on top"
 
 PROPERTIES: tuple[PropertyName, ...] = (
     PropertyName("A", "A", "A", "area", "area", _AREA),
@@ -100,13 +102,39 @@ PROPERTIES: tuple[PropertyName, ...] = (
     PropertyName("i_1", "i_1", "r_1", "radius of gyration about principal axis 1", "length", _LENGTH),
     PropertyName("i_2", "i_2", "r_2", "radius of gyration about principal axis 2", "length", _LENGTH),
     PropertyName("I_t", "I_t", "J", "torsion constant", "second moment", _FOURTH),
-    PropertyName("I_w", "I_w", "C_w", "warping constant", "warping constant", _SIXTH),
+    PropertyName("I_w", "I_w", "C_w", "warping constant about the shear centre", "warping constant", _SIXTH),
+    PropertyName(
+        "A_v_v",
+        "A_v_z",
+        "A_w",
+        "shear area of the design standard, for a vertical shear force",
+        "area",
+        _AREA,
+    ),
+    PropertyName(
+        "A_v_h", "A_v_y", "", "shear area of the design standard, for a horizontal shear force", "area", _AREA
+    ),
+    PropertyName(
+        "A_s_v", "A_s_z", "A_s_y", "area of shear deformation, for a vertical shear force", "area", _AREA
+    ),
+    PropertyName(
+        "A_s_h", "A_s_y", "A_s_x", "area of shear deformation, for a horizontal shear force", "area", _AREA
+    ),
     PropertyName(
         "x_bar", "x_bar", "x_bar", "centroid from the section's origin, to the right", "length", _LENGTH
     ),
     PropertyName("y_bar", "y_bar", "y_bar", "centroid from the section's origin, upwards", "length", _LENGTH),
+    PropertyName(
+        "x_s", "x_s", "x_s", "shear centre from the section's origin, to the right", "length", _LENGTH
+    ),
+    PropertyName("y_s", "y_s", "y_s", "shear centre from the section's origin, upwards", "length", _LENGTH),
+    PropertyName("k_t", "k_t", "k_t", "kern from the centroid, upwards", "length", _LENGTH),
+    PropertyName("k_b", "k_b", "k_b", "kern from the centroid, downwards", "length", _LENGTH),
+    PropertyName("k_l", "k_l", "k_l", "kern from the centroid, to the left", "length", _LENGTH),
+    PropertyName("k_r", "k_r", "k_r", "kern from the centroid, to the right", "length", _LENGTH),
+    PropertyName("beta", "β", "β", _MONOSYMMETRY, "length", _LENGTH),
 )
-"""Properties in the order shown. I_t and I_w exist for catalogued sections only."""
+"""Properties in the order shown."""
 
 DIMENSIONS: dict[str, str] = {
     "h": "depth",
@@ -117,26 +145,18 @@ DIMENSIONS: dict[str, str] = {
     "t_w": "web thickness",
     "t_f": "flange thickness",
     "r": "root radius",
-    "b_t": "width of the top flange",
+    "b_t": "width at the top",
     "t_t": "thickness of the top flange",
-    "b_b": "width of the bottom flange",
+    "b_b": "width at the bottom",
     "t_b": "thickness of the bottom flange",
     "r_o": "outside corner radius",
 }
 """Dimensions of a shape that can be read as properties."""
 
-LATER: dict[Axes, frozenset[str]] = {
-    "eurocode": frozenset(
-        ["A_v_z", "A_v_y", "A_s_z", "A_s_y", "x_s", "y_s", "k_t", "k_b", "k_l", "k_r", "β"]
-    ),
-    "american": frozenset(["A_w", "A_s_y", "A_s_x", "x_s", "y_s", "k_t", "k_b", "k_l", "k_r", "β"]),
-}
-"""Properties of the language that this release does not evaluate, by convention."""
-
 
 def names(axes: Axes) -> dict[str, PropertyName]:
     """Return the properties by their names under a convention."""
-    return {p.name(axes): p for p in PROPERTIES}
+    return {p.name(axes): p for p in PROPERTIES if p.name(axes)}
 
 
 def other(axes: Axes) -> Axes:
@@ -145,7 +165,11 @@ def other(axes: Axes) -> Axes:
 
 
 def translation(name: str, axes: Axes) -> PropertyName | None:
-    """Return the property that `name` means under the other convention only."""
+    """Return the property that `name` means under the other convention only.
+
+    One that has no name under this convention is none.
+    """
     if name in names(axes):
         return None
-    return names(other(axes)).get(name)
+    found = names(other(axes)).get(name)
+    return found if found is not None and found.name(axes) else None

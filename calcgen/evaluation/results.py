@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
@@ -12,11 +12,18 @@ from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.blocks.working import Check, Derivation
 from calcgen.language.calc import Calc, FailedBlock, Prose
 from calcgen.language.nodes import Column
+from calcgen.mechanics.arrays import FloatArray, Point
 from calcgen.mechanics.beam import BeamModel, CaseSolution
-from calcgen.mechanics.outline import Outline
-from calcgen.mechanics.section import SectionProperties
+from calcgen.mechanics.combined_stress import CombinedExtremes
+from calcgen.mechanics.curved import CurvedStress
+from calcgen.mechanics.field import StressField
+from calcgen.mechanics.outline import Bounds, Outline
+from calcgen.mechanics.section import Inertia, section_properties
 from calcgen.mechanics.shapes import DimensionMark
+from calcgen.mechanics.shear import Cuts
 from calcgen.mechanics.stress import Forces, StressPlane
+from calcgen.mechanics.wall_shear import WallFlow, WallTorsion
+from calcgen.mechanics.walls import Wall, WallSection
 from calcgen.quantities.display import Shown
 from calcgen.quantities.measure import Measure
 from calcgen.text import Diagnostic, Span
@@ -127,8 +134,8 @@ class Result:
     """A named result of a block: `W_el_y`, `M_max`, `σ_max`.
 
     `meaning` is the quantity in words, with axis or sign: 'second moment of area about the horizontal axis'.
-    `place` tells where an extreme stands, '' where that says nothing; `provenance` whether a catalogue
-    published the value or the outline gave it, '' where the question does not arise.
+    `place` tells where an extreme stands, '' where that says nothing; `provenance` by which route a section's
+    value was found ('published', 'from the outline', 'finite elements'), '' for other results.
     """
 
     name: str
@@ -136,7 +143,7 @@ class Result:
     value: Measure
     shown: Shown
     place: str = ""
-    provenance: Literal["published", "outline", ""] = ""
+    provenance: str = ""
 
 
 @dataclass(frozen=True)
@@ -222,35 +229,138 @@ class Published:
 
 
 @dataclass(frozen=True)
-class SectionResult:
-    """A section.
+class SectionPart:
+    """A part of a section, as its holes leave it.
 
     Attributes
     ----------
-    shape : word of the language; designation is set for a catalogued section.
-    published : what a catalogue gives, beside the outline's own.
-    computed : properties of the outline.
-    values : the values in force in SI, published ones first, by keys neutral of convention (`I_h`).
-    results : the properties under the names of the project's axes.
-    further : the shape's dimensions by their symbols.
+    name : '' for the one shape of a section without parts.
+    shape : word of the language; designation and source are set for a catalogued one.
+    outlines : its pieces; holes can part it.
+    walls : the mid-lines of a thin-walled shape, empty where it has none or a hole cuts it.
+    material : '' where none is named.
+    factor : its modulus over the reference modulus, 1 where no modulus is given.
+    modulus, strength : of its material, Pa, where given.
+    results : its own properties, under the names of the project's axes.
     """
 
     name: str
     shape: str
     designation: str
     source: str
-    outline: Outline
+    outlines: tuple[Outline, ...]
     marks: tuple[DimensionMark, ...]
-    computed: SectionProperties
+    walls: tuple[Wall, ...]
+    material: str
+    factor: float
+    modulus: float | None
+    strength: float | None
+    results: tuple[Result, ...] = ()
+
+
+@dataclass(frozen=True)
+class BarsPart:
+    """Bars of one line: places, m, the area of each, m², and the part in which each lies ('' for none).
+
+    `factor` is their modulus over the reference modulus; `results` has their area together.
+    """
+
+    name: str
+    points: tuple[Point, ...]
+    area: float
+    diameter: float | None
+    material: str
+    factor: float
+    modulus: float | None
+    strength: float | None
+    hosts: tuple[str, ...]
+    results: tuple[Result, ...] = ()
+
+
+@dataclass(frozen=True)
+class SectionResult:
+    """A section.
+
+    Attributes
+    ----------
+    shape : word of the language, '' for a section of several parts; designation is set for a catalogued one.
+    composite : whether it has several materials; areas and second moments are then transformed to the
+        reference material, and a stress of a part is its `factor` times the reference stress.
+    modulus : of the reference material, Pa, where given.
+    published : what a catalogue or its table formulas give, beside the outline's own.
+    computed : the properties of the outlines; transformed ones for a composite.
+    values : the values in force in SI, published ones first, by keys neutral of convention (`I_h`).
+    results : the properties under the names of the project's axes.
+    further : the dimensions by their symbols.
+    absent : names of properties that this section does not have -> the reason.
+    notes : what a checker should know: separate pieces, parts cut by holes.
+    lines : each line as typed, with its second and third column and its number.
+    """
+
+    name: str
+    shape: str
+    designation: str
+    source: str
+    parts: tuple[SectionPart, ...]
+    bars: tuple[BarsPart, ...]
+    composite: bool
+    reference_material: str
+    modulus: float | None
+    computed: Inertia
     values: Mapping[str, float]
     results: tuple[Result, ...]
     further: tuple[Result, ...]
+    absent: Mapping[str, str]
     published: tuple[Published, ...]
     second_route: tuple[SecondRoute, ...]
-    note: Column
-    reference: Column
+    notes: tuple[str, ...]
+    lines: tuple[tuple[str, Column, Column, int], ...]
     line: int
     span: Span
+
+    @property
+    def owners(self) -> tuple[SectionPart | BarsPart, ...]:
+        """The parts and the bars, which have properties of their own where they have names."""
+        return (*self.parts, *self.bars)
+
+    @property
+    def area(self) -> float:
+        """The area of all that is there, m²: the one in force, or that of parts and bars, not transformed."""
+        if not self.composite:
+            return self.values["A"]
+        bare = sum(bars.area * bars.hosts.count("") for bars in self.bars)
+        return section_properties(*self.outlines).area + bare
+
+    @property
+    def outlines(self) -> tuple[Outline, ...]:
+        """The outlines of all parts."""
+        return tuple(outline for part in self.parts for outline in part.outlines)
+
+    @property
+    def marks(self) -> tuple[DimensionMark, ...]:
+        """The dimension marks of a section of one shape, or of the box around several parts."""
+        if len(self.parts) == 1:
+            return self.parts[0].marks
+        box = self.bounds
+        return (
+            DimensionMark("h", box.height, (box.left, box.bottom), (box.left, box.top), "left"),
+            DimensionMark("b", box.width, (box.left, box.bottom), (box.right, box.bottom), "bottom"),
+        )
+
+    @property
+    def bounds(self) -> Bounds:
+        """The box around all parts."""
+        boxes = [outline.bounds for outline in self.outlines]
+        return Bounds(
+            min(box.left for box in boxes),
+            min(box.bottom for box in boxes),
+            max(box.right for box in boxes),
+            max(box.top for box in boxes),
+        )
+
+    def contains(self, point: Point) -> bool:
+        """Tell whether a point, m, lies in a part or on its edge."""
+        return any(outline.contains(point) for outline in self.outlines)
 
 
 @dataclass(frozen=True)
@@ -319,23 +429,101 @@ class BeamResult:
     span: Span
 
 
+@dataclass(frozen=True, eq=False)
+class PlasticResult:
+    """What a section carries when it yields throughout, under the axial force given.
+
+    Attributes
+    ----------
+    M, M_lat : plastic moments, N·m, in the proportion and with the signs of those given.
+    M_el : moment at first yield without axial force, N·m, in the same proportion; None where a part carries
+        no tension, so that nothing is elastic throughout.
+    M_0 : the plastic moment without axial force, N·m, never negative.
+    utilisation : the moment given over the plastic one.
+    field : the stress blocks. interaction : axial force, N, and moment, N·m, (n, 2), around the limit about
+        the axis of the moment given; None where both moments act.
+    """
+
+    M: float
+    M_lat: float
+    M_el: float | None
+    M_0: float
+    utilisation: float
+    field: StressField
+    forces: Forces
+    interaction: FloatArray | None
+
+
+@dataclass(frozen=True, eq=False)
+class ShearResult:
+    """Shear stress under V, V_lat and T.
+
+    Attributes
+    ----------
+    level, upright : flow across level and upright cuts.
+    walls : mid-line properties of a thin-walled shape, and `flow` and `torsion` along it; None for others.
+    torsion_method : how the stress of the torque was found, '' without one.
+    largest_torsion : stress of the torque alone, Pa, and its place, m; None where walls carry it.
+    joints : flow that the joints of each part carry, N/m; contacts : the lines along which it touches
+        others, m.
+    at : shear stress at a point, m -> Pa.
+    """
+
+    level: Cuts
+    upright: Cuts
+    walls: WallSection | None
+    flow: WallFlow | None
+    torsion: WallTorsion | None
+    torsion_method: str
+    largest_torsion: tuple[float, Point] | None
+    combined: CombinedExtremes
+    joints: Mapping[str, float]
+    contacts: Mapping[str, tuple[tuple[Point, ...], ...]]
+    at: Callable[[Point], float]
+
+
 @dataclass(frozen=True)
 class StressResult:
-    """The normal stress of a section under N, M and M_lat."""
+    """The stress of a section under given forces.
+
+    Attributes
+    ----------
+    model : word of the language.
+    forces, V, V_lat, T : in SI; forces_shown has those written, in the unit given.
+    field : normal stress; of the straight bar where `curved` is set.
+    unloaded : what an elastic unloading leaves, for the elastic-plastic model.
+    modulus : of the reference stress, Pa, None where strains are not known.
+    results : of the section; parts : of each part, line of bars and point, by its name.
+    shear : None where no shear force or torque acts.
+    """
 
     name: str
     section: SectionResult
+    model: str
     forces: Forces
+    V: float
+    V_lat: float
+    T: float
     forces_shown: Mapping[str, Shown]
-    plane: StressPlane
+    field: StressField
+    curved: CurvedStress | None
+    unloaded: StressField | None
+    plastic: PlasticResult | None
+    shear: ShearResult | None
     modulus: float | None
     results: tuple[Result, ...]
-    points: Mapping[str, tuple[float, float]]
+    parts: Mapping[str, tuple[Result, ...]]
+    points: Mapping[str, Point]
     check: CheckResult | None
     premises: tuple[Premise, ...]
     second_route: tuple[SecondRoute, ...]
     line: int
     span: Span
+
+    @property
+    def plane(self) -> StressPlane:
+        """The plane of reference stress."""
+        return self.field.plane
 
 
 Segment: TypeAlias = (

@@ -2,13 +2,25 @@
 
 from collections.abc import Iterator
 from dataclasses import dataclass
-from math import ceil, floor, hypot, log10
+from math import ceil, floor, hypot, inf, isfinite, log10
 
 import numpy as np
 
 from calcgen.figures.labels import Box, Point
-from calcgen.figures.notes import draw_note, obstacles_of
-from calcgen.figures.outline import EUROCODE, AxisNames, Part, Ring, Scale, draw_axes, draw_cross, fit
+from calcgen.figures.legend import Entry, draw_legend, legend_width
+from calcgen.figures.notes import draw_note, draw_title, obstacles_of
+from calcgen.figures.outline import (
+    EUROCODE,
+    AxisNames,
+    Bar,
+    Part,
+    Ring,
+    Scale,
+    draw_axes,
+    draw_cross,
+    fit,
+    pixels,
+)
 from calcgen.figures.picture import (
     CHAIN,
     DASH,
@@ -26,19 +38,45 @@ from calcgen.figures.picture import (
 )
 from calcgen.figures.svg import render
 
+THIN_INK = Stroke("ink", 0.9)
+LEAST_BAR = 3.0  # pixels of radius of a bar, so that filled and open can be told apart
+
 
 @dataclass(frozen=True, eq=False)
 class FieldPart:
-    """A part with its stress, `constant` + `by_x`·x + `by_y`·y, tension positive."""
+    """A part with its stress, `constant` + `by_x`·x + `by_y`·y within `low` and `high`, tension positive.
+
+    A limit is the stress at yield, or zero for what carries no tension (or no compression); where it governs
+    the part is drawn as one plain area. A part of another stiffness comes with its own plane.
+    """
 
     part: Part
     constant: float
     by_x: float
     by_y: float
+    low: float = -inf
+    high: float = inf
 
-    def at(self, x: float, y: float) -> float:
-        """Give the stress at a point of the section."""
+    def plane(self, x: float, y: float) -> float:
+        """Give the stress at a point of the section as if it had no limits."""
         return self.constant + self.by_x * x + self.by_y * y
+
+    @property
+    def extremes(self) -> tuple[float, float]:
+        """The smallest and the largest stress of the part, which lie on its outline."""
+        points = np.vstack(self.part.rings)
+        plane = self.constant + points @ [self.by_x, self.by_y]
+        stresses = np.clip([plane.min(), plane.max()], self.low, self.high)
+        return float(stresses[0]), float(stresses[1])
+
+
+@dataclass(frozen=True)
+class FieldBar:
+    """A round bar with its stress; the label is written beside it, unless it is empty."""
+
+    bar: Bar
+    value: float
+    label: str = ""
 
 
 @dataclass(frozen=True)
@@ -55,7 +93,10 @@ class FieldDrawing:
     """Normal stress that varies both ways over a section, x right and y up.
 
     `neutral_axis_label` says where the neutral axis lies; it is drawn where it crosses the section.
-    `actions` are sentences such as 'M = 30.0 kN·m about y–y: tension at the bottom'.
+    `actions` are sentences such as 'M = 30.0 kN·m about y–y: tension at the bottom'. `bars` are drawn filled
+    in tension and as rings in compression. `kern` is the outline of the kern, empty where it is not shown.
+    `limits_label` says what the plain areas are where a part is at a limit: 'plain areas: at yield, ±235
+    MPa'.
     """
 
     ident: str
@@ -67,6 +108,9 @@ class FieldDrawing:
     axes: AxisNames = EUROCODE
     neutral_axis_label: str = "neutral axis"
     actions: tuple[str, ...] = ()
+    bars: tuple[FieldBar, ...] = ()
+    kern: tuple[Point, ...] = ()
+    limits_label: str = ""
     description: str = ""
 
 
@@ -81,53 +125,95 @@ def compose_field(drawing: FieldDrawing, width: Width) -> Picture:
     parts = [field.part for field in drawing.parts]
     room = (280.0, 240.0) if width == "wide" else (WIDTHS["narrow"] - 190.0, 200.0)
     scale, box = fit(parts, *room)
-    corners = [(field, x, y) for field in drawing.parts for ring in field.part.rings for x, y in ring]
-    stresses = [field.at(x, y) for field, x, y in corners]
+    stresses = [stress for field in drawing.parts for stress in field.extremes]
     step = _round_step(max(abs(min(stresses)), abs(max(stresses))) / 5)
     for field in drawing.parts:
         _draw_part(sketch, scale, field, step)
     centre = scale.at(*drawing.centroid)
     draw_axes(sketch, box, centre, drawing.axes)
+    if drawing.kern:
+        ring = [scale.at(*point) for point in drawing.kern]
+        sketch.line([*ring, ring[0]], Stroke("ink", 1.0, DASH))
+    for bar in drawing.bars:
+        _draw_bar(sketch, scale, bar)
     draw_cross(sketch, centre, 4.0)
-    ends = _neutral_axis(drawing.parts[0], scale, box)
+    bent = next((field for field in drawing.parts if field.by_x or field.by_y), drawing.parts[0])
+    ends = _neutral_axis(bent, scale, box)
     if ends:
         sketch.line(ends, Stroke("ink", 1.3, CHAIN))
     obstacles = obstacles_of(sketch)
-    for mark in drawing.marks:
+    labelled = [FieldMark((b.bar.x, b.bar.y), b.value, b.label) for b in drawing.bars if b.label]
+    for mark in (*drawing.marks, *labelled):
         at = scale.at(*mark.point)
         text = f"{mark.label} {_word(mark.value)}".strip()
         note = Label(0, 0, text, SMALL, colour=_colour(mark.value), bold=True, halo=True)
         draw_note(sketch, note, at, box, obstacles, WIDTHS[width] - 6)
-        sketch.dot(at, 2.6, _colour(mark.value), Stroke("paper", 0.8))
+        if mark not in labelled:
+            sketch.dot(at, 2.6, _colour(mark.value), Stroke("paper", 0.8))
+    if drawing.kern:
+        name = Label(0, 0, "kern", SMALL, halo=True)
+        at = scale.at(*max(drawing.kern))
+        draw_note(sketch, name, at, box, obstacles, WIDTHS[width] - 6)
     if ends:
         name = Label(0, 0, "neutral axis", SMALL, halo=True)
         draw_note(sketch, name, max(ends), box, obstacles, WIDTHS[width] - 6)
-    sketch.label(Label((box.left + box.right) / 2, sketch.box().top - 8, drawing.title))
+    draw_title(sketch, drawing.title, (box.left + box.right) / 2, 8.0, WIDTHS[width] - 6)
     held = sketch.box()
     middle = (held.left + held.right) / 2
-    _draw_legend(sketch, drawing, (min(stresses), max(stresses)), step, middle, WIDTHS[width] - 20)
-    _draw_sentences(sketch, [drawing.neutral_axis_label, *drawing.actions], middle, WIDTHS[width] - 12)
+    _draw_legend(sketch, drawing, (min(stresses), max(stresses)), step, middle, WIDTHS[width] - 48)
+    _draw_bar_legend(sketch, drawing, middle)
+    sentences = [drawing.limits_label, drawing.neutral_axis_label, *drawing.actions]
+    _draw_sentences(sketch, list(filter(None, sentences)), middle, WIDTHS[width] - 12)
     return sketch.picture(
         f"{drawing.ident}-{width}", drawing.title, drawing.description or _describe(drawing)
     )
 
 
 def _draw_part(sketch: Sketch, scale: Scale, field: FieldPart, step: float) -> None:
-    """Draw bands of one step of stress, contours between them, dashed in compression, and the outline."""
-    rings = [scale.ring(ring) for ring in field.part.rings]
+    """Draw bands of one step of stress, contours between them, dashed in compression, and the outline.
+
+    Where the part is at a limit, the outermost band goes on, and a firmer line bounds it; what is at zero
+    because it carries no stress of that sign stays blank.
+    """
+    rings = pixels(scale, field.part)
     sketch.fill(rings, "section")
-    stresses = [field.at(x, y) for ring in field.part.rings for x, y in ring]
-    for low, high in _bands(min(stresses), max(stresses), step):
-        strip = _strip(field, scale, low, high)
+    least, most = field.extremes
+    for level, beyond in ((field.low, -inf), (field.high, inf)):
+        if level == 0.0:
+            blank = _strip(field, scale, *sorted((level, beyond)))
+            sketch.fill([blank], "paper", clip=rings)
+    for low, high in _bands(least, most, step):
+        down = -inf if low <= field.low < 0.0 else low
+        up = inf if high >= field.high > 0.0 else high
+        strip = _strip(field, scale, down, up) if (down, up) != (-inf, inf) else np.vstack(rings)
         sketch.fill([strip], _colour(low + high), opacity=_opacity(low, high, step), clip=rings)
     lines: dict[bool, list[Ring]] = {True: [], False: []}
     if hypot(field.by_x, field.by_y) > 0:
-        for level in np.arange(ceil(min(stresses) / step), floor(max(stresses) / step) + 1) * step:
-            if level:
+        for level in np.arange(ceil(least / step), floor(most / step) + 1) * step:
+            if level and field.low < level < field.high:
                 lines[bool(level > 0)].append(_strip(field, scale, level, level)[:2])
     sketch.lines(lines[True], Stroke("tension", 0.7), clip=rings)
     sketch.lines(lines[False], Stroke("compression", 0.7, DASH), clip=rings)
+    limits = [limit for limit in (field.low, field.high) if isfinite(limit) and limit in (least, most)]
+    sketch.lines([_strip(field, scale, limit, limit)[:2] for limit in limits], THIN_INK, clip=rings)
     sketch.fill(rings, None, stroke=FIRM)
+
+
+def _draw_bar(sketch: Sketch, scale: Scale, bar: FieldBar) -> None:
+    """Draw a bar filled in tension and as a ring in compression."""
+    radius = max(scale.radius(bar.bar.diameter), LEAST_BAR)
+    colour = _colour(bar.value)
+    filled = colour if bar.value > 0 else "paper"
+    sketch.dot(scale.at(bar.bar.x, bar.bar.y), radius, filled, Stroke(colour, 1.4))
+
+
+def _draw_bar_legend(sketch: Sketch, drawing: FieldDrawing, middle: float) -> None:
+    values = [bar.value for bar in drawing.bars]
+    entries = [Entry("bar in tension", "bar")] if any(value > 0 for value in values) else []
+    entries += [Entry("bar in compression", "pressed bar")] if any(value < 0 for value in values) else []
+    if entries:
+        breadth = legend_width(entries)
+        draw_legend(sketch, entries, middle - breadth / 2, sketch.box().bottom + 9, middle + breadth)
 
 
 def _bands(low: float, high: float, step: float) -> Iterator[tuple[float, float]]:
@@ -150,7 +236,7 @@ def _strip(field: FieldPart, scale: Scale, low: float, high: float) -> Ring:
     reach = float(np.ptp(points, axis=0).sum()) or 1.0
     slope = np.array([field.by_x, field.by_y])
     steepness = float(np.hypot(*slope))
-    here = field.at(*centre)
+    here = field.plane(*centre)
     if steepness * reach < 1e-9 * max(abs(here), 1e-300):  # uniform: one band covers all
         square = np.array([(-1, -1), (1, -1), (1, 1), (-1, 1)]) * reach
         return scale.ring(centre + square)

@@ -2,20 +2,32 @@
 
 from __future__ import annotations
 
+from collections.abc import Iterable
 from dataclasses import dataclass
 from typing import Literal
 
 from calcgen.evaluation.conventions import Axes
 from calcgen.evaluation.results import BeamResult, EvaluatedCalc, SectionResult, StressResult
 from calcgen.figures.adapt_beam import beam_drawings
-from calcgen.figures.adapt_section import field_drawing, section_drawing, stress_drawing
+from calcgen.figures.adapt_section import section_drawing
+from calcgen.figures.adapt_shear import (
+    flow_drawings,
+    interaction_drawing,
+    shear_drawings,
+    torsion_drawing,
+)
+from calcgen.figures.adapt_stress import field_drawing, stress_drawing
 from calcgen.figures.beam import compose_beam
 from calcgen.figures.conventions import ConventionDrawing, compose_conventions
 from calcgen.figures.field import compose_field
+from calcgen.figures.flow import compose_flow
+from calcgen.figures.interaction import compose_interaction
 from calcgen.figures.picture import Picture
 from calcgen.figures.section import compose_section
+from calcgen.figures.shear import compose_shear
 from calcgen.figures.stress import compose_stress
 from calcgen.figures.svg import render
+from calcgen.figures.torsion import compose_torsion
 from calcgen.quantities.display import Style
 
 
@@ -53,19 +65,33 @@ def illustrate(calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple
                     Figure(compose_beam(b, "wide"), compose_beam(b, "narrow"))
                     for b in beam_drawings(segment, ident, style)
                 )
-            case StressResult() if segment.plane.g_x == 0.0:
-                stress = stress_drawing(segment, ident, style)
-                figures[segment.name] = (
-                    Figure(compose_stress(stress, "wide"), compose_stress(stress, "narrow")),
-                )
             case StressResult():
-                field = field_drawing(segment, ident, axes, style)
-                figures[segment.name] = (
-                    Figure(compose_field(field, "wide"), compose_field(field, "narrow")),
-                )
+                figures[segment.name] = tuple(_of_stress(segment, ident, axes, style))
             case _:
                 pass
     return figures
+
+
+def _of_stress(stress: StressResult, ident: str, axes: Axes, style: Style) -> Iterable[Figure]:
+    """Compose normal stress, the interaction of N and M, shear, flow along walls, torsion: what there is."""
+    forces = stress.forces
+    if forces.N or forces.M or forces.M_lat or not stress.shear:
+        if stress.plane.g_x == 0.0 or stress.curved is not None:
+            depth = stress_drawing(stress, ident, style)
+            yield Figure(compose_stress(depth, "wide"), compose_stress(depth, "narrow"))
+        else:
+            field = field_drawing(stress, ident, axes, style)
+            yield Figure(compose_field(field, "wide"), compose_field(field, "narrow"))
+    limit = interaction_drawing(stress, ident, style)
+    if limit is not None:
+        yield Figure(compose_interaction(limit, "wide"), compose_interaction(limit, "narrow"))
+    for shear in shear_drawings(stress, ident, style):
+        yield Figure(compose_shear(shear, "wide"), compose_shear(shear, "narrow"))
+    for flow in flow_drawings(stress, ident, style):
+        yield Figure(compose_flow(flow, "wide"), compose_flow(flow, "narrow"))
+    torsion = torsion_drawing(stress, ident, style)
+    if torsion is not None:
+        yield Figure(compose_torsion(torsion, "wide"), compose_torsion(torsion, "narrow"))
 
 
 def conventions(axes: Axes, depth: Literal["down", "up"]) -> Figure:

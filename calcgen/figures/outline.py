@@ -9,11 +9,13 @@ import numpy as np
 from numpy.typing import NDArray
 
 from calcgen.figures.labels import Box, Point
-from calcgen.figures.picture import CHAIN, FIRM, SMALL, Label, Sketch, Stroke
+from calcgen.figures.picture import CHAIN, FIRM, SMALL, Label, Sketch, Stroke, thin
 
 Ring = NDArray[np.float64]
-Tone = Literal["plain", "hatched", "crossed", "solid"]
+Tone = Literal["plain", "hatched", "crossed", "ruled", "solid"]
 
+MANY, UNSEEN = 500, 0.1  # vertices of a ring, and the pixels within which more of them are left out
+LEAST_BAR = 1.6  # pixels of radius
 AXIS = Stroke("muted", 0.8, CHAIN)
 OVERRUN = 14.0  # of an axis beyond the outline
 
@@ -28,6 +30,15 @@ class Part:
     rings: tuple[Ring, ...]
     label: str = ""
     tone: Tone = "plain"
+
+
+@dataclass(frozen=True)
+class Bar:
+    """A round bar, drawn as a solid dot and never too small to see: its centre and its diameter."""
+
+    x: float
+    y: float
+    diameter: float
 
 
 @dataclass(frozen=True)
@@ -53,6 +64,10 @@ class Scale:
     def at(self, x: float, y: float) -> Point:
         """Give the pixel of a point of the section."""
         return self.x_0 + self.across * x, self.y_0 - self.factor * y
+
+    def radius(self, diameter: float) -> float:
+        """Give the radius in pixels of a round bar, which stays round and is never too small to see."""
+        return max(diameter / 2 * min(self.factor, self.across), LEAST_BAR)
 
     def ring(self, ring: Ring) -> Ring:
         """Give the pixels of a ring, shape (n, 2)."""
@@ -83,25 +98,50 @@ def place(
     return scale, Box(x, y, x + wide * (right - left), y + factor * (top - bottom))
 
 
+def pixels(scale: Scale, part: Part) -> list[Ring]:
+    """Rings of a part in pixels; of very many vertices only those that can be seen."""
+    rings = [scale.ring(ring) for ring in part.rings]
+    return [thin(ring, UNSEEN) if len(ring) > MANY else ring for ring in rings]
+
+
 def draw_parts(sketch: Sketch, scale: Scale, parts: Iterable[Part]) -> None:
     """Draw each part: a light fill by its tone, a firm outline."""
     for part in parts:
-        draw_tone(sketch, [scale.ring(ring) for ring in part.rings], part.tone)
+        draw_tone(sketch, pixels(scale, part), part.tone)
+
+
+def draw_bars(sketch: Sketch, scale: Scale, bars: Iterable[Bar]) -> None:
+    """Draw bars as solid dots to scale."""
+    for bar in bars:
+        sketch.dot(scale.at(bar.x, bar.y), scale.radius(bar.diameter), "ink")
 
 
 def draw_tone(sketch: Sketch, rings: Sequence[Ring], tone: Tone) -> None:
     """Fill rings given in pixels by their tone, and draw their outline."""
     sketch.fill(rings, "ink" if tone == "solid" else "section")
-    if tone in ("hatched", "crossed"):
-        points = np.vstack(rings)
-        (left, top), (right, bottom) = points.min(axis=0), points.max(axis=0)
-        rise, pitch = bottom - top, 6.0
-        starts = np.arange(np.floor((left - rise) / pitch) * pitch, right, pitch)
-        lines = [((x, bottom), (x + rise, top)) for x in starts]
-        if tone == "crossed":
-            lines += [((x, top), (x + rise, bottom)) for x in starts]
-        sketch.lines(lines, Stroke("muted", 0.6), clip=rings)
+    held = box_of(rings)
+    lines = slanted(held, 6.0) if tone in ("hatched", "crossed") else []
+    if tone == "crossed":
+        lines += slanted(held, 6.0, falling=True)
+    if tone == "ruled":
+        lines = [((held.left, y), (held.right, y)) for y in np.arange(held.top + 2.5, held.bottom, 4.0)]
+    sketch.lines(lines, Stroke("muted", 0.6), clip=rings)
     sketch.fill(rings, None, stroke=FIRM)
+
+
+def box_of(rings: Sequence[Ring]) -> Box:
+    """Give the smallest box around rings in pixels."""
+    points = np.vstack(rings)
+    (left, top), (right, bottom) = points.min(axis=0), points.max(axis=0)
+    return Box(float(left), float(top), float(right), float(bottom))
+
+
+def slanted(held: Box, pitch: float, *, falling: bool = False) -> list[tuple[Point, Point]]:
+    """Lines at 45 degrees over a box, `pitch` pixels apart; they rise to the right, or fall."""
+    rise = held.bottom - held.top
+    low, high = (held.top, held.bottom) if falling else (held.bottom, held.top)
+    starts = np.arange(np.floor((held.left - rise) / pitch) * pitch, held.right, pitch)
+    return [((float(x), low), (float(x) + rise, high)) for x in starts]
 
 
 def draw_cross(sketch: Sketch, centre: Point, reach: float = 4.5) -> None:

@@ -1,4 +1,4 @@
-"""Where edges of closed rings that are not neighbours meet; near O(n log n) for usual outlines."""
+"""Where edges of closed rings that are not neighbours meet; near O(n log n)."""
 
 from __future__ import annotations
 
@@ -6,10 +6,11 @@ import numpy as np
 from numpy.typing import NDArray
 
 from calcgen.mechanics.arrays import FloatArray
+from calcgen.mechanics.sweep import IntArray, cells
 
-IntArray = NDArray[np.intp]
-
-PAIRS_AT_ONCE = 500_000  # bounds the memory of one step to some tens of megabytes
+PAIRS_AT_ONCE = (
+    500_000  # bounds the memory of one step to some tens of megabytes; beyond it a sweep is faster
+)
 
 
 def first_contact(
@@ -28,34 +29,44 @@ def first_contact(
     The indices of the two edges, the smaller first, or None.
     """
     low, high = np.minimum(start, end) - tolerance, np.maximum(start, end) + tolerance
-    axis, order, counts = _sweep(low, high)
+
+    def first_of(left: IntArray, right: IntArray) -> tuple[int, int] | None:
+        near = ((low[left] <= high[right]) & (low[right] <= high[left])).all(axis=1)
+        near &= (follower[left] != right) & (follower[right] != left)
+        left, right = left[near], right[near]
+        met = _meet(start[left], end[left], start[right], end[right], tolerance)
+        if not met.any():
+            return None
+        pairs = np.sort(np.column_stack((left[met], right[met])), axis=1)
+        i, j = pairs[np.lexsort((pairs[:, 1], pairs[:, 0]))[0]]
+        return int(i), int(j)
+
+    order, counts = _overlaps(low, high)
     totals = np.cumsum(counts)
+    if totals[-1] > PAIRS_AT_ONCE:
+        swept = cells(start, end, follower)
+        found = first_of(swept.left, swept.right)
+        if found is not None or swept.complete:
+            return found
     first = 0
     while first < len(order):
         done = totals[first - 1] if first else 0
         last = max(first + 1, int(np.searchsorted(totals, done + PAIRS_AT_ONCE, side="right")))
-        left, right = _pairs(order, counts, first, last)
-        other = 1 - axis
-        near = (low[left, other] <= high[right, other]) & (low[right, other] <= high[left, other])
-        near &= (follower[left] != right) & (follower[right] != left)
-        left, right = left[near], right[near]
-        met = _meet(start[left], end[left], start[right], end[right], tolerance)
-        if met.any():
-            found = np.sort(np.column_stack((left[met], right[met])), axis=1)
-            i, j = found[np.lexsort((found[:, 1], found[:, 0]))[0]]
-            return int(i), int(j)
+        found = first_of(*_pairs(order, counts, first, last))
+        if found is not None:
+            return found
         first = last
     return None
 
 
-def _sweep(low: FloatArray, high: FloatArray) -> tuple[int, IntArray, IntArray]:
+def _overlaps(low: FloatArray, high: FloatArray) -> tuple[IntArray, IntArray]:
     """Sort edges along the axis on which fewer overlap; count those that each one overlaps further on."""
     sweeps = []
     for axis in (0, 1):
         order = np.argsort(low[:, axis], kind="stable")
         reach = np.searchsorted(low[order, axis], high[order, axis], side="right")
-        sweeps.append((axis, order, reach - np.arange(len(order)) - 1))
-    return min(sweeps, key=lambda sweep: int(sweep[2].sum()))
+        sweeps.append((order, reach - np.arange(len(order)) - 1))
+    return min(sweeps, key=lambda sweep: int(sweep[1].sum()))
 
 
 def _pairs(order: IntArray, counts: IntArray, first: int, last: int) -> tuple[IntArray, IntArray]:

@@ -8,10 +8,11 @@ from dataclasses import dataclass
 from functools import cached_property
 
 import numpy as np
-from numpy.typing import ArrayLike, NDArray
+from numpy.typing import ArrayLike
 
 from calcgen.mechanics.arrays import FloatArray, Point
-from calcgen.mechanics.crossings import IntArray, first_contact
+from calcgen.mechanics.crossings import first_contact
+from calcgen.mechanics.sweep import IntArray
 
 TOUCHING = 1e-12  # of the outline's size: closer than this, two points are one
 
@@ -233,26 +234,26 @@ def _require_no_contact(rings: list[FloatArray], kept: list[IntArray], tolerance
 
 def _require_holes_inside(rings: list[FloatArray]) -> None:
     """Require each hole inside the outer ring and outside the others; no two rings touch by now."""
-    firsts = np.cumsum([0, *(len(ring) for ring in rings[:-1])])
-    start = np.concatenate(rings)
-    end = np.concatenate([np.roll(ring, -1, axis=0) for ring in rings])
-    for index, hole in enumerate(rings[1:], start=1):
-        crossed = _crosses_ray(start, end, hole[0])
-        inside = np.add.reduceat(crossed.astype(np.intp), firsts) % 2 == 1
-        inside[index] = False  # of itself, on whose edge the corner lies
-        if not inside[0]:
-            raise OutlineError("has a hole outside the outer ring", index, (), (_point(hole[0]),))
-        if inside[1:].any():
-            raise OutlineError("has a hole inside another hole", index, (), (_point(hole[0]),))
+    outer, *holes = rings
+    left, bottom = np.array([hole.min(axis=0) for hole in holes]).reshape(-1, 2).T.copy()
+    right, top = np.array([hole.max(axis=0) for hole in holes]).reshape(-1, 2).T.copy()
+    for index, hole in enumerate(holes):
+        corner = hole[0]
+        if not _encloses(outer, corner):
+            raise OutlineError("has a hole outside the outer ring", index + 1, (), (_point(corner),))
+        x, y = _point(corner)
+        around = np.flatnonzero((left <= x) & (x <= right) & (bottom <= y) & (y <= top))
+        if any(_encloses(holes[other], corner) for other in around if other != index):
+            raise OutlineError("has a hole inside another hole", index + 1, (), (_point(corner),))
 
 
-def _crosses_ray(start: FloatArray, end: FloatArray, origin: FloatArray) -> NDArray[np.bool_]:
-    """Tell which edges a ray from `origin` to the right crosses."""
-    (x_0, y_0), (x_1, y_1) = start.T, end.T
-    astride = (y_0 > origin[1]) != (y_1 > origin[1])
-    rise = np.where(astride, y_1 - y_0, 1.0)
-    crossed: NDArray[np.bool_] = astride & (x_0 + (origin[1] - y_0) / rise * (x_1 - x_0) > origin[0])
-    return crossed
+def _encloses(ring: FloatArray, point: FloatArray) -> bool:
+    """Tell whether a point that is not on the ring lies inside: a ray to the right crosses it oddly often."""
+    (x_0, y_0), (x_1, y_1) = ring.T, np.roll(ring, -1, axis=0).T
+    astride = np.flatnonzero((y_0 > point[1]) != (y_1 > point[1]))
+    x_0, y_0, x_1, y_1 = (values[astride] for values in (x_0, y_0, x_1, y_1))
+    crossed = x_0 + (point[1] - y_0) / (y_1 - y_0) * (x_1 - x_0) > point[0]
+    return bool(np.count_nonzero(crossed) % 2)
 
 
 def _point(row: FloatArray) -> Point:

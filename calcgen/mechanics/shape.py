@@ -1,24 +1,28 @@
-"""A shape: its outline, sizes and dimension marks; and how one is written: a form with its parameters."""
+"""A shape: its outline, sizes, dimension marks and walls; and how one is written: a form of parameters."""
 
 from __future__ import annotations
 
 import inspect
 import math
 from collections.abc import Callable, Mapping
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import Literal, TypeAlias
 
 from calcgen.mechanics.arrays import Point
 from calcgen.mechanics.outline import Outline, exact_cos_sin
+from calcgen.mechanics.walls import Wall
 
 Side: TypeAlias = Literal["left", "right", "top", "bottom"]
 
 
 class ShapeError(ValueError):
-    """A size that makes no shape: `parameter`, its `value` (m, or a number), and the `reason` as a phrase."""
+    """A size that makes no shape: `parameter`, its `value` (m, or a number), and the `reason` as a phrase.
 
-    def __init__(self, parameter: str, value: float, reason: str) -> None:
-        self.parameter, self.value, self.reason = parameter, value, reason
+    `points` are indices of the points concerned, where the shape is given by points.
+    """
+
+    def __init__(self, parameter: str, value: float, reason: str, points: tuple[int, ...] = ()) -> None:
+        self.parameter, self.value, self.reason, self.points = parameter, value, reason, points
         super().__init__(f"{parameter} {reason}")
 
 
@@ -35,17 +39,21 @@ class DimensionMark:
 
 @dataclass(frozen=True, eq=False)
 class Shape:
-    """An outline with the sizes it was made from, by symbol, and the marks that show them."""
+    """An outline with the sizes it was made from, by symbol, and the marks that show them.
+
+    `walls` is its mid-line model where the shape is one of thin walls, and empty otherwise.
+    """
 
     outline: Outline
     dimensions: Mapping[str, float] = field(default_factory=dict)
     marks: tuple[DimensionMark, ...] = ()
+    walls: tuple[Wall, ...] = ()
 
     def placed(self, x: float = 0.0, y: float = 0.0, *, mirrored: bool = False, turned: float = 0.0) -> Shape:
         """Mirror left and right first, turn by `turned`, rad, counter-clockwise then, and place the middle.
 
-        The middle of the bounding box comes to (x, y), m. Marks go along; a turn other than by
-        quarters drops them.
+        The middle of the bounding box comes to (x, y), m. Walls and marks go along; a turn other than by
+        quarters drops the marks.
         """
         shape = _mirrored(self) if mirrored else self
         shape = _turned(shape, turned) if turned else shape
@@ -69,28 +77,28 @@ def _mirrored(shape: Shape) -> Shape:
 def _turned(shape: Shape, angle: float) -> Shape:
     turned = shape.outline.turned(angle)
     cos, sin = exact_cos_sin(angle)
-    if cos * sin != 0.0:
-        return Shape(turned, shape.dimensions)
     x, y = shape.outline.bounds.middle
     sides: tuple[Side, ...] = ("right", "top", "left", "bottom")
     quarters = round(angle / (0.5 * math.pi))
-    return mapped(
+    new = mapped(
         shape,
         turned,
         lambda p: (x + cos * (p[0] - x) - sin * (p[1] - y), y + sin * (p[0] - x) + cos * (p[1] - y)),
         lambda side: sides[(sides.index(side) + quarters) % 4],
     )
+    return new if cos * sin == 0.0 else replace(new, marks=())
 
 
 def mapped(
     shape: Shape, new: Outline, point: Callable[[Point], Point], side: Callable[[Side], Side]
 ) -> Shape:
-    """Return the shape with the outline `new` and its marks carried along by `point` and `side`."""
+    """Return the shape with the outline `new`, its marks and walls carried along by `point` and `side`."""
     marks = tuple(
         DimensionMark(mark.symbol, mark.value, point(mark.start), point(mark.end), side(mark.side))
         for mark in shape.marks
     )
-    return Shape(new, shape.dimensions, marks)
+    walls = tuple(Wall(point(wall.start), point(wall.end), wall.t) for wall in shape.walls)
+    return Shape(new, shape.dimensions, marks, walls)
 
 
 @dataclass(frozen=True)
@@ -152,11 +160,19 @@ NOTES: Mapping[str, str] = {
 }
 
 
-def form_of(build: Callable[..., Shape], note: str) -> ShapeForm:
-    """Read a form from the signature of the function that builds the shape."""
+def form_of(build: Callable[..., Shape], note: str, **notes: str) -> ShapeForm:
+    """Read a form from the signature of the function that builds the shape.
+
+    `notes` say what its parameters are where they mean something else than in other shapes.
+    """
     kinds: Mapping[str, Literal["number", "points"]] = {"slope": "number", "points": "points"}
     parameters = tuple(
-        Parameter(name, kinds.get(name, "length"), NOTES[name], parameter.default is not parameter.empty)
+        Parameter(
+            name,
+            kinds.get(name, "length"),
+            notes.get(name, NOTES[name]),
+            parameter.default is not parameter.empty,
+        )
         for name, parameter in inspect.signature(build).parameters.items()
     )
     return ShapeForm(parameters, build, note)

@@ -1,8 +1,10 @@
-"""The named shapes of sections: sizes in, outline and dimension marks out.
+"""The named shapes of sections: sizes in; outline, dimension marks and thin walls out.
 
-Each shape stands with the middle of its bounding box at (0, 0), x right and y up; only a polygon keeps the
-coordinates it is given. All sizes are lengths in m unless said otherwise; one that makes no shape raises
-ShapeError. Arcs are many short edges whose area is exact.
+Each shape stands with the middle of its bounding box at (0, 0), x right and y up; only a polygon and a strip
+keep the coordinates they are given. All sizes are lengths in m unless said otherwise; one that makes no shape
+raises ShapeError. Arcs are many short edges whose area is exact. Walls run along the middle of flanges, webs
+and legs and meet where these lines do; fillets add nothing to them, and a tapered flange counts with its mean
+thickness.
 """
 
 from __future__ import annotations
@@ -13,7 +15,8 @@ from collections.abc import Collection, Mapping, Sequence
 import numpy as np
 
 from calcgen.mechanics.arrays import Point
-from calcgen.mechanics.outline import OutlineError, outline
+from calcgen.mechanics.mid_lines import flange_walls, i_walls, walls_along, walls_around
+from calcgen.mechanics.outline import Outline, OutlineError, outline
 from calcgen.mechanics.rounding import EDGES_A_QUARTER, Corner, CornerError, rounded
 from calcgen.mechanics.shape import (
     DimensionMark,
@@ -23,8 +26,9 @@ from calcgen.mechanics.shape import (
     ShapeForm,
     canonical,
     form_of,
-    mapped,
 )
+from calcgen.mechanics.strip import strip_lines
+from calcgen.mechanics.walls import Wall
 
 __all__ = [
     "SHAPES",
@@ -72,6 +76,7 @@ def tube(*, d: float, t: float) -> Shape:
         {"d": d, "t": t},
         (_across("d", d), wall),
         EDGES_A_QUARTER_OF_A_CIRCLE,
+        walls=walls_around(rounded(_rectangle(d - t, d - t, 0.5 * (d - t))), t),
     )
 
 
@@ -96,6 +101,7 @@ def box(*, b: float, h: float, t: float, r_o: float = 0.0, r_i: float | None = N
         [_rectangle(b, h, r_o), _rectangle(b - 2.0 * t, h - 2.0 * t, inner)],
         {"b": b, "h": h, "t": t, "r_o": r_o, "r_i": inner},
         (*_overall(b, h), wall),
+        walls=walls_around(rounded(_rectangle(b - t, h - t, 0.5 * (r_o + inner))), t),
     )
 
 
@@ -125,7 +131,8 @@ def i_shape(
     left = [(-x, y, radius) for x, y, radius in reversed(right)]
     marks = (*_overall(b, h), _web(t_w), _flange("t_f", t_f, x_f if slope else e, top - t_f))
     sizes = {"h": h, "b": b, "t_w": t_w, "t_f": t_f, "r": r, "slope": slope, "r_toe": r_toe}
-    return _rings([[*right, *left]], sizes, marks)
+    mean = 0.5 * (tip + root)
+    return _rings([[*right, *left]], sizes, marks, walls=i_walls(h, (b, mean), (b, mean), t_w))
 
 
 def unequal_i_shape(
@@ -155,7 +162,7 @@ def unequal_i_shape(
         _flange("t_b", t_b, 0.5 * b_b, -top),
     )
     sizes = {"h": h, "b_t": b_t, "t_t": t_t, "b_b": b_b, "t_b": t_b, "t_w": t_w, "r": r}
-    return _rings([[*right, *left]], sizes, marks)
+    return _rings([[*right, *left]], sizes, marks, walls=i_walls(h, (b_t, t_t), (b_b, t_b), t_w))
 
 
 def channel(
@@ -185,7 +192,14 @@ def channel(
     web = DimensionMark("t_w", t_w, (-e, 0.0), (-e + t_w, 0.0), "right")
     marks = (*_overall(b, h), web, _flange("t_f", t_f, x_f - e if slope else e, top - t_f))
     sizes = {"h": h, "b": b, "t_w": t_w, "t_f": t_f, "r": r, "slope": slope, "r_toe": r_toe}
-    return _rings([[*lower, *upper]], sizes, marks)
+    mean = 0.5 * (tip + root)
+    x, y = -e + 0.5 * t_w, top - 0.5 * mean
+    walls = (
+        Wall((e, -y), (x, -y), mean),
+        Wall((x, -y), (x, y), t_w),
+        Wall((x, y), (e, y), mean),
+    )
+    return _rings([[*lower, *upper]], sizes, marks, walls=walls)
 
 
 def tee(*, h: float, b: float, t_w: float, t_f: float, r: float = 0.0) -> Shape:
@@ -203,7 +217,9 @@ def tee(*, h: float, b: float, t_w: float, t_f: float, r: float = 0.0) -> Shape:
         _web(t_w),
         _flange("t_f", t_f, e, top - t_f),
     )
-    return _rings([[*right, *left]], {"h": h, "b": b, "t_w": t_w, "t_f": t_f, "r": r}, marks)
+    y = top - 0.5 * t_f
+    walls = (Wall((0.0, -top), (0.0, y), t_w), *flange_walls(b, t_f, y))
+    return _rings([[*right, *left]], {"h": h, "b": b, "t_w": t_w, "t_f": t_f, "r": r}, marks, walls=walls)
 
 
 def angle(*, h: float, b: float, t: float, r_1: float = 0.0, r_2: float = 0.0) -> Shape:
@@ -221,7 +237,9 @@ def angle(*, h: float, b: float, t: float, r_1: float = 0.0, r_2: float = 0.0) -
         (-e, top, 0.0),
     ]
     marks = (*_overall(b, h), DimensionMark("t", t, (e, -top), (e, -top + t), "right"))
-    return _rings([ring], {"h": h, "b": b, "t": t, "r_1": r_1, "r_2": r_2}, marks)
+    heel = (-e + 0.5 * t, -top + 0.5 * t)
+    walls = walls_along([(e, heel[1]), heel, (heel[0], top)], t)
+    return _rings([ring], {"h": h, "b": b, "t": t, "r_1": r_1, "r_2": r_2}, marks, walls=walls)
 
 
 def zed(*, h: float, b: float, t: float) -> Shape:
@@ -237,7 +255,9 @@ def zed(*, h: float, b: float, t: float) -> Shape:
         DimensionMark("b", b, (-w, -top), (e, -top), "bottom"),
         _web(t, "t"),
     )
-    return _rings([[*half, *other]], {"h": h, "b": b, "t": t}, marks)
+    y = top - 0.5 * t
+    walls = walls_along([(e, -y), (0.0, -y), (0.0, y), (-e, y)], t)
+    return _rings([[*half, *other]], {"h": h, "b": b, "t": t}, marks, walls=walls)
 
 
 def trapezium(*, b_t: float, b_b: float, h: float) -> Shape:
@@ -267,10 +287,29 @@ def polygon(*, points: Sequence[Point]) -> Shape:
         When the corners bound no section.
     """
     ring = outline(points)
-    b, h = ring.bounds.width, ring.bounds.height
-    x, y = ring.bounds.middle
-    centred = Shape(ring.placed(0.0, 0.0), {"b": b, "h": h}, _overall(b, h))
-    return mapped(centred, ring, lambda point: (point[0] + x, point[1] + y), lambda side: side)
+    return Shape(ring, {"b": ring.bounds.width, "h": ring.bounds.height}, _around_it(ring))
+
+
+def strip(*, t: float, r: float = 0.0, points: Sequence[Point]) -> Shape:
+    """Strip of thickness `t` along a centreline, bent with the inside radius `r`; it stays where it is given.
+
+    `points` are the ends of the centreline and, between them, the corners where its straight parts would
+    meet, m. The outside radius of a bend is r + t; without a radius corners are mitred. Ends are cut square.
+    A centreline that returns to its first point is a closed section, bent there too.
+
+    Raises
+    ------
+    ShapeError
+        For points that make no centreline, bends that do not fit between their neighbours, and walls that
+        cross or touch; `points` of the error are the points concerned.
+    """
+    _positive(t=t)
+    _not_negative(r=r)
+    lines = strip_lines(points, t, r)
+    ring = lines.outline
+    mark = tuple(DimensionMark("t", t, start, end, "right") for start, end in lines.across)
+    sizes = {"t": t, "r": r, "b": ring.bounds.width, "h": ring.bounds.height}
+    return Shape(ring, sizes, (*_around_it(ring), *mark), walls_along(lines.mid_line.tolist(), t))
 
 
 def _rings(
@@ -278,6 +317,7 @@ def _rings(
     sizes: Mapping[str, float],
     marks: tuple[DimensionMark, ...],
     edges_a_quarter: int = EDGES_A_QUARTER,
+    walls: tuple[Wall, ...] = (),
 ) -> Shape:
     """Round the corners of the outer ring and the holes; name the radius that does not fit."""
     points = []
@@ -289,7 +329,7 @@ def _rings(
             symbol = next(s for s, size in sizes.items() if s.startswith("r") and size == radius)
             raise ShapeError(symbol, radius, "does not fit between its neighbours") from error
     try:
-        return Shape(outline(points[0], points[1:]), sizes, marks)
+        return Shape(outline(points[0], points[1:]), sizes, marks, walls)
     except OutlineError as error:  # sizes so far apart that they vanish beside each other
         symbol, value = min(((s, v) for s, v in sizes.items() if v > 0.0), key=lambda size: size[1])
         raise ShapeError(symbol, value, f"makes an outline that {error.reason}") from error
@@ -331,6 +371,15 @@ def _overall(b: float, h: float) -> tuple[DimensionMark, DimensionMark]:
     return _depth(h, 0.5 * b), DimensionMark("b", b, (-0.5 * b, -0.5 * h), (0.5 * b, -0.5 * h), "bottom")
 
 
+def _around_it(ring: Outline) -> tuple[DimensionMark, DimensionMark]:
+    """Overall marks of an outline wherever it stands."""
+    box_ = ring.bounds
+    return (
+        DimensionMark("h", box_.height, (box_.left, box_.bottom), (box_.left, box_.top), "left"),
+        DimensionMark("b", box_.width, (box_.left, box_.bottom), (box_.right, box_.bottom), "bottom"),
+    )
+
+
 def _across(symbol: str, d: float) -> DimensionMark:
     return DimensionMark(symbol, d, (-0.5 * d, -0.5 * d), (0.5 * d, -0.5 * d), "bottom")
 
@@ -359,6 +408,14 @@ SHAPES: Mapping[str, tuple[ShapeForm, ...]] = {
     "angle": (form_of(angle, "angle, heel bottom left"),),
     "zed": (form_of(zed, "zed, top flange to the left"),),
     "polygon": (form_of(polygon, "polygon through its corners"),),
+    "strip": (
+        form_of(
+            strip,
+            "strip of constant thickness along a centreline",
+            r="inside radius of the bends",
+            points="ends and corners of the centreline in turn",
+        ),
+    ),
 }
 
 

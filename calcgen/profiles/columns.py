@@ -42,7 +42,7 @@ SIZES: Mapping[str, tuple[Sizes, ...]] = {
 }
 SYNONYMS: Mapping[str, str] = {"d": "h", "b_f": "b"}
 TEXTS = ("designation", "source")
-STATED = frozenset({"k_des", "t_nom"})
+STATED = frozenset({"k_des", "t_nom", "y_top"})
 ZERO_ALLOWED = frozenset({"r", "r_toe", "r_1", "r_2", "r_o", "r_i", "slope"})
 
 COMMON: Mapping[str, tuple[str, Kind]] = {

@@ -11,7 +11,7 @@ from typing import Literal, TypeAlias
 Axes: TypeAlias = Literal["eurocode", "american"]
 
 _MIXED_NUMBER = re.compile(r"(\d)[ -](\d+/\d)")
-_WIDE_FLANGE = re.compile(r"he(\d+)([abm])")
+_WIDE_FLANGE = re.compile(r"he([\d*?]+)([abm])")  # the figures perhaps a pattern
 
 
 @dataclass(frozen=True)
@@ -25,7 +25,8 @@ class Profile:
     shape : the shape of the language that builds its outline.
     axes : the convention of the catalogue's own column names.
     dimensions : arguments of that shape by name, m (`slope` a plain number).
-    stated : further sizes that the table prints, m: `k_des`, the nominal wall `t_nom`.
+    stated : further sizes that the table prints, m: `k_des`, the nominal wall `t_nom`, `y_top` of tees, from
+        the outer face of the flange down to the centroid.
     published : printed properties; one that the table or the row lacks is not there. h is about the
         horizontal axis and v about the vertical one, as the profile normally stands: A, m²; I_h I_v I_1 I_2
         I_t, m⁴; W_el_h W_el_v W_pl_h W_pl_v, m³; I_w, m⁶; i_h i_v i_1 i_2, m; the centroid x_bar from the

@@ -12,6 +12,7 @@ import csv
 import math
 import re
 from collections.abc import Iterator, Mapping, Sequence
+from dataclasses import dataclass
 from difflib import get_close_matches
 from functools import cached_property
 from pathlib import PurePosixPath
@@ -60,8 +61,52 @@ def read_catalogue(name: str, text: str) -> tuple[tuple[Profile, ...], tuple[Cat
     return profiles, tuple(sorted(reading.faults, key=lambda fault: (fault.line, fault.column)))
 
 
+def index_catalogue(name: str, text: str) -> tuple[Row, ...]:
+    """List the rows of a catalogue whose text is known to be sound; each is read when it is asked for.
+
+    The designations stand in the first column, without quotes. Arguments as for `read_catalogue`; a fault is
+    raised as ValueError, here where it stands above the rows, else by the row.
+    """
+    reading = _Reading(name, text)
+    if reading.head is None:
+        raise ValueError(f"{name} is damaged: {reading.faults}")
+    return tuple(
+        Row(reading.lines[line - 1].partition(",")[0], reading.family, name, line, reading)
+        for line in reading.table[1:]
+    )
+
+
+class Row:
+    """A row of a catalogue, found by its designation and not read yet."""
+
+    def __init__(self, designation: str, family: str, file: str, line: int, reading: _Reading) -> None:
+        self.designation = designation
+        self.family = family
+        self.file = file
+        self.line = line
+        self._reading = reading
+
+    @cached_property
+    def profile(self) -> Profile:
+        """The section, read from its cells at the first use; ValueError where the row has a fault."""
+        profile = self._reading.profile(self.line)
+        if profile is None:
+            raise ValueError(f"{self.file} is damaged: {self._reading.faults}")
+        return profile
+
+
+@dataclass(frozen=True)
+class _Head:
+    """What stands above the rows of a catalogue; `tolerances` are relative, by neutral name."""
+
+    axes: Axes
+    shape: str
+    columns: tuple[Column, ...]
+    tolerances: Mapping[str, float]
+
+
 class _Reading:
-    """One pass over the text of a catalogue; collects its faults."""
+    """The text of a catalogue as it is read; collects its faults."""
 
     def __init__(self, name: str, text: str) -> None:
         self.name = name
@@ -82,20 +127,27 @@ class _Reading:
         stated, _ = self.directives.get("family", ("", 0))
         return stated or PurePosixPath(self.name).stem
 
-    def profiles(self) -> Iterator[Profile]:
-        """Yield the sections of the rows that have no fault."""
+    @cached_property
+    def head(self) -> _Head | None:
+        """What stands above the rows; None when it has a fault."""
         axes, shape = self._choice("axes", AXES), self._choice("shape", tuple(SHAPES))
         if not self.table:
             self._fault(1, "there is no header", "write one such as: designation,h [mm],b [mm],source")
         if axes is None or shape is None or not self.table:
-            return
-        header = self._header(self.table[0], shape, axes)
+            return None
+        columns = self._header(self.table[0], shape, axes)
         tolerances = self._tolerances(axes)
-        if header is None or tolerances is None:
+        if columns is None or tolerances is None:
+            return None
+        return _Head(axes, shape, columns, tolerances)
+
+    def profiles(self) -> Iterator[Profile]:
+        """Yield the sections of the rows that have no fault."""
+        if self.head is None:
             return
         lines: dict[str, int] = {}
         for line in self.table[1:]:
-            profile = self._profile(line, header, tolerances, shape, axes)
+            profile = self.profile(line)
             if profile is None:
                 continue
             first = lines.setdefault(designation_key(profile.designation), line)
@@ -196,33 +248,35 @@ class _Reading:
             return None
         return Column(part, name, unit[1])
 
-    def _profile(
-        self, line: int, header: tuple[Column, ...], stated: Mapping[str, float], shape: str, axes: Axes
-    ) -> Profile | None:
-        """Read a row; None when it has a fault."""
+    def profile(self, line: int) -> Profile | None:
+        """Read a row; None when it has a fault, or the head has one."""
+        head = self.head
+        if head is None:
+            return None
         before = len(self.faults)
         cells = self._cells(line)
-        if len(self.faults) == before and len(cells) != len(header):
-            hint = "quotes around a text with commas?" if len(cells) > len(header) else "a quote left open?"
-            self._fault(line, f"{len(cells)} cells stand under {len(header)} columns", hint)
+        wanted = len(head.columns)
+        if len(self.faults) == before and len(cells) != wanted:
+            hint = "quotes around a text with commas?" if len(cells) > wanted else "a quote left open?"
+            self._fault(line, f"{len(cells)} cells stand under {wanted} columns", hint)
         if len(self.faults) > before:
             return None
         texts: dict[str, str] = {}
         values: dict[str, dict[str, float]] = {"dimensions": {}, "stated": {}, "published": {}}
         tolerances: dict[str, float] = {}
-        for n, (column, cell) in enumerate(zip(header, cells, strict=True)):
+        for n, (column, cell) in enumerate(zip(head.columns, cells, strict=True)):
             if column.part == "text":
                 texts[column.name] = cell
             elif cell:
                 value = self._value(line, n, cell, zero_allowed=column.name in ZERO_ALLOWED)
                 values[column.part][column.name] = value * column.factor
                 if column.part == "published" and column.name in OF_OUTLINE and value > 0.0:
-                    tolerances[column.name] = max(stated[column.name], _half_unit(cell) / value)
+                    tolerances[column.name] = max(head.tolerances[column.name], _half_unit(cell) / value)
         if not texts["designation"]:
             self._fault(line, "the designation is missing")
         dimensions, k_des = values["dimensions"], values["stated"].get("k_des")
-        if missing := sizes_missing(shape, list(dimensions)):
-            self._fault(line, f"{', '.join(missing)} missing: {shape} needs it")
+        if missing := sizes_missing(head.shape, list(dimensions)):
+            self._fault(line, f"{', '.join(missing)} missing: {head.shape} needs it")
         elif k_des is not None and "t_f" in dimensions and "r" not in dimensions:
             dimensions["r"] = k_des - dimensions["t_f"]
             if dimensions["r"] < 0.0:
@@ -232,8 +286,8 @@ class _Reading:
         return Profile(
             designation=texts["designation"],
             family=self.family,
-            shape=shape,
-            axes=axes,
+            shape=head.shape,
+            axes=head.axes,
             dimensions=dimensions,
             stated=values["stated"],
             published=values["published"],

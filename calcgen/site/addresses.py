@@ -101,6 +101,8 @@ def _anchors(segment: Segment) -> Iterator[str]:
         case SectionResult():
             yield segment.name
             yield from (f"{segment.name}.{r.name}" for r in segment.results)
+            for owner in segment.owners:
+                yield from (f"{segment.name}.{owner.name}.{r.name}" for r in owner.results)
         case StressResult():
             yield segment.name
             yield from (f"{segment.name}.{r.name}" for r in segment.results)

@@ -65,11 +65,11 @@ def _calc(calc: EvaluatedCalc) -> Json:
             case WorkingResult(rows=lines):
                 values |= {row.name: _derived(row) for row in lines if isinstance(row, DerivedRow)}
             case SectionResult():
-                sections[segment.name] = _results((*segment.results, *segment.further))
+                sections[segment.name] = _section(segment)
             case BeamResult():
                 beams[segment.name] = _beam(segment)
             case StressResult():
-                stresses[segment.name] = _results(segment.results)
+                stresses[segment.name] = _stress(segment)
             case _:
                 pass
     return {
@@ -119,6 +119,23 @@ def _assumptions(calc: EvaluatedCalc) -> Json:
         if isinstance(block, AssumptionsBlock)
         for a in block.items
     ]
+
+
+def _section(section: SectionResult) -> Json:
+    """Return the properties; those of a part, or of bars, stand under its name."""
+    found = _results((*section.results, *section.further))
+    for owner in section.owners:
+        if owner.results:
+            found[owner.name] = _results(owner.results)
+    return found
+
+
+def _stress(stress: StressResult) -> Json:
+    """Return the results; those of a part, of bars or of a point as `plate.σ_max`."""
+    found = _results(stress.results)
+    for name, rows in stress.parts.items():
+        found |= {f"{name}.{key}": value for key, value in _results(rows).items()}
+    return found
 
 
 def _beam(beam: BeamResult) -> Json:

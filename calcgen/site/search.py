@@ -112,7 +112,10 @@ def _calc(calc: EvaluatedCalc, package: PackageInput) -> Iterator[Entry]:
             case WorkingResult(rows=lines):
                 yield from (_line(line, at, typed) for line in lines if not isinstance(line, FailedRow))
             case SectionResult():
-                words = f"{segment.designation} {segment.shape} {segment.source} {segment.note.text}"
+                typed_lines = " ".join(
+                    f"{text} {note.text} {ref.text}" for text, note, ref, _ in segment.lines
+                )
+                words = f"{segment.designation} {segment.source} {typed_lines}"
                 yield Entry(at(segment.name), "section", segment.name, words)
                 yield from (_result(r, at(f"{segment.name}.{r.name}"), segment.name) for r in segment.results)
                 yield from figures(segment.name)

@@ -84,6 +84,8 @@ def _block(
         case SectionResult():
             kind = "section"
             results = _results(segment.results, style)
+            for owner in segment.owners:
+                results |= {f"{owner.name}.{k}": v for k, v in _results(owner.results, style).items()}
         case BeamResult():
             kind = "beam"
             for group in segment.groups:
@@ -92,6 +94,8 @@ def _block(
         case StressResult():
             kind = "stress"
             results = _results(segment.results, style)
+            for name, rows in segment.parts.items():
+                results |= {f"{name}.{k}": v for k, v in _results(rows, style).items()}
             if segment.check is not None:
                 yield segment.check.address, _check(segment.check, f"{segment.name}: limit")
     yield segment.name, {"kind": kind, "text": text, "results": results}

@@ -2,6 +2,7 @@
 
 Cold: both demos in processes of their own, into empty folders, start included. Unchanged: the same again.
 Save to page: `watch` in a process, a number edited in one calc, until the preview serves it in the page.
+Sections: see `sections`.
 """
 
 from __future__ import annotations
@@ -15,6 +16,8 @@ import tempfile
 import time
 import urllib.request
 from pathlib import Path
+
+from tests.benchmarks import sections
 
 PROJECTS = Path(__file__).parents[2] / "projects"
 DEMOS = ("heron-lock", "mill-loft")
@@ -88,6 +91,7 @@ def main() -> None:
     )
     for name, seconds, aim in rows:
         print(f"{name:40} {seconds:7.3f} s   {seconds / start:6.2f} × the import   {aim}")  # noqa: T201
+    sections.main()
 
 
 if __name__ == "__main__":

@@ -3,7 +3,6 @@
 from dataclasses import replace
 
 import numpy as np
-from numpy.typing import NDArray
 
 from calcgen.figures.beam import BeamDrawing, Stretch, compose_beam
 from calcgen.figures.beam_diagrams import Diagram, Extreme
@@ -12,24 +11,20 @@ from calcgen.figures.beam_supports import Support
 from calcgen.figures.conventions import ConventionDrawing, compose_conventions
 from calcgen.figures.dimensions import Dimension
 from calcgen.figures.field import FieldDrawing, FieldMark, FieldPart, compose_field
+from calcgen.figures.flow import FlowDrawing, compose_flow
+from calcgen.figures.interaction import InteractionDrawing, compose_interaction
 from calcgen.figures.outline import AMERICAN, Part
 from calcgen.figures.picture import Picture, Width
 from calcgen.figures.section import Leader, SectionDrawing, compose_section
+from calcgen.figures.shear import ShearDrawing, compose_shear
 from calcgen.figures.stress import compose_stress
-from calcgen.figures.stress_drawing import Couple, Force, Mark, StressDrawing
-
-Ring = NDArray[np.float64]
-
-
-def rectangle(b: float, h: float, x: float = 0.0, y: float = 0.0) -> Ring:
-    left, right, bottom, top = x - b / 2, x + b / 2, y - h / 2, y + h / 2
-    return np.array([(left, bottom), (right, bottom), (right, top), (left, top)])
-
-
-def circle(d: float, x: float = 0.0, y: float = 0.0, *, hole: bool = False) -> Ring:
-    turns = np.linspace(0, 2 * np.pi, 48, endpoint=False)[:: -1 if hole else 1]
-    return np.column_stack([x + d / 2 * np.cos(turns), y + d / 2 * np.sin(turns)])
-
+from calcgen.figures.stress_drawing import Couple, Force, Mark, StressDrawing, StressPanel
+from calcgen.figures.torsion import TorsionDrawing, compose_torsion
+from tests.figures.interactions import INTERACTIONS
+from tests.figures.rings import circle, rectangle
+from tests.figures.section_models import FIELDS, SECTIONS
+from tests.figures.shear_models import FLOWS, SHEARS, TORSIONS
+from tests.figures.stress_models import STRESS_MODELS
 
 ANGLE = Part((np.array([(0, 0), (100, 0), (100, 12), (12, 12), (12, 150), (0, 150)], dtype=float),))
 TEE = Part(
@@ -108,8 +103,11 @@ SAGGING = StressDrawing(
     title="plate 60 × 240",
     parts=(PLATE,),
     centroid=(0, 0),
-    stress=((-120, 104.6), (120, -104.6)),
-    marks=(Mark(120, -104.6, "−104.6 MPa"), Mark(-120, 104.6, "+104.6 MPa")),
+    panels=(
+        StressPanel(
+            ((-120, 104.6), (120, -104.6)), (Mark(120, -104.6, "−104.6 MPa"), Mark(-120, 104.6, "+104.6 MPa"))
+        ),
+    ),
     neutral_axis=0.0,
     neutral_axis_label="neutral axis, at the centroid",
     moment=Couple(60.2, "M = 60.2 kN·m"),
@@ -117,8 +115,11 @@ SAGGING = StressDrawing(
 HOGGING = replace(
     SAGGING,
     ident="hogging",
-    stress=((-120, -144.6), (120, 64.6)),
-    marks=(Mark(120, 64.6, "+64.6 MPa"), Mark(-120, -144.6, "−144.6 MPa")),
+    panels=(
+        StressPanel(
+            ((-120, -144.6), (120, 64.6)), (Mark(120, 64.6, "+64.6 MPa"), Mark(-120, -144.6, "−144.6 MPa"))
+        ),
+    ),
     neutral_axis=45.9,
     neutral_axis_label="neutral axis, 45.9 mm above the centroid",
     moment=Couple(-60.2, "M = −60.2 kN·m"),
@@ -129,8 +130,11 @@ HOGGING = replace(
 MOSTLY_AXIAL = replace(
     SAGGING,
     ident="axial",
-    stress=((-120, -120.0), (120, -160.0)),
-    marks=(Mark(120, -160, "−160.0 MPa"), Mark(-120, -120, "−120.0 MPa")),
+    panels=(
+        StressPanel(
+            ((-120, -120.0), (120, -160.0)), (Mark(120, -160, "−160.0 MPa"), Mark(-120, -120, "−120.0 MPa"))
+        ),
+    ),
     neutral_axis=None,
     neutral_axis_label="neutral axis outside the section: 840 mm below the centroid",
     moment=Couple(11.5, "M = 11.5 kN·m"),
@@ -139,8 +143,7 @@ MOSTLY_AXIAL = replace(
 PURE_AXIAL = replace(
     MOSTLY_AXIAL,
     ident="pure",
-    stress=((-120, 80.0), (120, 80.0)),
-    marks=(Mark(120, 80, "+80.0 MPa"),),
+    panels=(StressPanel(((-120, 80.0), (120, 80.0)), (Mark(120, 80, "+80.0 MPa"),)),),
     neutral_axis_label="no neutral axis: the stress is uniform",
     moment=None,
     forces=(Force(0, 1152, "N = 1152 kN"),),
@@ -148,15 +151,17 @@ PURE_AXIAL = replace(
 PURE_COMPRESSION = replace(
     PURE_AXIAL,
     ident="pressed",
-    stress=((-120, -80.0), (120, -80.0)),
-    marks=(Mark(120, -80, "−80.0 MPa"), Mark(-120, -80, "−80.0 MPa")),
+    panels=(
+        StressPanel(
+            ((-120, -80.0), (120, -80.0)), (Mark(120, -80, "−80.0 MPa"), Mark(-120, -80, "−80.0 MPa"))
+        ),
+    ),
     forces=(Force(0, -1152, "N = −1152 kN"),),
 )
 NO_STRESS = replace(
     PURE_AXIAL,
     ident="none",
-    stress=((-120, 0.0), (120, 0.0)),
-    marks=(Mark(120, 0.0, "0 MPa"),),
+    panels=(StressPanel(((-120, 0.0), (120, 0.0)), (Mark(120, 0.0, "0 MPa"),)),),
     neutral_axis_label="no stress",
     forces=(),
 )
@@ -164,8 +169,12 @@ PLASTIC = replace(
     SAGGING,
     ident="plastic",
     parts=(Part((rectangle(2000, 12),)),),
-    stress=((-6, 235.0), (0, 235.0), (0, -235.0), (6, -235.0)),
-    marks=(Mark(6, -235, "−235 MPa"), Mark(-6, 235, "+235 MPa")),
+    panels=(
+        StressPanel(
+            ((-6, 235.0), (0, 235.0), (0, -235.0), (6, -235.0)),
+            (Mark(6, -235, "−235 MPa"), Mark(-6, 235, "+235 MPa")),
+        ),
+    ),
     moment=Couple(16.9, "M = 16.9 kN·m"),
     note="Plastic: the stress is at yield over the whole depth.",
 )
@@ -175,8 +184,9 @@ UNEVEN = replace(
     title="tee 200 × 200 × 12",
     parts=(TEE,),
     centroid=(0, 145.5),
-    stress=((0, 187.1), (200, -7.4)),
-    marks=(Mark(200, -7.4, "−7.4 MPa"), Mark(0, 187.1, "+187.1 MPa")),
+    panels=(
+        StressPanel(((0, 187.1), (200, -7.4)), (Mark(200, -7.4, "−7.4 MPa"), Mark(0, 187.1, "+187.1 MPa"))),
+    ),
     neutral_axis=192.4,
     neutral_axis_label="neutral axis, 46.8 mm above the centroid",
     moment=Couple(17.8, "M = 17.8 kN·m"),
@@ -188,12 +198,16 @@ TIMBER_ON_STEEL = replace(  # E = 11 GPa on 210 GPa: the stress jumps at the joi
     title="timber on steel",
     parts=(Part((rectangle(100, 200, 0, 110),), "timber"), Part((rectangle(100, 10, 0, 5),), "steel")),
     centroid=(0, 58.7),
-    stress=((0, 218.0), (10, 180.8), (10, 9.5), (210, -29.4)),
-    marks=(
-        Mark(210, -29.4, "−29.4 MPa"),
-        Mark(10, 9.5, "+9.5 MPa"),
-        Mark(10, 180.8, "+180.8 MPa"),
-        Mark(0, 218.0, "+218.0 MPa"),
+    panels=(
+        StressPanel(
+            ((0, 218.0), (10, 180.8), (10, 9.5), (210, -29.4)),
+            (
+                Mark(210, -29.4, "−29.4 MPa"),
+                Mark(10, 9.5, "+9.5 MPa"),
+                Mark(10, 180.8, "+180.8 MPa"),
+                Mark(0, 218.0, "+218.0 MPa"),
+            ),
+        ),
     ),
     neutral_axis=58.7,
     moment=Couple(33.93, "M = 33.93 kN·m"),
@@ -204,14 +218,18 @@ LOCKED_IN = replace(
     SAGGING,
     ident="locked",
     title="welded plates",
-    stress=((-120, -60.0), (-40, 20.0), (-40, -35.0), (60, -35.0), (60, 90.0), (120, 30.0)),
-    marks=(
-        Mark(120, 30.0, "+30.0 MPa"),
-        Mark(60, 90.0, "+90.0 MPa"),
-        Mark(60, -35.0, "−35.0 MPa"),
-        Mark(-40, -35.0, "−35.0 MPa"),
-        Mark(-40, 20.0, "+20.0 MPa"),
-        Mark(-120, -60.0, "−60.0 MPa"),
+    panels=(
+        StressPanel(
+            ((-120, -60.0), (-40, 20.0), (-40, -35.0), (60, -35.0), (60, 90.0), (120, 30.0)),
+            (
+                Mark(120, 30.0, "+30.0 MPa"),
+                Mark(60, 90.0, "+90.0 MPa"),
+                Mark(60, -35.0, "−35.0 MPa"),
+                Mark(-40, -35.0, "−35.0 MPa"),
+                Mark(-40, 20.0, "+20.0 MPa"),
+                Mark(-120, -60.0, "−60.0 MPa"),
+            ),
+        ),
     ),
     neutral_axis=None,
     neutral_axis_label="more than one zero of stress",
@@ -221,8 +239,12 @@ LOCKED_IN = replace(
 HUGE = replace(
     SAGGING,
     ident="huge",
-    stress=((-120, 1e12), (120, -1e12)),
-    marks=(Mark(120, -1e12, "−1 000 000 000 000.0 N/mm²"), Mark(-120, 1e12, "+1 000 000 000 000.0 N/mm²")),
+    panels=(
+        StressPanel(
+            ((-120, 1e12), (120, -1e12)),
+            (Mark(120, -1e12, "−1 000 000 000 000.0 N/mm²"), Mark(-120, 1e12, "+1 000 000 000 000.0 N/mm²")),
+        ),
+    ),
     edges=("left", "right"),
 )
 
@@ -382,7 +404,17 @@ def long_labels() -> BeamDrawing:
     )
 
 
-Drawing = SectionDrawing | StressDrawing | FieldDrawing | BeamDrawing | ConventionDrawing
+Drawing = (
+    SectionDrawing
+    | StressDrawing
+    | ShearDrawing
+    | FlowDrawing
+    | TorsionDrawing
+    | InteractionDrawing
+    | FieldDrawing
+    | BeamDrawing
+    | ConventionDrawing
+)
 
 _NAMED: dict[str, Drawing] = {
     "angle": SECTION,
@@ -418,9 +450,13 @@ _NAMED: dict[str, Drawing] = {
     "american": ConventionDrawing("american", "Axes and signs", "american", "up"),
 }
 
+_ALL: list[tuple[str, Drawing]] = [
+    (name, drawing)
+    for named in (_NAMED, SECTIONS, FIELDS, STRESS_MODELS, SHEARS, FLOWS, TORSIONS, INTERACTIONS)
+    for name, drawing in named.items()
+]
 DRAWINGS: dict[str, Drawing] = {
-    f"{type(drawing).__name__.removesuffix('Drawing').lower()}-{name}": drawing
-    for name, drawing in _NAMED.items()
+    f"{type(drawing).__name__.removesuffix('Drawing').lower()}-{name}": drawing for name, drawing in _ALL
 }
 
 
@@ -430,6 +466,14 @@ def compose(drawing: Drawing, width: Width) -> Picture:
             return compose_section(drawing, width)
         case StressDrawing():
             return compose_stress(drawing, width)
+        case ShearDrawing():
+            return compose_shear(drawing, width)
+        case FlowDrawing():
+            return compose_flow(drawing, width)
+        case TorsionDrawing():
+            return compose_torsion(drawing, width)
+        case InteractionDrawing():
+            return compose_interaction(drawing, width)
         case FieldDrawing():
             return compose_field(drawing, width)
         case BeamDrawing():

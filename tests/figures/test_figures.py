@@ -3,6 +3,7 @@
 import re
 import subprocess
 import sys
+from functools import cache
 from itertools import combinations
 from xml.etree import ElementTree as ET
 
@@ -20,8 +21,14 @@ OVERLONG = {"section-long note", "beam-long labels"}  # text wider than a narrow
 cases = pytest.mark.parametrize(("name", "width"), [(n, w) for n in DRAWINGS for w in WIDTHS])
 
 
+@cache
 def picture_of(name: str, width: Width) -> Picture:
     return compose(DRAWINGS[name], width)
+
+
+@cache
+def svg_of(name: str, width: Width) -> str:
+    return render(picture_of(name, width))
 
 
 def parsed(text: str) -> ET.Element:
@@ -58,7 +65,7 @@ def test_a_figure_is_no_wider_than_its_place(name: str, width: Width) -> None:
 @cases
 def test_the_svg_is_well_formed_and_says_what_it_shows(name: str, width: Width) -> None:
     picture = picture_of(name, width)
-    root = parsed(render(picture))
+    root = parsed(svg_of(name, width))
     assert root.get("role") == "img"
     assert "width" not in root.attrib
     assert [len(root.findall(SVG + tag)) for tag in ("title", "desc")] == [1, 1]
@@ -70,25 +77,25 @@ def test_the_svg_is_well_formed_and_says_what_it_shows(name: str, width: Width) 
 @cases
 def test_each_label_is_one_run_of_text(name: str, width: Width) -> None:
     picture = picture_of(name, width)
-    runs = [text.text for text in parsed(render(picture)).iter(f"{SVG}text")]
+    runs = [text.text for text in parsed(svg_of(name, width)).iter(f"{SVG}text")]
     assert runs == [text for text, _ in label_boxes(picture)]
 
 
 @cases
 def test_the_same_drawing_gives_the_same_bytes(name: str, width: Width) -> None:
-    assert render(picture_of(name, width)) == render(picture_of(name, width))
+    assert render(compose(DRAWINGS[name], width)) == svg_of(name, width)
 
 
 @cases
 def test_colours_are_variables_of_the_page(name: str, width: Width) -> None:
-    text = render(picture_of(name, width))
+    text = svg_of(name, width)
     assert set(re.findall(r"#[0-9a-f]{6}", text)) <= set(COLOURS.values())
     assert re.findall(r"(?<!, )#[0-9a-f]{6}", text) == []
 
 
 def test_ids_are_unique_over_all_figures_of_a_page() -> None:
     once = {drawing.ident: name for name, drawing in DRAWINGS.items()}
-    figures = [render(picture_of(name, width)) for name in once.values() for width in WIDTHS]
+    figures = [svg_of(name, width) for name in once.values() for width in WIDTHS]
     ids = [found for text in figures for found in re.findall(r' id="([^"]*)"', text)]
     assert len(ids) == len(set(ids))
     for text in figures:

@@ -1,10 +1,13 @@
 """Stress figures: tractions, resultants and words turn and point as the mechanics has it."""
 
+from dataclasses import replace
+from itertools import pairwise
+
 import pytest
 
 from calcgen.figures.picture import CHAIN, WIDTHS, Label, Picture, Shape, Width, label_boxes
-from calcgen.figures.stress import FACE_NOTE, compose_stress
-from calcgen.figures.stress_drawing import StressDrawing
+from calcgen.figures.stress import BARS_NOTE, FACE_NOTE, PANELS_NOTE, compose_stress
+from calcgen.figures.stress_drawing import Mark, StressDrawing
 from tests.figures.drawings import (
     HOGGING,
     MOSTLY_AXIAL,
@@ -16,6 +19,7 @@ from tests.figures.drawings import (
     TIMBER_ON_STEEL,
     UNEVEN,
 )
+from tests.figures.stress_models import CRACKED, LAYERS, STRESS_MODELS
 
 places = pytest.mark.parametrize("width", list(WIDTHS))
 stressed = pytest.mark.parametrize(
@@ -68,8 +72,8 @@ def test_tension_leaves_the_face_and_compression_enters_the_body(
     assert {tail for tail, *_ in tension + compression} == {face}
     assert all(head > face for _, head, _ in tension)
     assert all(head < face for _, head, _ in compression)
-    assert bool(tension) == any(s > 0 for _, s in drawing.stress)
-    assert bool(compression) == any(s < 0 and abs(s) > 10 for _, s in drawing.stress)
+    assert bool(tension) == any(s > 0 for _, s in drawing.panels[0].profile)
+    assert bool(compression) == any(s < 0 and abs(s) > 10 for _, s in drawing.panels[0].profile)
 
 
 @places
@@ -108,7 +112,7 @@ def test_values_stand_clear_of_the_profile_and_the_section(drawing: StressDrawin
     picture = compose_stress(drawing, width)
     values = [(i.text, i.box) for i in picture.items if isinstance(i, Label) and i.bold]
     filled = [i.box for i in picture.items if isinstance(i, Shape) and i.closed and i.fill == "section"]
-    assert [text for text, _ in values] == [mark.label for mark in drawing.marks]
+    assert [text for text, _ in values] == [mark.label for mark in drawing.panels[0].marks]
     for text, box in values:
         assert not any(box.overlaps(part) for part in filled), text
         for colour in ("tension", "compression"):
@@ -136,7 +140,7 @@ def test_the_moment_turns_as_the_tractions_do(drawing: StressDrawing, sense: int
 @pytest.mark.parametrize("drawing", [SAGGING, HOGGING, MOSTLY_AXIAL], ids=lambda d: d.ident)
 def test_words_stand_beside_the_values(drawing: StressDrawing, width: Width) -> None:
     texts = [text for text, _ in label_boxes(compose_stress(drawing, width))]
-    for mark in drawing.marks:
+    for mark in drawing.panels[0].marks:
         assert texts[texts.index(mark.label) + 1] == ("tension" if mark.value > 0 else "compression")
 
 
@@ -154,3 +158,52 @@ def test_no_stress_has_no_arrows(width: Width) -> None:
     picture = compose_stress(NO_STRESS, width)
     assert arrows(picture, "tension") == arrows(picture, "compression") == []
     assert FACE_NOTE not in " ".join(text for text, _ in label_boxes(picture))
+
+
+@places
+@pytest.mark.parametrize("drawing", STRESS_MODELS.values(), ids=lambda d: d.ident)
+def test_every_panel_axis_dimension_and_comparison_is_told(drawing: StressDrawing, width: Width) -> None:
+    picture = compose_stress(drawing, width)
+    shown = " ".join(text for text, _ in label_boxes(picture))
+    for label in (*(level.label for level in drawing.levels), *(d.label for d in drawing.dimensions)):
+        assert label in shown
+    for panel in drawing.panels:
+        assert panel.title in shown
+        assert panel.compared is None or panel.compared.label in shown
+    assert (PANELS_NOTE in shown) == (len(drawing.panels) > 1)
+
+
+@places
+@pytest.mark.parametrize(("bar", "alike"), [(12.0, True), (-30.0, True), (213.0, False), (-0.5, False)])
+def test_bars_point_as_their_stress_does_and_another_scale_is_said(
+    bar: float, alike: bool, width: Width
+) -> None:
+    (panel,) = CRACKED.panels
+    bars = (Mark(-200, bar, "at the bar"),)
+    picture = compose_stress(replace(CRACKED, panels=(replace(panel, bars=bars),)), width)
+    face = face_of(picture)
+    shafts, heads = next(
+        (a, b)
+        for a, b in pairwise(picture.items)
+        if isinstance(a, Shape) and isinstance(b, Shape) and a.stroke and a.stroke.weight == 2.2
+    )
+    tip = heads.rings[0][0][0]
+    assert shafts.rings[0][0][0] == face
+    assert (tip > face) == (bar > 0)
+    shown = " ".join(text for text, _ in label_boxes(picture))
+    assert (BARS_NOTE in shown) == (not alike)
+    lobe = next(i for i in picture.items if isinstance(i, Shape) and i.fill == "compression")
+    reach = face - lobe.box.left
+    if alike:  # a bar's arrow is as long as the profile is at the same stress
+        assert abs(tip - face) == pytest.approx(reach * abs(bar) / 8.4, rel=1e-6)
+    else:
+        assert abs(tip - face) == pytest.approx(reach, rel=1e-6)
+
+
+@places
+def test_values_inside_keep_to_their_side_or_have_a_leader(width: Width) -> None:
+    picture = compose_stress(LAYERS, width)
+    bold = [i for i in picture.items if isinstance(i, Label) and i.bold]
+    assert sorted(i.text for i in bold) == sorted(mark.label for mark in LAYERS.panels[0].marks)
+    words = [i.text for i in picture.items if isinstance(i, Label) and i.text in ("tension", "compression")]
+    assert words == ["compression", "tension"] or words == ["tension", "compression"]  # at the extremes alone

@@ -7,7 +7,8 @@ import pytest
 import sympy
 from hypothesis import assume, given, settings
 from hypothesis import strategies as st
-from shapely import Polygon
+from shapely import Polygon, constrained_delaunay_triangles
+from shapely import box as box_of
 
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.outline import Outline, outline
@@ -69,6 +70,60 @@ def test_area_and_centroid_against_shapely(part: Outline) -> None:
     found = section_properties(part)
     assert found.area == pytest.approx(polygon.area, rel=1e-10)
     assert (found.x_bar, found.y_bar) == pytest.approx((polygon.centroid.x, polygon.centroid.y), abs=1e-10)
+
+
+@st.composite
+def perforated(draw: st.DrawFn) -> Outline:
+    """A star of 0.5 m with up to five star-shaped holes on a circle about its middle."""
+    radii = st.lists(st.floats(0.8, 1.0), min_size=9, max_size=20)
+    rays = 2.0 * math.pi * np.arange(5) / 5 + draw(st.floats(0.0, 1.0))
+    chosen = draw(st.sets(st.integers(0, 4), min_size=1))
+    holes = [
+        star(draw(radii), 0.05 + 0.05 * draw(st.floats(0.0, 1.0)), 0.0)
+        + 0.2 * np.array([math.cos(rays[k]), math.sin(rays[k])])
+        for k in sorted(chosen)
+    ]
+    return outline(star(draw(radii), 0.5, draw(st.floats(0.0, 6.0))), holes).moved(
+        draw(st.floats(-2.0, 2.0)), 0.3
+    )
+
+
+@given(perforated())
+@settings(max_examples=50, deadline=None)
+def test_sections_with_several_holes_against_triangles(part: Outline) -> None:
+    """Shapely cuts it into triangles; the midpoints of their sides integrate second degrees exactly."""
+    polygon = Polygon(part.exterior, part.holes)
+    triangles = np.array(
+        [piece.exterior.coords[:3] for piece in constrained_delaunay_triangles(polygon).geoms]
+    )
+    centroid = np.array([polygon.centroid.x, polygon.centroid.y])
+    middles = 0.5 * (triangles + np.roll(triangles, -1, axis=1)) - centroid
+    (ax, ay), (bx, by) = (triangles[:, 1] - triangles[:, 0]).T, (triangles[:, 2] - triangles[:, 0]).T
+    weights = np.abs(ax * by - bx * ay)[:, None] / 6.0
+    x, y = middles[..., 0], middles[..., 1]
+    found = section_properties(part)
+    assert found.area == pytest.approx(polygon.area, rel=1e-10)
+    assert (found.x_bar, found.y_bar) == pytest.approx(centroid.tolist(), abs=1e-10)
+    assert found.I_h == pytest.approx(float((weights * y * y).sum()), rel=1e-10)
+    assert found.I_v == pytest.approx(float((weights * x * x).sum()), rel=1e-10)
+    assert found.I_hv == pytest.approx(float((weights * x * y).sum()), abs=1e-10 * found.I_1)
+
+
+@given(perforated())
+@settings(max_examples=25, deadline=None)
+def test_half_area_axes_and_plastic_moduli_against_shapely(part: Outline) -> None:
+    """The polygon cut by a box below the axis: half its area, and the moments of both halves."""
+    polygon, found = Polygon(part.exterior, part.holes), section_properties(part)
+    left, bottom, right, top = polygon.bounds
+    for axis, modulus, below, arm in (
+        (found.y_p, found.W_pl_h, (left, bottom, right, found.y_p), 1),
+        (found.x_p, found.W_pl_v, (left, bottom, found.x_p, top), 0),
+    ):
+        half = polygon.intersection(box_of(*below))
+        other = polygon.difference(box_of(*below))
+        assert half.area == pytest.approx(0.5 * polygon.area, rel=1e-10)
+        arms = [abs(piece.centroid.coords[0][arm] - axis) for piece in (half, other)]
+        assert modulus == pytest.approx(half.area * arms[0] + other.area * arms[1], rel=1e-9)
 
 
 SYMBOLS = ["area", "I_h", "I_v", "I_1", "I_2", "W_el_h", "W_el_v", "W_pl_h", "W_pl_v", "Q_h", "Q_v"]

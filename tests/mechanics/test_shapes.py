@@ -2,11 +2,14 @@
 
 import math
 from collections.abc import Callable, Mapping
+from itertools import pairwise
 from typing import Any
 
 import numpy as np
 import pytest
+import shapely
 
+from calcgen.mechanics.arrays import Point
 from calcgen.mechanics.outline import OutlineError
 from calcgen.mechanics.section import section_properties
 from calcgen.mechanics.shapes import (
@@ -23,6 +26,7 @@ from calcgen.mechanics.shapes import (
     i_shape,
     polygon,
     rectangle,
+    strip,
     tee,
     trapezium,
     tube,
@@ -181,11 +185,115 @@ def test_a_polygon_keeps_its_coordinates() -> None:
         polygon(points=[(0.0, 0.0), (1.0, 1.0), (1.0, 0.0), (0.0, 2.0)])
 
 
+LIPPED: list[Point] = [(0.06, 0.02), (0.06, 0.0), (0.0, 0.0), (0.0, 0.15), (0.06, 0.15), (0.06, 0.13)]
+HAT: list[Point] = [(-0.1, 0.0), (-0.05, 0.0), (-0.03, 0.08), (0.03, 0.08), (0.05, 0.0), (0.1, 0.0)]
+CLOSED: list[Point] = [(0.0, 0.0), (0.1, 0.0), (0.12, 0.08), (0.0, 0.05), (0.0, 0.0)]
+
+
+@pytest.mark.parametrize("points", [LIPPED, HAT, CLOSED, CLOSED[::-1], LIPPED[::-1], HAT[:2]])
+@pytest.mark.parametrize("r", [0.0, 0.003])
+def test_a_strip_is_as_large_as_its_centreline_is_long(points: list[Point], r: float) -> None:
+    """A bend of θ replaces two tangents (r + t/2) tan(θ/2) by an arc (r + t/2) θ; a mitre keeps them."""
+    t = 0.002
+    length = sum(math.dist(a, b) for a, b in pairwise(points))
+    closed = points[0] == points[-1]
+    ring = np.array(points[:-1] if closed else points)
+    along = np.diff(np.vstack((ring, ring[:2])) if closed else ring, axis=0)
+    heading = np.arctan2(along[:, 1], along[:, 0])
+    turns = np.abs((np.diff(heading) + PI) % (2.0 * PI) - PI)
+    rho = r + 0.5 * t if r else 0.0
+    length -= float(np.sum(rho * (2.0 * np.tan(0.5 * turns) - turns)))
+    shape = strip(t=t, r=r, points=points)
+    assert section_properties(shape.outline).area == pytest.approx(t * length, rel=1e-9)
+    assert len(shape.outline.holes) == (1 if closed else 0)
+
+
+@pytest.mark.parametrize("points", [LIPPED, HAT, HAT[:3]])
+def test_a_strip_without_radius_is_the_mitred_buffer_of_its_centreline(points: list[Point]) -> None:
+    """Against shapely; corners stand where the centreline's straight parts meet."""
+    found = shapely.Polygon(strip(t=0.004, points=points).outline.exterior)
+    buffer = shapely.LineString(points).buffer(0.002, cap_style="flat", join_style="mitre", mitre_limit=100.0)
+    assert found.symmetric_difference(buffer).area < 1e-9 * buffer.area
+
+
+def test_a_strip_with_radius_is_the_buffer_of_its_bent_mid_line() -> None:
+    """Against shapely, along the mid-line that the walls follow; both have arcs of short edges."""
+    bent = strip(t=0.004, r=0.006, points=LIPPED)
+    mid_line = [bent.walls[0].start, *(wall.end for wall in bent.walls)]
+    buffer = shapely.LineString(mid_line).buffer(0.002, cap_style="flat", join_style="mitre")
+    found = shapely.Polygon(bent.outline.exterior)
+    assert found.symmetric_difference(buffer).area < 2e-4 * buffer.area
+    assert {wall.t for wall in bent.walls} == {0.004}
+
+
+def test_a_strip_keeps_its_coordinates_and_has_square_ends() -> None:
+    flat = strip(t=0.01, points=[(1.0, 2.0), (1.5, 2.0)])
+    box_ = flat.outline.bounds
+    assert (box_.left, box_.right, box_.bottom, box_.top) == pytest.approx((1.0, 1.5, 1.995, 2.005))
+    assert flat.dimensions == pytest.approx({"t": 0.01, "r": 0.0, "b": 0.5, "h": 0.01})
+    assert {mark.symbol for mark in flat.marks} == {"b", "h", "t"}
+    slanting = strip(t=0.01, points=[(0.0, 0.0), (1.0, 1.0)])
+    assert {mark.symbol for mark in slanting.marks} == {"b", "h"}  # no level or upright part to measure t on
+
+
+STRIPS_REFUSED: list[tuple[list[Point], float, float, str, str, tuple[int, ...]]] = [
+    ([(0.0, 0.0)], 0.01, 0.0, "points", "two points", ()),
+    ([], 0.01, 0.0, "points", "two points", ()),
+    ([(0.0, 0.0), (0.0, 0.0)], 0.01, 0.0, "points", "repeats", (0, 1)),
+    ([(0.0, 0.0), (math.nan, 1.0)], 0.01, 0.0, "points", "not finite", (1,)),
+    ([(0.0, 0.0), (1.0, 0.0), (0.0, 0.0)], 0.01, 0.0, "points", "three corners", ()),
+    ([(0.0, 0.0), (1.0, 0.0), (0.5, 0.0)], 0.01, 0.0, "points", "folds back", (1,)),
+    ([(0.0, 0.0), (1.0, 0.0)], 0.0, 0.0, "t", "positive", ()),
+    ([(0.0, 0.0), (1.0, 0.0)], 0.1, -0.1, "r", "negative", ()),
+    ([(0.0, 0.0), (1.0, 0.0), (1.0, 0.1), (0.0, 0.1)], 0.01, 0.06, "r", "does not fit", (1, 2)),
+    ([(0.0, 0.0), (1.0, 0.0), (1.0, 0.1), (0.0, 0.1)], 0.15, 0.0, "t", "does not fit", (1, 2)),
+    ([(0.0, 0.0), (1.0, 0.0), (1.0, 1.0), (0.5, 1.0), (0.5, -1.0)], 0.01, 0.0, "t", "cross", (0, 1, 3, 4)),
+    # parallel walls nearer to each other than they are thick
+    ([(0.0, 0.0), (1.0, 0.0), (1.0, 0.5), (0.5, 0.5), (0.5, 0.09)], 0.2, 0.0, "t", "cross", (0, 1, 3, 4)),
+]
+
+
+@pytest.mark.parametrize(("points", "t", "r", "parameter", "reason", "concerned"), STRIPS_REFUSED)
+def test_strips_that_make_no_section_are_refused(
+    points: list[Point], t: float, r: float, parameter: str, reason: str, concerned: tuple[int, ...]
+) -> None:
+    with pytest.raises(ShapeError, match=reason) as error:
+        strip(t=t, r=r, points=points)
+    assert (error.value.parameter, error.value.points) == (parameter, concerned)
+
+
 ALL_SHAPES = (
     [c[1] for c in CLOSED_FORMS]
     + [c[1] for c in AREAS_WITH_RADII]
     + [polygon(points=[(1, 1), (2, 1), (1, 4)])]
+    + [strip(t=0.002, r=0.003, points=LIPPED), strip(t=0.002, points=CLOSED)]
 )
+
+
+@pytest.mark.parametrize("shape", [shape for shape in ALL_SHAPES if shape.walls])
+@pytest.mark.parametrize("placing", [{}, {"mirrored": True, "x": 3.0}, {"turned": 0.3}])
+def test_walls_stay_in_the_middle_of_the_material_wherever_the_shape_is_placed(
+    shape: Shape, placing: Mapping[str, Any]
+) -> None:
+    placed = shape.placed(**placing)
+    outline = placed.outline
+    assert len(placed.walls) == len(shape.walls)
+    for wall in placed.walls[:: max(1, len(placed.walls) // 16)]:
+        middle = 0.5 * (np.array(wall.start) + np.array(wall.end))
+        along = (np.array(wall.end) - np.array(wall.start)) / math.dist(wall.start, wall.end)
+        for side in (-0.48, 0.0, 0.48):
+            x, y = (middle + side * wall.t * np.array([-along[1], along[0]])).tolist()
+            assert outline.contains((x, y))
+
+
+def test_solid_shapes_have_no_walls() -> None:
+    solid = (
+        rectangle(b=0.1, h=0.2),
+        circle(d=0.1),
+        ellipse(b=0.1, h=0.2),
+        trapezium(b_t=0.1, b_b=0.2, h=0.3),
+    )
+    assert not any(shape.walls for shape in solid)
 
 
 @pytest.mark.parametrize("shape", ALL_SHAPES)
@@ -226,6 +334,9 @@ def test_the_table_of_shapes_picks_the_form_by_the_names_given() -> None:
     assert form_for("i_shape", []).build is i_shape
     assert canonical(form_for("circle", ["d"]), "d") == "d"
     assert canonical(form_for("i_shape", ["d"]), "d") == "h"
+    assert form_for("strip", []).required == {"t", "points"}
+    notes = {p.name: p.note for p in form_for("strip", []).parameters}
+    assert notes["r"] == "inside radius of the bends"
     assert form_for("tee", []).required == {"h", "b", "t_w", "t_f"}
     assert {p.name for form in SHAPES["channel"] for p in form.parameters if p.optional} == {
         "r",

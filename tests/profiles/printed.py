@@ -30,7 +30,7 @@ NAMES: Mapping[str, Mapping[str, str]] = {
 }  # fmt: skip
 
 # Significant figures to which a table rounds large numbers; the others round to three.
-SIGNIFICANT: Mapping[str, int] = {"IPE": 4, "HEA": 4, "HEB": 4}
+SIGNIFICANT: Mapping[str, int] = {"IPE": 4, "HEA": 4, "HEB": 4, "HEM": 4}
 
 
 @dataclass(frozen=True)
@@ -44,8 +44,10 @@ class Figure:
 @cache
 def printed(family: str) -> Mapping[str, Mapping[str, Figure]]:
     """Figures of a built-in catalogue by designation and neutral name."""
-    lines = (FOLDER / f"{family.lower()}.csv").read_text("utf-8").splitlines()
+    lines = (FOLDER / f"{family.lower().replace(' ', '_')}.csv").read_text("utf-8").splitlines()
     names = NAMES["american" if "# axes = american" in lines else "eurocode"]
+    if "# shape = tube" in lines:  # the size of a tube is its diameter d
+        names = {name: neutral for name, neutral in names.items() if name != "d"}
     rows = csv.DictReader(line for line in lines if not line.startswith("#"))
     return {
         row["designation"]: {

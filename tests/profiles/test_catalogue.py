@@ -2,13 +2,17 @@
 
 from __future__ import annotations
 
+import re
+
 import pytest
 from hypothesis import given
 from hypothesis import strategies as st
 
 from calcgen.mechanics.shapes import SHAPES
-from calcgen.profiles import Catalogue, builtin_catalogue, read_catalogue
+from calcgen.profiles import Catalogue, Profile, builtin_catalogue, read_catalogue
+from calcgen.profiles.catalogue import builtin_texts
 from calcgen.profiles.columns import SIZES
+from calcgen.profiles.reader import index_catalogue
 from tests.profiles.printed import FOLDER, printed
 
 OFFICE = """\
@@ -41,6 +45,10 @@ WB 400,400,250,10,16,92,drawing 7
         ("L3-1/2x3-1/2x3/8", "L3-1/2x3-1/2x3/8"),
         ("L3 1/2 x 3 1/2 x 3/8", "L3-1/2x3-1/2x3/8"),
         ("C10x20", "C10x20"),
+        ("hss 6.625 x 0.280", "HSS6.625x0.280"),
+        ("PIPE 1 1/4 STD.", "Pipe 1-1/4 Std."),
+        ("pipe 6 xx-strong", "Pipe 6 xx-Strong"),
+        ("WT5X22.5", "WT5x22.5"),
     ],
 )
 def test_spellings_of_a_designation(spelling: str, designation: str) -> None:
@@ -83,7 +91,9 @@ def test_any_text_can_be_asked_for(text: str) -> None:
 
 def test_sections_come_by_family_and_mass() -> None:
     catalogue = builtin_catalogue()
-    assert catalogue.families == ("C", "HEA", "HEB", "HSS", "IPE", "L", "UPN", "W")
+    heads = [re.search(r"^# family = (.+)$", text, re.MULTILINE) for _, text in builtin_texts()]
+    assert catalogue.families == tuple(sorted(head[1] for head in heads if head))
+    assert {"IPE", "HEA", "HEB", "HEM", "UPN", "UPE", "W", "HSS"} <= set(catalogue.families)
     assert [p.designation for p in catalogue.family("IPE")][:3] == ["IPE 80", "IPE 100", "IPE 120"]
     masses = [profile.published["mass"] for profile in catalogue.family("W")]
     assert masses == sorted(masses)
@@ -96,6 +106,40 @@ def test_each_row_tells_its_source_and_place() -> None:
         name = profile.file.removeprefix("calcgen/profiles/")
         row = (FOLDER / name).read_text("utf-8").splitlines()[profile.line - 1]
         assert row.startswith(f"{profile.designation},")
+
+
+def test_the_files_of_the_program_are_sound() -> None:
+    """Their rows are read when asked for, so that this is where a fault in them shows."""
+    read: list[Profile] = []
+    for name, text in builtin_texts():
+        profiles, faults = read_catalogue(name, text)
+        assert faults == ()
+        assert [profile.designation for profile in profiles] == [
+            row.designation for row in index_catalogue(name, text)
+        ]
+        read.extend(profiles)
+    assert sorted(read, key=lambda p: (p.file, p.line)) == sorted(
+        builtin_catalogue(), key=lambda p: (p.file, p.line)
+    )
+
+
+@pytest.mark.parametrize("damage", [("# axes = eurocode", "# axes = martian"), ("500,500", "500,x")])
+def test_damage_to_a_file_of_the_program_is_raised(damage: tuple[str, str]) -> None:
+    with pytest.raises(ValueError, match=r"ours\.csv is damaged"):
+        [row.profile for row in index_catalogue("ours.csv", OFFICE.replace(*damage))]
+
+
+def test_a_row_is_not_read_before_it_is_asked_for() -> None:
+    """A build that names three sections does not pay for a thousand."""
+    rows = index_catalogue("ours.csv", OFFICE.replace("500,500", "500,x"))
+    catalogue, faults = Catalogue().joined(rows)
+    assert faults == ()
+    assert len(catalogue) == 2
+    assert catalogue.families == ("office",)
+    assert catalogue.nearest("WB 501") == ("WB 500", "WB 400")
+    found = catalogue.find("wb400")
+    assert found is not None
+    assert found is catalogue.find("WB 400")
 
 
 def test_values_are_in_si_units() -> None:

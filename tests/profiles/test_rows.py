@@ -7,6 +7,7 @@ the head of each catalogue.
 
 from __future__ import annotations
 
+import itertools
 import math
 from collections.abc import Iterator, Mapping
 
@@ -31,11 +32,12 @@ def outline_of(profile: Profile) -> SectionProperties:
 
 def of_outline(profile: Profile) -> Mapping[str, float]:
     """Properties of the outline under the names of the published ones."""
-    own = outline_of(profile)
+    own, sizes = outline_of(profile), profile.dimensions
+    width, depth = (sizes["d"], sizes["d"]) if profile.shape == "tube" else (sizes["b"], sizes["h"])
     names = ("A", "I_h", "I_v", "W_el_h", "W_el_v", "W_pl_h", "W_pl_v", "i_h", "i_v", "i_2")
     return {name: getattr(own, name) for name in names} | {
-        "x_bar": own.x_bar + 0.5 * profile.dimensions["b"],  # outlines stand with their middle at (0, 0)
-        "y_bar": own.y_bar + 0.5 * profile.dimensions["h"],
+        "x_bar": own.x_bar + 0.5 * width,  # outlines stand with their middle at (0, 0)
+        "y_bar": own.y_bar + 0.5 * depth,
     }
 
 
@@ -57,7 +59,7 @@ def test_figures_of_a_row_agree_among_themselves(profile: Profile) -> None:
     """
     figures = printed(profile.family)[profile.designation]
     for radius, inertia in (("i_h", "I_h"), ("i_v", "I_v")):
-        if radius in figures:
+        if {radius, inertia, "A"} <= figures.keys():
             i, second, A = figures[radius], figures[inertia], figures["A"]
             slack = 2.0 * relative(i) + relative(second) + relative(A)
             assert A.value * i.value**2 == pytest.approx(second.value, rel=1.01 * slack), inertia
@@ -66,7 +68,7 @@ def test_figures_of_a_row_agree_among_themselves(profile: Profile) -> None:
         ("W_el_v", "I_v", "b", "x_bar"),
     ):
         halved = profile.shape in {"i_shape", "box"} or (profile.shape == "channel" and size == "h")
-        if modulus in figures and (halved or centroid in figures):
+        if {modulus, inertia} <= figures.keys() and (halved or centroid in figures):
             W, second, whole = figures[modulus], figures[inertia], figures[size]
             heel = Figure(0.5 * whole.value, 0.5 * whole.rounding) if halved else figures[centroid]
             c = whole.value - heel.value
@@ -88,9 +90,25 @@ def test_mass_is_that_of_steel(profile: Profile) -> None:
         t = profile.stated["t_nom"]
         nominal = box(b=profile.dimensions["b"], h=profile.dimensions["h"], t=t, r_o=2.0 * t)
         expected, tolerance = STEEL_US * section_properties(nominal.outline).A, 0.004
+    elif profile.shape == "tube":
+        t = profile.stated["t_nom"]
+        expected, tolerance = STEEL_US * math.pi * t * (profile.dimensions["d"] - t), 0.005
+    elif profile.family == "M":  # whose outline lacks the fillets
+        expected, tolerance = STEEL_US * outline_of(profile).A, 0.02
     else:  # a nominal mass
         expected, tolerance = STEEL_US * outline_of(profile).A, 0.0175
     assert mass.value == pytest.approx(expected, rel=0.0, abs=max(tolerance * expected, mass.rounding))
+
+
+@pytest.mark.parametrize(
+    "profile", [p for p in ALL if p.axes == "eurocode"], ids=lambda profile: profile.designation
+)
+def test_mass_is_that_of_steel_on_the_printed_area(profile: Profile) -> None:
+    """No outline enters and no tolerance but the rounding of both figures; the American ones stand apart."""
+    figures = printed(profile.family)[profile.designation]
+    if "A" in figures:
+        slack = relative(figures["A"]) + relative(figures["mass"])
+        assert figures["mass"].value == pytest.approx(STEEL * figures["A"].value, rel=1.01 * slack)
 
 
 @EVERY
@@ -129,7 +147,7 @@ def torsion(family: str, name: str) -> Iterator[tuple[Profile, Figure]]:
 
 @pytest.mark.parametrize(
     ("family", "tolerance"),
-    [("IPE", 0.01), ("HEA", 0.01), ("HEB", 0.01), ("W", 0.02)],  # W: sizes to three figures
+    [("IPE", 0.01), ("HEA", 0.01), ("HEB", 0.01), ("HEM", 0.01), ("W", 0.02)],  # W: sizes to three figures
 )
 def test_torsion_constant_is_rectangles_and_junction_circles(family: str, tolerance: float) -> None:
     """El Darwish and Johnston, Torsion of structural shapes, 1965 (from memory).
@@ -151,7 +169,7 @@ def test_torsion_constant_is_rectangles_and_junction_circles(family: str, tolera
 
 
 @pytest.mark.parametrize(
-    ("family", "tolerance"), [("IPE", 0.003), ("HEA", 0.003), ("HEB", 0.003), ("W", 0.02)]
+    ("family", "tolerance"), [("IPE", 0.003), ("HEA", 0.003), ("HEB", 0.003), ("HEM", 0.003), ("W", 0.02)]
 )
 def test_warping_constant_is_that_of_the_flanges(family: str, tolerance: float) -> None:
     """I_w = t_f b³ (h - t_f)²/24, thin-walled theory."""
@@ -163,15 +181,14 @@ def test_warping_constant_is_that_of_the_flanges(family: str, tolerance: float) 
 
 
 def test_hollow_torsion_constant() -> None:
-    """EN 10210-2 annex A, with a mid-line corner radius of 1.5 t (from memory)."""
+    """Bredt's 4 A² t/L on the mid-line, whose corner radius is 1.5 t."""
     for profile, figure in torsion("HSS", "I_t"):
         h, b, t = (profile.dimensions[size] for size in ("h", "b", "t"))
         corner = 1.5 * t
         length = 2.0 * (b - t + h - t) - 2.0 * corner * (4.0 - math.pi)
         area = (b - t) * (h - t) - corner**2 * (4.0 - math.pi)
-        expected = t**3 * length / 3.0 + 4.0 * area**2 * t / length
-        # 2.2 %: HSS2x2x1/4, whose corners are most of it; the others agree within 1 %
-        assert figure.value == pytest.approx(expected, rel=0.022), profile.designation
+        expected = 4.0 * area**2 * t / length
+        assert figure.value == pytest.approx(expected, rel=0.0075), profile.designation
 
 
 def channel_mid_line(profile: Profile) -> tuple[float, float]:
@@ -183,9 +200,37 @@ def channel_mid_line(profile: Profile) -> tuple[float, float]:
     return I_t, flanges * b_m**2 * h_m**2 / 12.0 * (3.0 * flanges + 2.0 * web) / (6.0 * flanges + web)
 
 
+def test_parallel_flanged_channels_twist_as_rectangles_and_junction_circles() -> None:
+    """El Darwish and Johnston's L-junctions, Torsion of structural shapes, 1965 (from memory).
+
+    The end losses are those of four free ends, as the European tables have them.
+    """
+    for profile, figure in torsion("UPE", "I_t"):
+        h, b, t_w, t_f, r = (profile.dimensions[size] for size in ("h", "b", "t_w", "t_f", "r"))
+        circle = 2.0 * (3.0 * r + t_w + t_f - math.sqrt(2.0 * (2.0 * r + t_w) * (2.0 * r + t_f)))
+        alpha = -0.0908 + 0.2621 * t_w / t_f + 0.1231 * r / t_f - 0.0752 * r * t_w / t_f**2
+        alpha -= 0.0945 * (t_w / t_f) ** 2
+        flanges = 2.0 / 3.0 * b * t_f**3 - 0.42 * t_f**4
+        expected = flanges + (h - 2.0 * t_f) * t_w**3 / 3.0 + 2.0 * alpha * circle**4
+        limit = max(0.002 * expected, 1.01 * figure.rounding)
+        assert figure.value == pytest.approx(expected, rel=0.0, abs=limit), profile.designation
+
+
+def test_warping_constant_of_parallel_flanged_channels_keeps_pace_with_the_mid_line_model() -> None:
+    """The tables' model is a little below it, the more the thicker the walls; no closer model at hand."""
+    ratios = [
+        (figure.value / channel_mid_line(profile)[1], relative(figure), profile.designation)
+        for profile, figure in torsion("UPE", "I_w")
+    ]
+    assert len(ratios) == 14
+    for (one, its_rounding, _), (other, rounding, designation) in itertools.pairwise(ratios):
+        assert 0.925 < other < 0.975
+        assert one == pytest.approx(other, abs=0.007 + its_rounding + rounding), designation
+
+
 def test_american_channels_warp_as_parallel_flanged() -> None:
     """The tables' own model; sizes to three figures."""
-    for profile, figure in torsion("C", "I_w"):
+    for profile, figure in (*torsion("C", "I_w"), *torsion("MC", "I_w")):
         assert figure.value == pytest.approx(channel_mid_line(profile)[1], rel=0.025), profile.designation
 
 
@@ -215,3 +260,18 @@ def test_open_torsion_constant_lies_above_its_rectangles(family: str, largest: f
         else:
             rectangles = (sizes["h"] + sizes["b"] - sizes["t"]) * sizes["t"] ** 3 / 3.0
         assert 1.0 - figure.rounding / figure.value < figure.value / rectangles < largest, profile.designation
+
+
+@pytest.mark.parametrize(
+    ("family", "sizes"),
+    [
+        ("IPE", (80, 100, 120, 140, 160, 180, 200, 220, 240, 270, 300, 330, 360, 400, 450, 500, 550, 600)),
+        ("UPN", (*range(80, 161, 20), *range(180, 321, 20), 350, 380, 400)),
+        ("UPE", (*range(80, 241, 20), 270, 300, 330, 360, 400)),
+        *((f"HE{of}", (*range(100, 361, 20), *range(400, 701, 50), 800, 900, 1000)) for of in "ABM"),
+    ],
+)
+def test_european_series_are_complete(family: str, sizes: tuple[int, ...]) -> None:
+    """EN 10365:2017, from memory; sorted by mass, which is by size."""
+    rows = builtin_catalogue().family(family)
+    assert [profile.designation for profile in rows] == [f"{family} {size}" for size in sizes]

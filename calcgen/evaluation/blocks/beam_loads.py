@@ -135,5 +135,5 @@ def _self_weight(
                 hint="write the weight as a uniform load",
             )
             return []
-        loads.append(DistributedLoad.uniform(a, b, weight * p.section.result.values["A"], plane))
+        loads.append(DistributedLoad.uniform(a, b, weight * p.section.result.area, plane))
     return loads

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 from calcgen.evaluation.blocks.beam_combinations import Combination, case_kinds, combinations_of
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.blocks.beam_loads import loads_of
-from calcgen.evaluation.blocks.beam_stiffness import modulus_of, properties_of, stiffness_of
+from calcgen.evaluation.blocks.beam_stiffness import common_modulus, modulus_of, properties_of, stiffness_of
 from calcgen.evaluation.blocks.beam_supports import hinges_of, supports_of
 from calcgen.evaluation.blocks.section import SectionThing, section_named
 from calcgen.evaluation.formulas import Evaluator
@@ -70,9 +70,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
     combinations = combinations_of(lines, kinds, cases)
     if lines.failed:
         return None
-    stretches = tuple(
-        Stretch(p.start, p.end, stiffness_of(p, E, restrained=is_restrained)) for p in properties
-    )
+    stretches = tuple(Stretch(p.start, p.end, stiffness_of(p, restrained=is_restrained)) for p in properties)
     try:
         model = BeamModel(lines.length, stretches, supports.all, hinges)
     except ValueError as fault:
@@ -85,7 +83,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         rows=tuple(rows),
         combinations=combinations,
         sections=tuple(p.section for p in properties if p.section is not None),
-        E=E,
+        E=common_modulus(properties, E),
         support_kinds=supports.kinds,
         support_notes=supports.notes,
         restrained=settings.get("restrained"),

@@ -165,7 +165,7 @@ def premises(name: str, data: BeamData, groups: Sequence[GroupResult], style: St
     lengths = [b - a for a, b in data.model.spans] or [data.model.length]
     unit: Literal["in", "mm"] = "in" if style.system == "US" else "mm"
     if data.sections:
-        depth = max(s.result.outline.bounds.height for s in data.sections)
+        depth = max(s.result.bounds.height for s in data.sections)
         ratio = min(lengths) / depth
         text = f"span to depth {number_text(ratio, 3)}"
         if ratio >= SLENDER:

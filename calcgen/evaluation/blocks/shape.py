@@ -9,12 +9,13 @@ from calcgen.evaluation.quantity import quantity_of, si
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.section import ShapeText
 from calcgen.language.nodes import Text
+from calcgen.mechanics.arrays import Point
 from calcgen.mechanics.outline import OutlineError
-from calcgen.mechanics.shapes import SHAPES, Shape, ShapeError, ShapeForm, canonical, form_for
+from calcgen.mechanics.shapes import Shape, ShapeError, ShapeForm, canonical, form_for
 from calcgen.profiles.catalogue import Catalogue, Profile
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import from_si, measure
-from calcgen.text import nearest
+from calcgen.text import Related, nearest
 
 
 def profile_named(text: ShapeText, scope: Scope, catalogue: Catalogue) -> Profile | None:
@@ -68,28 +69,47 @@ def rolled_shape(profile: Profile, text: ShapeText, scope: Scope) -> Shape | Non
 def shape_of(text: ShapeText, scope: Scope) -> Shape | None:
     """Build a shape of the language from its arguments."""
     word = text.shape.name
-    if word not in SHAPES:
-        scope.report.error("not-available-yet", text.shape.span, f"the shape '{word}' is not available yet")
-        return None
-    if word == "polygon":
-        return _polygon(text, scope)
     form = form_for(word, frozenset(a.name.name for a in text.arguments))
     given = _arguments(text, form, scope)
-    if given is None:
+    points = _points(text, scope)
+    if given is None or points is None:
         return None
     spans = {canonical(form, a.name.name): a.value.span for a in text.arguments}
     try:
-        return form.build(**given)
+        return form.build(**given, points=points) if _takes_points(form) else form.build(**given)
     except ShapeError as fault:
+        places = [text.points[i].span for i in fault.points if i < len(text.points)]
         scope.report.error(
             "shape-does-not-fit",
-            spans.get(fault.parameter, text.span),
+            places[0] if places else spans.get(fault.parameter, text.span),
             f"'{fault.parameter}' of the {word} {fault.reason}",
-            label=_size(fault.parameter, fault.value, form, scope.style),
+            label=""
+            if fault.parameter == "points"
+            else _size(fault.parameter, fault.value, form, scope.style),
+            related=tuple(Related(place, "and this point") for place in places[1:2]),
         )
     except OutlineError as fault:
-        scope.report.error("outline", text.span, f"the outline {fault.reason}")
+        places = [text.points[i].span for i in fault.vertices if i < len(text.points)]
+        scope.report.error(
+            "outline",
+            places[0] if places else text.span,
+            f"the outline {fault.reason}",
+            label="the edge that starts here" if len(places) > 1 else "",
+            hint="corners follow one another around the section, in either sense" if text.points else "",
+            related=tuple(Related(place, "the edge that it meets starts here") for place in places[1:2]),
+        )
     return None
+
+
+def _takes_points(form: ShapeForm) -> bool:
+    return any(p.kind == "points" for p in form.parameters)
+
+
+def _points(text: ShapeText, scope: Scope) -> list[Point] | None:
+    """Return the points written in the parentheses of a shape, m; none for most shapes."""
+    pairs = [(si(p.x, "length", scope), si(p.y, "length", scope)) for p in text.points]
+    points = [(x, y) for x, y in pairs if x is not None and y is not None]
+    return points if len(points) == len(pairs) else None
 
 
 def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, float] | None:
@@ -119,34 +139,17 @@ def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, floa
             given[name] = math.nan
         else:
             given[name] = value
-    missing = [p.name for p in form.parameters if not p.optional and p.name not in given]
+    needed = [p for p in form.parameters if p.kind != "points"]
+    missing = [p.name for p in needed if not p.optional and p.name not in given]
     if missing:
         complete = False
         scope.report.error(
             "argument-missing",
             text.shape.span,
             f"'{word}' needs {' and '.join(missing)}",
-            hint=f"{form.note}: {', '.join(f'{p.name} ({p.note})' for p in form.parameters)}",
+            hint=f"{form.note}: {', '.join(f'{p.name} ({p.note})' for p in needed)}",
         )
     return given if complete else None
-
-
-def _polygon(text: ShapeText, scope: Scope) -> Shape | None:
-    pairs = [(si(p.x, "length", scope), si(p.y, "length", scope)) for p in text.points]
-    corners = [(x, y) for x, y in pairs if x is not None and y is not None]
-    if len(corners) < len(pairs):
-        return None
-    try:
-        return SHAPES["polygon"][0].build(points=corners)
-    except OutlineError as fault:
-        places = [text.points[i].span for i in fault.vertices if i < len(text.points)]
-        scope.report.error(
-            "outline",
-            places[0] if places else text.span,
-            f"the outline {fault.reason}",
-            hint="corners follow one another around the section, in either sense",
-        )
-        return None
 
 
 def placed_shape(shape: Shape, text: ShapeText, scope: Scope) -> Shape | None:

@@ -1,18 +1,20 @@
-"""What a stress block shows: named results and premises."""
+"""What a stress block shows: named results of the section, and of each part, group of bars and point."""
 
 from __future__ import annotations
 
 import math
+from collections.abc import Iterable, Mapping
+from dataclasses import dataclass, field
 
 import numpy as np
 
-from calcgen.evaluation.blocks.section import SectionThing
-from calcgen.evaluation.formulas import shown
-from calcgen.evaluation.results import Premise, Result
-from calcgen.evaluation.scope import Scope
+from calcgen.evaluation.blocks.stress_request import StressRequest
+from calcgen.evaluation.results import PlasticResult, Result, ShearResult
 from calcgen.mechanics.arrays import Point
-from calcgen.mechanics.outline import Outline
-from calcgen.mechanics.stress import Extreme, Forces, StressPlane
+from calcgen.mechanics.combined_stress import StressState
+from calcgen.mechanics.curved import CurvedStress
+from calcgen.mechanics.field import Bars, StressField
+from calcgen.mechanics.stress import Extreme, StressPlane
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import Measure, from_si, measure
 
@@ -23,63 +25,318 @@ RESULT_MEANINGS = {
     "σ_bottom": "normal stress at the bottom fibre",
     "na_depth": "from the centroid to the neutral axis along the vertical",
     "na_angle": "neutral axis from the horizontal, counter-clockwise",
+    "x_c": "depth of the compressed zone, across the neutral axis",
     "κ": "curvature in the plane of bending",
     "R": "radius of curvature",
     "ε_max": "largest strain, lengthening positive",
     "ε_min": "smallest strain, lengthening positive",
+    "τ_max": "largest shear stress",
+    "σ_vM_max": "largest von Mises stress",
+    "σ_1": "largest principal stress, tension positive",
+    "σ_2": "smallest principal stress, tension positive",
+    "M_pl": "plastic moment under this N, about the horizontal axis",
+    "M_pl_lat": "plastic moment under this N, about the vertical axis",
+    "utilisation": "moment over the plastic moment under this N",
+    "M_el": "moment at first yield, without N",
+    "shape_factor": "plastic moment without N over the moment at first yield",
+    "core": "depth of the elastic core, across the neutral axis",
+    "σ_res_max": "largest residual stress after unloading, tension positive",
+    "σ_res_min": "smallest residual stress after unloading, tension positive",
+    "I_cr": "second moment of the cracked section about its neutral axis, reference modulus",
+    "r_n": "radius of the neutral axis of bending alone, from the centre of curvature",
+    "e": "from the centroidal line to the neutral axis of bending alone, towards the centre of curvature",
+    "σ_straight": "stress that the straight-bar formula gives at the inner fibre",
+    "straight_error": "its relative error there",
 }
+"""Every name of a result, and what it is; those of joints (`q_…`) follow the parts."""
+
+NOISE = 1e-11  # of the depth: a smaller distance of the neutral axis is what iteration leaves
+NEEDS_MODULUS = ("κ", "R", "ε_max", "ε_min")
+
+
+@dataclass
+class _Rows:
+    """Results in the order added, in the units of a style."""
+
+    style: Style
+    rows: list[Result] = field(default_factory=list)
+
+    def add(self, name: str, value: Measure, place: str = "", meaning: str = "") -> None:
+        meaning = meaning or RESULT_MEANINGS[name]
+        self.rows.append(Result(name, meaning, value, show(value, self.style), place))
+
+    def stress(self, name: str, value: float, place: str = "", meaning: str = "") -> None:
+        self.add(name, from_si(value, "Pa").shown_in(None), place, meaning)
+
+    def length(self, name: str, value: float, place: str = "") -> None:
+        self.add(name, from_si(value, "m").shown_in(_length_unit(self.style)), place)
+
+    def plain(self, name: str, value: float, place: str = "") -> None:
+        self.add(name, measure(value, None), place)
+
+
+@dataclass(frozen=True)
+class NamedResults:
+    """The results of a block: of the section, and of its parts, bars and points by name."""
+
+    section: tuple[Result, ...]
+    parts: Mapping[str, tuple[Result, ...]]
 
 
 def stress_results(
-    plane: StressPlane, outline: Outline, E: float | None, points: dict[str, Point], style: Style
-) -> tuple[Result, ...]:
+    request: StressRequest,
+    field: StressField,
+    curved: CurvedStress | None,
+    unloaded: StressField | None,
+    plastic: PlasticResult | None,
+    shear: ShearResult | None,
+    style: Style,
+) -> NamedResults:
     """Return the named results of a stress, all stresses in one unit."""
-    largest, smallest = plane.extremes(outline)
-    results: list[Result] = []
+    rows = _Rows(style)
+    if curved is None:
+        _normal(rows, field)
+    else:
+        _of_curved(rows, curved)
+    _axis(rows, field.plane, curved, request.section.bounds.height)
+    if request.model in ("no_tension", "cracked", "plastic"):
+        depth = compressed_depth(field)
+        if depth is not None:
+            rows.length("x_c", depth)
+    if request.model == "cracked":
+        _cracked(rows, request, field)
+    if plastic is not None:
+        _plastic(rows, request, plastic)
+    if unloaded is not None:
+        _elastic_plastic(rows, field, unloaded)
+    _strains(rows, request, field, curved)
+    if shear is not None:
+        _shear(rows, shear)
+    parts = _parts(field, style)
+    for bars in request.section.bars:
+        largest = max(parts[bars.name], key=lambda r: abs(r.value.si))
+        rows.add(bars.name, largest.value, "", "stress of the bars, of largest magnitude, tension positive")
+    for name, point in request.points.items():
+        value = normal_at(field, curved, point)
+        where = f"at {place_text(point, style)}"
+        rows.stress(name, value, where, "normal stress at the point, tension positive")
+        parts[name] = _at_point(value, point, shear, style)
+    unit = _unit_of_stresses(rows.rows, style)
+    return NamedResults(
+        _in_one_unit(rows.rows, unit, style),
+        {name: _in_one_unit(found, unit, style) for name, found in parts.items()},
+    )
 
-    def add(name: str, value: Measure, place: str = "", meaning: str = "") -> None:
-        meaning = meaning or RESULT_MEANINGS[name]
-        results.append(Result(name, meaning, value, show(value, style), place))
 
-    add("σ_max", from_si(largest.value, "Pa").shown_in(None), _place(largest, plane, style))
-    add("σ_min", from_si(smallest.value, "Pa").shown_in(None), _place(smallest, plane, style))
-    add("σ_top", from_si(plane.at_top(outline), "Pa").shown_in(None))
-    add("σ_bottom", from_si(plane.at_bottom(outline), "Pa").shown_in(None))
+def normal_at(field: StressField, curved: CurvedStress | None, point: Point) -> float:
+    """Return the normal stress at a point, Pa; outside a section of one elastic part, by its plane."""
+    if curved is not None:
+        return float(curved.at(np.array([point]))[0])
+    found = field.at(point)
+    return found.value if found is not None else float(field.plane.at(np.array([point]))[0])
+
+
+def compressed_depth(field: StressField) -> float | None:
+    """Return the depth of the compressed zone, m, across the neutral axis; None for uniform strain."""
+    plane = field.plane
+    if plane.uniform:
+        return None
+    pieces = [piece for piece in field.pieces if piece.law.compression > 0.0]
+    most, least = plane.extremes(*(outline for piece in pieces for outline in piece.outlines))
+    steepest = math.hypot(plane.g_x, plane.g_y)
+    return min(max(-least.value, 0.0), most.value - least.value) / steepest
+
+
+def _normal(rows: _Rows, field: StressField) -> None:
+    largest, smallest = field.extremes()
+    several = len({*(p.name for p in field.pieces), *(b.name for b in field.bars)}) > 1
+    for name, extreme in (("σ_max", largest), ("σ_min", smallest)):
+        of = f" of {extreme.part}" if several and extreme.part else ""
+        rows.stress(name, extreme.value, f"{_place(extreme, field.plane, rows.style)}{of}")
+    rows.stress("σ_top", field.at_top())
+    rows.stress("σ_bottom", field.at_bottom())
+
+
+def _of_curved(rows: _Rows, curved: CurvedStress) -> None:
+    largest, smallest = curved.extremes
+    for name, extreme in (("σ_max", largest), ("σ_min", smallest)):
+        if curved.M == 0.0:
+            rows.stress(name, extreme.value, "everywhere")
+            continue
+        side = "top" if extreme.y > curved.y_bar else "bottom"
+        rows.stress(name, extreme.value, f"at the {side}, the {_which(curved, side)} side")
+    rows.stress("σ_top", curved.top.value)
+    rows.stress("σ_bottom", curved.bottom.value)
+    rows.length("r_n", curved.r_n)
+    rows.length("e", curved.e)
+    rows.stress("σ_straight", curved.straight(curved.inner.y))
+    if curved.straight_error is not None:
+        rows.add("straight_error", measure(100.0 * curved.straight_error, "%", (("%", 1),)))
+
+
+def _which(curved: CurvedStress, side: str) -> str:
+    return "inner" if side == curved.centre else "outer"
+
+
+def _axis(rows: _Rows, plane: StressPlane, curved: CurvedStress | None, depth: float) -> None:
+    """Add where the neutral axis lies."""
+    sense = -1.0 if rows.style.depth == "down" else 1.0
+    towards = f"positive {rows.style.depth}wards"
+    if curved is not None:
+        if curved.neutral_axis is not None:
+            rows.length("na_depth", sense * (curved.neutral_axis.y - curved.y_bar), towards)
+        return
     axis = plane.neutral_axis
-    length = "in" if style.system == "US" else "mm"
-    if axis is not None:
-        if axis.above is not None:
-            sense = -1.0 if style.depth == "down" else 1.0
-            add("na_depth", from_si(sense * axis.above, "m").shown_in(length), f"positive {style.depth}wards")
-        add("na_angle", measure(math.degrees(axis.angle), "deg", (("deg", 1),)))
-    if E is not None:
-        curvature = plane.curvature(E)
-        add("κ", from_si(curvature.resultant, "1/m").shown_in(None))
-        if curvature.radius is not None:
-            add("R", from_si(curvature.radius, "m").shown_in("ft" if style.system == "US" else "m"))
-        add("ε_max", measure(largest.value / E, None))
-        add("ε_min", measure(smallest.value / E, None))
-    for name, point in points.items():
-        stress = float(plane.at(np.array([point]))[0])
-        where = f"at ({_length(point[0], style)}, {_length(point[1], style)})"
-        add(name, from_si(stress, "Pa").shown_in(None), where, "normal stress at the point, tension positive")
-    return tuple(_in_one_unit(results, style))
+    if axis is None:
+        return
+    if axis.above is not None:
+        above = axis.above if abs(axis.above) > NOISE * depth else 0.0
+        rows.length("na_depth", sense * above, towards)
+    rows.add("na_angle", measure(math.degrees(axis.angle), "deg", (("deg", 1),)))
 
 
-def _in_one_unit(results: list[Result], style: Style) -> list[Result]:
-    """Show all stresses of a block in the unit of the largest of them."""
-    stresses = [r for r in results if r.value.dimension == from_si(1.0, "Pa").dimension]
-    largest = max(stresses, key=lambda r: abs(r.value.si))
-    unit = style.unit_of(largest.value)
+def _cracked(rows: _Rows, request: StressRequest, field: StressField) -> None:
+    """Add the cracked second moment, M/(κ E_ref), where M alone acts about the horizontal axis."""
+    forces, plane = request.forces, field.plane
+    if forces.N == 0.0 and forces.M_lat == 0.0 and plane.g_y != 0.0 and plane.g_x == 0.0:
+        unit = "in⁴" if rows.style.system == "US" else "cm⁴"
+        rows.add("I_cr", from_si(-forces.M / plane.g_y, "m⁴").shown_in(unit))
+
+
+def _plastic(rows: _Rows, request: StressRequest, plastic: PlasticResult) -> None:
+    given = request.forces_given
+    for name, key, value in (("M_pl", "M", plastic.M), ("M_pl_lat", "M_lat", plastic.M_lat)):
+        if value:
+            unit = given[key].unit if key in given else None
+            rows.add(name, from_si(value, "N·m").shown_in(unit))
+    if request.forces.M or request.forces.M_lat:
+        rows.plain("utilisation", plastic.utilisation)
+    if plastic.M_el is not None:
+        unit = next((given[k].unit for k in ("M", "M_lat") if k in given), None)
+        rows.add("M_el", from_si(plastic.M_el, "N·m").shown_in(unit))
+        rows.plain("shape_factor", plastic.M_0 / plastic.M_el)
+
+
+def _elastic_plastic(rows: _Rows, field: StressField, unloaded: StressField) -> None:
+    core = field.elastic_core()
+    if core is not None:
+        rows.length("core", core)
+    largest, smallest = unloaded.extremes()
+    for name, extreme in (("σ_res_max", largest), ("σ_res_min", smallest)):
+        rows.stress(name, extreme.value, f"at {place_text((extreme.x, extreme.y), rows.style)}")
+
+
+def _strains(rows: _Rows, request: StressRequest, field: StressField, curved: CurvedStress | None) -> None:
+    """Add strains and the curvature, where the modulus is known and the model has strains."""
+    if request.E is None or request.model == "plastic":
+        return
+    E, plane = request.E.si, field.plane
+    if curved is not None:
+        largest, smallest = curved.extremes
+        rows.plain("ε_max", largest.value / E)
+        rows.plain("ε_min", smallest.value / E)
+        return
+    curvature = plane.curvature(E)
+    rows.add("κ", from_si(curvature.resultant, "1/m").shown_in(None))
+    if curvature.radius is not None:
+        unit = "ft" if rows.style.system == "US" else "m"
+        rows.add("R", from_si(curvature.radius, "m").shown_in(unit))
+    most, least = strain_extremes(field)
+    rows.plain("ε_max", most / E)
+    rows.plain("ε_min", least / E)
+
+
+def strain_extremes(field: StressField) -> tuple[float, float]:
+    """Return the largest and smallest reference stress, E_ref times the strain, over parts and bars, Pa."""
+    most, least = field.plane.extremes(*(outline for piece in field.pieces for outline in piece.outlines))
+    at_bars = [float(s) for bars in field.bars for s in field.plane.at(bars.points)]
+    return max([most.value, *at_bars]), min([least.value, *at_bars])
+
+
+def _shear(rows: _Rows, shear: ShearResult) -> None:
+    found, style = shear.combined, rows.style
+    rows.stress("τ_max", found.tau_max.tau, _station(found.tau_max, style))
+    rows.stress("σ_vM_max", found.von_mises_max.von_mises, _station(found.von_mises_max, style))
+    rows.stress("σ_1", found.sigma_1_max.sigma_1, _station(found.sigma_1_max, style))
+    rows.stress("σ_2", found.sigma_2_min.sigma_2, _station(found.sigma_2_min, style))
+    unit = "lbf/in" if style.system == "US" else "N/mm"
+    for name, flow in shear.joints.items():
+        rows.add(
+            f"q_{name}",
+            from_si(flow, "N/m").shown_in(unit),
+            "",
+            f"shear flow across all joints of {name}",
+        )
+
+
+def _station(state: StressState, style: Style) -> str:
+    walls = ", on the walls' mid-line" if state.description == "walls" else ""
+    return f"at {place_text((state.x, state.y), style)}{walls}"
+
+
+def _parts(field: StressField, style: Style) -> dict[str, tuple[Result, ...]]:
+    """Return the stresses of each named part and of each line of bars."""
+    found: dict[str, tuple[Result, ...]] = {}
+    for piece in field.pieces:
+        if piece.name:
+            rows = _Rows(style)
+            for name, extreme in zip(("σ_max", "σ_min"), field.extremes_of(piece), strict=True):
+                rows.stress(name, extreme.value, _place(extreme, field.plane, style))
+            found[piece.name] = tuple(rows.rows)
+    groups: dict[str, list[Bars]] = {}
+    for bars in field.bars:
+        groups.setdefault(bars.name, []).append(bars)
+    for name, group in groups.items():
+        extremes = [field.extremes_of(bars) for bars in group]
+        largest = max((pair[0] for pair in extremes), key=lambda e: e.value)
+        smallest = min((pair[1] for pair in extremes), key=lambda e: e.value)
+        rows = _Rows(style)
+        for key, extreme in (("σ_max", largest), ("σ_min", smallest)):
+            rows.stress(key, extreme.value, f"at {place_text((extreme.x, extreme.y), style)}")
+        found[name] = tuple(rows.rows)
+    return found
+
+
+def _at_point(sigma: float, point: Point, shear: ShearResult | None, style: Style) -> tuple[Result, ...]:
+    rows = _Rows(style)
+    rows.stress("σ", sigma, "", "normal stress, tension positive")
+    if shear is not None:
+        tau = shear.at(point)
+        rows.stress("τ", tau, "", "shear stress")
+        rows.stress("σ_vM", math.sqrt(sigma**2 + 3.0 * tau**2), "", "von Mises stress")
+    return tuple(rows.rows)
+
+
+_STRESS = from_si(1.0, "Pa").dimension
+
+
+def _unit_of_stresses(rows: Iterable[Result], style: Style) -> str:
+    """Return the unit of the largest stress of a block, in which all are shown."""
+    largest = max((r for r in rows if r.value.dimension == _STRESS), key=lambda r: abs(r.value.si))
+    return style.unit_of(largest.value)
+
+
+def _in_one_unit(rows: Iterable[Result], unit: str, style: Style) -> tuple[Result, ...]:
     shown_in_unit = []
-    for r in results:
-        value = r.value.shown_in(unit) if r in stresses else r.value
+    for r in rows:
+        value = r.value.shown_in(unit) if r.value.dimension == _STRESS else r.value
         shown_in_unit.append(Result(r.name, r.meaning, value, show(value, style), r.place))
-    return shown_in_unit
+    return tuple(shown_in_unit)
+
+
+def _length_unit(style: Style) -> str:
+    return "in" if style.system == "US" else "mm"
 
 
 def _length(value: float, style: Style) -> str:
-    return show(from_si(value, "m").shown_in("in" if style.system == "US" else "mm"), style).text
+    return show(from_si(value, "m").shown_in(_length_unit(style)), style).text
+
+
+def place_text(point: Point, style: Style) -> str:
+    """Return a point as text: '(0 mm, 120.0 mm)'."""
+    size = max(abs(point[0]), abs(point[1]))
+    x, y = (0.0 if abs(c) < 1e-12 * size else c for c in point)
+    return f"({_length(x, style)}, {_length(y, style)})"
 
 
 def _without_noise(extreme: Extreme) -> Extreme:
@@ -103,56 +360,4 @@ def _place(extreme: Extreme, plane: StressPlane, style: Style) -> str:
         return "at the top" if extreme.y > plane.y_bar else "at the bottom"
     if (x_1, y_1) != (x_2, y_2) and x_1 == x_2:
         return "on the right" if extreme.x > plane.x_bar else "on the left"
-    return f"at ({_length(extreme.x, style)}, {_length(extreme.y, style)})"
-
-
-def stress_premises(
-    name: str,
-    section: SectionThing,
-    plane: StressPlane,
-    forces: Forces,
-    strength: Measure | None,
-    outline: Outline,
-    scope: Scope,
-) -> tuple[Premise, ...]:
-    """Return the premises of the flexure formula, tested where the block says enough."""
-    largest, smallest = plane.extremes(outline)
-    peak = max(largest.value, -smallest.value)
-    found: list[Premise] = []
-
-    def add(premise: str, verdict: str, detail: str) -> None:
-        found.append(Premise(name, premise, verdict, detail))  # type: ignore[arg-type]
-
-    stress = shown(from_si(peak, "Pa").shown_in(None), scope).text
-    if strength is None:
-        add("linear elastic", "left to judgement", f"no f_y is given; the largest stress is {stress}")
-    elif peak <= strength.si:
-        add(
-            "linear elastic",
-            "met",
-            f"the largest stress, {stress}, is below f_y = {shown(strength, scope).text}",
-        )
-    else:
-        add(
-            "linear elastic",
-            "not met",
-            f"the largest stress, {stress}, is above f_y = {shown(strength, scope).text}: "
-            "the section yields, and these stresses do not occur",
-        )
-    inertia = section.result.computed
-    if inertia.I_hv == 0.0:
-        add("bending about principal axes", "met", "the horizontal and vertical axes are principal axes")
-    else:
-        add(
-            "bending about principal axes",
-            "met",
-            "they are not principal axes: the general formula with the product moment is used",
-        )
-    if forces.N == 0.0:
-        add("no net axial force", "met", "N = 0: the neutral axis passes through the centroid")
-    else:
-        add("no net axial force", "met", "N acts at the centroid and shifts the neutral axis, as shown")
-    add("plane sections", "left to judgement", "slender member, away from supports, point loads and openings")
-    add("straight member", "left to judgement", "radius of the member's axis large beside its depth")
-    add("restraint against lateral buckling", "left to judgement", "stress alone does not show stability")
-    return tuple(found)
+    return f"at {place_text((extreme.x, extreme.y), style)}"

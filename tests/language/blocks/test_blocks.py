@@ -19,7 +19,15 @@ from calcgen.language.blocks.beam import (
     SupportLine,
 )
 from calcgen.language.blocks.inputs import Feed, InputsBlock
-from calcgen.language.blocks.section import LaterLine, SectionBlock, ShapeLine
+from calcgen.language.blocks.section import (
+    BarsLine,
+    HoleLine,
+    MaterialLine,
+    PartLine,
+    ReferenceLine,
+    SectionBlock,
+    ShapeLine,
+)
 from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.blocks.stress import StressBlock
 from calcgen.language.blocks.working import Check, Derivation, WorkingBlock
@@ -131,6 +139,42 @@ def test_a_rolled_section_takes_a_designation_or_a_name() -> None:
     ]
 
 
+def test_parts_holes_bars_and_materials() -> None:
+    calc = read(
+        "# T\n```section slab\n"
+        "part rib = rectangle(b = 3 mm, h = 5 mm) at (1 mm, 2 mm) of concrete | the rib | [DWG]\n"
+        "part gutter = strip(t = 2 mm, r = 3 mm, (0 mm, 0 mm), (0 mm, 9 mm), (9 mm, 9 mm)) of steel\n"
+        "hole duct = ellipse(b = 3 mm, h = 4 mm) turned 90 deg\n"
+        "bars low = n of 20 mm from (-1 mm, 0 mm) to (1 mm, 0 mm) of steel\n"
+        "bars top = 402 mm² at (0 mm, 4 mm) of steel\n"
+        "modulus steel = 200 GPa\n"
+        "strength steel = f_y/γ_M0\n"
+        "reference = steel\n```\n"
+    )
+    assert not calc.diagnostics
+    rib, gutter, hole, low, top, modulus, strength, reference = block(calc, SectionBlock).items
+    assert isinstance(rib, PartLine)
+    assert rib.material is not None
+    assert (rib.target.name, rib.material.name, rib.annotations.note.text) == ("rib", "concrete", "the rib")
+    assert isinstance(gutter, PartLine)
+    assert [a.name.name for a in gutter.shape.arguments] == ["t", "r"]
+    assert len(gutter.shape.points) == 3
+    assert isinstance(hole, HoleLine)
+    assert shown(hole.shape.turned) == "90[deg]"
+    assert isinstance(low, BarsLine)
+    assert (shown(low.count), written(low.size)) == ("n", "20[mm]")
+    assert low.end is not None
+    assert (written(low.start.x), written(low.end.x)) == ("(- 1[mm])", "1[mm]")
+    assert isinstance(top, BarsLine)
+    assert (top.count, written(top.size), top.end) == (None, "402[mm²]", None)
+    assert isinstance(modulus, MaterialLine)
+    assert (modulus.key.name, modulus.material.name) == ("modulus", "steel")
+    assert isinstance(strength, MaterialLine)
+    assert written(strength.value) == "(/ f_y γ_M0)"
+    assert isinstance(reference, ReferenceLine)
+    assert reference.material.name == "steel"
+
+
 def test_beam(calc: Calc) -> None:
     beam = block(calc, BeamBlock)
     span, section, stiffness, pin, spring, hinge, case, *loads, first, second, restrained = beam.lines
@@ -219,6 +263,7 @@ def test_stress(calc: Calc) -> None:
         ("```working\na = 2 L\nsigma_1 = (\nb <= 2 L\n```", {"a", "σ_1"}),
         ("```section a\nshape = sphere(d = 3 mm)\n```", {"a"}),
         ("```section a\nhole b = circle(d = 3 mm)\n```", {"a"}),
+        ("```section a\npart b = circle(d = 3 mm)\nmodulus = 3 GPa\n```", {"a"}),
         ("```beam b\npattern Q\n```", {"b"}),
         ("```stress c\nM = 2 L\n```", {"c"}),
         ("```table k | source\n```", {"k"}),
@@ -238,11 +283,6 @@ def test_a_block_that_lost_a_line_is_not_used() -> None:
     calc = read("# T\n```beam b\nspan = 6 m\nload Q train 80 kN spaced 1.2 m\n```\n")
     assert [type(s) for s in calc.segments] == [FailedBlock]
     assert found(calc) == ["4:1 not-available-yet"]
-
-
-def test_later_lines_of_a_section_are_kept() -> None:
-    calc = read("# T\n```section a\nshape = circle(d = 9 mm)\nhole b = circle(d = 3 mm)\n```\n")
-    assert [type(i) for i in block(calc, SectionBlock).items] == [ShapeLine, LaterLine]
 
 
 def test_every_kind_of_the_language_is_in_the_table() -> None:

@@ -1,0 +1,205 @@
+"""Shear stress of a stress block under V, V_lat and T, and its second route."""
+
+from __future__ import annotations
+
+import math
+from collections.abc import Callable, Sequence
+from dataclasses import dataclass
+
+import numpy as np
+
+from calcgen.evaluation.blocks.stress_models import elastic_parts
+from calcgen.evaluation.blocks.stress_request import StressRequest
+from calcgen.evaluation.results import SectionPart, ShearResult
+from calcgen.mechanics.arrays import FloatArray, Point
+from calcgen.mechanics.boolean import contact
+from calcgen.mechanics.combined_stress import (
+    combined_extremes,
+    field_stress,
+    outline_stations,
+    wall_stations,
+)
+from calcgen.mechanics.field import Piece, StressField
+from calcgen.mechanics.saint_venant import saint_venant
+from calcgen.mechanics.second_route.residual import Residual
+from calcgen.mechanics.second_route.shear import (
+    cut_residuals,
+    flow_residual,
+    joint_residual,
+    torsion_residuals,
+    wall_residuals,
+)
+from calcgen.mechanics.shear import Cuts, ShearForces, cuts, joint_flow
+from calcgen.mechanics.torsion import (
+    TorsionConstant,
+    circle_torsion,
+    ellipse_torsion,
+    rectangle_torsion,
+    tube_torsion,
+)
+from calcgen.mechanics.wall_shear import WallFlow, WallTorsion, wall_flow, wall_torsion
+from calcgen.mechanics.walls import WallSection, wall_section
+
+ROUNDING = 1e-12  # of the largest flow: a smaller one is none
+_ROUND = ("circle", "tube")
+NEAR = 1e-6  # of a wall's thickness: a point this far beyond its surface still lies in it
+
+
+@dataclass(frozen=True, eq=False)
+class _Torque:
+    """Shear stress of the torque, Pa: its magnitude at points (n, 2), or that along thin walls."""
+
+    method: str
+    largest: tuple[float, Point] | None
+    magnitude: Callable[[FloatArray], FloatArray] | None
+    walls: WallTorsion | None
+
+
+def shear_result(request: StressRequest, field: StressField) -> tuple[ShearResult, tuple[Residual, ...]]:
+    """Find the shear stress of a request, its extremes with the normal stress, and the second route."""
+    section, inertia = request.section, request.section.computed
+    pieces, bars = elastic_parts(section)
+    forces = ShearForces(request.V, request.V_lat)
+    level, upright = (cuts(direction, inertia, forces, pieces, bars) for direction in ("level", "upright"))
+    residuals: list[Residual] = []
+    if request.V or request.V_lat:
+        residuals += cut_residuals(level, upright, forces)
+        if not bars and request.V:
+            residuals.append(flow_residual(level, inertia, forces, pieces))
+    walls = _walls(section.parts)
+    flow = wall_flow(walls, forces) if walls is not None else None
+    if walls is not None and flow is not None and (request.V or request.V_lat):
+        residuals += wall_residuals(walls, flow, forces)
+    torque = _torque(request, walls) if request.T else None
+    if torque is not None and torque.walls is not None and walls is not None:
+        residuals += torsion_residuals(walls, torque.walls, request.T)
+    normal = field_stress(field)
+    described = [
+        outline_stations(pieces, level, upright, normal, torque.magnitude if torque is not None else None)
+    ]
+    if flow is not None:
+        described.append(
+            wall_stations(flow, lambda points: normal(pieces[0], points), torque.walls if torque else None)
+        )
+    joints: dict[str, float] = {}
+    if len(pieces) > 1 and (request.V or request.V_lat):
+        joints = _joint_flows(request, forces, pieces)
+        residuals += [joint_residual(inertia, forces, piece, joints[piece.name]) for piece in pieces]
+    return (
+        ShearResult(
+            level=level,
+            upright=upright,
+            walls=walls,
+            flow=flow,
+            torsion=torque.walls if torque is not None else None,
+            torsion_method=torque.method if torque is not None else "",
+            largest_torsion=torque.largest if torque is not None else None,
+            combined=combined_extremes(*described),
+            joints=joints,
+            contacts={name: _contacts(name, request.section.parts) for name in joints},
+            at=lambda point: _at(point, level, upright, flow, torque),
+        ),
+        tuple(residuals),
+    )
+
+
+def _joint_flows(request: StressRequest, forces: ShearForces, pieces: Sequence[Piece]) -> dict[str, float]:
+    """Return the flow across the joints of each part, N/m; what rounding leaves of balanced ones is zero."""
+    flows = {piece.name: joint_flow(request.section.computed, forces, piece) for piece in pieces}
+    least = ROUNDING * max(flows.values())
+    return {name: flow if flow > least else 0.0 for name, flow in flows.items()}
+
+
+def _contacts(name: str, parts: Sequence[SectionPart]) -> tuple[tuple[Point, ...], ...]:
+    """Return the lines along which a part touches the others, m."""
+    own = next(part for part in parts if part.name == name)
+    others = [part for part in parts if part is not own]
+    return tuple(line for other in others for line in contact(own.outlines, other.outlines))
+
+
+def _walls(parts: tuple[SectionPart, ...]) -> WallSection | None:
+    """Return the mid-line of a section of one thin-walled shape."""
+    return wall_section(parts[0].walls) if len(parts) == 1 and parts[0].walls else None
+
+
+def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
+    """Choose how the torque is carried: by a closed form, along thin walls, or by the numerical solution.
+
+    Stress of a round section grows with the radius. For the other closed forms the numerical solution gives
+    the distribution, whose largest value is then the exact one.
+    """
+    T, section = abs(request.T), request.section
+    exact = _closed_form(request)
+    if exact is None and walls is not None:
+        return _Torque(walls.torsion_method, None, None, wall_torsion(walls, request.T))
+    if exact is not None and section.shape in _ROUND:
+        centre = np.array([section.computed.x_bar, section.computed.y_bar])
+
+        def round_bar(points: FloatArray) -> FloatArray:
+            stress: FloatArray = T / exact.value * np.hypot(*(points - centre).T)
+            return stress
+
+        largest_at = (section.bounds.right, section.computed.y_bar)
+        return _Torque(exact.method, (T * exact.tau_max_per_T, largest_at), round_bar, None)
+    solution = saint_venant(*section.outlines)
+    largest = T * (solution.tau_max.value if exact is None else exact.tau_max_per_T)
+    scale = largest / (T * solution.tau_max.value)
+
+    def magnitude(points: FloatArray) -> FloatArray:
+        # what elements find in a sharp re-entrant corner depends on their size: no more than elsewhere counts
+        found: FloatArray = np.minimum(scale * np.hypot(*solution.stress(points, T=T).T), largest)
+        return found
+
+    method = "finite elements on the outline" if exact is None else exact.method
+    return _Torque(method, (largest, (solution.tau_max.x, solution.tau_max.y)), magnitude, None)
+
+
+def _closed_form(request: StressRequest) -> TorsionConstant | None:
+    """Return the closed form of a section of one whole shape; None where there is none."""
+    section = request.section
+    sizes = {r.name: r.value.si for r in section.further}
+    match section.shape:
+        case "circle":
+            return circle_torsion(sizes["d"])
+        case "tube":
+            return tube_torsion(sizes["d"], sizes["t"])
+        case "ellipse":
+            return ellipse_torsion(sizes["b"], sizes["h"])
+        case "rectangle":
+            return rectangle_torsion(sizes["b"], sizes["h"])
+        case _:
+            return None
+
+
+def _at(point: Point, level: Cuts, upright: Cuts, flow: WallFlow | None, torque: _Torque | None) -> float:
+    """Return the shear stress at a point, Pa: the larger of what the cuts and the walls through it say."""
+    x, y = point
+    tau = math.hypot(_on_cut(level, y), _on_cut(upright, x))
+    if torque is not None and torque.magnitude is not None:
+        tau += float(torque.magnitude(np.array([point]))[0])
+    return max(tau, _in_walls(point, flow, torque.walls if torque else None)) if flow is not None else tau
+
+
+def _on_cut(found: Cuts, at: float) -> float:
+    """Return the stress of largest magnitude on either side of a level."""
+    values = found.at(np.array([at, at]), above=np.array([True, False])).tau
+    return float(np.max(np.abs(np.nan_to_num(values))))
+
+
+def _in_walls(point: Point, flow: WallFlow, torsion: WallTorsion | None) -> float:
+    """Return the largest stress of the walls that a point lies in, Pa; 0 for none."""
+    g = flow.graph
+    ahead = g.along / g.length[:, None]
+    to_point = np.array(point) - g.nodes[g.start]
+    along = np.sum(to_point * ahead, axis=1)
+    off = ahead[:, 0] * to_point[:, 1] - ahead[:, 1] * to_point[:, 0]
+    reach = 0.5 * g.t * (1.0 + NEAR)
+    inside = (np.abs(off) <= reach) & (along >= -reach) & (along <= g.length + reach)
+    if not inside.any():
+        return 0.0
+    u = np.clip(along / g.length, 0.0, 1.0)
+    c_0, c_1, c_2 = (flow.coefficients if torsion is None else flow.plus(torsion.flow).coefficients).T
+    tau = (c_0 + u * (c_1 + u * c_2)) / g.t
+    if torsion is not None:
+        tau = tau + torsion.tau_surface * off / (0.5 * g.t)
+    return float(np.abs(tau[inside]).max())

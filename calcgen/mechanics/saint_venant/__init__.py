@@ -1,0 +1,5 @@
+"""Saint-Venant's torsion and shear of the real outline, by finite elements."""
+
+from calcgen.mechanics.saint_venant.solution import SaintVenant, Shear, TorsionalStress, saint_venant
+
+__all__ = ["SaintVenant", "Shear", "TorsionalStress", "saint_venant"]
