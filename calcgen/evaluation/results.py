@@ -463,7 +463,7 @@ class ShearResult:
     level, upright : flow across level and upright cuts.
     walls : mid-line properties of a thin-walled shape, and `flow` and `torsion` along it; None for others.
     torsion_method : how the stress of the torque was found, '' without one.
-    largest_torsion : stress of the torque alone, Pa, and its place, m; None where walls carry it.
+    largest_torsion : stress of the torque alone, Pa, its place, m, and its direction; None along walls.
     joints : flow that the joints of each part carry, N/m; contacts : the lines along which it touches
         others, m.
     at : shear stress at a point, m -> Pa.
@@ -475,7 +475,7 @@ class ShearResult:
     flow: WallFlow | None
     torsion: WallTorsion | None
     torsion_method: str
-    largest_torsion: tuple[float, Point] | None
+    largest_torsion: tuple[float, Point, Point] | None
     combined: CombinedExtremes
     joints: Mapping[str, float]
     contacts: Mapping[str, tuple[tuple[Point, ...], ...]]

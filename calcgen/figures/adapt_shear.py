@@ -7,13 +7,13 @@ V_lat to the left, T clockwise.
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable
+from collections.abc import Iterable, Sequence
 
 import numpy as np
 
 from calcgen.evaluation.results import ShearResult, StressResult
 from calcgen.figures.adapt_section import bars_label, bars_of, length_factor, length_unit, parts_of, title_of
-from calcgen.figures.adapt_stress import Scales, signed
+from calcgen.figures.adapt_stress import Scales
 from calcgen.figures.flow import FlowDrawing, FlowForce, Wall
 from calcgen.figures.interaction import ForcePoint, InteractionDrawing
 from calcgen.figures.labels import Point
@@ -23,12 +23,19 @@ from calcgen.figures.stress_drawing import Couple, Mark
 from calcgen.figures.torsion import TorsionDrawing, TorsionMark
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.shear import Cut, Cuts
+from calcgen.mechanics.walls import Graph
 from calcgen.quantities.display import Style, number_text, show
 from calcgen.quantities.measure import from_si, magnitude_in
 from calcgen.quantities.symbols import plain
 
 STEPS = 24  # along a wall, so that a parabola is drawn as one
 ALONG = np.linspace(0.0, 1.0, STEPS + 1)
+NOTHING = 1e-6  # N/m
+LONG = 0.06  # of all walls together: a shorter wall, such as a piece of a bend, has no value written
+COUNTS = 0.02  # of the largest flow
+SMOOTH = math.radians(40.0)  # a larger turn is a corner
+PARTED = math.radians(50.0)  # where a bend is parted
+MOST = 8  # values written in one figure
 JUMP = 0.02  # of the largest stress: a smaller jump is not written
 
 
@@ -91,16 +98,24 @@ def flow_drawings(stress: StressResult, ident: str, style: Style) -> Iterable[Fl
     size = magnitude_in(from_si(1.0, "N/m"), unit)
     apart = math.hypot(centre[0] - centroid[0], centre[1] - centroid[1])
     marked = centre if apart > 1e-3 * stress.section.bounds.height * scales.length else None
+    chains = _chains(graph)
     places = shear.flow.places(ALONG) * scales.length
+    lengths = np.array([graph.length[chain].sum() for chain in chains])
     if stress.V or stress.V_lat:
-        flows = shear.flow.at(ALONG) * size
+        flows = [shear.flow.at(ALONG)[chain].ravel() for chain in chains]
+        written = _written(np.array([np.abs(q).max() for q in flows]), lengths)
         names = [f"{key} = {stress.forces_shown[key].text}" for key in ("V", "V_lat") if getattr(stress, key)]
         yield FlowDrawing(
             ident=f"{ident}-flow",
             title=title_of(stress.section),
             walls=tuple(
-                Wall(line, q, t * scales.length, _amount(q, unit, style))
-                for line, q, t in zip(places, flows, graph.t.tolist(), strict=True)
+                Wall(
+                    places[chain].reshape(-1, 2),
+                    q * size,
+                    float(graph.t[chain[0]]) * scales.length,
+                    _amount(q, unit, style) if i in written else "",
+                )
+                for i, (chain, q) in enumerate(zip(chains, flows, strict=True))
             ),
             centroid=centroid,
             quantity=f"shear flow q, {unit}",
@@ -111,12 +126,12 @@ def flow_drawings(stress: StressResult, ident: str, style: Style) -> Iterable[Fl
         yield FlowDrawing(
             ident=f"{ident}-T",
             title=title_of(stress.section),
-            walls=tuple(_torsion_walls(shear, places, scales)),
+            walls=tuple(_torsion_walls(shear, chains, places, scales)),
             centroid=centroid,
             quantity=f"shear stress of torsion, {scales.stress_unit}",
             shear_centre=marked,
             torque=Couple(stress.T, f"T = {stress.forces_shown['T'].text}"),
-            note=f"By the {shear.torsion_method}.",
+            note=f"Found by: {shear.torsion_method}.",
         )
 
 
@@ -126,9 +141,7 @@ def torsion_drawing(stress: StressResult, ident: str, style: Style) -> TorsionDr
     if shear is None or not stress.T or shear.torsion is not None or shear.largest_torsion is None:
         return None
     scales, p = shear_scales(stress, style), stress.section.computed
-    value, (x, y) = shear.largest_torsion
-    arm = (x - p.x_bar, y - p.y_bar)
-    sense = 1.0 if stress.T > 0 else -1.0
+    value, (x, y), way = shear.largest_torsion
     shown = show(from_si(value, "Pa").shown_in(scales.stress_unit), style)
     return TorsionDrawing(
         ident=f"{ident}-T",
@@ -138,12 +151,12 @@ def torsion_drawing(stress: StressResult, ident: str, style: Style) -> TorsionDr
         marks=(
             TorsionMark(
                 (x * scales.length, y * scales.length),
-                (sense * arm[1], -sense * arm[0]),
+                way,
                 f"τ of T alone: {shown.text}",
             ),
         ),
         torque=Couple(stress.T, f"T = {stress.forces_shown['T'].text}"),
-        note=f"By the {shear.torsion_method}.",
+        note=f"Found by: {shear.torsion_method}.",
     )
 
 
@@ -247,27 +260,64 @@ def _joints(stress: StressResult, shear: ShearResult, scales: Scales, *, turned:
             drawn.add(key)
 
 
+def _written(amounts: FloatArray, lengths: FloatArray) -> set[int]:
+    """Return the walls whose value is written: that of the largest, and the long ones that count."""
+    largest = int(np.argmax(amounts))
+    long = np.flatnonzero((lengths > LONG * lengths.sum()) & (amounts > COUNTS * amounts[largest]))
+    return {largest, *long[np.argsort(-lengths[long], kind="stable")][: MOST - 1].tolist()}
+
+
 def _amount(q: FloatArray, unit: str, style: Style) -> str:
-    """Return the largest amount of a wall as text; none for what is next to nothing."""
+    """Return the largest amount of a wall's flow, N/m, as text; none for what is next to nothing."""
     largest = float(np.abs(q).max())
-    return show(from_si(largest, unit).shown_in(unit), style).text if largest > 1e-9 else ""
+    return show(from_si(largest, "N/m").shown_in(unit), style).text if largest > NOTHING else ""
 
 
-def _torsion_walls(shear: ShearResult, places: FloatArray, scales: Scales) -> Iterable[Wall]:
+def _chains(graph: Graph) -> list[list[int]]:
+    """Return walls that run on smoothly, as in a bend, as one: indices in their order.
+
+    A bend is parted in its middle, so that both of its straight neighbours keep their own values.
+    """
+    ends = np.bincount(np.concatenate((graph.start, graph.end)), minlength=len(graph.nodes))
+    ahead = graph.along / graph.length[:, None]
+    chains = [[0]]
+    turned = 0.0
+    for i in range(1, len(graph.t)):
+        joint = graph.start[i]
+        cross = ahead[i - 1, 0] * ahead[i, 1] - ahead[i - 1, 1] * ahead[i, 0]
+        turn = abs(math.atan2(cross, float(ahead[i - 1] @ ahead[i])))
+        runs_on = graph.end[i - 1] == joint and ends[joint] == 2 and graph.t[i] == graph.t[i - 1]
+        turned += turn
+        if runs_on and turn < SMOOTH and turned < PARTED:
+            chains[-1].append(i)
+        else:
+            chains.append([i])
+            turned = 0.0
+        if graph.length[i] > LONG * graph.length.sum():
+            turned = 0.0
+    return chains
+
+
+def _torsion_walls(
+    shear: ShearResult, chains: Sequence[Sequence[int]], places: FloatArray, scales: Scales
+) -> Iterable[Wall]:
     """Return the walls with the stress of the torque: along cells, or turning within open walls."""
     if shear.torsion is None:
         return
-    rows = zip(
-        places,
-        shear.torsion.q.tolist(),
-        shear.torsion.tau_surface.tolist(),
-        shear.torsion.graph.t.tolist(),
-        strict=True,
-    )
-    for line, q, surface, t in rows:
-        closed = q != 0.0
-        tau = q / t if closed else surface
-        label = signed(show(from_si(abs(tau), "Pa").shown_in(scales.stress_unit), scales.style), 0.0)
+    torsion, graph = shear.torsion, shear.torsion.graph
+    lengths = np.array([graph.length[list(chain)].sum() for chain in chains])
+    amounts = np.array([torsion.tau[chain[0]] for chain in chains])
+    written = _written(amounts, lengths)
+    for i, chain in enumerate(chains):
+        first = chain[0]
+        t, q = float(graph.t[first]), float(torsion.q[first])
+        tau = q / t if q else float(torsion.tau_surface[first])
+        shown = show(from_si(abs(tau), "Pa").shown_in(scales.stress_unit), scales.style)
+        line = places[list(chain)].reshape(-1, 2)
         yield Wall(
-            line, np.full(len(line), tau * scales.stress), t * scales.length, label if tau else "", not closed
+            line,
+            np.full(len(line), tau * scales.stress),
+            t * scales.length,
+            shown.text if tau and i in written else "",
+            turning=not q,
         )

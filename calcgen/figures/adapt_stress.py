@@ -229,19 +229,18 @@ def _panel(profile: Sequence[Point], scales: Scales, title: str, bars: tuple[Mar
     points = tuple((y * scales.length, s * scales.stress) for y, s in profile)
     jumps = [i for i in range(1, len(points)) if points[i][0] == points[i - 1][0]]
     marked = sorted({0, len(points) - 1, *jumps, *(i - 1 for i in jumps)})
-    if jumps:  # a block of even stress has its value once, at its outer end
-        middle = 0.5 * (points[0][0] + points[-1][0])
-        marked = [i for i in marked if not _repeats(points, i, middle)]
+    # a block of even stress has its value once, at its outer end
+    marked = [i for i in marked if i in (0, len(points) - 1) or not _repeats(points, i)]
     marks = [Mark(*points[i], scales.value(profile[i][1])) for i in marked if profile[i][1]]
     if not marks:
         marks = [Mark(*points[-1], scales.value(0.0))]
     return StressPanel(points, tuple(marks), title, bars)
 
 
-def _repeats(points: Sequence[Point], i: int, middle: float) -> bool:
-    """Whether the value at a corner of a profile stands already at the outer end of its stretch."""
-    outer = i - 1 if points[i][0] < middle else i + 1
-    return 0 <= outer < len(points) and points[outer][0] != points[i][0] and points[outer][1] == points[i][1]
+def _repeats(points: Sequence[Point], i: int) -> bool:
+    """Whether a corner of a profile has the value of its other neighbour, beyond the jump at its height."""
+    y, value = points[i]
+    return any(points[k][0] != y and points[k][1] == value for k in (i - 1, i + 1))
 
 
 def _bar_marks(field: StressField, scales: Scales) -> tuple[Mark, ...]:

@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Iterable
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 from typing import Literal
 
 from calcgen.evaluation.conventions import Axes
 from calcgen.evaluation.results import BeamResult, EvaluatedCalc, SectionResult, StressResult
 from calcgen.figures.adapt_beam import beam_drawings
-from calcgen.figures.adapt_section import section_drawing
+from calcgen.figures.adapt_section import section_drawing, title_of
 from calcgen.figures.adapt_shear import (
     flow_drawings,
     interaction_drawing,
@@ -74,24 +74,35 @@ def illustrate(calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple
 
 def _of_stress(stress: StressResult, ident: str, axes: Axes, style: Style) -> Iterable[Figure]:
     """Compose normal stress, the interaction of N and M, shear, flow along walls, torsion: what there is."""
-    forces = stress.forces
+    forces, of = stress.forces, title_of(stress.section)
     if forces.N or forces.M or forces.M_lat or not stress.shear:
+        title = f"normal stress of {of}"
         if stress.plane.g_x == 0.0 or stress.curved is not None:
             depth = stress_drawing(stress, ident, style)
-            yield Figure(compose_stress(depth, "wide"), compose_stress(depth, "narrow"))
+            yield _titled(compose_stress(depth, "wide"), compose_stress(depth, "narrow"), title)
         else:
             field = field_drawing(stress, ident, axes, style)
-            yield Figure(compose_field(field, "wide"), compose_field(field, "narrow"))
+            yield _titled(compose_field(field, "wide"), compose_field(field, "narrow"), title)
     limit = interaction_drawing(stress, ident, style)
     if limit is not None:
-        yield Figure(compose_interaction(limit, "wide"), compose_interaction(limit, "narrow"))
+        title = f"{limit.title}, {of}"
+        yield _titled(compose_interaction(limit, "wide"), compose_interaction(limit, "narrow"), title)
     for shear in shear_drawings(stress, ident, style):
-        yield Figure(compose_shear(shear, "wide"), compose_shear(shear, "narrow"))
+        under = shear.force.label if shear.force is not None else ""
+        title = f"shear stress of {of} under {under}"
+        yield _titled(compose_shear(shear, "wide"), compose_shear(shear, "narrow"), title)
     for flow in flow_drawings(stress, ident, style):
-        yield Figure(compose_flow(flow, "wide"), compose_flow(flow, "narrow"))
+        title = f"{flow.quantity.partition(',')[0]} along the walls of {of}"
+        yield _titled(compose_flow(flow, "wide"), compose_flow(flow, "narrow"), title)
     torsion = torsion_drawing(stress, ident, style)
     if torsion is not None:
-        yield Figure(compose_torsion(torsion, "wide"), compose_torsion(torsion, "narrow"))
+        title = f"torsion of {of}"
+        yield _titled(compose_torsion(torsion, "wide"), compose_torsion(torsion, "narrow"), title)
+
+
+def _titled(wide: Picture, narrow: Picture, title: str) -> Figure:
+    """Return a figure whose title tells it from the others of its block."""
+    return Figure(replace(wide, title=title), replace(narrow, title=title))
 
 
 def conventions(axes: Axes, depth: Literal["down", "up"]) -> Figure:

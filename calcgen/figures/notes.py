@@ -52,8 +52,8 @@ def draw_note(
             found = other
         elif found is None and near:
             found = near[0]
-    # a note wider than the frame goes beyond it
-    found = found or next(p for p in places if obstacles.free(p.label.box, 3.0))
+    # a note wider than the frame goes beyond it; in a crowd without end the farthest place must do
+    found = found or next((p for p in places if obstacles.free(p.label.box, 3.0)), places[-1])
     sketch.line([point, found.elbow], THIN)
     obstacles.add_line([point, found.elbow])
     obstacles.boxes.append(sketch.label(found.label).box)
@@ -90,11 +90,11 @@ def draw_near(sketch: Sketch, note: Label, point: Point, obstacles: Obstacles) -
     half = (note.box.right - note.box.left) / 2
     ways = ((0, 1), (0, -1), (1, 0), (-1, 0), (1, 1), (-1, 1), (1, -1), (-1, -1))
     steps = ((r, across, down) for r in np.arange(6.0, REACH, 4.0) for across, down in ways)
-    moved = (
+    moved = [
         note.moved(float(point[0] + across * (half + r)), float(point[1] + 3.5 + down * (5 + r)))
         for r, across, down in steps
-    )
-    place = next(label for label in moved if obstacles.free(label.box, 2.0))
+    ]
+    place = next((label for label in moved if obstacles.free(label.box, 2.0)), moved[-1])
     obstacles.boxes.append(sketch.label(place).box)
 
 

@@ -67,7 +67,9 @@ def distance(first: Sequence[Outline], second: Sequence[Outline]) -> float:
 
 def contact(first: Sequence[Outline], second: Sequence[Outline]) -> tuple[tuple[Point, ...], ...]:
     """Return the lines along which two parts touch, m: their joints; none where they lie apart."""
-    common = _region(first).boundary.intersection(_region(second).boundary)
+    a, b = _region(first).boundary, _region(second).boundary
+    left, bottom, right, top = a.bounds
+    common = a.intersection(b, grid_size=SNAP * max(right - left, top - bottom))
     lines = [line for line in getattr(common, "geoms", (common,)) if line.length > 0.0]
     if not lines:
         return ()

@@ -4,7 +4,8 @@ Two descriptions are searched. *Outline*: stations on level and upright cuts of 
 ends and the middle of each interval of material; the mean stresses of the level cut (τ_y) and of the upright
 cut (τ_x) through the station are at right angles, √(τ_x² + τ_y²), and a torsional stress is added to that by
 magnitude, which is safe whatever its direction. *Walls*: stations along the mid-line of thin walls, on it
-and on both surfaces; flows of shear and of torsion act along the wall and are added with their signs. Each
+and on both surfaces; flows of shear and of torsion act along the wall and are added with their signs. An open
+wall that the cuts across it pass alone has its flow from the actual outline, and needs no mid-line. Each
 extreme is the larger of both, and says from which it comes.
 
 The stress state is σ along the beam with one shear stress τ: σ_vM = √(σ² + 3τ²), σ_1,2 = σ/2 ± √(σ²/4 + τ²),
@@ -23,7 +24,9 @@ import numpy as np
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.field import Piece, StressField
 from calcgen.mechanics.shear import WORK, Cuts
+from calcgen.mechanics.stress import BoolArray
 from calcgen.mechanics.wall_shear import WallFlow, WallTorsion
+from calcgen.mechanics.walls import Graph
 
 Description: TypeAlias = Literal["outline", "walls"]
 NormalStress: TypeAlias = Callable[[Piece, FloatArray], FloatArray]  # of a piece, at points (n, 2): (n,), Pa
@@ -123,12 +126,29 @@ def outline_stations(
     return Stations(points, normal, tau, "outline")
 
 
+def passed_alone(g: Graph, level: Cuts, upright: Cuts) -> BoolArray:
+    """Return for each wall, (n,), whether the cut through its middle, the more across it, passes no other."""
+    middle = g.nodes[g.start] + 0.5 * g.along
+    upwards = np.abs(g.along[:, 1]) >= np.abs(g.along[:, 0])
+    return np.array(
+        [
+            len(level.material(y) if up else upright.material(x)) == 1
+            for (x, y), up in zip(middle.tolist(), upwards.tolist(), strict=True)
+        ]
+    )
+
+
 def wall_stations(
-    flow: WallFlow, sigma: Callable[[FloatArray], FloatArray], torsion: WallTorsion | None = None
+    flow: WallFlow,
+    sigma: Callable[[FloatArray], FloatArray],
+    torsion: WallTorsion | None = None,
+    *,
+    chosen: BoolArray | None = None,
 ) -> Stations:
     """Evaluate both stresses along thin walls: at ends, middle and the vertex of the flow of each wall.
 
     At each place on the mid-line and on both surfaces, t/2 away, where a torsional stress of open walls acts.
+    Of all walls, or of those `chosen`, (n,).
     """
     g = flow.graph
     total = flow if torsion is None else flow.plus(torsion.flow)
@@ -138,10 +158,12 @@ def wall_stations(
     middle = g.nodes[g.start][:, None, :] + u[:, :, None] * g.along[:, None, :]
     left = np.column_stack((-g.along[:, 1], g.along[:, 0])) / g.length[:, None]
     surface = np.zeros(len(g.t)) if torsion is None else torsion.tau_surface
+    looked_at = np.ones(len(g.t), dtype=bool) if chosen is None else chosen
     points, tau = [], []
     for side in (0.0, 1.0, -1.0):
-        points.append((middle + side * (0.5 * g.t[:, None] * left)[:, None, :]).reshape(-1, 2))
-        tau.append(np.abs(q / g.t[:, None] + side * surface[:, None]).ravel())
+        places_here = middle + side * (0.5 * g.t[:, None] * left)[:, None, :]
+        points.append(places_here[looked_at].reshape(-1, 2))
+        tau.append(np.abs(q / g.t[:, None] + side * surface[:, None])[looked_at].ravel())
     places = np.concatenate(points)
     return Stations(places, sigma(places), np.concatenate(tau), "walls")
 

@@ -371,3 +371,32 @@ def test_symmetric_outlines_have_true_zeros(radii: list[float]) -> None:
     shear = sheared(outline(ring))
     assert shear.x_s == pytest.approx(0.0, abs=1e-12)
     assert shear.f_hv == 0.0
+
+
+def test_awkward_outlines_are_solved_too() -> None:
+    """A hole that hardly is one, sharp spikes and notches, plates that touch but for rounding."""
+    square = rectangle(b=1.0, h=1.0).outline
+    speck = outline(square.exterior, [[(0.0, 0.0), (1e-5, 0.0), (0.0, 1e-5)]])
+    assert J(speck) == pytest.approx(J(square), rel=1e-3)
+
+    generator = np.random.default_rng(5)
+    for corners in (7, 20, 45):
+        theta = np.sort(generator.uniform(0.0, 2.0 * math.pi, corners))
+        radius = generator.uniform(0.1, 1.0, corners)
+        spiky = outline(np.column_stack((radius * np.cos(theta), radius * np.sin(theta))))
+        assert saint_venant(spiky).gap < 1e-3
+
+    left = -1.0
+    plates = []
+    for width, depth, rise in generator.uniform((0.05, 0.1, -0.01), (0.4, 0.5, 0.01), (4, 3)).tolist():
+        plates.append(rectangle(b=width, h=depth).outline.moved(left + 0.5 * width, rise))
+        left += width
+    cos, sin = math.cos(0.7), math.sin(0.7)
+    turned = [Outline(plate.exterior @ np.array([[cos, sin], [-sin, cos]])) for plate in plates]
+    assert saint_venant(*turned).pieces == 1
+    assert J(*turned) == pytest.approx(J(*plates), rel=1e-3)
+
+
+def test_corners_that_touch_do_not_connect() -> None:
+    square = rectangle(b=0.1, h=0.1).outline
+    assert saint_venant(square, square.moved(0.1, 0.1)).pieces == 2

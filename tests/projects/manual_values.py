@@ -2,10 +2,13 @@
 
 from __future__ import annotations
 
-from math import atan, degrees, e, log, pi, sqrt
+from math import atan, cosh, degrees, e, fsum, log, pi, sqrt, tanh
 from typing import NamedTuple
 
 EXACT = 1e-9  # closed form against closed form: rounding alone lies between
+FACET = 2e-5  # corners of that polygon lie so far outside the circle
+ELEMENTS = 1e-4  # by finite elements
+FIGURES = 5e-3  # three figures of a book, whose intermediate results are rounded
 ROUND = 1e-6  # second moment of a circle against that of its polygon of 512 edges and the same area
 
 
@@ -28,6 +31,85 @@ U1, SLS = 1.35 * 4 + 1.5 * 8, 12  # kN/m, the combinations of M-13-results
 D = 151.25 * 41.25 - 45.0**2  # cm⁸, I_y I_z - I_yz² of the cleat
 RANGE = sqrt((151.25 - 41.25) ** 2 / 4 + 45.0**2)  # cm⁴, radius of its circle of second moments
 PHI = 0.5 * (1 + 0.34 * 0.7 + 0.81)
+
+
+def first_moments(*parts: tuple[float, float]) -> float:
+    """Return the centroid of areas A at y, given as (A, y)."""
+    return sum(A * y for A, y in parts) / sum(A for A, _ in parts)
+
+
+def stacked(*parts: tuple[float, float, float]) -> float:
+    """Return I of rectangles b wide and h high with their middles at y, given as (b, h, y), about y = 0."""
+    return sum(b * h * (h**2 / 12 + y**2) for b, h, y in parts)
+
+
+def saint_venant(b: float, h: float) -> tuple[float, float]:
+    """Return I_t of a rectangle, b ≤ h, and τ_max for T = 1.
+
+    Source: Timoshenko and Goodier, Theory of elasticity, article 109, from memory.
+    """
+    odd = range(1, 201, 2)
+    I_t = h * b**3 * (1 / 3 - 64 / pi**5 * b / h * fsum(tanh(n * pi * h / (2 * b)) / n**5 for n in odd))
+    lacking = 8 / pi**2 * fsum(1 / (n**2 * cosh(n * pi * h / (2 * b))) for n in odd[:20])
+    return I_t, b / I_t * (1 - lacking)
+
+
+# IPE 300 as an outline: flanges, web and four fillets, cm²
+A_IPE300 = 2 * 15 * 1.07 + (30 - 2 * 1.07) * 0.71 + (4 - pi) * 1.5**2
+# the duct of M-09e-parts: a rectangle less a circle, cm
+A_HOLE = pi * 6**2
+Y_DUCT = -A_HOLE * 5 / (600 - A_HOLE)
+# the slab of M-09f-materials, uncracked, mm: n - 1 times each bar's area beside the rectangle
+N_SLAB = 200 / 12
+BARS = ((N_SLAB - 1) * 4 * pi * 100, -200.0), ((N_SLAB - 1) * 402, 210.0)
+A_SLAB = 300 * 500 + BARS[0][0] + BARS[1][0]
+Y_SLAB = first_moments((150000, 0), *BARS)
+I_SLAB = stacked((300, 500, -Y_SLAB)) + sum(A * (y - Y_SLAB) ** 2 for A, y in BARS)
+# the flitch beam, transformed to timber, cm⁴; E_steel/E_timber = 12
+I_FLITCH = 2 * 10 * 40**3 / 12 + 12 * 1.2 * 30**3 / 12
+# the unequal girder, mm: middles of top flange, web and bottom flange above the centroid
+GIRDER = (200.0, 20.0, 240.0), (10.0, 455.0, 2.5), (300.0, 25.0, -237.5)
+Y_GIRDER = first_moments(*((b * h, y) for b, h, y in GIRDER))
+CENTRED = tuple((b, h, y - Y_GIRDER) for b, h, y in GIRDER)
+I_TOP, I_BOTTOM = 20 * 200**3 / 12, 25 * 300**3 / 12
+H_O = 240 + 237.5  # between the flanges' mid-lines
+YS_GIRDER = -237.5 + H_O * I_TOP / (I_TOP + I_BOTTOM)
+BETA = sum(b * h * y * (b**2 / 12 + y**2 + h**2 / 4) for b, h, y in CENTRED) / stacked(*CENTRED)
+# the web of M-14c-shear, mm: by the cut, and along the mid-line
+I_CUT = (165 * 320**3 - 157.5 * 290**3) / 12
+I_LINE = 2 * 165 * 15 * 152.5**2 + 7.5 * 305**3 / 12
+S_FLANGE = 165 * 15 * 152.5
+TAU_WEB = max((S_FLANGE + 7.5 * 145**2 / 2) / I_CUT, (S_FLANGE + 7.5 * 152.5**2 / 2) / I_LINE) * 45e3 / 7.5
+TAU_TOP = max(S_FLANGE / I_CUT, (S_FLANGE + 7.5 * (152.5**2 - 145**2) / 2) / I_LINE) * 45e3 / 7.5
+SIGMA_TOP = -60e6 * 145 / I_CUT
+SIGMA_JOIN, TAU_JOIN = 60e6 * 152.5 / I_CUT, S_FLANGE / I_LINE * 45e3 / 7.5
+# the box of M-14d-torsion, mm
+I_BOX = (120 * 200**3 - 104 * 184**3) / 12
+I_BOX_LINE = 2 * 112 * 8 * 96**2 + 2 * 8 * 192**3 / 12
+TAU_BOX = (
+    80e3 / 16 * max((120 * 100 * 50 - 104 * 92 * 46) / I_BOX, (112 * 8 * 96 + 2 * 8 * 96**2 / 2) / I_BOX_LINE)
+)
+# the I of M-14f-plastic, mm: flanges 100 × 20 and 60 × 20, web 20 × 80, middles above mid-depth
+TEE_I = (100.0, 20.0, 50.0), (20.0, 80.0, 0.0), (60.0, 20.0, -50.0)
+Y_BJ = first_moments(*((b * h, y) for b, h, y in TEE_I))
+I_BJ, C_BJ = stacked(*((b, h, y - Y_BJ) for b, h, y in TEE_I)), 60 + Y_BJ
+# the timber with a plate on top of M-14e-composite, transformed, mm, from the wood's middle; n = 16
+WOOD, PLATE = (140.0, 400.0, 0.0), (16 * 200.0, 8.0, 204.0)
+Y_WOOD = first_moments(*((b * h, y) for b, h, y in (WOOD, PLATE)))
+I_WOOD = stacked(*((b, h, y - Y_WOOD) for b, h, y in (WOOD, PLATE)))
+# the cracked strip, in: 6 x² + n A_s x - n A_s d = 0
+N_AS = 29000 / 3600 * 2 * pi * 0.625**2 / 4
+X_STRIP = (-N_AS + sqrt(N_AS**2 + 4 * 6 * N_AS * 4)) / 12
+I_STRIP = 12 * X_STRIP**3 / 3 + N_AS * (4 - X_STRIP) ** 2
+# the square link, mm
+A_M = 50 * log(80 / 30)
+R_N = 2500 / A_M
+
+
+def winkler(r: float) -> float:
+    """Return the stress of the link, MPa, at the radius r, mm, under 9.5 kN and 9.5 kN · 155 mm."""
+    return 9500 / 2500 + 9500 * 155 * (2500 - r * A_M) / (2500 * r * (55 * A_M - 2500))
+
 
 CASES: tuple[Worked, ...] = (
     Worked("M-01-first", "w", (1.35 * 1.2 + 1.5 * 5) * 0.8, "kN/m", "(1.35 g + 1.5 q) s"),
@@ -137,8 +219,8 @@ CASES: tuple[Worked, ...] = (
     Worked("M-10-rolled", "W", 366.6, "cm³", "EN 10365, from memory"),
     Worked("M-10-rolled", "I", 2492, "cm⁴", "EN 10365, from memory"),
     Worked("M-10-rolled", "x", 37.5 - 20.1, "mm", "b/2 - e, e printed to 0.1 mm", 6e-3),
-    Worked("M-10-rolled", "I_w300", 8870.9, "cm⁴", "as in profiles/office.csv"),
-    Worked("M-10-rolled", "A_w300", 58.08, "cm²", "as in profiles/office.csv"),
+    Worked("M-10b-office", "I_w300", 8870.9, "cm⁴", "as in profiles/office.csv"),
+    Worked("M-10b-office", "A_w300", 58.08, "cm²", "as in profiles/office.csv"),
     # the cleat: leg 10 × 100 about (-25, 0) and leg 50 × 10 about (5, -45), in mm
     Worked("M-11-properties", "A_1", 15, "cm²", "10 + 5"),
     Worked("M-11-properties", "x_1", (-25 * 1000 + 5 * 500) / 1500, "mm", "first moments"),
@@ -168,8 +250,6 @@ CASES: tuple[Worked, ...] = (
     Worked("M-11-properties", "i_z1", sqrt(4125 / 15), "mm", "√(I/A)"),
     Worked("M-11-properties", "i_max", sqrt((96.25 + RANGE) / 15) * 10, "mm", "√(I/A)"),
     Worked("M-11-properties", "i_min", sqrt((96.25 - RANGE) / 15) * 10, "mm", "√(I/A)"),
-    Worked("M-11-properties", "I_t1", 12.88, "cm⁴", "EN 10365, from memory"),
-    Worked("M-11-properties", "I_w1", 37390, "cm⁶", "EN 10365, from memory"),
     Worked("M-11-properties", "t_1", 10, "mm", "as given"),
     Worked("M-12-beam", "M_uls", (1.35 * (2.5 + W_JOIST) + 9) * 36 / 8, "kN·m", "w L²/8"),
     Worked("M-12-beam", "M_u2", (2.5 + W_JOIST + 9) * 36 / 8, "kN·m", "w L²/8"),
@@ -241,33 +321,224 @@ CASES: tuple[Worked, ...] = (
     Worked("M-13-results", "φ_tip", 10 * 4 / (2 * 4000), "", "P L²/(2 EI)"),
     Worked("M-13-results", "x_w", 2, "m", "at the tip"),
     Worked("M-13-results", "V_min", 10, "kN", "constant"),
-    Worked("M-14-stress", "σ_1", 48 / 0.96, "MPa", "M/W, W = b h²/6 = 960 cm³"),
-    Worked("M-14-stress", "σ_2", -50, "MPa", "compression at the top"),
-    Worked("M-14-stress", "σ_3", 25, "MPa", "half-way to the bottom"),
-    Worked("M-14-stress", "κ_1", 50e-3 / 210 / 0.12, "1/m", "σ/(E h/2)"),
-    Worked("M-14-stress", "R_1", 0.12 * 210 / 50e-3, "m", "1/κ"),
-    Worked("M-14-stress", "ε_1", 50e-3 / 210, "", "σ/E"),
-    Worked("M-14-stress", "d_1", 0, "mm", "N = 0"),
-    Worked("M-14-stress", "σ_4", 10 + 25, "MPa", "N/A + M/W"),
-    Worked("M-14-stress", "σ_5", 10 - 25, "MPa", "N/A - M/W"),
-    Worked("M-14-stress", "d_2", -120 * 10 / 25, "mm", "above the centroid, depth down"),
-    Worked("M-14-stress", "σ_6", 25 + 4 / 0.4, "MPa", "M/W_y + M_lat/W_z, W_z = 400 cm³"),
-    Worked("M-14-stress", "θ_6", degrees(atan(4 / 24 * 2.4**2)), "deg", "tan θ = M_lat I_y/(M I_z)"),
+    Worked("M-14b-elastic", "σ_1", 48 / 0.96, "MPa", "M/W, W = b h²/6 = 960 cm³"),
+    Worked("M-14b-elastic", "σ_2", -50, "MPa", "compression at the top"),
+    Worked("M-14b-elastic", "σ_3", 25, "MPa", "half-way to the bottom"),
+    Worked("M-14b-elastic", "κ_1", 50e-3 / 210 / 0.12, "1/m", "σ/(E h/2)"),
+    Worked("M-14b-elastic", "R_1", 0.12 * 210 / 50e-3, "m", "1/κ"),
+    Worked("M-14b-elastic", "ε_1", 50e-3 / 210, "", "σ/E"),
+    Worked("M-14b-elastic", "d_1", 0, "mm", "N = 0"),
+    Worked("M-14b-elastic", "σ_4", 10 + 25, "MPa", "N/A + M/W"),
+    Worked("M-14b-elastic", "σ_5", 10 - 25, "MPa", "N/A - M/W"),
+    Worked("M-14b-elastic", "d_2", -120 * 10 / 25, "mm", "above the centroid, depth down"),
+    Worked("M-14b-elastic", "σ_6", 25 + 4 / 0.4, "MPa", "M/W_y + M_lat/W_z, W_z = 400 cm³"),
+    Worked("M-14b-elastic", "θ_6", degrees(atan(4 / 24 * 2.4**2)), "deg", "tan θ = M_lat I_y/(M I_z)"),
     Worked(
-        "M-14-stress",
+        "M-14b-elastic",
         "σ_7",
         1500 * (0.45 * 15 + 0.4125 * 35) / D * 10,
         "MPa",
         "general formula, 15 left and 35 below",
     ),
     Worked(
-        "M-14-stress",
+        "M-14b-elastic",
         "σ_8",
         1500 * (0.45 * 15 - 0.4125 * 65) / D * 10,
         "MPa",
         "general formula, 15 left and 65 above",
     ),
-    Worked("M-14-stress", "θ_7", -degrees(atan(45 / 41.25)), "deg", "tan θ = I_yz/I_z under M alone"),
+    Worked("M-14b-elastic", "θ_7", -degrees(atan(45 / 41.25)), "deg", "tan θ = I_yz/I_z under M alone"),
+    Worked("M-09-shapes", "A_strut", pi * 4 * 6, "cm²", "π b h/4"),
+    Worked("M-09-shapes", "I_strut", pi * 8 * 12**3 / 64, "cm⁴", "π b h³/64", ROUND),
+    Worked("M-09-shapes", "A_sill", (12 + 8) / 2 * 10, "cm²", "mean width times h"),
+    Worked(
+        "M-09-shapes", "y_sill", 100 * (80 + 2 * 120) / (3 * 200) - 50, "mm", "h (b_b + 2 b_t)/3(b_b + b_t)"
+    ),
+    Worked(
+        "M-09-shapes",
+        "I_sill",
+        10**3 * (12**2 + 4 * 12 * 8 + 8**2) / (36 * 20),
+        "cm⁴",
+        "h³ (b_t² + 4 b_t b_b + b_b²)/36(b_t + b_b)",
+    ),
+    Worked("M-09d-strips", "A_rail", (20 + 2 * 6.7) * 0.8, "cm²", "web and flanges"),
+    Worked("M-09d-strips", "I_rail", -2 * 6.7 * 0.8 * 3.75 * 9.6, "cm⁴", "flanges beyond the web, Σ A x y"),
+    Worked(
+        "M-09d-strips",
+        "A_purlin",
+        2 * (310 - 4 * (2 - pi / 2) * 4),
+        "mm²",
+        "t times the centreline, less (2 - π/2)(r + t/2) at each bend",
+    ),
+    Worked("M-09d-strips", "h_purlin", 152, "mm", "150 and a thickness"),
+    Worked(
+        "M-09d-strips", "A_rib", 4 * (120 + 40 + 2 * sqrt(40**2 + 60**2)), "mm²", "t times the centreline"
+    ),
+    Worked("M-09e-parts", "I_planks", (10 * 14**3 - 8 * 10**3) / 12, "cm⁴", "outer less inner; 16.2·10⁶ mm⁴"),
+    Worked("M-09e-parts", "h_planks", 140, "mm", "20 + 100 + 20"),
+    Worked("M-09e-parts", "A_top", 20, "cm²", "b h"),
+    Worked("M-09e-parts", "I_top", 10 * 2**3 / 12, "cm⁴", "b h³/12"),
+    Worked("M-09e-parts", "W_web", 1620 / 5, "cm³", "I/50 mm"),
+    Worked("M-09e-parts", "A_net", 12 * 1.6 + 1.2 * 18.4 - 2 * 1.4 * 1.6, "cm²", "less two holes"),
+    Worked("M-09e-parts", "A_fl", 12 * 1.6 - 2 * 1.4 * 1.6, "cm²", "less two holes"),
+    Worked("M-09e-parts", "A_duct", 600 - A_HOLE, "cm²", "less the circle"),
+    Worked("M-09e-parts", "y_duct", 10 * Y_DUCT, "mm", "first moments"),
+    Worked(
+        "M-09e-parts",
+        "I_duct",
+        20 * 30**3 / 12 + 600 * Y_DUCT**2 - pi * 6**4 / 4 - A_HOLE * (5 - Y_DUCT) ** 2,
+        "cm⁴",
+        "parallel axes",
+        ROUND,
+    ),
+    Worked("M-09e-parts", "A_beam", A_IPE300, "cm²", "rectangles and (4 - π) r²"),
+    Worked("M-09e-parts", "A_strong", A_IPE300 + 18 * 1.2, "cm²", "and the plate"),
+    Worked("M-09f-materials", "I_f", I_FLITCH, "cm⁴", "Σ n I"),
+    Worked("M-09f-materials", "n_p", 12, "", "210/17.5"),
+    Worked("M-09f-materials", "W_t", I_FLITCH / 20, "cm³", "I/200 mm"),
+    Worked("M-09f-materials", "W_s", I_FLITCH / (12 * 15), "cm³", "I/(n 150 mm)"),
+    Worked(
+        "M-09f-materials", "σ_t", 7.2, "MPa", "Megson, Structural and stress analysis, from memory", FIGURES
+    ),
+    Worked("M-09f-materials", "σ_s", 64.7, "MPa", "Megson, example 12.1, from memory", FIGURES),
+    Worked(
+        "M-09f-materials",
+        "M_pl",
+        (24 * 20 * 40**2 + 275 * 1.2 * 30**2) / 4e3,
+        "kN·m",
+        "Σ f b h²/4, one axis halves all",
+    ),
+    Worked("M-09f-materials", "A_slab", A_SLAB / 100, "cm²", "b h + (n - 1) A_s"),
+    Worked("M-09f-materials", "I_slab", I_SLAB / 1e4, "cm⁴", "parallel axes"),
+    Worked("M-09f-materials", "y_slab", Y_SLAB, "mm", "first moments"),
+    Worked("M-09f-materials", "A_bars", 4 * pi, "cm²", "4 π d²/4"),
+    Worked("M-09f-materials", "n_bars", N_SLAB, "", "200/12"),
+    Worked("M-10-rolled", "W_us", 101, "in³", "AISC Manual Table 1-1, from memory"),
+    Worked("M-11b-torsion", "I_t1", saint_venant(10, 20)[0], "cm⁴", "Saint-Venant's series"),
+    Worked(
+        "M-11b-torsion", "A_s1", 5 / 6 * 200, "cm²", "5/6 b h for ν = 0: Timoshenko and Goodier", ELEMENTS
+    ),
+    Worked("M-11b-torsion", "k_1", 200 / 6, "mm", "h/6"),
+    Worked("M-11b-torsion", "k_2", 100 / 6, "mm", "b/6"),
+    Worked("M-11b-torsion", "I_t2", pi * 4**3 * 6**3 / (4**2 + 6**2), "cm⁴", "π a³ c³/(a² + c²)"),
+    Worked("M-11b-torsion", "I_t3", pi * (40**4 - 30**4) / 32, "cm⁴", "π (d⁴ - d_i⁴)/32"),
+    Worked("M-11b-torsion", "k_3", (200**2 + 150**2) / (4 * 200), "mm", "(R² + r²)/(4 R)", ROUND),
+    Worked(
+        "M-11b-torsion", "x_sc", -2.0375 + 0.075 - 1.6, "in", "3 b²/(h + 6 b) = 1.6 in behind the mid-line"
+    ),
+    Worked("M-11b-torsion", "e_sc", 1.6, "in", "Beer and Johnston, example 6.06, from memory"),
+    Worked(
+        "M-11b-torsion",
+        "I_w1",
+        0.15 * 4**3 * 6**2 / 12 * (3 * 4 + 2 * 6) / (6 * 4 + 6),
+        "in^6",
+        "t b³ h²/12 (3 b + 2 h)/(6 b + h): Vlasov, from memory",
+    ),
+    Worked("M-11b-torsion", "y_sg", YS_GIRDER, "mm", "flanges share V_lat as their second moments"),
+    Worked(
+        "M-11b-torsion",
+        "I_w2",
+        H_O**2 * I_TOP * I_BOTTOM / (I_TOP + I_BOTTOM) / 1e6,
+        "cm^6",
+        "h_o² I_t I_b/(I_t + I_b)",
+    ),
+    Worked(
+        "M-11b-torsion", "β_g", BETA - 2 * (YS_GIRDER - Y_GIRDER), "mm", "∫y (x² + y²) dA of three rectangles"
+    ),
+    Worked("M-11b-torsion", "I_t4", 20.12, "cm⁴", "EN 10365, from memory"),
+    Worked("M-11b-torsion", "I_w3", 125900, "cm⁶", "EN 10365, from memory"),
+    Worked(
+        "M-11b-torsion",
+        "A_v1",
+        A_IPE300 - 2 * 15 * 1.07 + (0.71 + 3) * 1.07,
+        "cm²",
+        "A - 2 b t_f + (t_w + 2 r) t_f",
+    ),
+    Worked(
+        "M-14c-shear", "τ_w", TAU_WEB, "MPa", "V S/(I b) and q/t; 21.0 in Gere, example 5-14, from memory"
+    ),
+    Worked("M-14c-shear", "τ_t", TAU_TOP, "MPa", "V S/(I b) and q/t; 17.4 in Gere"),
+    Worked("M-14c-shear", "σ_t", SIGMA_TOP, "MPa", "M y/I"),
+    Worked("M-14c-shear", "σ_v", sqrt(SIGMA_TOP**2 + 3 * TAU_TOP**2), "MPa", "√(σ² + 3 τ²)"),
+    Worked("M-14c-shear", "σ_vm", sqrt(SIGMA_JOIN**2 + 3 * TAU_JOIN**2), "MPa", "√(σ² + 3 τ²)"),
+    Worked(
+        "M-14c-shear",
+        "σ_p",
+        SIGMA_JOIN / 2 + sqrt(SIGMA_JOIN**2 / 4 + TAU_JOIN**2),
+        "MPa",
+        "σ/2 + √(σ²/4 + τ²)",
+    ),
+    Worked(
+        "M-14c-shear", "q_n", 500 * 100 * 20 * 60 / 16.2e6, "kN/m", "V S/I; 3704 N/m in Beer and Johnston"
+    ),
+    Worked("M-14c-shear", "F_n", 500 * 100 * 20 * 60 / 16.2e6 * 25, "N", "q s; 92.6 N in Beer and Johnston"),
+    Worked("M-14d-torsion", "τ_r", 10e6 * 84 * 32 / (pi * (168**4 - 152**4)), "MPa", "T (d/2)/I_t", FACET),
+    Worked("M-14d-torsion", "τ_b", 10e6 / (2 * 112 * 192 * 8) + TAU_BOX, "MPa", "T/(2 A_m t) + q/t"),
+    Worked("M-14d-torsion", "τ_k", 1e6 * saint_venant(50, 100)[1], "MPa", "series; T/(0.246 h b²)"),
+    Worked("M-14e-composite", "y_n", Y_WOOD, "mm", "first moments; 264 mm above the bottom"),
+    Worked("M-14e-composite", "σ_w", 30e6 * (200 + Y_WOOD) / I_WOOD, "MPa", "M y/I; 5.36 in the exercise"),
+    Worked("M-14e-composite", "σ_c", -30e6 * (200 - Y_WOOD) / I_WOOD, "MPa", "M y/I; -2.76 in the exercise"),
+    Worked(
+        "M-14e-composite",
+        "σ_s",
+        -16 * 30e6 * (208 - Y_WOOD) / I_WOOD,
+        "MPa",
+        "n M y/I; -46.8 in the exercise",
+    ),
+    Worked("M-14e-composite", "q_p", 20e3 * 16 * 1600 * (204 - Y_WOOD) / I_WOOD, "kN/m", "V n S/I"),
+    Worked("M-14e-composite", "ε_s", -30e6 * (208 - Y_WOOD) / I_WOOD / 12500, "", "M y/(E I)"),
+    Worked("M-14e-composite", "f_t", 24, "MPa", "as given"),
+    Worked("M-14e-composite", "f_s", 235, "MPa", "as given"),
+    Worked(
+        "M-14f-plastic",
+        "M_p",
+        240e-6 * (2000 * 30 + 400 * 10 + 1200 * 30 + 1200 * 70),
+        "kN·m",
+        "halves meet 40 mm below the top; 44.2 in Beer and Johnston, problem 4.6, from memory",
+    ),
+    Worked("M-14f-plastic", "x_p", 40, "mm", "2000 + 20·20 = 2400 mm², half of the area"),
+    Worked("M-14f-plastic", "u_p", 30 / 44.16, "", "M/M_pl"),
+    Worked("M-14f-plastic", "φ_p", 184000 / (I_BJ / C_BJ), "", "W_pl/W_el"),
+    Worked("M-14f-plastic", "M_n", 43.2 * (1 - 0.4**2), "kN·m", "M_pl (1 - n²)"),
+    Worked("M-14f-plastic", "M_n0", 240e-6 * 50 * 120**2 / 4, "kN·m", "f b h²/4"),
+    Worked(
+        "M-14f-plastic", "c_e", 2 * 60 * sqrt(3 * (1 - 36.8 / 43.2)), "mm", "2 y_e; 80 in Beer and Johnston"
+    ),
+    Worked(
+        "M-14f-plastic", "R_e", 0.04 * 200e3 / 240, "m", "y_e E/f; 33.3 in Beer and Johnston, from memory"
+    ),
+    Worked("M-14f-plastic", "M_e", 240e-6 * 50 * 120**2 / 6, "kN·m", "f b h²/6"),
+    Worked("M-14f-plastic", "M_f", 43.2, "kN·m", "3/2 M_el"),
+    Worked(
+        "M-14f-plastic", "σ_r", 36.8 / 0.12 - 240, "MPa", "M/W - f; 66.7 in Beer and Johnston, example 4.06"
+    ),
+    Worked("M-14f-plastic", "σ_q", 240 - 36.8 / 0.12, "MPa", "f - M/W"),
+    Worked("M-14g-cracked", "x_g", 3 * (1000 - 2000 / 3), "mm", "3 (h/2 - e)"),
+    Worked("M-14g-cracked", "σ_g", -2 * 0.3 / (1.2 * 1.0), "MPa", "2 N/(b x_c)"),
+    Worked("M-14g-cracked", "σ_h", -0.3 / 2.4 - 0.09 / 0.8, "MPa", "N/A - M/W"),
+    Worked("M-14g-cracked", "σ_i", -0.3 / 2.4 - 0.09 / 0.8, "MPa", "N/A - M/W"),
+    Worked("M-14g-cracked", "x", X_STRIP, "in", "b x²/2 = n A_s (d - x); 1.45 in Beer and Johnston"),
+    Worked("M-14g-cracked", "I_c", I_STRIP, "in^4", "b x³/3 + n A_s (d - x)²; 44.4 in Beer and Johnston"),
+    Worked("M-14g-cracked", "σ_c", -40 * X_STRIP / I_STRIP, "ksi", "M x/I; 1.306 in Beer and Johnston"),
+    Worked(
+        "M-14g-cracked",
+        "σ_s",
+        29 / 3.6 * 40 * (4 - X_STRIP) / I_STRIP,
+        "ksi",
+        "n M (d - x)/I; 18.52 in the book",
+    ),
+    Worked("M-14h-curved", "σ_i", winkler(30), "MPa", "Winkler; 106.2 in Boresi and Schmidt, example 9.1"),
+    Worked("M-14h-curved", "σ_o", winkler(80), "MPa", "Winkler; -49.3 in Boresi and Schmidt, from memory"),
+    Worked("M-14h-curved", "r_n", R_N, "mm", "A/A_m"),
+    Worked("M-14h-curved", "e_n", 55 - R_N, "mm", "R_c - r_n"),
+    Worked("M-14h-curved", "σ_n", 3.8 + 9500 * 155 * 6 / 50**3, "MPa", "N/A + M/W"),
+    Worked(
+        "M-14h-curved",
+        "Δ",
+        100 * ((3.8 + 9500 * 155 * 6 / 50**3) / winkler(30) - 1),
+        "%",
+        "over that of Winkler",
+    ),
     # simple beam, a = 1 m, b = 3 m, EI = 11 GPa · 100 · 200³/12 mm⁴ = 2200/3 kN·m²
     Worked("M-15-signs", "M_s", 8 * 1 * 3 / 4, "kN·m", "P a b/L"),
     Worked("M-15-signs", "V_s", 8 * 3 / 4, "kN", "P b/L"),
@@ -288,5 +559,7 @@ UTILISATIONS: dict[tuple[str, str], float | None] = {
     ("M-08-checks", "uplift: both sides negative"): 3 / 5,
     ("M-08-checks", "no uplift at the other end"): None,
     ("M-08-checks", "rounding"): 1.0,
-    ("M-14-stress", "normal stress at midspan"): 50 / 235,
+    ("M-14b-elastic", "normal stress at midspan"): 50 / 235,
+    ("M-14e-composite", "plate"): 16 * 30e6 * (208 - Y_WOOD) / I_WOOD / 235,
+    ("M-14e-composite", "wood"): 30e6 * (200 + Y_WOOD) / I_WOOD / 24,
 }

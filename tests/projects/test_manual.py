@@ -61,5 +61,5 @@ def test_the_source_shown_is_that_of_the_live_blocks(chapter: str) -> None:
 
 
 def test_other_files_of_the_project_are_shown_as_they_are() -> None:
-    for path, chapter in (("project.toml", "M-02-project"), ("profiles/office.csv", "M-10-rolled")):
+    for path, chapter in (("project.toml", "M-02-project"), ("profiles/office.csv", "M-10b-office")):
         assert f"\n{(MANUAL / path).read_text(encoding='utf-8')}```\n" in chapters()[chapter]

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 from calcgen.evaluation.blocks.stress_models import Solved, solved
 from calcgen.evaluation.blocks.stress_premises import stress_premises
@@ -25,6 +25,7 @@ from calcgen.mechanics.second_route.curved import curved_residuals
 from calcgen.mechanics.second_route.field import field_residuals
 from calcgen.mechanics.second_route.residual import Residual
 from calcgen.mechanics.second_route.stress import stress_residuals
+from calcgen.mechanics.stress import Forces
 from calcgen.quantities.display import show
 from calcgen.quantities.measure import Measure, from_si
 from calcgen.quantities.symbols import plain
@@ -179,7 +180,7 @@ def _stress(block: StressBlock, scope: Scope, labels: Labels) -> StressResult | 
         parts=results.parts,
         points=request.points,
         check=_limit(request, block, results, scope, labels),
-        premises=stress_premises(request, found.field, found.curved, scope),
+        premises=stress_premises(request, found.field, found.curved, shear, scope),
         second_route=tuple(
             SecondRoute.found(request.name, r.what, r.residual, r.tolerance, r.quantity) for r in residuals
         ),
@@ -197,8 +198,9 @@ def _residuals(request: StressRequest, found: Solved) -> Sequence[Residual]:
         return field_residuals(found.field, found.plastic.forces)
     if request.model == "elastic" and not section.composite and not section.bars:
         return stress_residuals(found.field.plane, forces, *section.outlines)
-    unloaded = () if found.unloaded is None else field_residuals(found.unloaded, type(forces)())
-    return (*field_residuals(found.field, forces), *unloaded)
+    unloaded = () if found.unloaded is None else field_residuals(found.unloaded, Forces())
+    after = (replace(r, quantity=f"residual stress: {r.quantity}") for r in unloaded)
+    return (*field_residuals(found.field, forces), *after)
 
 
 def _points_are_free(block: StressBlock, request: StressRequest, scope: Scope) -> bool:

@@ -7,7 +7,7 @@ from collections.abc import Iterable
 from calcgen.evaluation.blocks.stress_request import StressRequest
 from calcgen.evaluation.blocks.stress_results import compressed_depth, strain_extremes
 from calcgen.evaluation.formulas import shown
-from calcgen.evaluation.results import Premise, SectionResult, Verdict
+from calcgen.evaluation.results import Premise, SectionResult, ShearResult, Verdict
 from calcgen.evaluation.scope import Scope
 from calcgen.mechanics.curved import CurvedStress
 from calcgen.mechanics.field import Bars, Piece, StressField
@@ -20,13 +20,17 @@ STRAIGHT = 10.0  # R_c over depth: above it the straight-bar formula errs by som
 
 
 def stress_premises(
-    request: StressRequest, field: StressField, curved: CurvedStress | None, scope: Scope
+    request: StressRequest,
+    field: StressField,
+    curved: CurvedStress | None,
+    shear: ShearResult | None,
+    scope: Scope,
 ) -> tuple[Premise, ...]:
     """Return the premises of the model in the order in which a checker reads them."""
     found: list[tuple[str, Verdict, str]] = []
     match request.model:
         case "elastic":
-            found += [_within_strength(request, field, scope), _axes(request), _axial(request)]
+            found += [_within_strength(request, field, shear, scope), _axes(request), _axial(request)]
         case "curved":
             found += [_below(request, curved, scope), *_of_curved(request, curved)] if curved else []
         case "no_tension":
@@ -64,15 +68,25 @@ def stress_premises(
     return tuple(Premise(request.name, *each) for each in found)
 
 
-def _within_strength(request: StressRequest, field: StressField, scope: Scope) -> tuple[str, Verdict, str]:
-    """Test each part against its strength, f_y where its material has none."""
+def _within_strength(
+    request: StressRequest, field: StressField, shear: ShearResult | None, scope: Scope
+) -> tuple[str, Verdict, str]:
+    """Test each part against its strength, f_y where its material has none.
+
+    Of one material under shear the von Mises stress is tested.
+    """
+    one_material = not request.section.composite and not request.section.bars
+    combined = shear.combined.von_mises_max.von_mises if shear is not None and one_material else None
+    kind = "largest stress" if combined is None else "largest von Mises stress"
     strengths = strengths_of(request.section, request.f_y.si if request.f_y is not None else None)
     worst: tuple[float, float, str] | None = None
     largest = 0.0
     unknown = False
     parts: list[Piece | Bars] = [*field.pieces, *field.bars]
     for part in parts:
-        peak = max(abs(extreme.value) for extreme in field.extremes_of(part))
+        peak = (
+            max(abs(extreme.value) for extreme in field.extremes_of(part)) if combined is None else combined
+        )
         largest = max(largest, peak)
         strength = strengths.get(part.name)
         if strength is None:
@@ -84,11 +98,11 @@ def _within_strength(request: StressRequest, field: StressField, scope: Scope) -
         return (
             "linear elastic",
             "left to judgement",
-            f"no f_y is given{of}; the largest stress is {_stress(largest, scope)}",
+            f"no f_y is given{of}; the {kind} is {_stress(largest, scope)}",
         )
     peak, strength, name = worst
     where = f" of {plain(name)}" if name else ""
-    text = f"the largest stress{where}, {_stress(peak, scope)}"
+    text = f"the {kind}{where}, {_stress(peak, scope)}"
     limit = f"f_y = {_stress(strength, scope)}" if not name else f"its strength {_stress(strength, scope)}"
     if peak <= strength * (1.0 + 1e-12):
         return "linear elastic", "met", f"{text}, is below {limit}"

@@ -270,7 +270,7 @@ def _shear(rows: _Rows, shear: ShearResult) -> None:
 
 
 def _station(state: StressState, style: Style) -> str:
-    walls = ", on the walls' mid-line" if state.description == "walls" else ""
+    walls = ", by the walls' mid-line" if state.description == "walls" else ""
     return f"at {place_text((state.x, state.y), style)}{walls}"
 
 

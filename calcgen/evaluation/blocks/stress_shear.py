@@ -17,6 +17,7 @@ from calcgen.mechanics.combined_stress import (
     combined_extremes,
     field_stress,
     outline_stations,
+    passed_alone,
     wall_stations,
 )
 from calcgen.mechanics.field import Piece, StressField
@@ -30,6 +31,7 @@ from calcgen.mechanics.second_route.shear import (
     wall_residuals,
 )
 from calcgen.mechanics.shear import Cuts, ShearForces, cuts, joint_flow
+from calcgen.mechanics.stress import BoolArray
 from calcgen.mechanics.torsion import (
     TorsionConstant,
     circle_torsion,
@@ -38,7 +40,7 @@ from calcgen.mechanics.torsion import (
     tube_torsion,
 )
 from calcgen.mechanics.wall_shear import WallFlow, WallTorsion, wall_flow, wall_torsion
-from calcgen.mechanics.walls import WallSection, wall_section
+from calcgen.mechanics.walls import Graph, WallSection, wall_section
 
 ROUNDING = 1e-12  # of the largest flow: a smaller one is none
 _ROUND = ("circle", "tube")
@@ -47,10 +49,13 @@ NEAR = 1e-6  # of a wall's thickness: a point this far beyond its surface still 
 
 @dataclass(frozen=True, eq=False)
 class _Torque:
-    """Shear stress of the torque, Pa: its magnitude at points (n, 2), or that along thin walls."""
+    """Shear stress of the torque, Pa: its magnitude at points (n, 2), and that along thin walls.
+
+    Cells have it along their walls alone, whose sense tells what it adds to that of V.
+    """
 
     method: str
-    largest: tuple[float, Point] | None
+    largest: tuple[float, Point, Point] | None
     magnitude: Callable[[FloatArray], FloatArray] | None
     walls: WallTorsion | None
 
@@ -77,9 +82,15 @@ def shear_result(request: StressRequest, field: StressField) -> tuple[ShearResul
     described = [
         outline_stations(pieces, level, upright, normal, torque.magnitude if torque is not None else None)
     ]
-    if flow is not None:
+    by_mid_line = None if flow is None else _by_mid_line(flow, level, upright)
+    if flow is not None and by_mid_line is not None and by_mid_line.any():
         described.append(
-            wall_stations(flow, lambda points: normal(pieces[0], points), torque.walls if torque else None)
+            wall_stations(
+                flow,
+                lambda points: normal(pieces[0], points),
+                torque.walls if torque else None,
+                chosen=by_mid_line,
+            )
         )
     joints: dict[str, float] = {}
     if len(pieces) > 1 and (request.V or request.V_lat):
@@ -97,7 +108,7 @@ def shear_result(request: StressRequest, field: StressField) -> tuple[ShearResul
             combined=combined_extremes(*described),
             joints=joints,
             contacts={name: _contacts(name, request.section.parts) for name in joints},
-            at=lambda point: _at(point, level, upright, flow, torque),
+            at=lambda point: _at(point, level, upright, flow, by_mid_line, torque),
         ),
         tuple(residuals),
     )
@@ -122,6 +133,12 @@ def _walls(parts: tuple[SectionPart, ...]) -> WallSection | None:
     return wall_section(parts[0].walls) if len(parts) == 1 and parts[0].walls else None
 
 
+def _by_mid_line(flow: WallFlow, level: Cuts, upright: Cuts) -> BoolArray:
+    """Return the walls, (n,), whose flow the cuts of the outline do not tell: cells, and walls side by side."""
+    alone = passed_alone(flow.graph, level, upright)
+    return np.full(len(alone), True) if flow.graph.cells else ~alone
+
+
 def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
     """Choose how the torque is carried: by a closed form, along thin walls, or by the numerical solution.
 
@@ -131,7 +148,8 @@ def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
     T, section = abs(request.T), request.section
     exact = _closed_form(request)
     if exact is None and walls is not None:
-        return _Torque(walls.torsion_method, None, None, wall_torsion(walls, request.T))
+        torsion = wall_torsion(walls, request.T)
+        return _Torque(walls.torsion_method, None, None if walls.closed else _in_open_walls(torsion), torsion)
     if exact is not None and section.shape in _ROUND:
         centre = np.array([section.computed.x_bar, section.computed.y_bar])
 
@@ -140,7 +158,8 @@ def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
             return stress
 
         largest_at = (section.bounds.right, section.computed.y_bar)
-        return _Torque(exact.method, (T * exact.tau_max_per_T, largest_at), round_bar, None)
+        downwards = (0.0, -request.T)  # of a clockwise torque, on the right
+        return _Torque(exact.method, (T * exact.tau_max_per_T, largest_at, downwards), round_bar, None)
     solution = saint_venant(*section.outlines)
     largest = T * (solution.tau_max.value if exact is None else exact.tau_max_per_T)
     scale = largest / (T * solution.tau_max.value)
@@ -151,7 +170,9 @@ def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
         return found
 
     method = "finite elements on the outline" if exact is None else exact.method
-    return _Torque(method, (largest, (solution.tau_max.x, solution.tau_max.y)), magnitude, None)
+    place = (solution.tau_max.x, solution.tau_max.y)
+    right, up = solution.stress(np.array([place]), T=request.T)[0].tolist()
+    return _Torque(method, (largest, place, (right, up)), magnitude, None)
 
 
 def _closed_form(request: StressRequest) -> TorsionConstant | None:
@@ -171,13 +192,22 @@ def _closed_form(request: StressRequest) -> TorsionConstant | None:
             return None
 
 
-def _at(point: Point, level: Cuts, upright: Cuts, flow: WallFlow | None, torque: _Torque | None) -> float:
+def _at(
+    point: Point,
+    level: Cuts,
+    upright: Cuts,
+    flow: WallFlow | None,
+    by_mid_line: BoolArray | None,
+    torque: _Torque | None,
+) -> float:
     """Return the shear stress at a point, Pa: the larger of what the cuts and the walls through it say."""
     x, y = point
     tau = math.hypot(_on_cut(level, y), _on_cut(upright, x))
     if torque is not None and torque.magnitude is not None:
         tau += float(torque.magnitude(np.array([point]))[0])
-    return max(tau, _in_walls(point, flow, torque.walls if torque else None)) if flow is not None else tau
+    if flow is None or by_mid_line is None:
+        return tau
+    return max(tau, _in_walls(point, flow, by_mid_line, torque.walls if torque else None))
 
 
 def _on_cut(found: Cuts, at: float) -> float:
@@ -186,15 +216,24 @@ def _on_cut(found: Cuts, at: float) -> float:
     return float(np.max(np.abs(np.nan_to_num(values))))
 
 
-def _in_walls(point: Point, flow: WallFlow, torsion: WallTorsion | None) -> float:
-    """Return the largest stress of the walls that a point lies in, Pa; 0 for none."""
+def _in_open_walls(torsion: WallTorsion) -> Callable[[FloatArray], FloatArray]:
+    """Return the stress of the torque in open walls by points (n, 2): it grows from the mid-line outwards."""
+    g = torsion.graph
+
+    def magnitude(points: FloatArray) -> FloatArray:
+        _, off, inside = _relative(points, g)
+        share = np.where(inside, np.minimum(np.abs(off) / (0.5 * g.t), 1.0), 0.0)
+        stress: FloatArray = (share * np.abs(torsion.tau_surface)).max(axis=1)
+        return stress
+
+    return magnitude
+
+
+def _in_walls(point: Point, flow: WallFlow, chosen: BoolArray, torsion: WallTorsion | None) -> float:
+    """Return the largest stress of the chosen walls that a point lies in, Pa; 0 for none."""
     g = flow.graph
-    ahead = g.along / g.length[:, None]
-    to_point = np.array(point) - g.nodes[g.start]
-    along = np.sum(to_point * ahead, axis=1)
-    off = ahead[:, 0] * to_point[:, 1] - ahead[:, 1] * to_point[:, 0]
-    reach = 0.5 * g.t * (1.0 + NEAR)
-    inside = (np.abs(off) <= reach) & (along >= -reach) & (along <= g.length + reach)
+    along, off, inside = (each[0] for each in _relative(np.array([point]), g))
+    inside &= chosen
     if not inside.any():
         return 0.0
     u = np.clip(along / g.length, 0.0, 1.0)
@@ -203,3 +242,14 @@ def _in_walls(point: Point, flow: WallFlow, torsion: WallTorsion | None) -> floa
     if torsion is not None:
         tau = tau + torsion.tau_surface * off / (0.5 * g.t)
     return float(np.abs(tau[inside]).max())
+
+
+def _relative(points: FloatArray, g: Graph) -> tuple[FloatArray, FloatArray, BoolArray]:
+    """Return how far points (n, 2) lie along each wall and to its left, m, and whether within: (n, k) each."""
+    ahead = g.along / g.length[:, None]
+    to_point = points[:, None, :] - g.nodes[g.start]
+    along = np.sum(to_point * ahead, axis=2)
+    off = ahead[:, 0] * to_point[:, :, 1] - ahead[:, 1] * to_point[:, :, 0]
+    reach = 0.5 * g.t * (1.0 + NEAR)
+    inside: BoolArray = (np.abs(off) <= reach) & (along >= -reach) & (along <= g.length + reach)
+    return along, off, inside

@@ -65,10 +65,13 @@ class StressView:
 def stress_view(result: StressResult, context: Context) -> StressView:
     """Return a stress."""
     check = result.check
-    sheared = " and shear stress" if result.shear is not None else ""
+    title = MODELS[result.model]
+    if result.shear is not None:
+        normal = bool(result.forces.N or result.forces.M or result.forces.M_lat)
+        title = f"{title} and shear stress" if normal else "elastic shear stress"
     return StressView(
         name=result.name,
-        title=f"{MODELS[result.model]}{sheared}",
+        title=title,
         section=result.section.name,
         row=RowView(result.name, Markup(""), Markup(""), result.line, context.was(result.name)),
         forces=tuple(stated(name, shown) for name, shown in result.forces_shown.items()),
