@@ -2,11 +2,14 @@
 
 from __future__ import annotations
 
+import math
+from collections.abc import Mapping
+
 from calcgen.evaluation.formulas import Evaluator
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import Expression
-from calcgen.quantities.display import KINDS, describe
-from calcgen.quantities.measure import Measure, dimension_of, unit_size
+from calcgen.quantities.display import KINDS, describe, show
+from calcgen.quantities.measure import Measure, dimension_of, from_si, measure, unit_size
 
 _HINTS = {
     ("mass", "force"): "lb, kg and t are masses; write lbf or kN",
@@ -15,18 +18,37 @@ _HINTS = {
     ("mass by area", "stress"): "a mass is no load: multiply by g_n, or write psf or kPa",
 }
 
+LARGEST: Mapping[str, float] = {
+    "number": 1e12,
+    "length": 1e6,
+    "area": 1e12,
+    "section modulus": 1e18,
+    "second moment": 1e24,
+    "warping constant": 1e36,
+    "force": 1e15,
+    "moment": 1e18,
+    "line load": 1e15,
+    "stress": 1e15,
+    "weight by volume": 1e12,
+    "bending stiffness": 1e24,
+    "curvature": 1e6,
+    "temperature": 1e6,
+    "expansion": 1e3,
+}
+"""Largest magnitude by kind, SI: beyond anything built, and small enough for products of many to be numbers."""
+
 
 def quantity_of(node: Expression, kind: str, scope: Scope) -> Measure | None:
     """Return the value of an expression that must be of a kind of `KINDS`, or 'number'.
 
-    Reports a value of another dimension at the expression.
+    Reports a value of another dimension, and one beyond `LARGEST`, at the expression.
     """
     value = Evaluator(scope).measure(node)
     if value is None:
         return None
     wanted = () if kind == "number" else dimension_of(unit_size(KINDS[kind]))
     if value.dimension == wanted:
-        return value
+        return value if _can_be_computed(value, node, kind, scope) else None
     found = describe(value.dimension)
     hint = _HINTS.get((found, kind), "")
     if not value.dimension:
@@ -41,6 +63,23 @@ def si(node: Expression, kind: str, scope: Scope) -> float | None:
     """Return the magnitude in SI base units; as `quantity_of`."""
     value = quantity_of(node, kind, scope)
     return None if value is None else value.si
+
+
+def _can_be_computed(value: Measure, node: Expression, kind: str, scope: Scope) -> bool:
+    """Report a value beyond the largest of its kind; one that overflowed is shown as it was written."""
+    largest = LARGEST.get(kind, math.inf)
+    if abs(value.si) <= largest:
+        return True
+    text = show(value, scope.style).text if value.finite else scope.report.source.slice(node.span)
+    limit = measure(largest, "") if kind == "number" else from_si(largest, KINDS[kind]).shown_in(value.unit)
+    what = "the number" if kind == "number" else f"{_article(kind)} of"
+    scope.report.error(
+        "number-too-large",
+        node.span,
+        f"{what} {text} is too large to be computed with",
+        hint=f"the limit is {show(limit, scope.style).text}: a unit or a power of ten may be wrong",
+    )
+    return False
 
 
 def _article(kind: str) -> str:

@@ -436,8 +436,8 @@ class PlasticResult:
     Attributes
     ----------
     M, M_lat : plastic moments, N·m, in the proportion and with the signs of those given.
-    M_el : moment at first yield without axial force, N·m, in the same proportion; None where a part carries
-        no tension, so that nothing is elastic throughout.
+    M_el : moment at first yield without axial force, N·m, signed where one moment acts alone; None where a
+        part carries no tension, so that nothing is elastic throughout.
     M_0 : the plastic moment without axial force, N·m, never negative.
     utilisation : the moment given over the plastic one.
     field : the stress blocks. interaction : axial force, N, and moment, N·m, (n, 2), around the limit about
@@ -465,7 +465,7 @@ class ShearResult:
     torsion_method : how the stress of the torque was found, '' without one.
     largest_torsion : stress of the torque alone, Pa, its place, m, and its direction; None along walls.
     joints : flow that the joints of each part carry, N/m; contacts : the lines along which it touches
-        others, m.
+        others, m; connected : whether all parts hang together.
     at : shear stress at a point, m -> Pa.
     """
 
@@ -479,6 +479,7 @@ class ShearResult:
     combined: CombinedExtremes
     joints: Mapping[str, float]
     contacts: Mapping[str, tuple[tuple[Point, ...], ...]]
+    connected: bool
     at: Callable[[Point], float]
 
 

@@ -67,7 +67,7 @@ def section_drawing(section: SectionResult, ident: str, axes: Axes, style: Style
         title=title_of(section),
         parts=parts_of(section, factor),
         centroid=(p.x_bar * factor, p.y_bar * factor),
-        unit_note=f"dimensions in {length_unit(style)}",
+        unit_note="dimensions in inches" if style.system == "US" else "dimensions in mm",
         axes=axis_names(axes),
         dimensions=_dimensions(section.marks, factor),
         principal_angle=math.degrees(p.alpha) if p.I_hv != 0.0 else None,

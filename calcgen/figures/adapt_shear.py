@@ -102,7 +102,7 @@ def flow_drawings(stress: StressResult, ident: str, style: Style) -> Iterable[Fl
     places = shear.flow.places(ALONG) * scales.length
     lengths = np.array([graph.length[chain].sum() for chain in chains])
     if stress.V or stress.V_lat:
-        flows = [shear.flow.at(ALONG)[chain].ravel() for chain in chains]
+        flows = [_joined(shear.flow.at(ALONG)[chain], graph, chain) for chain in chains]
         written = _written(np.array([np.abs(q).max() for q in flows]), lengths)
         names = [f"{key} = {stress.forces_shown[key].text}" for key in ("V", "V_lat") if getattr(stress, key)]
         yield FlowDrawing(
@@ -110,7 +110,7 @@ def flow_drawings(stress: StressResult, ident: str, style: Style) -> Iterable[Fl
             title=title_of(stress.section),
             walls=tuple(
                 Wall(
-                    places[chain].reshape(-1, 2),
+                    _joined(places[chain], graph, chain),
                     q * size,
                     float(graph.t[chain[0]]) * scales.length,
                     _amount(q, unit, style) if i in written else "",
@@ -180,7 +180,7 @@ def interaction_drawing(stress: StressResult, ident: str, style: Style) -> Inter
     reached, reached_text = None, ""
     share = _on_ray(limit, acting)
     if share is not None:
-        reached_text = f"utilisation {number_text(1.0 / share, 3)} along the ray from the origin"
+        reached_text = f"{number_text(1.0 / share, 3)} of the limit, along the ray from the origin"
         reached = ForcePoint(acting[0] * share, acting[1] * share, "")
     return InteractionDrawing(
         ident=f"{ident}-N-M",
@@ -298,6 +298,17 @@ def _chains(graph: Graph) -> list[list[int]]:
     return chains
 
 
+def _joined(samples: FloatArray, graph: Graph, chain: Sequence[int]) -> FloatArray:
+    """Return the samples of walls (k, STEPS + 1, …) one after the other, each joint once.
+
+    A wall that is short beside the others, such as a piece of a bend, keeps its ends alone.
+    """
+    short = graph.length < LONG * graph.length.sum()
+    rows = [row[[0, -1]] if short[i] else row for i, row in zip(chain, samples, strict=True)]
+    joined: FloatArray = np.concatenate([rows[0], *(row[1:] for row in rows[1:])])
+    return joined
+
+
 def _torsion_walls(
     shear: ShearResult, chains: Sequence[Sequence[int]], places: FloatArray, scales: Scales
 ) -> Iterable[Wall]:
@@ -313,7 +324,7 @@ def _torsion_walls(
         t, q = float(graph.t[first]), float(torsion.q[first])
         tau = q / t if q else float(torsion.tau_surface[first])
         shown = show(from_si(abs(tau), "Pa").shown_in(scales.stress_unit), scales.style)
-        line = places[list(chain)].reshape(-1, 2)
+        line = _joined(places[list(chain)], graph, chain)
         yield Wall(
             line,
             np.full(len(line), tau * scales.stress),

@@ -42,7 +42,7 @@ ROWS = 4  # of bars whose stress is written; of more, the extreme ones
 MODEL_NOTES = {
     "no_tension": "What is in tension carries nothing.",
     "cracked": "Concrete in tension carries nothing.",
-    "plastic": "Stress blocks of the plastic moment, under the axial force given.",
+    "plastic": "Stress blocks of the plastic moment.",
 }
 
 
@@ -313,6 +313,8 @@ def _note(stress: StressResult, scales: Scales) -> str:
         radius, r_n = (scales.length_text(r) for r in (stress.curved.R_c, stress.curved.r_n))
         unit = scales.length_unit
         return f"R_c = {radius} {unit} to the centroidal line, r_n = {r_n} {unit}; radii are not to scale."
+    if stress.model == "plastic" and stress.forces.N:
+        return "Stress blocks of the plastic moment, under the axial force given."
     return MODEL_NOTES.get(stress.model, "")
 
 

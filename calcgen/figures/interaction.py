@@ -119,7 +119,8 @@ def compose_interaction(drawing: InteractionDrawing, width: Width) -> Picture:
         named.insert(0, drawing.reached)
     for mark in named:
         tip = plane.at(mark.moment, mark.axial)
-        draw_note(sketch, Label(0, 0, mark.label, SMALL, halo=True), tip, panel, obstacles, room)
+        if mark.label:
+            draw_note(sketch, Label(0, 0, mark.label, SMALL, halo=True), tip, panel, obstacles, room)
         sketch.dot(tip, 2.6, "paper", Stroke("ink", 1.2))
     sketch.dot(at, 3.4, "ink")
     _draw_text(sketch, drawing, panel, width)

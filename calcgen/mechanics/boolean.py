@@ -1,4 +1,4 @@
-"""Outlines put together: where they overlap, what a hole leaves of them, how far apart they lie."""
+"""Outlines put together: where they overlap, what a hole leaves, how far apart they lie, what lies inside."""
 
 from __future__ import annotations
 
@@ -6,10 +6,15 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from typing import Any
 
-from calcgen.mechanics.arrays import Point
+import numpy as np
+from numpy.typing import NDArray
+
+from calcgen.mechanics.arrays import FloatArray, Point
+from calcgen.mechanics.crossings import first_contact
 from calcgen.mechanics.outline import Bounds, Outline, OutlineError, outline
 
 TOUCHING = 1e-9  # of the smaller area: a smaller overlap is parts that touch
+EDGE = 1e-9  # of the size: a point as near to the edge lies on it
 SNAP = 1e-9  # of the size: grid on which cuts along an edge are made where the exact cut leaves no clean ring
 
 
@@ -19,6 +24,36 @@ class Overlap:
 
     area: float
     bounds: Bounds
+
+
+@dataclass(frozen=True)
+class SelfContact:
+    """Where a ring meets itself: the corners at which the two edges start, and the place, m."""
+
+    first: int
+    second: int
+    place: Point
+
+
+def self_contact(corners: Sequence[Point]) -> SelfContact | None:
+    """Return where two edges of a closed ring cross or touch; None for a ring that is simple."""
+    given = np.array(corners, dtype=np.float64).reshape(-1, 2)
+    step = np.hypot(*(given - np.roll(given, 1, axis=0)).T)
+    tolerance = EDGE * float(np.ptp(given, axis=0).max(initial=0.0))
+    kept = np.flatnonzero(step > tolerance)  # a repeated corner counts once
+    if len(kept) < 4:  # of three edges each is the neighbour of the others
+        return None
+    start = given[kept]
+    end = np.roll(start, -1, axis=0)
+    pair = first_contact(start, end, np.roll(np.arange(len(start)), -1), tolerance)
+    if pair is None:
+        return None
+    from shapely.geometry import LineString
+    from shapely.ops import nearest_points
+
+    place, _ = nearest_points(*(LineString([start[edge], end[edge]]) for edge in pair))
+    first, second = (int(kept[edge]) for edge in pair)
+    return SelfContact(first, second, (float(place.x), float(place.y)))
 
 
 def overlap(first: Sequence[Outline], second: Sequence[Outline]) -> Overlap | None:
@@ -58,6 +93,18 @@ def share_outside(hole: Sequence[Outline], parts: Sequence[Outline]) -> float:
     region = _region(hole)
     share = float(region.difference(_region(parts)).area / region.area) if parts else 1.0
     return 0.0 if share <= TOUCHING else share
+
+
+def inside(points: FloatArray, part: Sequence[Outline]) -> NDArray[np.bool_]:
+    """Tell which points, (n, 2), m, lie in a part or, within 1e-9 of the size, on its edge."""
+    from shapely import distance as gap
+    from shapely import points as places
+
+    at = places(points)
+    found = np.zeros(len(points), dtype=np.bool_)
+    for each in part:
+        found |= gap(_region([each]), at) <= EDGE * max(each.bounds.width, each.bounds.height)
+    return found
 
 
 def distance(first: Sequence[Outline], second: Sequence[Outline]) -> float:

@@ -18,8 +18,9 @@ import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray, Point
 from calcgen.mechanics.composite import transformed_inertia
-from calcgen.mechanics.field import Bars, Part, Piece, StressField
+from calcgen.mechanics.field import Bars, Law, Part, Piece, StressField
 from calcgen.mechanics.resultants import Resultants, resultants, shifted, unlimited
+from calcgen.mechanics.section import Inertia
 from calcgen.mechanics.stress import Forces, StressPlane, elastic_stress
 
 ROUNDING = 1e-12  # of a limit: an excess below it is rounding
@@ -126,6 +127,39 @@ def solve(
     """
     inertia = transformed_inertia(pieces, bars)
     about = about or (inertia.x_bar, inertia.y_bar)
+    size = _size(forces, inertia)
+    unit = Forces(forces.N / size, forces.M / size, forces.M_lat / size)
+    found = _solved(
+        [replace(p, law=_over(p.law, size)) for p in pieces],
+        [
+            replace(b, law=_over(b.law, size), displaced=b.displaced and _over(b.displaced, size))
+            for b in bars
+        ],
+        unit,
+        about,
+    )
+    s = found.field.plane
+    plane = replace(s, sigma_0=s.sigma_0 * size, g_x=s.g_x * size, g_y=s.g_y * size)
+    return replace(found, field=StressField(plane, tuple(pieces), tuple(bars)))
+
+
+def _size(forces: Forces, inertia: Inertia) -> float:
+    """Return a power of two of the size of the mean stresses, Pa: over it, squares stay finite."""
+    polar = inertia.I_h + inertia.I_v
+    if not (polar > 0.0 and inertia.area > 0.0):  # without stiffness, as will be found
+        return 1.0
+    arm = math.sqrt(polar / inertia.area)
+    largest = max(abs(forces.N), abs(forces.M) / arm, abs(forces.M_lat) / arm) / inertia.area
+    return math.ldexp(1.0, math.frexp(largest)[1]) if math.isfinite(largest) and largest > 0.0 else 1.0
+
+
+def _over(law: Law, size: float) -> Law:
+    """Return a law whose limits are divided by a stress."""
+    return Law(law.factor, law.tension / size, law.compression / size)
+
+
+def _solved(pieces: Sequence[Piece], bars: Sequence[Bars], forces: Forces, about: Point) -> Solution:
+    """Solve for forces and limits in a unit of stress that suits them."""
     problem = _problem(pieces, bars, forces, about)
     elastic = StressField(elastic_plane(pieces, bars, forces, about), problem.pieces, problem.bars)
     if yield_factor(elastic) >= 1.0 - ROUNDING:

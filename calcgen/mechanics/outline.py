@@ -15,6 +15,7 @@ from calcgen.mechanics.crossings import first_contact
 from calcgen.mechanics.sweep import IntArray
 
 TOUCHING = 1e-12  # of the outline's size: closer than this, two points are one
+THINNEST = 1e-6  # area over the square of the size: a thinner section leaves no digits to its properties
 
 
 class OutlineError(ValueError):
@@ -200,8 +201,11 @@ def _require_ring(points: FloatArray, kept: IntArray, index: int, tolerance: flo
     """Require three corners, an area, and no edge that doubles back along the one before it."""
     if len(points) < 3:
         raise OutlineError("needs three corners or more", index)
-    if abs(signed_area(points)) <= tolerance * float(np.ptp(points, axis=0).max()):
+    size = float(np.ptp(points, axis=0).max())
+    if abs(signed_area(points)) <= tolerance * size:
         raise OutlineError("encloses no area", index)
+    if index == 0 and abs(signed_area(points)) <= THINNEST * size * size:
+        raise OutlineError("is thinner than a millionth of its size", index)
     before, after = points - np.roll(points, 1, axis=0), np.roll(points, -1, axis=0) - points
     cross = before[:, 0] * after[:, 1] - before[:, 1] * after[:, 0]
     longer = np.maximum(np.hypot(*before.T), np.hypot(*after.T))

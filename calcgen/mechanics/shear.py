@@ -321,10 +321,10 @@ def cuts(
     )
 
 
-def joint_flow(section: Inertia, shear: ShearForces, piece: Piece) -> float:
-    """Return the flow across all joints of a part, N/m: the magnitude of the force that it gains a length.
+def gain(section: Inertia, shear: ShearForces, piece: Piece) -> float:
+    """Return the force that a part gains a length, N/m: ∫ n dσ/dz dA over the part alone.
 
-    |∫ n dσ/dz dA| over the part alone: what its welds, bolts or glue lines carry together.
+    It comes across its joints: what their welds, bolts or glue lines carry together.
     """
     rate = stress_rate(section, shear)
     start, end = all_edges(*piece.outlines)
@@ -332,7 +332,7 @@ def joint_flow(section: Inertia, shear: ShearForces, piece: Piece) -> float:
     area, first_y = above(start, end, bottom)
     _, first_x = above(seen_from_right(start), seen_from_right(end), left)
     middle = np.array([[left + first_x / area, bottom + first_y / area]])
-    return abs(piece.law.factor * area * float(rate.at(middle)[0]))
+    return piece.law.factor * area * float(rate.at(middle)[0])
 
 
 def _extra(bar: Bars) -> float:

@@ -196,12 +196,12 @@ def elastic_stress(section: Inertia, forces: Forces) -> StressPlane:
     sigma_0 = forces.N / section.area
     g_x = (forces.M_lat * section.I_h + forces.M * section.I_hv) / determinant
     g_y = -(forces.M * section.I_v + forces.M_lat * section.I_hv) / determinant
-    size = math.sqrt((section.I_h + section.I_v) / section.area)
-    least = NEGLIGIBLE * max(abs(sigma_0), abs(g_x) * size, abs(g_y) * size)
+    i_h, i_v = math.sqrt(section.I_h / section.area), math.sqrt(section.I_v / section.area)
+    least = NEGLIGIBLE * max(abs(sigma_0), abs(g_x) * i_v, abs(g_y) * i_h)
     return StressPlane(
         sigma_0 if abs(sigma_0) > least else 0.0,
-        g_x if abs(g_x) * size > least else 0.0,
-        g_y if abs(g_y) * size > least else 0.0,
+        g_x if abs(g_x) * i_v > least else 0.0,
+        g_y if abs(g_y) * i_h > least else 0.0,
         section.x_bar,
         section.y_bar,
     )

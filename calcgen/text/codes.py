@@ -45,6 +45,7 @@ CODES: dict[str, str] = {
     "input-not-literal": "an input is more than a literal",
     "key-missing": "a required key is missing",
     "label-used-twice": "two checks of a calc have one label",
+    "limit-and-shear": "a limit judges the normal stress while shear stress acts",
     "limit-of-composite": "one limit judges several materials",
     "live-block-nested": "a live block stands inside a list or a quotation",
     "load-missing": "a beam has no load",

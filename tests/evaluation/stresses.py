@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from calcgen.evaluation.calc import Setting, evaluate_all
+from calcgen.evaluation.conventions import Axes
 from calcgen.evaluation.results import EvaluatedCalc, StressResult
 from calcgen.language.document import calc_from
 from calcgen.profiles.catalogue import builtin_catalogue
@@ -29,7 +30,7 @@ def stress(
     """Evaluate the stress `s` of the section `main`, and a working block after it."""
     text = f"# T\n{section}{fence('stress s', 'section = main', *lines)}{fence('working', *working)}"
     style = style or Style()
-    axes = "american" if style.system == "US" else "eurocode"
+    axes: Axes = "american" if style.system == "US" else "eurocode"
     calc = calc_from(SourceFile("calcs/C-1.md", text))
     (found,) = evaluate_all([calc], Setting(axes, style, builtin_catalogue(), frozenset()))
     return found

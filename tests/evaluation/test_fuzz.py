@@ -6,12 +6,16 @@ import random
 from pathlib import Path
 
 import pytest
-from hypothesis import given
+from hypothesis import given, settings
 from hypothesis import strategies as st
 
 from calcgen.figures.illustrate import illustrate
 from calcgen.quantities.display import Style
+from calcgen.site.compose import compose
+from calcgen.site.render import render
+from tests.evaluation.fuzzed_stress import stress_text
 from tests.evaluation.helpers import evaluated
+from tests.site.helpers import package
 
 PROJECTS = Path(__file__).parents[2] / "projects"
 CALCS = [
@@ -113,3 +117,28 @@ def test_a_mutated_calc_is_answered(seed: int) -> None:
 def test_many_mutated_calcs_are_answered(start: int) -> None:
     for seed in range(start, start + 500):
         check(seed)
+
+
+def check_stress(seed: int) -> None:
+    rng = random.Random(seed)  # noqa: S311  no secret
+    axes = rng.choice(("eurocode", "american"))
+    text = stress_text(rng)
+    (calc,) = evaluated(text, axes=axes)  # type: ignore[arg-type]
+    assert all(0 <= d.span.start <= d.span.end <= len(d.source.text) for d in calc.diagnostics)
+    illustrate(calc, axes, Style(system="US" if axes == "american" else "SI"))  # type: ignore[arg-type]
+    render(compose(package(text, calcs=(calc,), figures={}, previous={}, history=())))
+
+
+@pytest.mark.filterwarnings("error")
+@settings(max_examples=12)
+@given(st.integers(min_value=0, max_value=10**9))
+def test_stresses_of_any_model_section_and_size_are_answered(seed: int) -> None:
+    check_stress(seed)
+
+
+@pytest.mark.slow
+@pytest.mark.filterwarnings("error")
+@pytest.mark.parametrize("start", range(0, 600, 100))
+def test_many_stresses_are_answered(start: int) -> None:
+    for seed in range(start, start + 100):
+        check_stress(seed)

@@ -221,7 +221,7 @@ def test_separate_pieces_are_said_and_have_no_shear_centre() -> None:
 def test_a_hole_can_part_a_part() -> None:
     calc = section((TEE[0], "hole slot = rectangle(b = 20 mm, h = 20 mm)"))
     assert [len(part.outlines) for part in result(calc).parts] == [2]
-    assert any("slot leaves 2 pieces" in note for note in result(calc).notes)
+    assert any("'slot' leaves 2 pieces" in note for note in result(calc).notes)
 
 
 @pytest.mark.parametrize(

@@ -45,6 +45,26 @@ def test_a_rectangle_that_yields(forces: tuple[str, ...], expected: dict[str, fl
     assert {name: found[name] for name in expected} == {n: approx(v) for n, v in expected.items()}
 
 
+@pytest.mark.parametrize("model", ["plastic", "elastic_plastic"])
+def test_an_axial_force_that_takes_all_leaves_no_moment(model: str) -> None:
+    """100 × 200 mm at 250 MPa: N_pl = 5 MN."""
+    at_limit = stress(f"model = {model}", "N = 5 MN", "f_y = 250 MPa")
+    beyond = stress(f"model = {model}", "N = 5.1 MN", "f_y = 250 MPa")
+    assert [d.code for d in beyond.diagnostics] == ["beyond-plastic"]
+    assert beyond.diagnostics[0].hint.endswith("N_pl = 5.000\u00a0MN")
+    if model == "plastic":
+        assert "no moment is left" in at_limit.diagnostics[0].hint
+    else:
+        assert at_limit.diagnostics == ()
+
+
+def test_a_hogging_section_yields_at_a_negative_moment() -> None:
+    found = values("model = plastic", "M = -10 kN·m", "f_y = 250 MPa")
+    assert found["M_pl"] == approx(-250e6 * 0.1 * 0.2**2 / 4)
+    assert found["M_el"] == approx(-250e6 * 0.1 * 0.2**2 / 6)
+    assert found["shape_factor"] == approx(1.5)
+
+
 def test_only_the_moments_given_have_a_plastic_one() -> None:
     assert "M_pl_lat" not in values(*PLASTIC, "M = 150 kN·m")
     assert "M_pl" not in values(*PLASTIC, "M_lat = 75 kN·m")
@@ -219,7 +239,10 @@ def test_a_disc_whose_axis_passes_through_its_middle() -> None:
     R, N = 0.1, 100e3
     e = 3 * math.pi * R / 16
     found = values(
-        "model = no_tension", "N = -100 kN", f"M = {N * e!r} N*1 m", section=section("shape = circle(d = 200 mm)")
+        "model = no_tension",
+        "N = -100 kN",
+        f"M = {N * e!r} N*1 m",
+        section=section("shape = circle(d = 200 mm)"),
     )
     assert found["σ_min"] == approx(-1.5 * N / R**2, ARCS)
     assert found["x_c"] == approx(R, ARCS)
@@ -231,14 +254,18 @@ def test_a_resultant_near_a_corner_presses_a_triangle() -> None:
     a, c, N = 0.06, 0.12, 100e3
     e_x, e_y = 0.05 - a / 4, 0.1 - c / 4
     # the corner is at the top left: the compression there, tension (if there were any) bottom right
-    found = values("model = no_tension", "N = -100 kN", f"M = {N * e_y!r} N*1 m", f"M_lat = {N * e_x!r} N*1 m")
+    found = values(
+        "model = no_tension", "N = -100 kN", f"M = {N * e_y!r} N*1 m", f"M_lat = {N * e_x!r} N*1 m"
+    )
     assert found["σ_min"] == approx(-6 * N / (a * c))
     assert found["na_angle"] == approx(math.atan2(c, a))
     assert found["x_c"] == approx(a * c / math.hypot(a, c))
     where = next(
         r.place
         for r in result(
-            stress("model = no_tension", "N = -100 kN", f"M = {N * e_y!r} N*1 m", f"M_lat = {N * e_x!r} N*1 m")
+            stress(
+                "model = no_tension", "N = -100 kN", f"M = {N * e_y!r} N*1 m", f"M_lat = {N * e_x!r} N*1 m"
+            )
         ).results
         if r.name == "σ_min"
     )
@@ -270,7 +297,8 @@ def test_a_cracked_rectangle() -> None:
 def test_the_same_upside_down_has_the_opposite_moment() -> None:
     down = CONCRETE.replace("-200 mm) to", "200 mm) to").replace("(100 mm, -200 mm)", "(100 mm, 200 mm)")
     found, turned = (
-        values("model = cracked", f"M = {M} kN·m", section=text) for M, text in ((100, CONCRETE), (-100, down))
+        values("model = cracked", f"M = {M} kN·m", section=text)
+        for M, text in ((100, CONCRETE), (-100, down))
     )
     assert turned["low"] == approx(found["low"])
     assert turned["x_c"] == approx(found["x_c"])
@@ -299,16 +327,33 @@ def test_a_cracked_tee_with_two_layers() -> None:
     c = 0.15 * 0.08**2 - 0.04 * (flange + top) - low * d
     x = (-b + math.sqrt(b * b - 4 * a * c)) / (2 * a)
     assert x > 0.08  # in the web
-    I = (
+    I_h = (
         0.9 * 0.08**3 / 12 + flange * (x - 0.04) ** 2 + 0.3 * (x - 0.08) ** 3 / 3
         + top * (x - 0.04) ** 2 + low * (d - x) ** 2
     )  # fmt: skip
     assert found["x_c"] == approx(x)
-    assert found["I_cr"] == approx(I)
-    assert found["low"] == approx(N_E * 400e3 * (d - x) / I)
-    assert found["top"] == approx(-N_E * 400e3 * (x - 0.04) / I)
-    assert found["flange.σ_min"] == approx(-400e3 * x / I)
-    assert found["web.σ_min"] == approx(-400e3 * (x - 0.08) / I)
+    assert found["I_cr"] == approx(I_h)
+    assert found["low"] == approx(N_E * 400e3 * (d - x) / I_h)
+    assert found["top"] == approx(-N_E * 400e3 * (x - 0.04) / I_h)
+    assert found["flange.σ_min"] == approx(-400e3 * x / I_h)
+    assert found["web.σ_min"] == approx(-400e3 * (x - 0.08) / I_h)
+
+
+def test_concrete_without_bars_of_its_own_cracks_as_well() -> None:
+    """A haunch below the bars, and a flange above that reaches below the axis, add nothing in tension."""
+    whole = TEE.replace("bars top = 1000 mm² at (0 mm, 290 mm) of steel\n", "")
+    haunched = whole.replace(
+        "bars low", "part foot = rectangle(b = 200 mm, h = 50 mm) at (0 mm, -275 mm) of concrete\nbars low"
+    )
+    found, same = (values("model = cracked", "M = 400 kN·m", section=text) for text in (whole, haunched))
+    assert {n: same[n] for n in ("x_c", "I_cr", "low", "σ_top")} == {
+        n: approx(found[n]) for n in ("x_c", "I_cr", "low", "σ_top")
+    }
+    assert same["foot.σ_max"] == 0.0
+    thin = whole.replace("modulus", "strength concrete = 14 MPa\nstrength steel = 100 MPa\nmodulus", 1)
+    plastic = values("model = plastic", "M = 1 kN·m", section=thin)
+    assert plastic["x_c"] == approx(6 * math.pi * 0.032**2 / 4 * 100 / 14 / 0.9)  # within the flange
+    assert plastic["flange.σ_max"] == 0.0
 
 
 def test_a_cracked_rectangle_under_an_eccentric_force() -> None:
@@ -331,13 +376,13 @@ def test_a_cracked_rectangle_under_an_eccentric_force() -> None:
 # --- curved -----------------------------------------------------------------------------------------------
 
 
-@pytest.mark.parametrize(("centre", "inner", "outer"), [("bottom", "bottom", "top"), ("top", "top", "bottom")])
+@pytest.mark.parametrize(
+    ("centre", "inner", "outer"), [("bottom", "bottom", "top"), ("top", "top", "bottom")]
+)
 @pytest.mark.parametrize(("M", "N"), [(10e3, 0.0), (-10e3, 0.0), (10e3, 50e3)])
 def test_a_curved_rectangle(centre: str, inner: str, outer: str, M: float, N: float) -> None:
     """r_n = h/ln(r_o/r_i), σ = N/A ± M (r_n - r)/(A e r); R_c = 250 mm."""
-    found = values(
-        "model = curved", "R_c = 250 mm", f"centre = {centre}", f"M = {M!r} N*1 m", f"N = {N!r} N"
-    )
+    found = values("model = curved", "R_c = 250 mm", f"centre = {centre}", f"M = {M!r} N*1 m", f"N = {N!r} N")
     A, r_i, r_o = 0.02, 0.15, 0.35
     r_n = 0.2 / math.log(r_o / r_i)
     e = 0.25 - r_n
@@ -358,7 +403,9 @@ def test_a_curved_rectangle(centre: str, inner: str, outer: str, M: float, N: fl
 
 
 def test_a_point_of_a_curved_bar() -> None:
-    found = values("model = curved", "R_c = 250 mm", "centre = bottom", "M = 10 kN·m", "point p = (0 mm, 50 mm)")
+    found = values(
+        "model = curved", "R_c = 250 mm", "centre = bottom", "M = 10 kN·m", "point p = (0 mm, 50 mm)"
+    )
     r_n = 0.2 / math.log(0.35 / 0.15)
     assert found["p"] == found["p.σ"] == approx(10e3 * (r_n - 0.3) / (0.02 * (0.25 - r_n) * 0.3))
 
@@ -431,3 +478,28 @@ def test_a_curved_bar_of_two_materials_is_refused() -> None:
 
 def test_a_shear_of_zero_is_taken_by_every_model() -> None:
     assert stress(*PLASTIC, "M = 1 kN·m", "V = 0 kN", section=RECTANGLE).diagnostics == ()
+
+
+@pytest.mark.parametrize(
+    ("lines", "where", "text"),
+    [  # line 7 is the first after `section = main`
+        (("model = plastic", "M = 1 kN·m"), (5, 4), "stress s"),
+        ((*PLASTIC, "M = 301 kN·m"), (9, 5), "301 kN·m"),
+        ((*PLASTIC, "N = 6001 kN", "M_lat = 1 kN·m"), (10, 9), "1 kN·m"),
+        (("N = -100 kN", "model = no_tension", "M = 10.1 kN·m"), (9, 5), "10.1 kN·m"),
+        (("M = 1 kN·m", "model = cracked"), (6, 11), "main"),
+        (("model = curved", "M = 1 kN·m", "R_c = 100 mm", "centre = top"), (9, 7), "100 mm"),
+        ((*PLASTIC, "M = 1 kN·m", "V = 3 kN | shear"), (10, 1), "V = 3 kN"),
+        ((*PLASTIC, "M = 1 kN·m", "limit = 3 MPa"), (10, 1), "limit = 3 MPa"),
+        (("M = 1 kN·m", "point p = (0 mm, 200 mm)"), (8, 11), "(0 mm, 200 mm)"),
+        (("M = 1 kN·m", "point σ_1 = (0 mm, 0 mm)"), (8, 7), "σ_1"),
+        (("M = 1 kN·m", "limit = -3 MPa"), (8, 9), "-3 MPa"),
+        (("M = 1 kN·m", "limit = 3 kN"), (8, 9), "3 kN"),
+    ],
+)
+def test_place_of_a_fault(lines: tuple[str, ...], where: tuple[int, int], text: str) -> None:
+    (fault,) = stress(*lines).diagnostics
+    source = fault.source.text
+    start = fault.span.start
+    assert source[start : fault.span.end].split(" | ")[0].strip() == text
+    assert (source.count("\n", 0, start) + 1, start - source.rfind("\n", 0, start)) == where

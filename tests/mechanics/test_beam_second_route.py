@@ -11,9 +11,11 @@ from calcgen.mechanics.beam import (
     BendingStiffness,
     CaseSolution,
     DistributedLoad,
+    FreeCurvature,
     Load,
     PointLoad,
     Settlement,
+    ShearStiffness,
     combine,
     combined,
     fixed,
@@ -24,10 +26,12 @@ from calcgen.mechanics.beam import (
 )
 from calcgen.mechanics.second_route.beam import beam_residuals
 
-MODEL = prismatic(8.0, BendingStiffness(2e6, 1e6, 4e5), (fixed(0.0), spring(5.0, 4e5), pin(8.0)))
+SHEAR = ShearStiffness(5e6, 4e6)
+MODEL = prismatic(8.0, BendingStiffness(2e6, 1e6, 4e5), (fixed(0.0), spring(5.0, 4e5), pin(8.0)), shear=SHEAR)
 LOADS: tuple[Load, ...] = (
     DistributedLoad(1.0, 6.0, 2e3, 5e3),
     PointLoad(7.0, 3e3, "lateral"),
+    FreeCurvature(2.0, 7.0, 3e-4),
     Settlement(2, 0.004),
 )
 W, SLOPE, M, V = range(4)
@@ -96,11 +100,27 @@ def test_a_wrong_reaction_is_noticed(solution: CaseSolution, part: int, noticed:
 @pytest.mark.parametrize(
     "other",
     [
-        prismatic(8.0, BendingStiffness(2.002e6, 1e6, 4e5), MODEL.supports),
-        prismatic(8.0, BendingStiffness(2e6, 1e6, -4e5), MODEL.supports),
-        prismatic(8.0, BendingStiffness(2e6, 1e6, 4e5), (MODEL.supports[0], spring(5.0, 4.1e5), pin(8.0))),
+        prismatic(8.0, BendingStiffness(2.002e6, 1e6, 4e5), MODEL.supports, shear=SHEAR),
+        prismatic(8.0, BendingStiffness(2e6, 1e6, -4e5), MODEL.supports, shear=SHEAR),
+        prismatic(
+            8.0,
+            BendingStiffness(2e6, 1e6, 4e5),
+            (MODEL.supports[0], spring(5.0, 4.1e5), pin(8.0)),
+            shear=SHEAR,
+        ),
+        prismatic(8.0, BendingStiffness(2e6, 1e6, 4e5), MODEL.supports, shear=ShearStiffness(5.01e6, 4e6)),
+        prismatic(8.0, BendingStiffness(2e6, 1e6, 4e5), MODEL.supports, shear=ShearStiffness(5e6, 4.01e6)),
+        prismatic(8.0, BendingStiffness(2e6, 1e6, 4e5), MODEL.supports),
     ],
-    ids=["stiffness", "sign of the coupling", "spring"],
+    ids=["stiffness", "sign of the coupling", "spring", "shear", "sideways shear", "no shear"],
 )
 def test_the_solution_of_another_beam_is_noticed(other: BeamModel) -> None:
     assert {"w", "w_lat"} & failed(MODEL, LOADS, solve(other, {"case": LOADS})["case"])
+
+
+@pytest.mark.parametrize("curvature", [-3e-4, 3.001e-4, 0.0])
+def test_another_gradient_is_noticed(solution: CaseSolution, curvature: float) -> None:
+    loads = tuple(
+        replace(load, value=curvature) if isinstance(load, FreeCurvature) else load for load in LOADS
+    )
+    assert "w" in failed(MODEL, loads, solution)

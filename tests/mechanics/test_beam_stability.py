@@ -46,19 +46,41 @@ SKEW = BendingStiffness(2e6, 1e6, 3e5)
         ),
         (
             prismatic(10.0, EI, (pin(0.0), pin(10.0)), (3.0,)),
-            "the stretch between 0 m and 10 m can move vertically: hinge at 3 m",
+            "the stretch between 0 m and 3 m can rotate: a hinge at 3 m; "
+            "that between 3 m and 10 m moves with it",
         ),
         (
             prismatic(10.0, EI, (fixed(0.0),), (3.0,)),
-            "the stretch between 3 m and 10 m can move vertically: hinge at 3 m",
+            "the stretch between 3 m and 10 m can rotate: a hinge at 3 m",
         ),
         (
             prismatic(10.0, EI, (fixed(0.0), fixed(10.0)), (3.0, 5.0, 7.0)),
-            "the stretch between 3 m and 7 m can move vertically: hinges at 3 m, 5 m, 7 m",
+            "the stretch between 3 m and 5 m can rotate: a hinge at each end; "
+            "that between 5 m and 7 m moves with it",
         ),
         (
             prismatic(20.0, EI, (pin(0.0), pin(8.0), pin(20.0)), (8.0, 12.0)),
-            "the stretch between 8 m and 20 m can move vertically: hinges at 8 m, 12 m",
+            "the stretch between 8 m and 12 m can rotate: a hinge at each end; "
+            "that between 12 m and 20 m moves with it",
+        ),
+        (
+            prismatic(9.0, EI, (fixed(0.0), fixed(9.0)), (3.0, 4.0, 5.0, 6.0)),
+            "the stretch between 3 m and 4 m can rotate: a hinge at each end; "
+            "that between 4 m and 5 m moves with it",
+        ),
+        (
+            prismatic(9.0, EI, (fixed(0.0), Support(4.5, FREE, RIGID), fixed(9.0)), (2.0, 4.0, 5.0, 7.0)),
+            "the stretch between 2 m and 4 m can rotate: a hinge at each end; "
+            "that between 4 m and 5 m and that between 5 m and 7 m move with it",
+        ),
+        (
+            prismatic(9.0, EI, (Support(1.0, FREE, RIGID), fixed(9.0)), (2.0, 4.0)),
+            "the stretch between 0 m and 2 m can shift: a hinge at 2 m; "
+            "that between 2 m and 4 m moves with it",
+        ),
+        (
+            prismatic(9.0, SKEW, (fixed(0.0), pin(9.0, ("vertical",))), (4.0,)),
+            "the stretch between 4 m and 9 m can rotate sideways: a hinge at 4 m",
         ),
         (
             prismatic(10.0, SKEW, (pin(0.0), pin(10.0, ("vertical",)))),

@@ -4,11 +4,13 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from itertools import pairwise
+from math import sqrt
 from typing import NamedTuple, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 from scipy.integrate import cumulative_simpson, quad
+from scipy.optimize import fsolve
 
 Array: TypeAlias = NDArray[np.float64]
 
@@ -90,6 +92,47 @@ def two_span_point(P: float, a: float, L: float) -> float:
     Source: three-moment equation, M = -P a (L² - a²)/(4 L²).
     """
     return -P * a * (L**2 - a**2) / (4 * L**2)
+
+
+def curved(A: float, integral: float, R_c: float, N: float, M: float, r: float) -> float:
+    """Return the stress of a curved bar at radius r; M, about the centroid, is positive where it straightens.
+
+    Source: Winkler and Bach, as in Timoshenko, Strength of Materials II: r_n = A/∫dA/r, and
+    σ = N/A + M (r_n - r)/(A e r) with e = R_c - r_n.
+    """
+    r_n = A / integral
+    return N / A + M * (r_n - r) / (A * (R_c - r_n) * r)
+
+
+def cracked(b: float, d: float, nA: float) -> tuple[float, float]:
+    """Return the compressed depth x and I of a cracked rectangle with bars of transformed area nA at depth d.
+
+    Source: first moments about the neutral axis, b x²/2 = nA (d - x).
+    """
+    x = (sqrt(nA**2 + 2 * b * nA * d) - nA) / b
+    return x, b * x**3 / 3 + nA * (d - x) ** 2
+
+
+def corner_pressure(b: float, h: float, N: float, M_x: float, M_y: float) -> float:
+    """Return the largest pressure under a base b x h without tension; M_x presses the top, M_y the right.
+
+    The plane of pressure p = p_0 + p_x x + p_y y whose positive part balances the forces: integrated exactly
+    along y, by Gauss points along x, and found by scipy.
+    """
+    points, weights = np.polynomial.legendre.leggauss(400)
+    x, w = points * b / 2, weights * b / 2
+
+    def gap(plane: Array) -> Array:
+        p_0, p_x, p_y = plane
+        p = p_0 + p_x * x
+        low = np.clip(-p / p_y, -h / 2, h / 2)
+        area, first, second = (((h / 2) ** k - low**k) / k for k in (1, 2, 3))
+        force, moment = p * area + p_y * first, p * first + p_y * second
+        return np.array([w @ force - N, w @ moment - M_x, w @ (force * x) - M_y])
+
+    start = np.array([N / (b * h), 12 * M_y / (h * b**3), 12 * M_x / (b * h**3)])
+    p_0, p_x, p_y = fsolve(gap, start, xtol=1e-13)
+    return float(p_0 + p_x * b / 2 + p_y * h / 2)
 
 
 class Angle(NamedTuple):

@@ -2,11 +2,22 @@
 
 from __future__ import annotations
 
-from math import pi, sqrt
+from math import cos, log, pi, radians, sin, sqrt
 
 import numpy as np
 
-from tests.projects.by_hand import EXACT, FACETS, GRID, Angle, Overhang, Worked, two_span_point
+from tests.projects.by_hand import (
+    EXACT,
+    FACETS,
+    GRID,
+    Angle,
+    Overhang,
+    Worked,
+    corner_pressure,
+    cracked,
+    curved,
+    two_span_point,
+)
 
 E = 210e6  # kN/m²
 F_Y = 275e3  # kN/m²
@@ -157,7 +168,131 @@ H_06 = (
     ),
 )
 
-CASES = (*W_07, *W_12, *B_03, *D_04, *P_05, *H_06)
+# L-16, HEA 120: 114 x 120 x 5 x 8, r 12 mm, plates 90 x 10, in m: rectangles, and two spandrels at each root
+_spandrel, _arm = (1 - pi / 4) * 0.012**2, 0.012 * (10 - 3 * pi) / (12 - 3 * pi)  # area; from the corner
+_own_I = 0.012**4 * (
+    1 - 5 * pi / 16 - (1 - pi / 4) * ((10 - 3 * pi) / (12 - 3 * pi)) ** 2
+)  # about its centroid
+_A16 = 2 * 0.12 * 0.008 + 0.098 * 0.005 + 4 * _spandrel + 2 * 0.09 * 0.01
+_I16 = (
+    (0.12 * 0.114**3 - 0.115 * 0.098**3) / 12
+    + 4 * (_own_I + _spandrel * (0.049 - _arm) ** 2)
+    + 0.09 * (0.134**3 - 0.114**3) / 12
+)
+_S_cap = 0.09 * 0.01 * 0.062
+_W_pl16 = 2 * (0.12 * 0.008 * 0.053 + 0.005 * 0.049**2 / 2 + 2 * _spandrel * (0.049 - _arm) + _S_cap)
+_F_h = (G * 1.15 * 22 + Q * 8) / 2
+_g16 = 78.5 * _A16
+_M16, _V16 = _F_h * 2 + G * _g16 * 2, _F_h + G * _g16 * 2
+_M_trip = 56 + _g16 * 2
+_A_f, _I_f = 0.12 * 0.008 + 0.09 * 0.01 + 0.005 * 0.049 / 3, (0.008 * 0.12**3 + 0.01 * 0.09**3) / 12
+
+L_16 = (
+    Worked("L-16", "M_Ed", _M16, "kN·m", "F a + g a²/2", FACETS),
+    Worked(
+        "L-16", "λ_f", 0.752 * 2 / (sqrt(_I_f / _A_f) * 93.9 * sqrt(235 / 275)), "", "EN 1993-1-1 6.3.2.4"
+    ),
+    Worked("L-16", "M_c_Rd", _W_pl16 * F_Y, "kN·m", "first moments of half the area", FACETS),
+    Worked("L-16", "M_pl_Rd", _W_pl16 * F_Y, "kN·m", "the same from the stress blocks", FACETS),
+    Worked("L-16", "F_w_Ed", _V16 * _S_cap / _I16 * 0.16 / 2, "kN", "V S/I over a spacing, two rows", FACETS),
+    Worked("L-16", "F_w_Rd", 430e3 / (sqrt(3) * 0.85 * 1.25) * 0.004 * 0.052, "kN", "EN 1993-1-8 4.5.3.3"),
+    Worked("L-16", "u_trip", _M_trip / (_W_pl16 * F_Y), "", "M/M_pl", FACETS),
+)
+
+# L-15, trapezium 36 to 18 x 50 mm inside a radius of 32 mm
+_A15 = (0.036 + 0.018) / 2 * 0.05
+_y15 = 0.05 / 3 * (0.036 + 2 * 0.018) / (0.036 + 0.018)  # centroid from the inside
+_int15 = (0.036 * 0.082 - 0.018 * 0.032) / 0.05 * log(0.082 / 0.032) - (0.036 - 0.018)
+_I15 = 0.05**3 * (0.036**2 + 4 * 0.036 * 0.018 + 0.018**2) / (36 * (0.036 + 0.018))
+_R15 = 0.032 + _y15
+_P15 = max(_F_h, 28.0)
+
+L_15 = (
+    Worked("L-15", "F_Ed", _P15, "kN", "the crane's trip"),
+    Worked("L-15", "R_c", _R15 * 1e3, "mm", "r_i + h (b_i + 2 b_o)/3(b_i + b_o)"),
+    Worked("L-15", "M_Ed", _P15 * _R15, "kN·m", "F R"),
+    Worked("L-15", "F_t_Rd", 0.9 * 360 * 561 / 1.25 / 1e3, "kN", "EN 1993-1-8 Table 3.4"),
+)
+
+# S-02, strip 1 m wide, 190 mm, 5 bars of 12 mm at 144 mm
+_A_b, _d2 = 5 * pi / 4 * 0.012**2, 0.144
+_g2 = 25 * 0.19 + 0.5
+_M2, _M2_k, _M2_qp = ((f * _g2 + q * 5) * 3.6**2 / 8 for f, q in ((G, Q), (1, 1), (1, 0.6)))
+_a2 = _A_b * (500 / 1.15) / 20
+_n2 = 200 / 11
+_x2, _I2 = cracked(1.0, _d2, _n2 * _A_b)
+
+S_02 = (
+    Worked("S-02", "M_Ed", _M2, "kN·m", "w L²/8"),
+    Worked("S-02", "a_c", _a2 * 1e3, "mm", "A f_yd/(b f_cd)"),
+    Worked(
+        "S-02",
+        "V_Rd_c",
+        0.12 * 2 * (100 * _A_b / _d2 * 30) ** (1 / 3) * 144,
+        "kN",
+        "EN 1992-1-1 6.2.2, k = 2",
+    ),
+    Worked("S-02", "w_qp", 5 * _M2_qp * 3.6**2 / (48 * 11e6 * _I2) * 1e3, "mm", "5 M L²/48EI, cracked"),
+)
+
+# F-08, base 1.1 x 1.5 m
+_G8 = 24 * 1.1 * 1.5 * 0.6
+_N_min = 1.5 * _GK.R_2 + _own * 1.2 + _G8
+_N_max = _mid_k / 2 + _out_k + _own * 1.2 + _G8
+_M8 = 6 * 1.5
+_skew = radians(40)
+
+F_08 = (
+    Worked("F-08", "N_min", _N_min, "kN", "half of three stringers and the crossbeam, and the pad"),
+    Worked("F-08", "e_min", _M8 / _N_min * 1e3, "mm", "M/N"),
+    Worked("F-08", "p_full", _N_max / 1.65 + _M8 * 6 / (1.1 * 1.5**2), "kPa", "N/A + M/W, all in contact"),
+    Worked(
+        "F-08",
+        "p_skew",
+        corner_pressure(1.1, 1.5, _N_min, _M8 * cos(_skew), _M8 * sin(_skew)),
+        "kPa",
+        "equilibrium of the pressed part by integration",
+        GRID,
+    ),
+)
+
+CASES = (*W_07, *W_12, *B_03, *D_04, *P_05, *H_06, *L_16, *L_15, *S_02, *F_08)
+
+_contact = 3 * (0.75 - _M8 / _N_min)
+_stress = _M16 * 0.067 / _I16 / 1e3
+_root = _M16 * 0.037 / _I16 / 1e3
+_S_root = 0.12 * 0.008 * 0.053 + 2 * _spandrel * (0.049 - _arm) + 0.005 * 0.012 * 0.043 + _S_cap
+
+BLOCKS = (
+    Worked("L-16", "lift.σ_max", _stress, "MPa", "M y/I", FACETS),
+    Worked("L-16", "lift.q_cap", _V16 * _S_cap / _I16, "N/mm", "V S/I", FACETS),
+    Worked("L-16", "lift.root.σ", _root, "MPa", "M y/I", FACETS),
+    Worked("L-16", "lift.root.τ", _V16 * _S_root / (_I16 * 0.005) / 1e3, "MPa", "V S/(I t)", FACETS),
+    Worked("L-16", "trip.M_el", F_Y * _I16 / 0.067, "kN·m", "f_y W", FACETS),
+    Worked(
+        "L-15",
+        "bowl.σ_max",
+        curved(_A15, _int15, _R15, _P15, _P15 * _R15, 0.032) / 1e3,
+        "MPa",
+        "Winkler and Bach, inside",
+    ),
+    Worked(
+        "L-15",
+        "bowl.σ_min",
+        curved(_A15, _int15, _R15, _P15, _P15 * _R15, 0.082) / 1e3,
+        "MPa",
+        "Winkler and Bach, outside",
+    ),
+    Worked("L-15", "bowl.σ_straight", (_P15 / _A15 + _P15 * _R15 * _y15 / _I15) / 1e3, "MPa", "N/A + M y/I"),
+    Worked("S-02", "ult.M_pl", _A_b * 500e3 / 1.15 * (_d2 - _a2 / 2), "kN·m", "A f_yd (d - a/2)"),
+    Worked("S-02", "char.x_c", _x2 * 1e3, "mm", "b x²/2 = n A (d - x)"),
+    Worked("S-02", "char.tension", _n2 * _M2_k * (_d2 - _x2) / _I2 / 1e3, "MPa", "n M (d - x)/I"),
+    Worked("S-02", "quasi.tension", _M2_qp / (_A_b * (_d2 - _x2 / 3)) / 1e3, "MPa", "M/(A (d - x/3))"),
+    Worked("S-02", "quasi.slab.σ_min", -_M2_qp * _x2 / _I2 / 1e3, "MPa", "M x/I"),
+    Worked("F-08", "rope.x_c", _contact * 1e3, "mm", "3 (B/2 - e)"),
+    Worked("F-08", "rope.σ_min", -2 * _N_min / (1.1 * _contact), "kPa", "2 N/3 b (B/2 - e)"),
+)
+"""Results of stress blocks, by their dotted names."""
 
 EXCEEDED = {("P-05", "bending at the wall"): _M_5 / (146.3e-6 * F_Y)}
 UPLIFT = {("W-07", "no uplift at the west trestle"): _EQU.R_1}

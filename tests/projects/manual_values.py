@@ -80,9 +80,9 @@ I_CUT = (165 * 320**3 - 157.5 * 290**3) / 12
 I_LINE = 2 * 165 * 15 * 152.5**2 + 7.5 * 305**3 / 12
 S_FLANGE = 165 * 15 * 152.5
 TAU_WEB = max((S_FLANGE + 7.5 * 145**2 / 2) / I_CUT, (S_FLANGE + 7.5 * 152.5**2 / 2) / I_LINE) * 45e3 / 7.5
-TAU_TOP = max(S_FLANGE / I_CUT, (S_FLANGE + 7.5 * (152.5**2 - 145**2) / 2) / I_LINE) * 45e3 / 7.5
+TAU_TOP = S_FLANGE / I_CUT * 45e3 / 7.5
 SIGMA_TOP = -60e6 * 145 / I_CUT
-SIGMA_JOIN, TAU_JOIN = 60e6 * 152.5 / I_CUT, S_FLANGE / I_LINE * 45e3 / 7.5
+SIGMA_FACE, TAU_FLANGE = 60e6 * 160 / I_CUT, 45e3 * 82.5 * 152.5 / I_LINE  # q/t of half the flange
 # the box of M-14d-torsion, mm
 I_BOX = (120 * 200**3 - 104 * 184**3) / 12
 I_BOX_LINE = 2 * 112 * 8 * 96**2 + 2 * 8 * 192**3 / 12
@@ -426,6 +426,7 @@ CASES: tuple[Worked, ...] = (
     Worked(
         "M-11b-torsion", "x_sc", -2.0375 + 0.075 - 1.6, "in", "3 b²/(h + 6 b) = 1.6 in behind the mid-line"
     ),
+    Worked("M-11b-torsion", "x_web", -2.0375 + 0.075, "in", "middle of the web"),
     Worked("M-11b-torsion", "e_sc", 1.6, "in", "Beer and Johnston, example 6.06, from memory"),
     Worked(
         "M-11b-torsion",
@@ -457,14 +458,14 @@ CASES: tuple[Worked, ...] = (
     Worked(
         "M-14c-shear", "τ_w", TAU_WEB, "MPa", "V S/(I b) and q/t; 21.0 in Gere, example 5-14, from memory"
     ),
-    Worked("M-14c-shear", "τ_t", TAU_TOP, "MPa", "V S/(I b) and q/t; 17.4 in Gere"),
+    Worked("M-14c-shear", "τ_t", TAU_TOP, "MPa", "V S/(I b); 17.4 in Gere"),
     Worked("M-14c-shear", "σ_t", SIGMA_TOP, "MPa", "M y/I"),
     Worked("M-14c-shear", "σ_v", sqrt(SIGMA_TOP**2 + 3 * TAU_TOP**2), "MPa", "√(σ² + 3 τ²)"),
-    Worked("M-14c-shear", "σ_vm", sqrt(SIGMA_JOIN**2 + 3 * TAU_JOIN**2), "MPa", "√(σ² + 3 τ²)"),
+    Worked("M-14c-shear", "σ_vm", sqrt(SIGMA_FACE**2 + 3 * TAU_FLANGE**2), "MPa", "√(σ² + 3 τ²)"),
     Worked(
         "M-14c-shear",
         "σ_p",
-        SIGMA_JOIN / 2 + sqrt(SIGMA_JOIN**2 / 4 + TAU_JOIN**2),
+        SIGMA_FACE / 2 + sqrt(SIGMA_FACE**2 / 4 + TAU_FLANGE**2),
         "MPa",
         "σ/2 + √(σ²/4 + τ²)",
     ),

@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
-from math import sqrt
+from math import pi, radians, sqrt, tan
 
 import numpy as np
 
-from tests.projects.by_hand import GRID, PRINTED, Array, Overhang, Worked, sag
+from tests.projects.by_hand import FACETS, GRID, PRINTED, Array, Overhang, Worked, curved, sag
 
 E = 29000.0  # ksi
 FT = 12.0  # in
@@ -107,7 +107,132 @@ C_41 = (
     Worked("C-41", "Δ_tip", -Overhang(183, 33, _q, 0).w_tip(E * 78.9), "in", "slope at the post times l_2"),
 )
 
-CASES = (*F_11, *G_21, *L_31, *C_41)
+# J-51, joists 2 of 1.5 x 11.25 in and a plate 0.375 x 11 in, a hole of 9/16 in at 2.5 in below the middle
+_wj = (1.2 * 24 + 1.6 * 65) * 4 / 1000 * KLF
+_M_j = _wj * 216**2 / 8
+_n = 29000 / 1600
+_I_g = 2 * 1.5 * 11.25**3 / 12 + _n * 0.375 * 11**3 / 12
+_A_g, _A_o = 2 * 1.5 * 11.25 + _n * 0.375 * 11, (3 + _n * 0.375) * 0.5625
+_y_n = 2.5 * _A_o / (_A_g - _A_o)
+_I_n = _I_g - (3 + _n * 0.375) * 0.5625**3 / 12 - 2.5**2 * _A_o - (_A_g - _A_o) * _y_n**2
+_share = _n * 0.375 * 11**3 / 12 / _I_g
+_F_e = 6100 * 0.5**1.45 / sqrt(0.5)
+_R_e = 87000 / _F_e
+_k_3 = -1 + sqrt(2 * (1 + _R_e) / _R_e + 2 * 45000 * (2 + _R_e) * 0.5**2 / (3 * 87000 * 1.5**2))
+_yields = (
+    2 * 0.5 * 1.5 * _F_e / 5,
+    2 * _k_3 * 0.5 * 1.5 * 87000 / ((2 + _R_e) * 4),
+    2 * 0.5**2 / 4 * sqrt(2 * 87000 * 45000 / (3 * (1 + _R_e))),
+)
+_sag_j = 5 * 216**4 / (384 * 1600 * _I_g) * KLF / 1000
+J_51 = (
+    Worked("J-51", "M_u", _M_j / FT, "kip-ft", "w l²/8"),
+    Worked("J-51", "σ_w", _M_j * (5.625 + _y_n) / _I_n, "ksi", "transformed to wood, hole taken off"),
+    Worked("J-51", "σ_p", _n * _M_j * (5.5 + _y_n) / _I_n, "ksi", "n times the strain of the wood"),
+    Worked("J-51", "F_b'", 0.9 * 2.54 * 0.85 * 0.8, "ksi", "NDS Table 4.3.1"),
+    Worked("J-51", "σ_0", _M_j / (2 * 1.5 * 11.25**2 / 6), "ksi", "M/S of the joists"),
+    Worked("J-51", "Z_u", _share * _wj * 24 * 1000, "lbf", "the plate's share of the load over a spacing"),
+    Worked("J-51", "Z'", min(_yields) * 3.32 * 0.65 * 0.8, "lbf", "NDS yield limit equations"),
+    Worked("J-51", "f_v", 1.5 * (1 - _share) * _wj * 108 / 33.75 * 1000, "psi", "1.5 V/A, the joists' share"),
+    Worked("J-51", "Δ_L", 260 * _sag_j, "in", "5 w l⁴/384EI"),
+    Worked("J-51", "Δ_LT", (1.5 * 96 + 260) * _sag_j, "in", "5 (1.5 D + L) l⁴/384EI"),
+)
+
+# J-52, beam 9.5 x 11.5 in, a plate 5 x 0.375 in below, less two holes of 7/16 in
+_w52 = (1.2 * 24 + 1.6 * 65) * 7 / 1000 * KLF
+_M_52, _V_52 = _w52 * 240**2 / 8, _w52 * 120
+
+
+def _strapped(width: float) -> tuple[float, float, float]:
+    """Return I, the axis above the middle of the plate, and the plate's first moment, transformed to wood."""
+    A_w, A_p, arm = 9.5 * 11.5, _n * width * 0.375, 5.9375
+    up = A_w * arm / (A_w + A_p)
+    own = (9.5 * 11.5**3 + _n * width * 0.375**3) / 12
+    return own + A_w * (arm - up) ** 2 + A_p * up**2, up, A_p * up
+
+
+_I_52, _, _S_52 = _strapped(5)
+_I_net, _up_net, _ = _strapped(5 - 2 * 0.4375)
+_NA_52 = 5.75 + 5.9375 - _strapped(5)[1]  # from the top
+J_52 = (
+    Worked("J-52", "M_u", _M_52 / FT, "kip-ft", "w l²/8"),
+    Worked("J-52", "σ_w", _M_52 * (5.75 + 5.9375 - _up_net) / _I_net, "ksi", "M y/I at the top, holes off"),
+    Worked("J-52", "Z_u", _V_52 * _S_52 / _I_52 * 4.5 * 1000, "lbf", "V S/I over a spacing"),
+    Worked("J-52", "Z_pair", 2 * 1000 * 3.32 * 0.65 * 0.8, "lbf", "NDS Table 11.3.1"),
+    Worked("J-52", "Δ_L", 5 * 0.455 * KLF * 240**4 / (384 * 1600 * _I_52), "in", "5 w l⁴/384EI"),
+)
+
+# H-61, bar of 1.5 in, inner radius 1.25 in
+_P_u = 1.2 * 0.06 + 1.6 * 1.25
+_A_h = pi / 4 * 1.5**2
+_int_h = 2 * pi * (2 - sqrt(2**2 - 0.75**2))  # ∫dA/r of a circle: Timoshenko, Strength of Materials II
+H_61 = (
+    Worked("H-61", "P_u", _P_u, "kip", "1.2 D + 1.6 I L"),
+    Worked("H-61", "M_u", 2 * _P_u, "kip-in", "P R"),
+    Worked("H-61", "φT_n", 0.75 * 0.75 * 58 * _A_h, "kip", "AISC 360-16 Table J3.2", FACETS),
+)
+
+# K-71, HSS6x4x1/4: A 4.30, I_x 20.9, Z_x 8.53, J 23.6, t 0.233
+_D_b, _S_b = STEEL * 4.30 + 0.012 * 6 * KLF, 0.030 * 6 * KLF
+_w_k = 1.2 * _D_b + 1.6 * _S_b
+_t_k = (1.2 * 0.012 + 1.6 * 0.030) * 6**2 / 2  # kip-in/in, or kip-ft/ft
+_M_k, _V_k, _T_k = _w_k * 144**2 / 8, _w_k * 72, _t_k * 72
+_C = 2 * (4 - 0.233) * (6 - 0.233) * 0.233 - 4.5 * (4 - pi) * 0.233**3
+_θ = 0.042 * 18 * 144**2 / (8 * 11200 * 23.6)
+K_71 = (
+    Worked("K-71", "M_u", _M_k, "kip-in", "w l²/8"),
+    Worked("K-71", "V_u", _V_k, "kip", "w l/2"),
+    Worked("K-71", "T_u", _T_k, "kip-in", "t l/2"),
+    Worked("K-71", "C_t", _C, "in³", "AISC 360-16 H3.1"),
+    Worked("K-71", "C_t", 10.1, "in³", "AISC Manual 15th ed. Table 1-11, from memory", 1e-2),
+    Worked("K-71", "θ_m", _θ / radians(1), "deg", "∫T dx/GJ over half of the span"),
+    Worked("K-71", "Δ_e", 72 * tan(_θ), "in", "turned about the beam"),
+    Worked("K-71", "Δ_S", 5 * _S_b * 144**4 / (384 * E * 20.9), "in", "5 w l⁴/384EI"),
+)
+
+CASES = (*F_11, *G_21, *L_31, *C_41, *J_51, *J_52, *H_61, *K_71)
+
+
+def _in_a_box(h: float, b: float, t: float, r_o: float, *, V: float, T: float) -> float:
+    """Return the shear stress at mid-height of a thin box with round corners: V S/(I t) and Bredt.
+
+    Source: rounded rectangles along the mid-line, Timoshenko; r is the mid-line radius of the corners.
+    """
+    r = r_o - t / 2
+    half, flat_h, flat_b = (h - t) / 2, h - 2 * r_o, b - 2 * r_o
+    y_arc, arc = flat_h / 2 + 2 * r / pi, pi / 2 * r  # centroid and length of a corner
+    S = t * (flat_b / 2 * half + arc * y_arc + (flat_h / 2) ** 2 / 2)  # a quarter of the section
+    square_arc = arc * (flat_h / 2) ** 2 + 2 * (flat_h / 2) * r**2 + pi / 4 * r**3  # ∫y² ds of a corner
+    second = 4 * t * (flat_b / 2 * half**2 + square_arc + (flat_h / 2) ** 3 / 3)
+    enclosed = (h - t) * (b - t) - (4 - pi) * r**2
+    return V * S / (second * t) + T / (2 * enclosed * t)
+
+
+BLOCKS = (
+    Worked("J-51", "middle.left.σ_min", -_M_j * (5.625 - _y_n) / _I_n, "ksi", "top of the wood"),
+    Worked("J-52", "middle.plate.σ_max", _n * _M_52 * (_up_net + 0.1875) / _I_net, "ksi", "n M y/I"),
+    Worked("J-52", "ends.q_plate", _V_52 * _S_52 / _I_52 * 1000, "lbf/in", "V S/I"),
+    Worked("J-52", "ends.axis.τ", _V_52 * _NA_52**2 / (2 * _I_52), "ksi", "V S/(I b) at the neutral axis"),
+    Worked("H-61", "bend.σ_max", curved(_A_h, _int_h, 2, _P_u, 2 * _P_u, 1.25), "ksi", "inside", FACETS),
+    Worked("H-61", "bend.σ_min", curved(_A_h, _int_h, 2, _P_u, 2 * _P_u, 2.75), "ksi", "outside", FACETS),
+    Worked(
+        "H-61",
+        "bend.σ_straight",
+        _P_u / _A_h + 2 * _P_u * 0.75 / (pi / 64 * 1.5**4),
+        "ksi",
+        "N/A + M c/I",
+        FACETS,
+    ),
+    Worked(
+        "K-71",
+        "column.τ_max",
+        _in_a_box(6, 4, 0.233, 0.466, V=_V_k, T=_T_k),
+        "ksi",
+        "V S/(I t) + T/2A_m t on the mid-line",
+        FACETS,
+    ),
+)
+"""Results of stress blocks, by their dotted names."""
 
 UTILISATIONS = {
     ("G-21", "deflection, live"): _DEFLECTION_21 / (288 / 360),

@@ -20,6 +20,7 @@ from tests.projects.by_hand import EXACT, FACETS, Worked
 
 PROJECTS = Path(__file__).parents[2] / "projects"
 CASES = [("heron-lock", case) for case in heron_lock.CASES] + [("mill-loft", c) for c in mill_loft.CASES]
+BLOCKS = [("heron-lock", case) for case in heron_lock.BLOCKS] + [("mill-loft", c) for c in mill_loft.BLOCKS]
 BOTH = pytest.mark.parametrize("project", ["heron-lock", "mill-loft"])
 
 
@@ -40,6 +41,16 @@ def test_values_are_those_worked_by_hand(project: str, case: Worked) -> None:
     found = demo(project)[case.calc].values[case.name][0]
     assert isinstance(found, Measure)
     assert found.dimension == dimension_of(unit_size(case.unit))
+    assert magnitude_in(found, case.unit) == pytest.approx(case.value, rel=case.within)
+
+
+@pytest.mark.parametrize(("project", "case"), BLOCKS, ids=[f"{c.calc} {c.name} {c.how}" for _, c in BLOCKS])
+def test_stresses_are_those_worked_by_hand(project: str, case: Worked) -> None:
+    block, *part, name = case.name.split(".")
+    segments = demo(project)[case.calc].segments
+    stress = next(s for s in segments if isinstance(s, StressResult) and s.name == block)
+    results = stress.parts[part[0]] if part else stress.results
+    found = next(r.value for r in results if r.name == name)
     assert magnitude_in(found, case.unit) == pytest.approx(case.value, rel=case.within)
 
 

@@ -4,13 +4,15 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Mapping, Sequence
+from collections.abc import Sequence
 from dataclasses import dataclass
 
 from calcgen.evaluation.blocks.beam_combinations import Combination
-from calcgen.evaluation.blocks.beam_lines import EXTREME, REACTION, SPAN, STATE, is_result, length_text
+from calcgen.evaluation.blocks.beam_lines import SPAN, is_result, length_text
 from calcgen.evaluation.blocks.beam_model import BeamData, read_beam
-from calcgen.evaluation.blocks.beam_results import group_results, moves_sideways, premises, relieving_cases
+from calcgen.evaluation.blocks.beam_premises import premises
+from calcgen.evaluation.blocks.beam_reading import Reading, beam_measure
+from calcgen.evaluation.blocks.beam_results import group_results, moves_sideways, relieving_cases
 from calcgen.evaluation.results import (
     BeamResult,
     CombinationResult,
@@ -24,15 +26,12 @@ from calcgen.language.blocks.beam import BeamBlock
 from calcgen.language.blocks.section import LaterLine
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Column, Name
-from calcgen.mechanics.beam import CaseSolution, Quantity, UnstableBeam, combine, combined, solve
-from calcgen.mechanics.combinations import Envelope, ReactionPart
+from calcgen.mechanics.beam import CaseSolution, UnstableBeam, combine, combined, solve
 from calcgen.mechanics.second_route.beam import beam_residuals
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import Measure, from_si
 from calcgen.quantities.symbols import plain
 from calcgen.text import Report, Span, nearest
-
-_UNITS = {"M": "N·m", "V": "N", "w": "m", "slope": "1", "R": "N", "M_R": "N·m"}
 
 
 @dataclass(frozen=True)
@@ -71,7 +70,7 @@ class BeamThing:
                 hint="results are M_max, V_abs, w_max, R_1, M_max(2.5 m), …",
             )
             return None
-        return _Reading(self.result, solutions, self.style, report, spans[0]).read(
+        return Reading(self.result, solutions, self.style, report, spans[0]).read(
             parts[0], stretch, arguments
         )
 
@@ -106,138 +105,6 @@ class BeamThing:
         return None
 
 
-@dataclass(frozen=True)
-class _Reading:
-    """One result asked for by name."""
-
-    beam: BeamResult
-    solutions: Mapping[str, CaseSolution]
-    style: Style
-    report: Report
-    span: Span
-
-    def read(
-        self, word: str, stretch: tuple[float, float] | None, arguments: tuple[Plain, ...] | None
-    ) -> Measure | None:
-        place = self._place(arguments)
-        if arguments is not None and place is None:
-            return None
-        extreme, reaction, state = EXTREME.match(word), REACTION.match(word), STATE.match(word)
-        if (word.endswith("_lat")) and "lateral" not in self.beam.model.planes:
-            return self._fault(
-                "the stiffness about the vertical axis is not known, so there are no lateral results",
-                "give section and E instead of EI",
-            )
-        if extreme and place is None:
-            return self._extreme(extreme, stretch)
-        if extreme and place is not None and extreme[3] != "abs" and not extreme[1]:
-            found = Envelope(self.solutions).at(_quantity(extreme[2], extreme[4]), place)
-            return self._measure(extreme[2], getattr(found, extreme[3]).value)
-        if state and place is not None:
-            if not self._one_state(word, f"{word}_max(…)"):
-                return None
-            (solution,) = self.solutions.values()
-            return self._measure(state[1], solution.at(_quantity(state[1], state[2]), place))
-        if state and place is None:
-            return self._fault(
-                f"'{word}' is a result at a place", f"write {word}(2.5 m), or {word}_max for the largest"
-            )
-        if reaction and place is None and stretch is None:
-            return self._reaction(reaction)
-        known = [
-            "M_max",
-            "M_min",
-            "M_abs",
-            "V_max",
-            "V_min",
-            "V_abs",
-            "w_max",
-            "w_min",
-            "x_M_max",
-            "R_1",
-            "M_R_1",
-        ]
-        close = nearest(word, known)
-        return self._fault(
-            f"a beam has no result '{plain(word)}'",
-            f"the nearest is '{close}'" if close else ", ".join(known),
-        )
-
-    def _fault(self, message: str, hint: str) -> Measure | None:
-        self.report.error("no-such-result", self.span, message, hint=hint)
-        return None
-
-    def _place(self, arguments: tuple[Plain, ...] | None) -> float | None:
-        if arguments is None:
-            return None
-        length = from_si(1.0, "m").dimension
-        if len(arguments) != 1 or not isinstance(arguments[0], Measure) or arguments[0].dimension != length:
-            self._fault("a place on the beam is a length from its start", "such as M(2.5 m)")
-            return None
-        x = arguments[0].si
-        if not -1e-9 <= x / self.beam.model.length <= 1 + 1e-9:
-            unit = "ft" if self.style.system == "US" else "m"
-            end = length_text(self.beam.model.length, self.style, unit)
-            self._fault("the place lies outside the beam", f"the beam runs from 0 to {end}")
-            return None
-        return min(max(x, 0.0), self.beam.model.length)
-
-    def _one_state(self, word: str, instead: str) -> bool:
-        if len(self.solutions) == 1:
-            return True
-        self._fault(
-            f"'{word}' has several states here: {', '.join(self.solutions)}",
-            f"name one combination, or write {instead}",
-        )
-        return False
-
-    def _extreme(self, match: re.Match[str], stretch: tuple[float, float] | None) -> Measure:
-        start, end = stretch if stretch is not None else (None, None)
-        found = Envelope(self.solutions).extremes(_quantity(match[2], match[4]), start, end)
-        governing = getattr(found, match[3])
-        if match[1]:
-            return self._measure("x", governing.x)
-        return self._measure(match[2], abs(governing.value) if match[3] == "abs" else governing.value)
-
-    def _reaction(self, match: re.Match[str]) -> Measure | None:
-        number, which = int(match[2]), match[3]
-        count = len(self.beam.model.supports)
-        if number > count:
-            return self._fault(
-                f"the beam has {count} supports", "supports are numbered from the left, from 1"
-            )
-        part: ReactionPart
-        if match[1] == "R":
-            part = "force_lat" if match[4] else "force"
-        else:
-            part = "moment_lat" if match[4] else "moment"
-        if which is None and not self._one_state(match[0], f"{match[0]}_max"):
-            return None
-        found = Envelope(self.solutions).reaction(number - 1, part)
-        return self._measure(match[1], getattr(found, which or "max").value)
-
-    def _measure(self, quantity: str, value: float) -> Measure:
-        return beam_measure(quantity, value, self.style)
-
-
-def beam_measure(quantity: str, value: float, style: Style) -> Measure:
-    """Return a result of a beam in the unit it is shown in: M, V, w, slope, x, R or M_R."""
-    us = style.system == "US"
-    if quantity == "x":
-        return from_si(value, "m").shown_in("ft" if us else "m")
-    if quantity == "w":
-        return from_si(value, "m").shown_in("in" if us else "mm")
-    if quantity == "slope":
-        return from_si(value, "")
-    return from_si(value, _UNITS[quantity]).shown_in(
-        style.default_unit(from_si(1.0, _UNITS[quantity]).dimension)
-    )
-
-
-def _quantity(word: str, lateral: str | None) -> Quantity:
-    return f"{word}{lateral or ''}"  # type: ignore[return-value]
-
-
 def evaluate_beam(block: BeamBlock, scope: Scope) -> BeamResult | FailedBlock:
     """Solve the beam, combine its cases, and define its name."""
     free = scope.define(block.target)
@@ -268,16 +135,17 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
     if not solutions:
         scope.report.error("load-missing", block.head_span, f"the beam '{plain(name)}' has no load")
         return None
+    spans = _ends(data.spans)
     by_group: dict[str, list[CombinationResult]] = {}
     for c in combinations:
         solution = combine(solutions, c.factors)
-        shown, further = group_results({c.name: solution}, data.model, scope.style, beam_measure)
+        shown, further = group_results({c.name: solution}, data.model, spans, scope.style, beam_measure)
         result = CombinationResult(c.name, c.factors, solution, (*shown, *further))
         by_group.setdefault(c.group or c.name, []).append(result)
     groups = []
     for name_of_group, members in by_group.items():
         states = {m.name: m.solution for m in members}
-        shown, further = group_results(states, data.model, scope.style, beam_measure)
+        shown, further = group_results(states, data.model, spans, scope.style, beam_measure)
         groups.append(GroupResult(name_of_group, tuple(members), shown, further))
     for group in groups:
         for case in relieving_cases(group, solutions, data.case_kinds):
@@ -291,7 +159,7 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         name=name,
         section=", ".join(dict.fromkeys(s.result.name for s in data.sections)),
         model=data.model,
-        spans=_ends(data.spans),
+        spans=spans,
         support_kinds=data.support_kinds,
         support_notes=data.support_notes,
         case_kinds={case: data.case_kinds.get(case, "") for case in data.cases},
@@ -299,12 +167,20 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         groups=tuple(groups),
         settings=_shown_settings(data, scope.style),
         restrained=data.is_restrained if data.restrained is not None else None,
-        premises=premises(name, data, groups, scope.style),
+        premises=premises(name, data, groups, _other_deflection(data, combinations), scope.style),
         second_route=_second_route(name, data, groups),
         lines=_lines(block, scope),
         line=scope.report.source.line_number(block.head_span),
         span=block.head_span,
     )
+
+
+def _other_deflection(data: BeamData, combinations: Sequence[Combination]) -> float | None:
+    """Return the largest deflection by the other choice about shear, None where it is not known."""
+    if data.shear.other is None:
+        return None
+    solutions = solve(data.shear.other, data.cases)
+    return max(combine(solutions, c.factors).extremes("w").abs for c in combinations)
 
 
 def _ends(lengths: tuple[float, ...]) -> tuple[tuple[float, float], ...]:
@@ -347,12 +223,24 @@ def _shown_settings(data: BeamData, style: Style) -> tuple[Result, ...]:
         Result(f"L_{i}" if len(data.spans) > 1 else "L", "span", m, show(m, style))
         for i, m in enumerate((beam_measure("x", s, style) for s in data.spans), start=1)
     ]
-    if data.E is not None:
-        results.append(Result("E", "modulus of elasticity", data.E, show(data.E, style)))
+    for word, meaning, given in (
+        ("E", "modulus of elasticity", data.E),
+        ("G", "shear modulus", data.G),
+        ("α_T", "coefficient of thermal expansion", data.expansion),
+    ):
+        if given is not None:
+            results.append(Result(word, meaning, given, show(given, style)))
     for i, stretch in enumerate(data.model.stretches, start=1):
+        number = "" if len(data.model.stretches) == 1 else f"_{i}"
         EI = from_si(stretch.stiffness.vertical, "N·m²").shown_in(None)
-        word = "EI" if len(data.model.stretches) == 1 else f"EI_{i}"
-        results.append(Result(word, "bending stiffness about the horizontal axis", EI, show(EI, style)))
+        results.append(
+            Result(f"EI{number}", "bending stiffness about the horizontal axis", EI, show(EI, style))
+        )
+        if data.shear.included:
+            GA_s = from_si(stretch.shear.vertical, "N").shown_in(None)
+            results.append(
+                Result(f"GA_s{number}", "shear stiffness for a vertical force", GA_s, show(GA_s, style))
+            )
     return tuple(results)
 
 

@@ -10,23 +10,26 @@ from calcgen.evaluation.quantity import quantity_of, si
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.beam import (
     BeamBlock,
+    BeamSetting,
 )
 from calcgen.language.nodes import Expression, Named
 from calcgen.quantities.display import Style, show
-from calcgen.quantities.measure import from_si
+from calcgen.quantities.measure import Measure, from_si
 from calcgen.text import Related, Span
 
 T = TypeVar("T")
 
-EXTREME = re.compile(r"^(x_)?(M|V|w|slope)_(max|min|abs)(_lat)?$")
-REACTION = re.compile(r"^(R|M_R)_([1-9]\d*)(?:_(max|min))?(_lat)?$")
+EXTREME = re.compile(r"^(x_)?(M|V|w|slope|w_rel)_(max|min|abs)(_lat)?$")
+REACTION = re.compile(r"^(R|M_R|θ)_([1-9]\d*)(?:_(max|min))?(_lat)?$")
+CROSSING = re.compile(r"^x_(M|V)_0(?:_([1-9]\d*))?(_lat)?$")
+SHAPE = re.compile(r"^(C_b|C_1)$")
 STATE = re.compile(r"^(M|V|w|slope)(_lat)?$")
 SPAN = re.compile(r"^span_([1-9]\d*)$")
 
 
 def is_result(name: str) -> bool:
     """Whether a name is one of a beam's results."""
-    return any(pattern.match(name) for pattern in (EXTREME, REACTION, STATE, SPAN))
+    return any(pattern.match(name) for pattern in (EXTREME, REACTION, STATE, SPAN, CROSSING, SHAPE))
 
 
 class Lines:
@@ -49,8 +52,11 @@ class Lines:
         return [line for line in self.block.lines if isinstance(line, kind)]
 
     def keep_free_of_results(self, label: Named) -> None:
-        """Report a case, combination or group that has the name of a result."""
-        if is_result(label.name):
+        """Report a case, combination or group that has the name of a result.
+
+        A factor is asked of a combination, so a combination `C_1` hides none.
+        """
+        if is_result(label.name) and not SHAPE.match(label.name):
             self.fault(
                 "name-hides-result", label.span, f"'{label.name}' is the name of a result of this block"
             )
@@ -61,6 +67,17 @@ class Lines:
         if value is None:
             self.failed = True
             return math.nan
+        return value
+
+    def positive(self, line: BeamSetting, kind: str, what: str) -> Measure | None:
+        """Return the value of a setting that must be positive, None after a fault."""
+        value = quantity_of(line.value, kind, self.scope)
+        if value is None:
+            self.failed = True
+            return None
+        if value.si <= 0:
+            self.fault("not-positive", line.value.span, f"{what} must be positive")
+            return None
         return value
 
     def place(self, node: Expression) -> float:

@@ -8,10 +8,12 @@ from dataclasses import dataclass
 from calcgen.evaluation.blocks.beam_combinations import Combination, case_kinds, combinations_of
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.blocks.beam_loads import loads_of
+from calcgen.evaluation.blocks.beam_shear import ShearDeformation, choose, shear_modulus_of, shear_stiffnesses
 from calcgen.evaluation.blocks.beam_stiffness import common_modulus, modulus_of, properties_of, stiffness_of
 from calcgen.evaluation.blocks.beam_supports import hinges_of, supports_of
 from calcgen.evaluation.blocks.section import SectionThing, section_named
 from calcgen.evaluation.formulas import Evaluator
+from calcgen.evaluation.quantity import quantity_of
 from calcgen.evaluation.results import LoadRow
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.beam import (
@@ -32,7 +34,7 @@ from calcgen.text import Related
 class BeamData:
     """A beam block in SI: the model, the loads of each case, and what the page shows beside them.
 
-    `sections` holds the section of each stretch that has one; `depth` the greatest of their depths, m.
+    `sections` holds the section of each stretch that has one; `G` and `expansion` stand where they are given.
     """
 
     model: BeamModel
@@ -42,6 +44,9 @@ class BeamData:
     combinations: tuple[Combination, ...]
     sections: tuple[SectionThing, ...]
     E: Measure | None
+    G: Measure | None
+    expansion: Measure | None
+    shear: ShearDeformation
     support_kinds: tuple[str, ...]
     support_notes: tuple[str, ...]
     restrained: BeamSetting | None
@@ -59,12 +64,15 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
     lines.length = sum(spans)
     settings = _settings(lines)
     is_restrained = _truth(lines, settings.get("restrained"))
+    shears = _truth(lines, settings.get("shear_deformation"))
     E = modulus_of(lines, settings.get("E"))
-    properties = properties_of(lines, E)
+    G = shear_modulus_of(lines, settings)
+    expansion = _expansion(lines, settings.get("expansion"))
+    properties, shear_stiffness = shear_stiffnesses(lines, properties_of(lines, E), G)
     supports = supports_of(lines, spans)
     hinges = hinges_of(lines, supports.all)
     kinds = case_kinds(lines)
-    cases, rows = loads_of(lines, properties)
+    cases, rows = loads_of(lines, properties, expansion)
     for case, load in supports.settling:
         cases.setdefault(case, []).append(load)
     combinations = combinations_of(lines, kinds, cases)
@@ -76,14 +84,23 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
     except ValueError as fault:
         lines.fault("beam", lines.block.head_span, str(fault))
         return None
+    sections = tuple(p.section for p in properties if p.section is not None)
+    model, shear = choose(
+        lines, model, sections, shear_stiffness, settings.get("shear_deformation"), wanted=shears
+    )
+    if lines.failed:
+        return None
     return BeamData(
         model=model,
         cases={name: tuple(loads) for name, loads in cases.items()},
         case_kinds=kinds,
         rows=tuple(rows),
         combinations=combinations,
-        sections=tuple(p.section for p in properties if p.section is not None),
+        sections=sections,
         E=common_modulus(properties, E),
+        G=G,
+        expansion=expansion,
+        shear=shear,
         support_kinds=supports.kinds,
         support_notes=supports.notes,
         restrained=settings.get("restrained"),
@@ -133,6 +150,15 @@ def _settings(lines: Lines) -> dict[str, BeamSetting]:
             )
         found.setdefault(line.key.name, line)
     return found
+
+
+def _expansion(lines: Lines, line: BeamSetting | None) -> Measure | None:
+    """Return the coefficient of thermal expansion, None where it is not given or wrong."""
+    if line is None:
+        return None
+    value = quantity_of(line.value, "expansion", lines.scope)
+    lines.failed = lines.failed or value is None
+    return value
 
 
 def _truth(lines: Lines, line: BeamSetting | None) -> bool:

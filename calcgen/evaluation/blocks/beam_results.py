@@ -1,17 +1,15 @@
-"""What a beam's page shows: results by group, premises, and permanent loads that relieve."""
+"""What a beam's page shows: results by group, and permanent loads that relieve."""
 
 from __future__ import annotations
 
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
-from typing import Literal
 
-from calcgen.evaluation.blocks.beam_lines import length_text
-from calcgen.evaluation.blocks.beam_model import BeamData
-from calcgen.evaluation.results import GroupResult, Premise, Result, Verdict
+from calcgen.evaluation.blocks.beam_spans import chord_range
+from calcgen.evaluation.results import GroupResult, Result
 from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
 from calcgen.mechanics.combinations import Envelope, Governing, ReactionPart
-from calcgen.quantities.display import Style, number_text, show
+from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import Measure
 
 Measured = Callable[[str, float, Style], Measure]
@@ -27,8 +25,7 @@ _SENSE_LAT = {
     "w": ("sideways deflection", "positive to the right"),
 }
 _SIDEWAYS: tuple[Quantity, ...] = ("w_lat", "M_lat")
-SLENDER = 10.0  # span to depth from which shear deflection is commonly left out (common practice)
-SMALL = 1 / 50  # deflection to span up to which the undeformed shape serves (common practice)
+LISTED_SPANS = 12  # up to so many spans are listed one by one; those of a longer beam are read by name
 
 
 @dataclass(frozen=True)
@@ -82,7 +79,58 @@ class _Rows:
         else:
             yield self.row(f"{stem}{suffix}", symbol, found.max, meaning)
 
+    def turning(self, model: BeamModel, suffix: str) -> Iterator[Result]:
+        """Give the rotation of the section at each support, as one value or as largest and smallest."""
+        for number, support in enumerate(model.supports, start=1):
+            found = self.envelope.at(f"rotation{suffix}", support.x)  # type: ignore[arg-type]
+            meaning = f"rotation at support {number} (positive clockwise{_FROM_ABOVE[suffix]})"
+            if self.several:
+                yield self.row(f"θ_{number}_max{suffix}", "slope", found.max, f"largest {meaning}")
+                yield self.row(f"θ_{number}_min{suffix}", "slope", found.min, f"smallest {meaning}")
+            else:
+                yield self.row(f"θ_{number}{suffix}", "slope", found.abs, meaning)
 
+    def from_chords(
+        self, suffix: str, span: tuple[float, float] | None = None, stem: str = ""
+    ) -> Iterator[Result]:
+        """Give the largest and smallest deflection from the chord of its span."""
+        start, end = span if span is not None else (None, None)
+        found = chord_range(self.envelope.solutions, "lateral" if suffix else "vertical", start, end)
+        if found is None:
+            return
+        for which, adjective, governing in (("max", "largest", found.max), ("min", "smallest", found.min)):
+            meaning = (
+                f"{adjective} {_SENSE_LAT['w'][0] if suffix else 'deflection'} from the chord of its span"
+            )
+            yield self.row(f"{stem}w_rel_{which}{suffix}", "w", governing, meaning, placed=True)
+
+    def crossings(self, suffix: str) -> Iterator[Result]:
+        """Give the points of contraflexure and of zero shear, where there is one state."""
+        if self.several:
+            return
+        (solution,) = self.envelope.solutions.values()
+        for symbol, meaning in (("M", "point of contraflexure"), ("V", "point of zero shear")):
+            places = solution.crossings(f"{symbol}{suffix}")  # type: ignore[arg-type]
+            for number, x in enumerate(places, start=1):
+                place = self.measured("x", x, self.style)
+                name = f"x_{symbol}_0_{number}{suffix}"
+                yield Result(name, f"{meaning} {number}", place, show(place, self.style))
+
+    def of_span(self, number: int, span: tuple[float, float], suffix: str) -> Iterator[Result]:
+        """Give the extremes of one span."""
+        stem = f"span_{number}."
+        for symbol, (word, _) in (_SENSE_LAT if suffix else _SENSE).items():
+            found = self.envelope.extremes(f"{symbol}{suffix}", *span)  # type: ignore[arg-type]
+            for which, adjective, governing in (
+                ("max", "largest", found.max),
+                ("min", "smallest", found.min),
+            ):
+                meaning = f"{adjective} {word} in span {number}"
+                yield self.row(f"{stem}{symbol}_{which}{suffix}", symbol, governing, meaning, placed=True)
+        yield from self.from_chords(suffix, span, stem)
+
+
+_FROM_ABOVE = {"": "", "_lat": " seen from above"}
 _PARTS: dict[tuple[str, str], ReactionPart] = {
     ("R", ""): "force",
     ("M_R", ""): "moment",
@@ -98,12 +146,17 @@ _REACTIONS: dict[ReactionPart, str] = {
 
 
 def group_results(
-    solutions: Mapping[str, CaseSolution], model: BeamModel, style: Style, measured: Measured
+    solutions: Mapping[str, CaseSolution],
+    model: BeamModel,
+    spans: Sequence[tuple[float, float]],
+    style: Style,
+    measured: Measured,
 ) -> tuple[tuple[Result, ...], tuple[Result, ...]]:
     """Return the results of a group of combinations: those its table shows, and further names for them.
 
-    Shown are extremes with place and combination, and reactions; the further ones are magnitudes, and
-    reactions by the names that the table does not use.
+    Shown are extremes with place and combination, and reactions; the further ones are magnitudes, reactions
+    by the names that the table does not use, rotations at supports, deflections from the chords, the places
+    where M and V change sign, and the extremes of each of `spans`.
     """
     rows = _Rows(Envelope(solutions), len(solutions) > 1, style, measured)
     shown: list[Result] = []
@@ -123,6 +176,13 @@ def group_results(
                     shown += rows.reaction(number, symbol, suffix, by_extremes=rows.several)
                     if not rows.several:
                         further += rows.reaction(number, symbol, suffix, by_extremes=True)
+    for suffix in planes:
+        further += rows.turning(model, suffix)
+        further += rows.from_chords(suffix)
+        further += rows.crossings(suffix)
+        if 1 < len(spans) <= LISTED_SPANS:
+            for number, span in enumerate(spans, start=1):
+                further += rows.of_span(number, span, suffix)
     return tuple(shown), tuple(further)
 
 
@@ -153,74 +213,3 @@ def relieving_cases(
         if any(total * own < 0 and abs(own) > 0.01 * abs(total) for total, own in shares):
             found.append(case)
     return tuple(found)
-
-
-def premises(name: str, data: BeamData, groups: Sequence[GroupResult], style: Style) -> tuple[Premise, ...]:
-    """Return the premises of beam theory, tested where the block says enough."""
-    found: list[Premise] = []
-
-    def add(premise: str, verdict: Verdict, detail: str) -> None:
-        found.append(Premise(name, premise, verdict, detail))
-
-    lengths = [b - a for a, b in data.model.spans] or [data.model.length]
-    unit: Literal["in", "mm"] = "in" if style.system == "US" else "mm"
-    if data.sections:
-        depth = max(s.result.bounds.height for s in data.sections)
-        ratio = min(lengths) / depth
-        text = f"span to depth {number_text(ratio, 3)}"
-        if ratio >= SLENDER:
-            add("plane sections, shear deflection negligible", "met", f"{text}, at least {SLENDER:g}")
-        else:
-            add(
-                "plane sections, shear deflection negligible",
-                "not met",
-                f"{text}, below {SLENDER:g}: deflections are larger than shown; add the shear part by hand",
-            )
-    else:
-        add(
-            "plane sections, shear deflection negligible",
-            "left to judgement",
-            "EI is given without a section",
-        )
-    deflections = [c.solution.extremes("w").abs for g in groups for c in g.combinations]
-    share = max(deflections) / max(lengths)
-    shown = length_text(max(deflections), style, unit)
-    if share <= SMALL:
-        add("small deflections", "met", f"the largest, {shown}, is at most 1/{1 / SMALL:.0f} of the span")
-    else:
-        add(
-            "small deflections",
-            "not met",
-            f"the largest, {shown}, is more than 1/{1 / SMALL:.0f} of the span: "
-            "equilibrium on the undeformed shape no longer holds",
-        )
-    _bending_plane(data, add)
-    if data.is_restrained and data.restrained is not None:
-        reason = data.restrained.annotations.note.text
-        add("restraint against lateral buckling", "met", reason or "restrained, as stated without a reason")
-    else:
-        add(
-            "restraint against lateral buckling",
-            "left to judgement",
-            "not stated: lateral-torsional buckling is not checked by the beam",
-        )
-    add("linear elastic", "left to judgement", "compare the largest stress with the yield strength")
-    return tuple(found)
-
-
-def _bending_plane(data: BeamData, add: Callable[[str, Verdict, str], None]) -> None:
-    skew = any(s.result.computed.I_hv != 0.0 for s in data.sections)
-    if not skew:
-        add("bending about principal axes", "met", "the horizontal and vertical axes are principal axes")
-    elif data.is_restrained:
-        add(
-            "bending about principal axes",
-            "met",
-            "they are not principal axes; restrained, the beam is forced to bend about the horizontal axis",
-        )
-    else:
-        add(
-            "bending about principal axes",
-            "met",
-            "they are not principal axes: both planes are solved together, the beam deflects sideways too",
-        )

@@ -6,7 +6,6 @@ from dataclasses import dataclass, replace
 
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.blocks.section import SectionThing, section_named
-from calcgen.evaluation.quantity import quantity_of
 from calcgen.language.blocks.beam import (
     BeamSetting,
 )
@@ -30,14 +29,7 @@ class Property:
 
 def modulus_of(lines: Lines, line: BeamSetting | None) -> Measure | None:
     """Return the modulus of elasticity, None where it is not given or wrong."""
-    if line is None:
-        return None
-    E = quantity_of(line.value, "stress", lines.scope)
-    if E is None:
-        lines.failed = True
-    elif E.si <= 0:
-        lines.fault("not-positive", line.value.span, "the modulus of elasticity must be positive")
-    return E
+    return lines.positive(line, "stress", "the modulus of elasticity") if line is not None else None
 
 
 def properties_of(lines: Lines, E: Measure | None) -> list[Property]:

@@ -70,7 +70,7 @@ def composite_findings(
     absent |= dict.fromkeys(_MODULI, f"a composite section has a section modulus for each part: {owners}")
     missing = ", ".join(plain(m) for m in materials.missing_strengths())
     if bars:
-        reason = "the part that bars lie in carries no tension: use a stress with model = plastic"
+        reason = "the material that bars lie in carries no tension: use a stress with model = plastic"
         absent |= dict.fromkeys(_PLASTIC, reason)
     elif missing:
         reason = f"it needs the strength of every material: strength {missing} = … is missing"

@@ -2,12 +2,18 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Iterable
 from dataclasses import dataclass, replace
 
-from calcgen.evaluation.blocks.shape import placed_shape, profile_named, rolled_shape, shape_of
-from calcgen.evaluation.quantity import quantity_of, si
+from calcgen.evaluation.blocks.section_bars import PlacedBars, bars_in_parts, placed_bars
+from calcgen.evaluation.blocks.shape import (
+    length_text,
+    placed_shape,
+    point_text,
+    profile_named,
+    rolled_shape,
+    shape_of,
+)
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.section import (
     BarsLine,
@@ -17,15 +23,15 @@ from calcgen.language.blocks.section import (
     ShapeLine,
     ShapeText,
 )
-from calcgen.language.blocks.section import Point as PointText
-from calcgen.mechanics.arrays import Point
 from calcgen.mechanics.boolean import cut, distance, overlap, share_outside
-from calcgen.mechanics.outline import Outline, OutlineError
+from calcgen.mechanics.outline import Outline, OutlineError, signed_area
 from calcgen.mechanics.shapes import Shape
 from calcgen.profiles.catalogue import Catalogue, Profile
-from calcgen.quantities.display import Style, number_text, show
-from calcgen.quantities.measure import from_si
+from calcgen.quantities.display import number_text
 from calcgen.text import Related, Span
+
+SMALLEST = 1e-11  # m: of a smaller outline the powers that properties are lose digits
+VANISHING = 1e-9  # of the section's reach: a thinner outline has no digits left beside it
 
 
 @dataclass(frozen=True)
@@ -56,18 +62,6 @@ class PlacedPart:
 
 
 @dataclass(frozen=True)
-class PlacedBars:
-    """Bars of one line: places, m, area of each, m², diameter, m, where given, and the part of each."""
-
-    name: str
-    line: BarsLine
-    points: tuple[Point, ...]
-    area: float
-    diameter: float | None
-    hosts: tuple[str, ...]
-
-
-@dataclass(frozen=True)
 class Layout:
     """What a section is made of, and what its checker should be told of it."""
 
@@ -95,11 +89,12 @@ def layout_of(block: SectionBlock, scope: Scope, catalogue: Catalogue) -> Layout
                 holes.append(built[0].outline)
             # beside a part in error a hole may seem to lie outside: nothing more is said of it then
             complete = built is not None and complete and _cut(parts, holes[-1], line, notes, scope)
-    rows = [_bars(line, scope) for line in block.items if isinstance(line, BarsLine)]
-    if not complete or any(row is None for row in rows):
+    rows = [placed_bars(line, scope) for line in block.items if isinstance(line, BarsLine)]
+    found = [row for row in rows if row is not None]
+    if not complete or len(found) < len(rows) or not _all_can_be_seen(parts, found, scope):
         return None
-    bars = tuple(_in_their_parts(row, parts, holes, scope) for row in rows if row is not None)
-    return Layout(tuple(parts), bars, tuple(notes))
+    bars = bars_in_parts(found, {part.name: part.outlines for part in parts}, holes, scope)
+    return Layout(tuple(parts), bars, tuple(notes)) if bars is not None else None
 
 
 def _placed(line: ShapeLine | PartLine, scope: Scope, catalogue: Catalogue) -> PlacedPart | None:
@@ -120,7 +115,37 @@ def _built(text: ShapeText, scope: Scope, catalogue: Catalogue) -> tuple[Shape, 
     else:
         shape = shape_of(text, scope)
     placed = placed_shape(shape, text, scope) if shape is not None else None
-    return None if placed is None else (placed, profile)
+    if placed is None or not _can_be_seen(placed.outline, _reach(placed.outline), text.span, scope):
+        return None
+    return placed, profile
+
+
+def _all_can_be_seen(parts: Iterable[PlacedPart], bars: Iterable[PlacedBars], scope: Scope) -> bool:
+    """Report parts that vanish beside the section."""
+    reach = max(*(_reach(o) for p in parts for o in p.outlines), *(b.reach for b in bars), 0.0)
+    return all([_can_be_seen(o, reach, p.text.span, scope) for p in parts for o in p.outlines])
+
+
+def _can_be_seen(outline: Outline, reach: float, span: Span, scope: Scope) -> bool:
+    """Report an outline too thin to leave digits beside a distance from the origin, m."""
+    size = max(outline.bounds.width, outline.bounds.height)
+    thickness = sum(signed_area(ring) for ring in outline.rings) / size if size else 0.0
+    if size > SMALLEST and thickness > VANISHING * reach:
+        return True
+    scope.report.error(
+        "too-far-apart",
+        span,
+        f"the shape is too small to be computed with: {length_text(thickness, scope.style)} thick on average",
+        label=f"the section reaches {length_text(reach, scope.style)} from its origin",
+        hint="a unit or a power of ten may be wrong",
+    )
+    return False
+
+
+def _reach(outline: Outline) -> float:
+    """Return the largest coordinate of an outline, m."""
+    box = outline.bounds
+    return max(abs(box.left), abs(box.right), abs(box.bottom), abs(box.top))
 
 
 def _fits_beside(part: PlacedPart, others: Iterable[PlacedPart], scope: Scope) -> bool:
@@ -170,6 +195,7 @@ def _cut(parts: list[PlacedPart], hole: Outline, line: HoleLine, notes: list[str
             f"{share} % of the hole '{name}' lies outside the parts above it",
             hint="it cuts what lies inside",
         )
+    parted: list[str] = []
     for index, part in enumerate(parts):
         if overlap(part.outlines, [hole]) is None:
             continue
@@ -193,98 +219,11 @@ def _cut(parts: list[PlacedPart], hole: Outline, line: HoleLine, notes: list[str
             return False
         parts[index] = replace(part, outlines=left, whole=False)
         if len(left) > len(part.outlines):
-            notes.append(f"the hole {name} leaves {len(left)} pieces of {_called(part)}")
+            parted.append(f"{len(left)} pieces of {_called(part)}")
+    if parted:
+        notes.append(f"the hole '{name}' leaves {', '.join(parted)}")
     return True
 
 
 def _called(part: PlacedPart) -> str:
     return f"the part '{part.name}'" if part.name else "the shape"
-
-
-def _bars(line: BarsLine, scope: Scope) -> PlacedBars | None:
-    """Return the bars of a line, their parts yet to be found."""
-    start, end = _point(line.start, scope), None
-    if line.end is not None:
-        end = _point(line.end, scope)
-    size = quantity_of(line.size, "area" if line.count is None else "length", scope)
-    count = 1 if line.count is None else _count(line, scope)
-    if start is None or size is None or count is None or (line.end is not None and end is None):
-        return None
-    if size.si <= 0.0:
-        what = "area" if line.count is None else "diameter"
-        shown = show(size, scope.style).text
-        scope.report.error(
-            "not-positive", line.size.span, f"the {what} of bars must be positive", label=f"{what} {shown}"
-        )
-        return None
-    if (count == 1) != (end is None):
-        scope.report.error(
-            "bars",
-            line.span if line.count is None else line.count.span,
-            "bars in a row need a count of 2 or more" if end is not None else f"{count} bars have one place",
-            hint="write 4 of 20 mm from (x, y) to (x, y), 1 of 20 mm at (x, y), or an area at (x, y)",
-        )
-        return None
-    diameter = size.si if line.count is not None else None
-    area = size.si if diameter is None else 0.25 * math.pi * diameter**2
-    points = (start,) if end is None else _in_a_row(start, end, count)
-    return PlacedBars(line.target.name, line, points, area, diameter, ())
-
-
-def _count(line: BarsLine, scope: Scope) -> int | None:
-    if line.count is None:
-        return 1
-    value = si(line.count, "number", scope)
-    if value is None:
-        return None
-    if value < 1 or value != round(value):
-        scope.report.error(
-            "bars",
-            line.count.span,
-            "the number of bars is a whole one, 1 or more",
-            label=f"{number_text(value, 6)} bars",
-        )
-        return None
-    return round(value)
-
-
-def _in_a_row(start: Point, end: Point, count: int) -> tuple[Point, ...]:
-    shares = [i / (count - 1) for i in range(count)]
-    return tuple((start[0] + s * (end[0] - start[0]), start[1] + s * (end[1] - start[1])) for s in shares)
-
-
-def _in_their_parts(
-    bars: PlacedBars, parts: list[PlacedPart], holes: list[Outline], scope: Scope
-) -> PlacedBars:
-    """Find the part in which each bar lies; warn of one that lies neither in a part nor in a hole."""
-    hosts = []
-    outside = []
-    for point in bars.points:
-        host = next((p.name for p in parts if any(o.contains(point) for o in p.outlines)), "")
-        hosts.append(host)
-        if not host and not any(hole.contains(point) for hole in holes):
-            outside.append(point)
-    if outside:
-        what = "bar lies" if len(outside) == 1 else "bars lie"
-        scope.report.warning(
-            "bars-outside",
-            bars.line.target.span,
-            f"{len(outside)} {what} outside all parts",
-            label=f"at {', '.join(point_text(p, scope.style) for p in outside[:3])}",
-        )
-    return replace(bars, hosts=tuple(hosts))
-
-
-def _point(text: PointText, scope: Scope) -> Point | None:
-    x, y = si(text.x, "length", scope), si(text.y, "length", scope)
-    return None if x is None or y is None else (x, y)
-
-
-def length_text(value: float, style: Style) -> str:
-    """Return a length, m, as sections show it."""
-    return show(from_si(value, "m").shown_in("in" if style.system == "US" else "mm"), style).text
-
-
-def point_text(point: Point, style: Style) -> str:
-    """Return a place in the section's own coordinates."""
-    return f"({length_text(point[0], style)}, {length_text(point[1], style)})"

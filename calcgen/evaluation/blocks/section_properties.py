@@ -8,7 +8,8 @@ from dataclasses import replace
 from calcgen.evaluation.blocks.section_composite import bars_of, composite_findings, elastic, pieces_of
 from calcgen.evaluation.blocks.section_findings import Findings
 from calcgen.evaluation.blocks.section_materials import Materials
-from calcgen.evaluation.blocks.section_parts import Layout, PlacedBars, PlacedPart
+from calcgen.evaluation.blocks.section_bars import PlacedBars
+from calcgen.evaluation.blocks.section_parts import Layout, PlacedPart
 from calcgen.evaluation.blocks.section_published import in_force, oriented
 from calcgen.evaluation.blocks.section_results import (
     bars_results,

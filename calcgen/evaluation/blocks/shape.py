@@ -3,19 +3,26 @@
 from __future__ import annotations
 
 import math
+from collections.abc import Mapping
 
 from calcgen.evaluation.formulas import Evaluator
 from calcgen.evaluation.quantity import quantity_of, si
 from calcgen.evaluation.scope import Scope
+from calcgen.language.blocks.section import Point as PointText
 from calcgen.language.blocks.section import ShapeText
 from calcgen.language.nodes import Text
 from calcgen.mechanics.arrays import Point
+from calcgen.mechanics.boolean import self_contact
 from calcgen.mechanics.outline import OutlineError
 from calcgen.mechanics.shapes import Shape, ShapeError, ShapeForm, canonical, form_for
 from calcgen.profiles.catalogue import Catalogue, Profile
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import from_si, measure
 from calcgen.text import Related, nearest
+
+TURNS = 1000.0  # an angle of more turns has lost the digits of where it ends
+HALVINGS = 40  # of the room for a size: more digits than are shown
+ZERO = 1e-12  # m: a smaller coordinate is rounding
 
 
 def profile_named(text: ShapeText, scope: Scope, catalogue: Catalogue) -> Profile | None:
@@ -86,19 +93,61 @@ def shape_of(text: ShapeText, scope: Scope) -> Shape | None:
             label=""
             if fault.parameter == "points"
             else _size(fault.parameter, fault.value, form, scope.style),
+            hint=_room(fault, form, given, points, scope.style),
             related=tuple(Related(place, "and this point") for place in places[1:2]),
         )
     except OutlineError as fault:
-        places = [text.points[i].span for i in fault.vertices if i < len(text.points)]
-        scope.report.error(
-            "outline",
-            places[0] if places else text.span,
-            f"the outline {fault.reason}",
-            label="the edge that starts here" if len(places) > 1 else "",
-            hint="corners follow one another around the section, in either sense" if text.points else "",
-            related=tuple(Related(place, "the edge that it meets starts here") for place in places[1:2]),
-        )
+        _report_outline(fault, text, points, scope)
     return None
+
+
+def _report_outline(fault: OutlineError, text: ShapeText, points: list[Point], scope: Scope) -> None:
+    """Report corners that bound no section: where two edges meet, before what else follows from it."""
+    contact = self_contact(points) if text.shape.name == "polygon" else None
+    if contact is None:
+        places = [text.points[i].span for i in fault.vertices if i < len(text.points)]
+        hint = "corners follow one another around the section, in either sense" if text.points else ""
+        scope.report.error(
+            "outline", places[0] if places else text.span, f"the outline {fault.reason}", hint=hint
+        )
+        return
+
+    def edge(corner: int) -> str:
+        start, end = (point_text(points[i % len(points)], scope.style) for i in (corner, corner + 1))
+        return f"from {start} to {end}"
+
+    scope.report.error(
+        "outline",
+        text.points[contact.first].span,
+        f"the outline crosses or touches itself at {point_text(contact.place, scope.style)}",
+        label=f"the edge {edge(contact.first)}",
+        hint="corners follow one another around the section, in either sense",
+        related=(Related(text.points[contact.second].span, f"meets the edge {edge(contact.second)}"),),
+    )
+
+
+def _room(
+    fault: ShapeError, form: ShapeForm, given: Mapping[str, float], points: list[Point], style: Style
+) -> str:
+    """Return up to which size a shape could be built with its other sizes, as a hint; '' for no such size."""
+    if fault.parameter not in given or not fault.value > 0.0:
+        return ""
+
+    def fits(value: float) -> bool:
+        sizes = {**given, fault.parameter: value}
+        try:
+            form.build(**sizes, points=points) if _takes_points(form) else form.build(**sizes)
+        except (ShapeError, OutlineError):
+            return False
+        return True
+
+    low, high = 0.0, fault.value
+    for _ in range(HALVINGS):
+        middle = 0.5 * (low + high)
+        low, high = (middle, high) if fits(middle) else (low, middle)
+    if low == 0.0 or high == fault.value:
+        return ""
+    return f"beside the other sizes there is room up to {_size(fault.parameter, high, form, style)}"
 
 
 def _takes_points(form: ShapeForm) -> bool:
@@ -107,9 +156,9 @@ def _takes_points(form: ShapeForm) -> bool:
 
 def _points(text: ShapeText, scope: Scope) -> list[Point] | None:
     """Return the points written in the parentheses of a shape, m; none for most shapes."""
-    pairs = [(si(p.x, "length", scope), si(p.y, "length", scope)) for p in text.points]
-    points = [(x, y) for x, y in pairs if x is not None and y is not None]
-    return points if len(points) == len(pairs) else None
+    read = [point_of(p, scope) for p in text.points]
+    points = [p for p in read if p is not None]
+    return points if len(points) == len(read) else None
 
 
 def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, float] | None:
@@ -155,22 +204,45 @@ def _arguments(text: ShapeText, form: ShapeForm, scope: Scope) -> dict[str, floa
 def placed_shape(shape: Shape, text: ShapeText, scope: Scope) -> Shape | None:
     """Mirror, turn and place a shape as written."""
     turned = 0.0
-    x: float | None = 0.0
-    y: float | None = 0.0
-    angle = None
+    place: Point | None = (0.0, 0.0)
     if text.turned is not None:
         angle = quantity_of(text.turned, "number", scope)
         if angle is None:
             return None
         turned = angle.si
+        if abs(turned) > TURNS * math.tau:
+            scope.report.error(
+                "number-too-large",
+                text.turned.span,
+                f"a turn by {show(angle, scope.style).text} has lost where it ends",
+                hint=f"the limit is {TURNS:.0f} full turns; write the angle that is left without them",
+            )
+            return None
     if text.at is not None:
-        x, y = si(text.at.x, "length", scope), si(text.at.y, "length", scope)
-    if x is None or y is None:
+        place = point_of(text.at, scope)
+    if place is None:
         return None
-    return shape.placed(x, y, mirrored=text.mirrored, turned=turned)
+    return shape.placed(*place, mirrored=text.mirrored, turned=turned)
 
 
 def _size(parameter: str, value: float, form: ShapeForm, style: Style) -> str:
     kind = next((p.kind for p in form.parameters if p.name == parameter), "number")
     shown = show(from_si(value, "m").shown_in(None) if kind == "length" else measure(value, None), style)
     return f"{parameter} = {shown.text}"
+
+
+def point_of(text: PointText, scope: Scope) -> Point | None:
+    """Return a point as written, m."""
+    x, y = si(text.x, "length", scope), si(text.y, "length", scope)
+    return None if x is None or y is None else (x, y)
+
+
+def length_text(value: float, style: Style) -> str:
+    """Return a length, m, as sections show it."""
+    exact = value if abs(value) > ZERO else 0.0
+    return show(from_si(exact, "m").shown_in("in" if style.system == "US" else "mm"), style).text
+
+
+def point_text(point: Point, style: Style) -> str:
+    """Return a place in the section's own coordinates."""
+    return f"({length_text(point[0], style)}, {length_text(point[1], style)})"

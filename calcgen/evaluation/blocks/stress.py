@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from calcgen.evaluation.blocks.stress_models import Solved, solved
@@ -18,7 +18,7 @@ from calcgen.evaluation.blocks.stress_shear import shear_result
 from calcgen.evaluation.checks import Labels, Statement, judge
 from calcgen.evaluation.results import CheckResult, Plain, SecondRoute, StressResult
 from calcgen.evaluation.scope import Scope
-from calcgen.language.blocks.stress import StressBlock
+from calcgen.language.blocks.stress import StressBlock, StressSetting
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Name
 from calcgen.mechanics.second_route.curved import curved_residuals
@@ -250,6 +250,8 @@ def _limit(
     by_name = {r.name: r.value for r in results.section}
     if request.section.composite:
         _warn_of_one_limit(block, request, scope)
+    if request.sheared and not _judges_normal_stress(request, setting, by_name, scope):
+        return None
     largest = max((by_name["σ_max"], by_name["σ_min"]), key=lambda m: abs(m.si))
     demand = from_si(abs(largest.si), "Pa").shown_in(largest.unit)
     return judge(
@@ -262,6 +264,35 @@ def _limit(
         address=address,
         line=scope.report.source.line_number(setting.span),
     )
+
+
+def _judges_normal_stress(
+    request: StressRequest, setting: StressSetting, by_name: Mapping[str, Measure], scope: Scope
+) -> bool:
+    """Report a limit beside which shear stress acts that it does not judge; False where nothing is left."""
+    forces = request.forces
+    tau, combined = (show(by_name[name], scope.style).text for name in ("τ_max", "σ_vM_max"))
+    label = f"τ_max = {tau}, σ_vM_max = {combined}"
+    hint = f"write a check in working: {request.name}.σ_vM_max <= … or {request.name}.τ_max <= …"
+    if not (forces.N or forces.M or forces.M_lat):
+        scope.report.error(
+            "limit-and-shear",
+            setting.span,
+            "a limit judges the normal stress, and no force makes one",
+            label=label,
+            hint=hint,
+        )
+        return False
+    largest = max(abs(by_name["σ_max"].si), abs(by_name["σ_min"].si))
+    if by_name["σ_vM_max"].si > largest * (1.0 + 1e-9):
+        scope.report.warning(
+            "limit-and-shear",
+            setting.span,
+            "the limit judges the normal stress alone; with the shear stress the von Mises stress is larger",
+            label=label,
+            hint=hint,
+        )
+    return True
 
 
 def _warn_of_one_limit(block: StressBlock, request: StressRequest, scope: Scope) -> None:

@@ -28,6 +28,7 @@ _Part = TypeVar("_Part", Piece, Bars)
 YIELDING: tuple[Model, ...] = ("plastic", "elastic_plastic")
 """Models whose materials have a strength."""
 
+FLAT = 1e-9  # of I_h I_v: a smaller determinant, of a foil on a slant, leaves too few digits to the stress
 SETTLED = 1e-10  # of the slope: a smaller part of it is what iteration leaves
 ROUNDING = 1e-12  # of a plastic moment: an excess below it is rounding
 
@@ -57,6 +58,10 @@ def elastic_parts(section: SectionResult) -> tuple[tuple[Piece, ...], tuple[Bars
 
 def solved(request: StressRequest, block: StressBlock, scope: Scope) -> Solved | None:
     """Find the stress of a request; report forces that cannot be carried."""
+    inertia = request.section.computed
+    if inertia.I_h * inertia.I_v - inertia.I_hv**2 <= FLAT * inertia.I_h * inertia.I_v:
+        _report(EquilibriumError("stiffness"), request, block, scope)
+        return None
     match request.model:
         case "elastic":
             return Solved(_elastic_field(request))
@@ -123,10 +128,14 @@ def _in_equilibrium(request: StressRequest, block: StressBlock, scope: Scope) ->
     field = replace(field, plane=_settled(field.plane))
     if request.model != "elastic_plastic":
         return Solved(field)
+    try:
+        plastic = _capacity(request, pieces, bars)
+    except EquilibriumError:  # the axial force takes all that the section can carry
+        plastic = None
     if section.bars:  # concrete that has cracked does not unload elastically
-        return Solved(field, plastic=_capacity(request, pieces, bars))
+        return Solved(field, plastic=plastic)
     unloaded = field.after_unloading(elastic_stress(section.computed, forces))
-    return Solved(field, unloaded=unloaded, plastic=_capacity(request, pieces, bars))
+    return Solved(field, unloaded=unloaded, plastic=plastic)
 
 
 def _settled(plane: StressPlane) -> StressPlane:
@@ -168,10 +177,11 @@ def _capacity(request: StressRequest, pieces: tuple[Piece, ...], bars: tuple[Bar
     size = math.hypot(M, M_lat)
     most = math.hypot(state.forces.M, state.forces.M_lat)
     uniaxial = M == 0.0 or M_lat == 0.0
+    sense = math.copysign(1.0, M or M_lat) if uniaxial else 1.0
     return PlasticResult(
         M=state.forces.M if M else 0.0,
         M_lat=state.forces.M_lat if M_lat else 0.0,
-        M_el=first * size if first > 0.0 else None,
+        M_el=sense * first * size if first > 0.0 else None,
         M_0=math.hypot(alone.forces.M, alone.forces.M_lat),
         utilisation=math.hypot(forces.M, forces.M_lat) / most,
         field=state.field,
@@ -183,9 +193,10 @@ def _capacity(request: StressRequest, pieces: tuple[Piece, ...], bars: tuple[Bar
 def _laws(
     request: StressRequest, block: StressBlock, scope: Scope
 ) -> tuple[tuple[Piece, ...], tuple[Bars, ...]] | None:
-    """Return parts and bars with the laws of the model; a part that bars lie in carries no tension."""
+    """Return parts and bars with the laws of the model; the material that bars lie in carries no tension."""
     section, model = request.section, request.model
     hosts = {host for bars in section.bars for host in bars.hosts}
+    reinforced = {part.material for part in section.parts if part.name in hosts}
     if model == "cracked" and not section.bars:
         scope.report.error(
             "bars-missing",
@@ -205,7 +216,7 @@ def _laws(
     def law(part: SectionPart | BarsPart) -> Law:
         factor = math.inf if model == "plastic" else part.factor
         strength = strengths.get(part.name, math.inf)
-        bare = isinstance(part, SectionPart) and (part.name in hosts or model == "no_tension")
+        bare = isinstance(part, SectionPart) and (part.material in reinforced or model == "no_tension")
         return Law(factor, 0.0 if bare else strength, strength)
 
     return pieces_of(section.parts, law), bars_of(section.bars, section.parts, law)
@@ -242,7 +253,9 @@ def _report(fault: EquilibriumError, request: StressRequest, block: StressBlock,
     if fault.reason == "limit":
         part = number_text(fault.limit, scope.style.digits)
         hint = f"it yields throughout at {part} of these forces"
-        if set(request.forces_given) == {key}:
+        if fault.limit == 0.0:
+            hint = "N takes all that the section can carry: no moment is left beside it"
+        elif set(request.forces_given) == {key}:
             most = from_si(fault.limit * request.forces_given[key].si, "N" if key == "N" else "N·m")
             of = {"M": "M_pl", "M_lat": "M_pl_lat", "N": "N_pl"}[key]
             text = shown(most.shown_in(request.forces_given[key].unit), scope).text
@@ -260,8 +273,20 @@ def _report(fault: EquilibriumError, request: StressRequest, block: StressBlock,
         )
     else:
         scope.report.error(
-            "no-stiffness", _span(block, "section"), f"'{section}' has no stiffness against these forces"
+            "no-stiffness",
+            _span(block, "section"),
+            f"'{section}' has no stiffness against these forces",
+            label=_least_gyration(request, scope),
+            hint="it is a foil on a slant: is a size or a coordinate wrong?",
         )
+
+
+def _least_gyration(request: StressRequest, scope: Scope) -> str:
+    """Return the least radius of gyration, about the axis along which a section is flat."""
+    i = request.section.computed
+    flat = max(i.I_h * i.I_v - i.I_hv**2, 0.0) / (i.I_h + i.I_v) / i.area
+    unit = "in" if scope.style.system == "US" else "mm"
+    return f"i_2 = {shown(from_si(math.sqrt(flat), 'm').shown_in(unit), scope).text}"
 
 
 def _eccentricity(request: StressRequest, scope: Scope) -> str:

@@ -15,6 +15,7 @@ from calcgen.quantities.display import number_text
 from calcgen.quantities.measure import from_si
 from calcgen.quantities.symbols import plain
 
+ROUNDING = 1e-12  # of a strength: an excess below it is rounding
 STRAIGHT = 10.0  # R_c over depth: above it the straight-bar formula errs by some 3 % or less
 """Common practice: for a rectangle the error at the inner fibre is about h/(3 R_c), 3 % at R_c = 10 h."""
 
@@ -39,6 +40,14 @@ def stress_premises(
             found += [*_cracked(request, field, scope)]
         case "plastic" | "elastic_plastic":
             found += [*_yielding(request)]
+    if shear is not None and not shear.connected and (request.V or request.V_lat):
+        found.append(
+            (
+                "parts hang together",
+                "not met",
+                "some parts touch no other one: what connects them must carry the flow, or they bend apart",
+            )
+        )
     if request.section.composite:
         found.append(
             (
@@ -50,7 +59,7 @@ def stress_premises(
             )
         )
     if request.sheared:
-        found += [*_sheared(request)]
+        found += [*_sheared(request, shear)]
     found.append(
         (
             "plane sections",
@@ -58,13 +67,18 @@ def stress_premises(
             "slender member, away from supports, point loads and openings",
         )
     )
-    if request.model != "curved":
+    if request.model not in ("curved", "no_tension"):
         found.append(
             ("straight member", "left to judgement", "radius of the member's axis large beside its depth")
         )
-    found.append(
-        ("restraint against lateral buckling", "left to judgement", "stress alone does not show stability")
-    )
+    if request.model != "no_tension":
+        found.append(
+            (
+                "restraint against lateral buckling",
+                "left to judgement",
+                "stress alone does not show stability",
+            )
+        )
     return tuple(Premise(request.name, *each) for each in found)
 
 
@@ -101,10 +115,10 @@ def _within_strength(
             f"no f_y is given{of}; the {kind} is {_stress(largest, scope)}",
         )
     peak, strength, name = worst
-    where = f" of {plain(name)}" if name else ""
+    where = f" of {plain(name)}" if name and combined is None else ""
     text = f"the {kind}{where}, {_stress(peak, scope)}"
-    limit = f"f_y = {_stress(strength, scope)}" if not name else f"its strength {_stress(strength, scope)}"
-    if peak <= strength * (1.0 + 1e-12):
+    limit = f"its strength {_stress(strength, scope)}" if where else f"f_y = {_stress(strength, scope)}"
+    if peak <= strength * (1.0 + ROUNDING):
         return "linear elastic", "met", f"{text}, is below {limit}"
     return (
         "linear elastic",
@@ -145,7 +159,7 @@ def _below(request: StressRequest, curved: CurvedStress, scope: Scope) -> tuple[
             "left to judgement",
             f"no f_y is given; the largest stress is {_stress(peak, scope)}",
         )
-    if peak <= f_y:
+    if peak <= f_y * (1.0 + ROUNDING):
         return (
             "linear elastic",
             "met",
@@ -200,7 +214,7 @@ def _crushing(request: StressRequest, field: StressField, scope: Scope) -> tuple
             "left to judgement",
             f"no strength is given; the largest compression is {_stress(peak, scope)}",
         )
-    verdict: Verdict = "met" if peak <= request.f_y.si else "not met"
+    verdict: Verdict = "met" if peak <= request.f_y.si * (1.0 + ROUNDING) else "not met"
     way = "below" if verdict == "met" else "above"
     return (
         "linear in compression",
@@ -213,7 +227,7 @@ def _cracked(request: StressRequest, field: StressField, scope: Scope) -> Iterab
     yield (
         "no tension where the bars lie",
         "met",
-        "the part that holds the bars carries none; bond is perfect, tension between cracks is left out",
+        "the material that holds the bars carries none; bond is perfect, tension between cracks is left out",
     )
     strengths = strengths_of(request.section, request.f_y.si if request.f_y is not None else None)
     bars = {b.name: max(abs(e.value) for e in field.extremes_of(b)) for b in field.bars}
@@ -258,12 +272,18 @@ def _yielding(request: StressRequest) -> Iterable[tuple[str, Verdict, str]]:
         yield (
             "no tension where the bars lie",
             "met",
-            "the part that holds the bars carries no tension",
+            "the material that holds the bars carries no tension",
+        )
+    elif request.section.composite:
+        yield (
+            "the same strength in tension and in compression",
+            "left to judgement",
+            "each material counts so: concrete or masonry does not, unless bars are laid in it",
         )
     yield "no shear", "left to judgement", "shear small enough to leave the moment alone"
 
 
-def _sheared(request: StressRequest) -> Iterable[tuple[str, Verdict, str]]:
+def _sheared(request: StressRequest, shear: ShearResult | None) -> Iterable[tuple[str, Verdict, str]]:
     if request.V or request.V_lat:
         yield (
             "shear through the shear centre",
@@ -275,6 +295,15 @@ def _sheared(request: StressRequest) -> Iterable[tuple[str, Verdict, str]]:
             "left to judgement",
             "V·S/(I·b) is the mean over the width: fair for webs and thin walls, less so for wide parts",
         )
+        if shear is not None and shear.walls is not None:
+            own = request.section.computed
+            more = number_text(100.0 * (shear.walls.inertia.I_h / own.I_h - 1.0), 2)
+            yield (
+                "thin walls",
+                "left to judgement",
+                f"flow along walls is that of the mid-line, whose second moment differs by {more} % "
+                "from the outline's about the horizontal axis",
+            )
     if request.T:
         yield (
             "free warping",

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Iterable, Mapping
+from collections.abc import Iterable, Mapping, Sequence
 from dataclasses import dataclass, field
 
 import numpy as np
@@ -13,7 +13,7 @@ from calcgen.evaluation.results import PlasticResult, Result, ShearResult
 from calcgen.mechanics.arrays import Point
 from calcgen.mechanics.combined_stress import StressState
 from calcgen.mechanics.curved import CurvedStress
-from calcgen.mechanics.field import Bars, StressField
+from calcgen.mechanics.field import Bars, Piece, StressField
 from calcgen.mechanics.stress import Extreme, StressPlane
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import Measure, from_si, measure
@@ -152,7 +152,8 @@ def _normal(rows: _Rows, field: StressField) -> None:
     several = len({*(p.name for p in field.pieces), *(b.name for b in field.bars)}) > 1
     for name, extreme in (("σ_max", largest), ("σ_min", smallest)):
         of = f" of {extreme.part}" if several and extreme.part else ""
-        rows.stress(name, extreme.value, f"{_place(extreme, field.plane, rows.style)}{of}")
+        middle = _middle([p for p in field.pieces if p.name == extreme.part] or field.pieces)
+        rows.stress(name, extreme.value, f"{_place(extreme, field.plane, middle, rows.style)}{of}")
     rows.stress("σ_top", field.at_top())
     rows.stress("σ_bottom", field.at_bottom())
 
@@ -214,7 +215,7 @@ def _plastic(rows: _Rows, request: StressRequest, plastic: PlasticResult) -> Non
     if plastic.M_el is not None:
         unit = next((given[k].unit for k in ("M", "M_lat") if k in given), None)
         rows.add("M_el", from_si(plastic.M_el, "N·m").shown_in(unit))
-        rows.plain("shape_factor", plastic.M_0 / plastic.M_el)
+        rows.plain("shape_factor", plastic.M_0 / abs(plastic.M_el))
 
 
 def _elastic_plastic(rows: _Rows, field: StressField, unloaded: StressField) -> None:
@@ -265,7 +266,7 @@ def _shear(rows: _Rows, shear: ShearResult) -> None:
             f"q_{name}",
             from_si(flow, "N/m").shown_in(unit),
             "",
-            f"shear flow across all joints of {name}",
+            f"shear flow across all joints of {name}, or across those on one side where that is more",
         )
 
 
@@ -281,7 +282,7 @@ def _parts(field: StressField, style: Style) -> dict[str, tuple[Result, ...]]:
         if piece.name:
             rows = _Rows(style)
             for name, extreme in zip(("σ_max", "σ_min"), field.extremes_of(piece), strict=True):
-                rows.stress(name, extreme.value, _place(extreme, field.plane, style))
+                rows.stress(name, extreme.value, _place(extreme, field.plane, _middle([piece]), style))
             found[piece.name] = tuple(rows.rows)
     groups: dict[str, list[Bars]] = {}
     for bars in field.bars:
@@ -303,7 +304,7 @@ def _at_point(sigma: float, point: Point, shear: ShearResult | None, style: Styl
     if shear is not None:
         tau = shear.at(point)
         rows.stress("τ", tau, "", "shear stress")
-        rows.stress("σ_vM", math.sqrt(sigma**2 + 3.0 * tau**2), "", "von Mises stress")
+        rows.stress("σ_vM", math.hypot(sigma, math.sqrt(3.0) * tau), "", "von Mises stress")
     return tuple(rows.rows)
 
 
@@ -351,13 +352,21 @@ def _without_noise(extreme: Extreme) -> Extreme:
     return Extreme(extreme.value, clean(extreme.x), clean(extreme.y), ends)
 
 
-def _place(extreme: Extreme, plane: StressPlane, style: Style) -> str:
+def _middle(pieces: Sequence[Piece]) -> Point:
+    """Return the middle of the box around pieces, from which top and bottom, left and right are told."""
+    boxes = [outline.bounds for piece in pieces for outline in piece.outlines]
+    left, right = min(b.left for b in boxes), max(b.right for b in boxes)
+    bottom, top = min(b.bottom for b in boxes), max(b.top for b in boxes)
+    return 0.5 * (left + right), 0.5 * (bottom + top)
+
+
+def _place(extreme: Extreme, plane: StressPlane, middle: Point, style: Style) -> str:
     if plane.uniform:
         return "everywhere"
     extreme = _without_noise(extreme)
     (x_1, y_1), (x_2, y_2) = extreme.ends
     if (x_1, y_1) != (x_2, y_2) and y_1 == y_2:
-        return "at the top" if extreme.y > plane.y_bar else "at the bottom"
+        return "at the top" if extreme.y > middle[1] else "at the bottom"
     if (x_1, y_1) != (x_2, y_2) and x_1 == x_2:
-        return "on the right" if extreme.x > plane.x_bar else "on the left"
+        return "on the right" if extreme.x > middle[0] else "on the left"
     return f"at {place_text((extreme.x, extreme.y), style)}"

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Mapping, Sequence
 from dataclasses import dataclass
 
 import numpy as np
@@ -20,7 +20,7 @@ from calcgen.mechanics.combined_stress import (
     passed_alone,
     wall_stations,
 )
-from calcgen.mechanics.field import Piece, StressField
+from calcgen.mechanics.field import StressField
 from calcgen.mechanics.saint_venant import saint_venant
 from calcgen.mechanics.second_route.residual import Residual
 from calcgen.mechanics.second_route.shear import (
@@ -30,7 +30,7 @@ from calcgen.mechanics.second_route.shear import (
     torsion_residuals,
     wall_residuals,
 )
-from calcgen.mechanics.shear import Cuts, ShearForces, cuts, joint_flow
+from calcgen.mechanics.shear import Cuts, ShearForces, cuts, gain
 from calcgen.mechanics.stress import BoolArray
 from calcgen.mechanics.torsion import (
     TorsionConstant,
@@ -92,10 +92,13 @@ def shear_result(request: StressRequest, field: StressField) -> tuple[ShearResul
                 chosen=by_mid_line,
             )
         )
+    contacts = _contacts(section.parts)
+    neighbours = {name: frozenset(touched) for name, touched in contacts.items()}
     joints: dict[str, float] = {}
     if len(pieces) > 1 and (request.V or request.V_lat):
-        joints = _joint_flows(request, forces, pieces)
-        residuals += [joint_residual(inertia, forces, piece, joints[piece.name]) for piece in pieces]
+        gains = {piece.name: gain(inertia, forces, piece) for piece in pieces}
+        joints = _joint_flows(gains, neighbours)
+        residuals += [joint_residual(inertia, forces, piece, abs(gains[piece.name])) for piece in pieces]
     return (
         ShearResult(
             level=level,
@@ -107,25 +110,63 @@ def shear_result(request: StressRequest, field: StressField) -> tuple[ShearResul
             largest_torsion=torque.largest if torque is not None else None,
             combined=combined_extremes(*described),
             joints=joints,
-            contacts={name: _contacts(name, request.section.parts) for name in joints},
+            contacts={
+                name: tuple(line for lines in contacts[name].values() for line in lines) for name in joints
+            },
+            connected=_connected(neighbours),
             at=lambda point: _at(point, level, upright, flow, by_mid_line, torque),
         ),
         tuple(residuals),
     )
 
 
-def _joint_flows(request: StressRequest, forces: ShearForces, pieces: Sequence[Piece]) -> dict[str, float]:
-    """Return the flow across the joints of each part, N/m; what rounding leaves of balanced ones is zero."""
-    flows = {piece.name: joint_flow(request.section.computed, forces, piece) for piece in pieces}
-    least = ROUNDING * max(flows.values())
+def _joint_flows(gains: Mapping[str, float], neighbours: Mapping[str, frozenset[str]]) -> dict[str, float]:
+    """Return the flow across the joints of each part, N/m; what rounding leaves of balanced ones is zero.
+
+    It is what all joints of the part carry together, or what those on one side of it carry where that is
+    more: a web between two flanges passes on what it does not keep.
+    """
+    flows = {}
+    for name, own in gains.items():
+        sides = _sides(name, neighbours)
+        flows[name] = max([abs(own), *(abs(sum(gains[each] for each in side)) for side in sides)])
+    least = ROUNDING * sum(abs(own) for own in gains.values())
     return {name: flow if flow > least else 0.0 for name, flow in flows.items()}
 
 
-def _contacts(name: str, parts: Sequence[SectionPart]) -> tuple[tuple[Point, ...], ...]:
-    """Return the lines along which a part touches the others, m."""
-    own = next(part for part in parts if part.name == name)
-    others = [part for part in parts if part is not own]
-    return tuple(line for other in others for line in contact(own.outlines, other.outlines))
+def _sides(name: str, neighbours: Mapping[str, frozenset[str]]) -> list[set[str]]:
+    """Return the groups of parts that hang on a part and on nothing else."""
+    left = set(neighbours) - {name}
+    sides: list[set[str]] = []
+    for first in sorted(neighbours[name]):
+        if first not in left:
+            continue
+        side, reached = set[str](), [first]
+        while reached:
+            part = reached.pop()
+            if part in left:
+                left.discard(part)
+                side.add(part)
+                reached += sorted(neighbours[part] - {name})
+        sides.append(side)
+    return sides
+
+
+def _connected(neighbours: Mapping[str, frozenset[str]]) -> bool:
+    """Tell whether all parts hang together."""
+    first = next(iter(neighbours))
+    return len(neighbours) == 1 or set().union(*_sides(first, neighbours), {first}) == set(neighbours)
+
+
+def _contacts(parts: Sequence[SectionPart]) -> dict[str, dict[str, tuple[tuple[Point, ...], ...]]]:
+    """Return for each part the lines along which it touches each other one, m."""
+    found: dict[str, dict[str, tuple[tuple[Point, ...], ...]]] = {part.name: {} for part in parts}
+    for part in parts:
+        for other in parts:
+            lines = contact(part.outlines, other.outlines) if other is not part else ()
+            if lines:
+                found[part.name][other.name] = lines
+    return found
 
 
 def _walls(parts: tuple[SectionPart, ...]) -> WallSection | None:
@@ -134,9 +175,9 @@ def _walls(parts: tuple[SectionPart, ...]) -> WallSection | None:
 
 
 def _by_mid_line(flow: WallFlow, level: Cuts, upright: Cuts) -> BoolArray:
-    """Return the walls, (n,), whose flow the cuts of the outline do not tell: cells, and walls side by side."""
+    """Return the walls, (n,), whose flow no cut of the outline tells: cells, and walls side by side."""
     alone = passed_alone(flow.graph, level, upright)
-    return np.full(len(alone), True) if flow.graph.cells else ~alone
+    return np.ones_like(alone) if flow.graph.cells else ~alone
 
 
 def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
@@ -153,13 +194,16 @@ def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
     if exact is not None and section.shape in _ROUND:
         centre = np.array([section.computed.x_bar, section.computed.y_bar])
 
+        largest = T * exact.tau_max_per_T
+
         def round_bar(points: FloatArray) -> FloatArray:
+            # the corners of the outline lie slightly outside the circle
             stress: FloatArray = T / exact.value * np.hypot(*(points - centre).T)
-            return stress
+            return np.minimum(stress, largest)
 
         largest_at = (section.bounds.right, section.computed.y_bar)
         downwards = (0.0, -request.T)  # of a clockwise torque, on the right
-        return _Torque(exact.method, (T * exact.tau_max_per_T, largest_at, downwards), round_bar, None)
+        return _Torque(exact.method, (largest, largest_at, downwards), round_bar, None)
     solution = saint_venant(*section.outlines)
     largest = T * (solution.tau_max.value if exact is None else exact.tau_max_per_T)
     scale = largest / (T * solution.tau_max.value)
@@ -200,14 +244,20 @@ def _at(
     by_mid_line: BoolArray | None,
     torque: _Torque | None,
 ) -> float:
-    """Return the shear stress at a point, Pa: the larger of what the cuts and the walls through it say."""
+    """Return the shear stress at a point, Pa: the larger of what the cuts and the walls through it say.
+
+    A torque in cells adds to V in one wall and opposes it in another: there the walls alone tell.
+    """
     x, y = point
     tau = math.hypot(_on_cut(level, y), _on_cut(upright, x))
     if torque is not None and torque.magnitude is not None:
         tau += float(torque.magnitude(np.array([point]))[0])
     if flow is None or by_mid_line is None:
         return tau
-    return max(tau, _in_walls(point, flow, by_mid_line, torque.walls if torque else None))
+    in_walls = _in_walls(point, flow, by_mid_line, torque.walls if torque else None)
+    if in_walls is None:
+        return tau
+    return in_walls if torque is not None and torque.magnitude is None else max(tau, in_walls)
 
 
 def _on_cut(found: Cuts, at: float) -> float:
@@ -229,13 +279,13 @@ def _in_open_walls(torsion: WallTorsion) -> Callable[[FloatArray], FloatArray]:
     return magnitude
 
 
-def _in_walls(point: Point, flow: WallFlow, chosen: BoolArray, torsion: WallTorsion | None) -> float:
-    """Return the largest stress of the chosen walls that a point lies in, Pa; 0 for none."""
+def _in_walls(point: Point, flow: WallFlow, chosen: BoolArray, torsion: WallTorsion | None) -> float | None:
+    """Return the largest stress of the chosen walls that a point lies in, Pa; None for none."""
     g = flow.graph
     along, off, inside = (each[0] for each in _relative(np.array([point]), g))
     inside &= chosen
     if not inside.any():
-        return 0.0
+        return None
     u = np.clip(along / g.length, 0.0, 1.0)
     c_0, c_1, c_2 = (flow.coefficients if torsion is None else flow.plus(torsion.flow).coefficients).T
     tau = (c_0 + u * (c_1 + u * c_2)) / g.t
@@ -245,7 +295,7 @@ def _in_walls(point: Point, flow: WallFlow, chosen: BoolArray, torsion: WallTors
 
 
 def _relative(points: FloatArray, g: Graph) -> tuple[FloatArray, FloatArray, BoolArray]:
-    """Return how far points (n, 2) lie along each wall and to its left, m, and whether within: (n, k) each."""
+    """Return how far points (n, 2) lie along each wall and to its left, m, and whether in it: (n, k) each."""
     ahead = g.along / g.length[:, None]
     to_point = points[:, None, :] - g.nodes[g.start]
     along = np.sum(to_point * ahead, axis=2)

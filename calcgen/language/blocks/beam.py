@@ -25,7 +25,7 @@ class SpanLine:
 class BeamSetting:
     """`E = 210 GPa`, `section = main`, `EI = ...`; a stretch of it with `start` and `end`.
 
-    Keys: section, E, EI, GA_s, restrained, shear_deformation, expansion.
+    Keys: section, E, G, EI, GA_s, restrained, shear_deformation, expansion.
     """
 
     key: Named
@@ -80,11 +80,12 @@ class LoadLine:
     """`load Q lateral linear 0 kN/m to 4 kN/m from 0 m to 3 m`.
 
     kind 'uniform': values has one; 'linear': two; 'point' and 'moment': one, with `at`, or with
-    `start` and `end` for a distributed moment; 'self_weight': one value (weight by volume).
+    `start` and `end` for a distributed moment; 'self_weight': one value (weight by volume); 'gradient': one,
+    the temperature at the top less that at the bottom.
     """
 
     case: Named
-    kind: Literal["uniform", "linear", "point", "moment", "self_weight"]
+    kind: Literal["uniform", "linear", "point", "moment", "self_weight", "gradient"]
     plane: Plane
     values: tuple[Expression, ...]
     at: Expression | None

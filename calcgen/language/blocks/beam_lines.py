@@ -30,10 +30,10 @@ from calcgen.text import Report, Span, nearest
 STOPS = frozenset({"at", "from", "to", "in", "settles", "rotation", "lateral", "spaced"})
 """Words that end an expression in a beam."""
 
-SETTINGS = ("section", "E", "EI", "restrained")
-STRETCHES = ("section", "EI")
-LATER_SETTINGS = ("GA_s", "shear_deformation", "expansion")
-LATER_LOADS = ("train", "gradient")
+SETTINGS = ("section", "E", "G", "EI", "GA_s", "restrained", "shear_deformation", "expansion")
+STRETCHES = ("section", "EI", "GA_s")
+LATER_SETTINGS: tuple[str, ...] = ()
+LATER_LOADS = ("train",)
 CASE_KINDS = (
     "permanent",
     "imposed",
@@ -47,13 +47,14 @@ CASE_KINDS = (
 )
 """Kinds of load case that have a meaning or are usual; another word is taken as it is."""
 
-LoadKind: TypeAlias = Literal["uniform", "linear", "point", "moment", "self_weight"]
+LoadKind: TypeAlias = Literal["uniform", "linear", "point", "moment", "self_weight", "gradient"]
 LOADS: dict[str, LoadKind] = {
     "uniform": "uniform",
     "linear": "linear",
     "point": "point",
     "moment": "moment",
     "self_weight": "self_weight",
+    "gradient": "gradient",
 }
 SupportKind: TypeAlias = Literal["pin", "roller", "fixed", "spring"]
 SUPPORTS: dict[str, SupportKind] = {"pin": "pin", "roller": "roller", "fixed": "fixed", "spring": "spring"}
@@ -121,7 +122,7 @@ def _setting(line: Line, cursor: Cursor) -> BeamSetting:
             "no-stretch",
             cursor.span(stretch),
             f"'{key.name}' holds for the whole beam",
-            hint="only section and EI change along a beam",
+            hint="only section, EI and GA_s change along a beam",
         )
     return BeamSetting(key, value, start, end, line.annotations, line.span, line.statement_span)
 
@@ -167,6 +168,7 @@ def _load(line: Line, cursor: Cursor) -> LoadLine:
             hint=f"write load G {kind_token.text} ...",
         )
     case = cursor.named("a load case")
+    sideways = cursor.token
     plane: Plane = "lateral" if cursor.accept("lateral") else "vertical"
     kind = LOADS[_word(cursor, (*LOADS, *LATER_LOADS), "kind of load")]
     if cursor.sees("lateral"):
@@ -175,6 +177,13 @@ def _load(line: Line, cursor: Cursor) -> LoadLine:
             cursor.span(cursor.token),
             "'lateral' stands before the kind of load",
             hint=f"write load {case.name} lateral {kind} ...",
+        )
+    if kind == "gradient" and plane == "lateral":
+        raise ReadingError(
+            "unexpected",
+            cursor.span(sideways),
+            "a gradient of temperature is one over the depth of the section",
+            hint=f"write load {case.name} gradient ...",
         )
     values = [expression(cursor)]
     if kind == "linear":

@@ -65,6 +65,27 @@ class DistributedMoment:
 
 
 @dataclass(frozen=True)
+class FreeCurvature:
+    """The curvature `value`, 1/m, that the beam takes from `start` to `end` where nothing holds it.
+
+    Positive as M, in the sense of sagging. A temperature that rises by ΔT from the bottom to the top of a
+    section of depth h gives -α·ΔT/h: the warmer top grows longer, and the beam bows up.
+    """
+
+    start: float
+    end: float
+    value: float
+    plane: Plane = "vertical"
+
+    @classmethod
+    def of_gradient(
+        cls, start: float, end: float, expansion: float, difference: float, depth: float
+    ) -> FreeCurvature:
+        """Give that of a `difference` of temperature, K, top less bottom, over the `depth`, m."""
+        return cls(start, end, -expansion * difference / depth)
+
+
+@dataclass(frozen=True)
 class Settlement:
     """The support of number `support`, from 0, moves by `value`, m, positive down (lateral: to the right)."""
 
@@ -73,7 +94,7 @@ class Settlement:
     plane: Plane = "vertical"
 
 
-Load: TypeAlias = PointLoad | PointMoment | DistributedLoad | DistributedMoment | Settlement
+Load: TypeAlias = PointLoad | PointMoment | DistributedLoad | DistributedMoment | FreeCurvature | Settlement
 
 
 def scaled(load: Load, factor: float) -> Load:
@@ -91,7 +112,7 @@ def combined(cases: Mapping[str, Sequence[Load]], factors: Mapping[str, float]) 
 def places(load: Load) -> tuple[float, ...]:
     """Give the places along the beam at which the load begins, ends or acts."""
     match load:
-        case DistributedLoad() | DistributedMoment():
+        case DistributedLoad() | DistributedMoment() | FreeCurvature():
             return load.start, load.end
         case PointLoad() | PointMoment():
             return (load.x,)
@@ -111,6 +132,10 @@ def validate(load: Load, model: BeamModel) -> None:
             values = (load.value_start, load.value_end)
             if load.end - load.start <= model.tolerance:
                 raise ValueError("a distributed load needs a length")
+        case FreeCurvature():
+            values = (load.value,)
+            if load.end - load.start <= model.tolerance:
+                raise ValueError("a free curvature needs a length")
         case PointMoment():
             values = (load.value,)
             if any(model.same(load.x, hinge) for hinge in model.hinges):
@@ -132,7 +157,7 @@ class LoadField:
     """One case's loads on a mesh of n elements, in p planes.
 
     `forces`, `couples` and `settlements`: (n + 1, p), at the nodes. `intensity` and `moment_intensity`: (n,
-    p, 2), at the start and the end of each element.
+    p, 2), at the start and the end of each element. `curvature`: (n, p), the free one of each element.
     """
 
     forces: FloatArray
@@ -140,6 +165,7 @@ class LoadField:
     settlements: FloatArray
     intensity: FloatArray
     moment_intensity: FloatArray
+    curvature: FloatArray
 
 
 def on_mesh(loads: Sequence[Load], mesh: Mesh, planes: Sequence[Plane]) -> LoadField:
@@ -147,7 +173,7 @@ def on_mesh(loads: Sequence[Load], mesh: Mesh, planes: Sequence[Plane]) -> LoadF
     n, p = len(mesh.lengths), len(planes)
     forces, couples, settlements = np.zeros((3, n + 1, p))
     intensity, moment_intensity = np.zeros((2, n, p, 2))
-    field = LoadField(forces, couples, settlements, intensity, moment_intensity)
+    field = LoadField(forces, couples, settlements, intensity, moment_intensity, np.zeros((n, p)))
     for load in loads:
         plane = list(planes).index(load.plane)
         match load:
@@ -159,6 +185,8 @@ def on_mesh(loads: Sequence[Load], mesh: Mesh, planes: Sequence[Plane]) -> LoadF
                 _spread(field.intensity[:, plane], load, mesh)
             case DistributedMoment():
                 _spread(field.moment_intensity[:, plane], load, mesh)
+            case FreeCurvature():
+                field.curvature[mesh.node(load.start) : mesh.node(load.end), plane] += load.value
             case Settlement():
                 field.settlements[mesh.supports[load.support], plane] += load.value
     return field

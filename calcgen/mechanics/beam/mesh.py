@@ -10,21 +10,22 @@ import numpy as np
 import numpy.typing as npt
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.beam.model import BeamModel, BendingStiffness
+from calcgen.mechanics.beam.model import BeamModel, BendingStiffness, ShearStiffness
 
 
 @dataclass(frozen=True, eq=False)
 class Mesh:
     """Nodes (n + 1,) from 0 to the beam's length, m, and what lies at them.
 
-    `supports`: the node of each support. `hinges`: the nodes that are hinges. `stiffness`: of each of the n
-    elements.
+    `supports`: the node of each support. `hinges`: the nodes that are hinges. `stiffness` and `shear`: of
+    each of the n elements.
     """
 
     nodes: FloatArray
     supports: tuple[int, ...]
     hinges: frozenset[int]
     stiffness: tuple[BendingStiffness, ...]
+    shear: tuple[ShearStiffness, ...]
 
     @property
     def lengths(self) -> FloatArray:
@@ -33,7 +34,8 @@ class Mesh:
 
     def node(self, x: float) -> int:
         """Give the number of the node nearest to `x`."""
-        return int(nearest(self.nodes, x))
+        right = min(max(bisect_left(self.nodes, x), 1), len(self.nodes) - 1)
+        return right - 1 if x - self.nodes[right - 1] <= self.nodes[right] - x else right
 
 
 def nearest(nodes: FloatArray, x: FloatArray | float) -> npt.NDArray[np.intp]:
@@ -66,4 +68,5 @@ def divide(model: BeamModel, places: Iterable[float]) -> Mesh:
         tuple(int(nearest(nodes, support.x)) for support in model.supports),
         frozenset(int(nearest(nodes, x)) for x in model.hinges),
         tuple(model.stretches[number].stiffness for number in stretch_of),
+        tuple(model.stretches[number].shear for number in stretch_of),
     )

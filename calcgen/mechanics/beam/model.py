@@ -53,12 +53,33 @@ class BendingStiffness:
 
 
 @dataclass(frozen=True)
+class ShearStiffness:
+    """Shear stiffness GA_s for a vertical and for a lateral shear force, N; infinite where it bends alone.
+
+    The two planes are not coupled by shear: the part f_hv of the shear flexibility of a skew section is left
+    out.
+    """
+
+    vertical: float = math.inf
+    lateral: float = math.inf
+
+    def __post_init__(self) -> None:
+        if not (self.vertical > 0.0 and self.lateral > 0.0):
+            raise ValueError("the shear stiffness must be positive")
+
+
+NO_SHEAR: Final = ShearStiffness()
+"""Of a beam after Euler and Bernoulli: its sections stay at right angles to the axis."""
+
+
+@dataclass(frozen=True)
 class Stretch:
     """A length of beam of constant stiffness, from `start` to `end`, m."""
 
     start: float
     end: float
     stiffness: BendingStiffness
+    shear: ShearStiffness = NO_SHEAR
 
 
 @dataclass(frozen=True)
@@ -161,7 +182,11 @@ class BeamModel:
     @property
     def spans(self) -> tuple[tuple[float, float], ...]:
         """Start and end of each span: from one support that holds the deflection down or up to the next."""
-        places = [support.x for support in self.supports if support.w > FREE]
+        return self.spans_in("vertical")
+
+    def spans_in(self, plane: Plane) -> tuple[tuple[float, float], ...]:
+        """Start and end of each span in `plane`: from one support that holds the deflection to the next."""
+        places = [support.x for support in self.supports if support.restraints(plane)[0] > FREE]
         return tuple(pairwise(places))
 
     @property
@@ -169,6 +194,11 @@ class BeamModel:
         """Planes in which the stiffness is known."""
         known = all(stretch.stiffness.lateral is not None for stretch in self.stretches)
         return PLANES if known else ("vertical",)
+
+    @property
+    def shears(self) -> bool:
+        """Tell whether shear deformation is taken into account somewhere."""
+        return any(stretch.shear != NO_SHEAR for stretch in self.stretches)
 
     @property
     def coupled(self) -> bool:
@@ -181,8 +211,9 @@ def prismatic(
     stiffness: BendingStiffness | float,
     supports: tuple[Support, ...],
     hinges: tuple[float, ...] = (),
+    shear: ShearStiffness = NO_SHEAR,
 ) -> BeamModel:
     """Give a beam of one stiffness; a number is EI about the horizontal axis, N·m²."""
     if not isinstance(stiffness, BendingStiffness):
         stiffness = BendingStiffness(stiffness)
-    return BeamModel(length, (Stretch(0.0, length, stiffness),), supports, hinges)
+    return BeamModel(length, (Stretch(0.0, length, stiffness, shear),), supports, hinges)

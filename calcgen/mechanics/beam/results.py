@@ -14,8 +14,12 @@ from calcgen.mechanics.beam import piecewise
 from calcgen.mechanics.beam.mesh import nearest
 from calcgen.mechanics.beam.model import BeamModel
 
-Quantity: TypeAlias = Literal["w", "slope", "M", "V", "w_lat", "slope_lat", "M_lat", "V_lat"]
-QUANTITIES: Final[tuple[Quantity, ...]] = ("w", "slope", "M", "V", "w_lat", "slope_lat", "M_lat", "V_lat")
+Part: TypeAlias = Literal["w", "slope", "M", "V", "rotation"]
+PARTS: Final[tuple[Part, ...]] = ("w", "slope", "M", "V", "rotation")
+Quantity: TypeAlias = Literal[
+    "w", "slope", "M", "V", "rotation", "w_lat", "slope_lat", "M_lat", "V_lat", "rotation_lat"
+]
+QUANTITIES: Final[tuple[Quantity, ...]] = (*PARTS, "w_lat", "slope_lat", "M_lat", "V_lat", "rotation_lat")
 Side: TypeAlias = Literal["left", "right"]
 
 _AT_END: Final = 1e-9
@@ -65,9 +69,9 @@ class Reaction:
 class CaseSolution:
     """State of a beam under one load case or combination.
 
-    `pieces` (n, 4, p, 6): coefficients of w, slope, M and V on each of n elements in p planes, in the part
-    of the element's length passed. `support_forces` (s, p, 2): force and moment of each support. `noise`
-    (4, p): size below which a value is rounding error and is given as zero.
+    `pieces` (n, 5, p, 6): coefficients of w, slope, M, V and rotation on each of n elements in p planes, in
+    the part of the element's length passed. `support_forces` (s, p, 2): force and moment of each support.
+    `noise` (5, p): size below which a value is rounding error and is given as zero.
     """
 
     model: BeamModel
@@ -190,7 +194,7 @@ class CaseSolution:
         return x.ravel(), _without(piecewise.values(pieces[:, None, :], t), noise).ravel()
 
     def _pieces(self, quantity: Quantity) -> tuple[FloatArray, float]:
-        plane, part = divmod(QUANTITIES.index(quantity), 4)
+        plane, part = divmod(QUANTITIES.index(quantity), len(PARTS))
         if plane >= self.pieces.shape[2]:
             raise ValueError("the bending stiffness about the vertical axis is not known: no lateral results")
         return self.pieces[:, part, plane], float(self.noise[part, plane])

@@ -17,17 +17,18 @@ VANISHING = 1e-9
 
 @dataclass(eq=False)
 class UnstableBeam(Exception):  # noqa: N818 - the name says what is wrong with the beam
-    """The beam, or the part from `start` to `end`, m, can move in `plane` without bending.
+    """The beam, or some of its parts between hinges, can move in `plane` without bending.
 
-    `hinges` are those at which the moving part bends or ends. `pivot` is the place about which a beam without
-    hinges turns, m; None where it can shift, too.
+    `parts` are the start and end, m, of those that move, from left to right, and `hinges` those at which they
+    bend or end. The first of them rotates, or `shifts` without rotation. `pivot` is the place about which a
+    beam without hinges turns, m; None where it can shift, too.
     """
 
     plane: Plane
-    start: float
-    end: float
+    parts: tuple[tuple[float, float], ...]
     hinges: tuple[float, ...]
     pivot: float | None
+    shifts: bool
 
     def __str__(self) -> str:
         way = "vertically" if self.plane == "vertical" else "laterally"
@@ -35,9 +36,16 @@ class UnstableBeam(Exception):  # noqa: N818 - the name says what is wrong with 
             return f"the beam can turn {way} about the only support that holds it, at {self.pivot:g} m"
         if not self.hinges:
             return f"nothing holds the beam {way}"
-        hinges = "hinge at " if len(self.hinges) == 1 else "hinges at "
-        hinges += ", ".join(f"{x:g} m" for x in self.hinges)
-        return f"the stretch between {self.start:g} m and {self.end:g} m can move {way}: {hinges}"
+        (start, end), *others = self.parts
+        motion = "shift" if self.shifts else "rotate"
+        at_ends = [x for x in (start, end) if x in self.hinges]
+        hinges = "a hinge at each end" if len(at_ends) == 2 else f"a hinge at {at_ends[0]:g} m"
+        sideways = "" if self.plane == "vertical" else " sideways"
+        text = f"the stretch between {start:g} m and {end:g} m can {motion}{sideways}: {hinges}"
+        if not others:
+            return text
+        moved = " and ".join(f"that between {a:g} m and {b:g} m" for a, b in others)
+        return f"{text}; {moved} {'moves' if len(others) == 1 else 'move'} with it"
 
 
 def require_stable(model: BeamModel, plane: Plane) -> None:
@@ -100,8 +108,9 @@ def _describe(model: BeamModel, plane: Plane, swept: list[FloatArray], free: Flo
         motions = swept[first]
         at_end = _deflection(model, joints[first], joints[first + 1]) @ motions
         moving = motions @ (at_end / (at_end @ at_end) * moving[0])
-    start, end = joints[first], joints[last + 1]
+    parts = tuple(pairwise(joints[first : last + 2]))
+    hinges = tuple(x for x in model.hinges if joints[first] <= x <= joints[last + 1])
     deflection, rotation = float(free[0, 0]), float(free[1, 0]) / model.length
     turns = not model.hinges and free.shape[1] == 1 and abs(free[1, 0]) > VANISHING
     pivot = joints[last] - deflection / rotation if turns else None
-    return UnstableBeam(plane, start, end, tuple(x for x in model.hinges if start <= x <= end), pivot)
+    return UnstableBeam(plane, parts, hinges, pivot, abs(moving[1]) <= VANISHING)

@@ -29,6 +29,7 @@ REFINEMENTS = 6
 SHARE = 0.7  # of the gap: so much of it lies in the triangles that are refined
 SIDES_PER_THICKNESS = 0.8
 SIDES_PER_ROOT_OF_AREA = 7.0
+SIDES = 2000.0  # on the edge, about: those of a foil may be longer than it is thick
 RE_ENTRANT = 0.25 * np.pi  # a corner that turns inwards by more has a singular stress, and small triangles
 FINEST = 0.08  # of the mean thickness: triangles at such a corner
 MOST_RE_ENTRANT = 60  # with more of them refinement is left to the bounds
@@ -111,7 +112,10 @@ def meshed_for_torsion(outlines: tuple[Outline, ...]) -> tuple[Mesh, FloatArray,
     mesh = triangulate(
         outlines,
         Size(
-            everywhere=min(thickness / SIDES_PER_THICKNESS, area**0.5 / SIDES_PER_ROOT_OF_AREA),
+            everywhere=max(
+                min(thickness / SIDES_PER_THICKNESS, area**0.5 / SIDES_PER_ROOT_OF_AREA),
+                2.0 * area / thickness / SIDES,
+            ),
             near=corners if len(corners) <= MOST_RE_ENTRANT else None,
             at_points=FINEST * thickness,
         ),

@@ -10,6 +10,7 @@ from itertools import pairwise
 from typing import Final, Literal
 
 import numpy as np
+import numpy.typing as npt
 
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import (
@@ -18,6 +19,7 @@ from calcgen.mechanics.beam import (
     CaseSolution,
     DistributedLoad,
     DistributedMoment,
+    FreeCurvature,
     Load,
     Plane,
     PointLoad,
@@ -29,6 +31,8 @@ from calcgen.mechanics.second_route.residual import Residual, relative
 
 TOLERANCE: Final = 1e-8
 """Relative, for every comparison: far above rounding, far below an error of method."""
+CANCELLED: Final = 1e-6
+"""Part of the strains along the beam, times a span; a smaller deflection is what cancelling ones leave."""
 SHORT: Final = 1e-5
 """Part of the beam's length; along a shorter interval, differences of M hold too few digits to compare."""
 
@@ -86,7 +90,7 @@ def _resultant(load: Load) -> tuple[float, float, float]:
         case DistributedMoment():
             couple = (load.end - load.start) * (load.value_start + load.value_end) / 2
             return 0.0, couple, abs(couple)
-        case Settlement():
+        case FreeCurvature() | Settlement():
             return 0.0, 0.0, 0.0
 
 
@@ -128,7 +132,7 @@ def _breaks(model: BeamModel, loads: Sequence[Load], *more: float) -> list[float
     places.update(support.x for support in model.supports)
     places.update(stretch.end for stretch in model.stretches)
     for load in loads:
-        if isinstance(load, DistributedLoad | DistributedMoment):
+        if isinstance(load, DistributedLoad | DistributedMoment | FreeCurvature):
             places.update((load.start, load.end))
         elif isinstance(load, PointLoad | PointMoment):
             places.add(load.x)
@@ -198,30 +202,34 @@ def _largest(values: FloatArray) -> float:
 
 
 def _deflections(model: BeamModel, loads: Sequence[Load], solution: CaseSolution) -> list[Residual]:
-    solved: list[tuple[Plane, float, float]] = []
+    found: list[tuple[Plane, float]] = []
+    scale = 0.0
     for plane in model.planes:
         x = solution.extremes(_quantity("w", plane)).x_abs
-        solved.append((plane, x, solution.at(_quantity("w", plane), x)))
-    scale = max(abs(w) for _, _, w in solved)
+        w = solution.at(_quantity("w", plane), x)
+        again, strains = _by_virtual_work(model, loads, solution, plane, x)
+        found.append((plane, again - w))
+        scale = max(scale, abs(w), CANCELLED * strains)
     return [
         Residual(
             _name("w", plane),
-            relative(_by_virtual_work(model, loads, solution, plane, x) - w, scale),
+            relative(difference, scale),
             TOLERANCE,
             "largest deflection by virtual work, over itself",
         )
-        for plane, x, w in solved
+        for plane, difference in found
     ]
 
 
 def _by_virtual_work(
     model: BeamModel, loads: Sequence[Load], solution: CaseSolution, plane: Plane, place: float
-) -> float:
-    """Deflection at `place`: 1·w = ∫mκ dx + Σ r·w_support + Σ μ·slope_support.
+) -> tuple[float, float]:
+    """Deflection at `place`: 1·w = ∫mκ dx + ∫vγ dx + Σ r·w_support + Σ μ·rotation.
 
-    m, r and μ are in equilibrium with a unit load at `place`, whichever way the supports share it; what the
-    supports give way follows from their settlement and from the solved reaction over the stiffness of a
-    spring.
+    κ has the free curvature in it, and γ is the shear strain. m, v, r and μ are in equilibrium with a unit
+    load at `place`, whichever way the supports share it; what the supports give way follows from their
+    settlement and from the solved reaction over the stiffness of a spring. The second number is the sum of
+    ∫|κ| dx times the mean span and ∫|γ| dx, for a scale.
     """
     supports, force, moment = _support_forces(solution, plane)
     r, mu = _unit_load_state(model, plane, place)
@@ -239,8 +247,16 @@ def _by_virtual_work(
     x = ((breaks[:-1, None] + half) + half * _GAUSS_POINTS).ravel()
     weight = (half * _GAUSS_WEIGHTS).ravel()
     m = _virtual_moment(x, supports, r, mu, place)
-    bending = float(weight @ (m * _curvature(model, solution, plane, x)))
-    return bending + float(r @ moved) + float(mu @ (moment / yielding[:, 1]))
+    bent, free = _curvature(model, solution, plane, x), _free_curvature(loads, plane, x)
+    w = float(weight @ (m * (bent + free)))
+    strains = float(weight @ (np.abs(bent) + np.abs(free))) * model.length / max(1, len(model.supports) - 1)
+    if model.shears:
+        v = np.where(x[:, None] > supports, 1.0, 0.0) @ r - np.where(x > place, 1.0, 0.0)
+        shear_strain = _shear_strain(model, solution, plane, x)
+        w += float(weight @ (v * shear_strain))
+        strains += float(weight @ np.abs(shear_strain))
+    w += float(r @ moved) + float(mu @ (moment / yielding[:, 1]))
+    return w, strains
 
 
 def _virtual_moment(
@@ -280,10 +296,30 @@ def _unit_load_state(model: BeamModel, plane: Plane, place: float) -> tuple[Floa
     return state[:count], state[count:] * L
 
 
+def _free_curvature(loads: Sequence[Load], plane: Plane, x: FloatArray) -> FloatArray:
+    """Curvature (k,) that needs no moment, as a temperature gives it."""
+    total = np.zeros_like(x)
+    for load in loads:
+        if isinstance(load, FreeCurvature) and load.plane == plane:
+            total += np.where((load.start < x) & (x < load.end), load.value, 0.0)
+    return total
+
+
+def _shear_strain(model: BeamModel, solution: CaseSolution, plane: Plane, x: FloatArray) -> FloatArray:
+    """Shear strain (k,) from the solved shear forces."""
+    GA_s = [getattr(stretch.shear, plane) for stretch in model.stretches]
+    return np.asarray(solution.values(_quantity("V", plane), x) / np.array(GA_s)[_stretch_at(model, x)])
+
+
+def _stretch_at(model: BeamModel, x: FloatArray) -> npt.NDArray[np.intp]:
+    """Give the number (k,) of the stretch at each place."""
+    ends = np.array([stretch.end for stretch in model.stretches])
+    return np.minimum(np.searchsorted(ends, x), len(ends) - 1)
+
+
 def _curvature(model: BeamModel, solution: CaseSolution, plane: Plane, x: FloatArray) -> FloatArray:
     """Curvature (k,) from the solved moments by the flexibility, written out for the two planes."""
-    ends = np.array([stretch.end for stretch in model.stretches])
-    number = np.minimum(np.searchsorted(ends, x), len(ends) - 1)
+    number = _stretch_at(model, x)
     stiffness = [stretch.stiffness for stretch in model.stretches]
     vertical = np.array([each.vertical for each in stiffness])[number]
     M = solution.values("M", x)
