@@ -44,7 +44,10 @@ class PropertyName:
 _LENGTH, _AREA, _CUBE = ("mm", "in"), ("cm²", "in²"), ("cm³", "in³")
 _FOURTH, _SIXTH = ("cm⁴", "in⁴"), ("cm⁶", "in⁶")
 
-_MONOSYMMETRY = f"monosymmetry constant, bending {HORIZONTAL}, negative with the larger flange on top"
+_MONOSYMMETRY = (
+    f"monosymmetry constant ∫y(x² + y²) dA / I − 2(y_s − y_bar), I {HORIZONTAL}, x to the right and y up "
+    "from the centroid; of an I-section negative with the larger flange on top"
+)
 
 PROPERTIES: tuple[PropertyName, ...] = (
     PropertyName("A", "A", "A", "area", "area", _AREA),

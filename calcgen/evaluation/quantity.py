@@ -9,7 +9,7 @@ from calcgen.evaluation.formulas import Evaluator
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import Expression
 from calcgen.quantities.display import KINDS, describe, show
-from calcgen.quantities.measure import Measure, dimension_of, from_si, measure, unit_size
+from calcgen.quantities.measure import Measure, dimension_of, from_si, unit_size
 
 _HINTS = {
     ("mass", "force"): "lb, kg and t are masses; write lbf or kN",
@@ -20,6 +20,7 @@ _HINTS = {
 
 LARGEST: Mapping[str, float] = {
     "number": 1e12,
+    "angle": 1000.0 * math.tau,  # of more turns little is left of where it ends
     "length": 1e6,
     "area": 1e12,
     "section modulus": 1e18,
@@ -35,18 +36,18 @@ LARGEST: Mapping[str, float] = {
     "temperature": 1e6,
     "expansion": 1e3,
 }
-"""Largest magnitude by kind, SI: beyond anything built, and small enough for products of many to be numbers."""
+"""Largest magnitude by kind, SI: beyond anything built, and products of several are still numbers."""
 
 
 def quantity_of(node: Expression, kind: str, scope: Scope) -> Measure | None:
-    """Return the value of an expression that must be of a kind of `KINDS`, or 'number'.
+    """Return the value of an expression that must be of a kind of `KINDS`, 'number' or 'angle'.
 
     Reports a value of another dimension, and one beyond `LARGEST`, at the expression.
     """
     value = Evaluator(scope).measure(node)
     if value is None:
         return None
-    wanted = () if kind == "number" else dimension_of(unit_size(KINDS[kind]))
+    wanted = dimension_of(unit_size(KINDS.get(kind, "")))
     if value.dimension == wanted:
         return value if _can_be_computed(value, node, kind, scope) else None
     found = describe(value.dimension)
@@ -71,7 +72,7 @@ def _can_be_computed(value: Measure, node: Expression, kind: str, scope: Scope) 
     if abs(value.si) <= largest:
         return True
     text = show(value, scope.style).text if value.finite else scope.report.source.slice(node.span)
-    limit = measure(largest, "") if kind == "number" else from_si(largest, KINDS[kind]).shown_in(value.unit)
+    limit = from_si(largest, KINDS.get(kind, "")).shown_in(value.unit)
     what = "the number" if kind == "number" else f"{_article(kind)} of"
     scope.report.error(
         "number-too-large",

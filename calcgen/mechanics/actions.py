@@ -15,9 +15,8 @@ from calcgen.mechanics.trains import Position, Train
 class Actions:
     """What acts on a beam, by cases.
 
-    `cases`: the loads of each case. `patterned`: the cases that may act on some lengths of the beam and not on
-    others. `trains`: those of a case, which crosses the beam beside the case's loads; several of one case
-    cross independently of each other.
+    `cases`: the loads of each case. `patterned`: the cases that may act on some lengths of the beam and not
+    on others. `trains`: those of each case, beside its loads; several of one case cross independently.
     """
 
     cases: Mapping[str, Sequence[Load]]
@@ -91,7 +90,7 @@ class Governs:
 
 @dataclass(frozen=True, eq=False)
 class Band:
-    """An envelope for drawing: smallest and largest value (k,) each at places `x`, with both sides of each node.
+    """An envelope for drawing: smallest and largest value (k,) at places `x`, with both sides of nodes.
 
     What governs is told apart at these places; a stretch ends midway between two of them. The position of a
     train changes from place to place and is not told.

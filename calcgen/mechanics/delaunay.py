@@ -4,7 +4,7 @@ A round triangulates all points at once. Edges that are missing or encroached up
 over them) are split; once there are none, points go to the centres of the circles round triangles that are
 too thin or too large (J. Ruppert, A Delaunay refinement algorithm for quality 2-dimensional mesh generation,
 1995, from memory). Edges at an acute corner are split at powers of two from it, so that both sides of the
-corner match and the splitting ends. Rounds and points are bounded: at the bound, triangles stay as they are.
+corner match and the splitting ends. The work is bounded: at the bound, triangles stay as they are.
 """
 
 from __future__ import annotations
@@ -26,11 +26,14 @@ THIN = 0.5 / math.sin(SMALLEST_ANGLE)  # circumradius over shortest side of a tr
 ACUTE = math.radians(75.0)  # corners below it are split in shells; the theory asks for 60°
 ENCROACHED = 1e-9  # of the squared length: how far inside the circle over an edge a point must lie
 SMALLEST = 1e-7  # of the size: sides that are not split for the sake of a better angle
-ROUNDS = 100
-POINTS = 15_000  # no more for better triangles
-MOST_POINTS = 40_000  # no more for edges that are missing
+WORK = 60_000  # points of all rounds together: no more rounds for better triangles
+MOST_WORK = 300_000  # no more rounds for edges that are missing
 AT_ONCE = 1_000  # points put in one round; bounds the memory of comparing all pairs
 FAR = 4.0  # of the size: corners of a square round all points, so that no edge lies on the convex hull
+
+
+class MeshError(ArithmeticError):
+    """An outline cannot be meshed: its edges cross, or lie too close to each other for its size."""
 
 
 @dataclass(frozen=True, eq=False)
@@ -47,12 +50,14 @@ class Size:
     """The length that sides of triangles should not exceed, m.
 
     `everywhere`; near each of the points `near` (n, 2) less: `at_points` plus `slope` times the distance.
+    Triangles and edges longer than `thin_beyond` are left as they are: such triangles may be thin.
     """
 
     everywhere: float = math.inf
     near: FloatArray | None = None
     at_points: float = 0.0
     slope: float = 0.6
+    thin_beyond: float = math.inf
 
     def at(self, places: FloatArray) -> FloatArray:
         """Return the length, m, at places (n, 2), m."""
@@ -67,8 +72,8 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
 
     Raises
     ------
-    ArithmeticError
-        Where the edges cannot all be made sides of triangles, because they cross.
+    MeshError
+        Where the edges cannot all be made sides of triangles, because they cross or all but touch.
     """
     acute = _acute_corners(corners)
     extent = float(np.ptp(corners.points, axis=0).max())
@@ -76,16 +81,19 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
     while long.any():
         corners = _split(corners, long, acute)
         long = _lengths(corners) > size.at(_middles(corners))
-    for _ in range(ROUNDS):
+    work = 0
+    while True:
         inside, missing, encroached_upon = _triangles(corners)
-        enough = len(corners.points) > POINTS
-        broken: BoolArray = missing if enough else missing | encroached_upon
+        work += len(corners.points)
+        good_enough = work > WORK
+        short = _lengths(corners) <= size.thin_beyond
+        broken: BoolArray = missing if good_enough else missing | (encroached_upon & short)
         if broken.any():
-            if len(corners.points) > MOST_POINTS:
+            if work > MOST_WORK:
                 break
             corners = _split(corners, broken, acute)
             continue
-        if enough:
+        if good_enough:
             break
         centres = _centres_of_bad(corners, inside, size, acute, SMALLEST * extent)
         encroached = _encroached_by(centres, corners)
@@ -96,9 +104,8 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
         elif len(centres) == 0:
             break
         corners = Corners(np.concatenate((corners.points, centres)), corners.edges, corners.ring)
-    inside, missing, _ = _triangles(corners)
     if missing.any() or not _closed(corners, inside):
-        raise ArithmeticError("the edges of the outline cannot be made sides of triangles")
+        raise MeshError("the edges of the outline cannot be made sides of triangles")
     return corners, inside
 
 
@@ -229,7 +236,7 @@ def _centres_of_bad(
     thinness = radius / sides[rows, shortest]
     thin = (thinness > THIN) & (sharp[tip] <= 0.0) & (sides[rows, shortest] > smallest)
     excess = radius * math.sqrt(3.0) / size.at(corner.mean(axis=1))  # an equilateral triangle's side
-    bad = np.flatnonzero(thin | (excess > 1.0))
+    bad = np.flatnonzero((thin | (excess > 1.0)) & (sides.max(axis=1) <= size.thin_beyond))
     worst = np.maximum(np.where(thin, thinness / THIN, 0.0), excess)[bad]
     bad = bad[np.argsort(-worst, kind="stable")[:AT_ONCE]]
     squared_a, squared_b = (np.sum(v[bad] ** 2, axis=1) for v in (a, b))

@@ -22,6 +22,7 @@ import numpy.typing as npt
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import (
     PARTS,
+    QUANTITIES,
     BeamModel,
     CaseSolution,
     DistributedLoad,
@@ -34,7 +35,7 @@ from calcgen.mechanics.beam import (
     solve,
 )
 from calcgen.mechanics.beam.mesh import divide, nearest
-from calcgen.mechanics.beam.results import Side
+from calcgen.mechanics.beam.results import Part, Side
 from calcgen.mechanics.combinations import ReactionPart
 
 W, ROTATION, M, V = range(4)
@@ -333,9 +334,10 @@ def shift(start: float | FloatArray, length: float | FloatArray) -> FloatArray:
     return np.stack([np.stack(row, axis=-1) for row in rows], axis=-2)
 
 
-def quantity_index(quantity: Quantity) -> tuple[str, int]:
+def quantity_index(quantity: Quantity) -> tuple[Part, int]:
     """Give the part of a state that a quantity is, and the number of its plane."""
-    return quantity.removesuffix("_lat"), int(quantity.endswith("_lat"))
+    plane, part = divmod(QUANTITIES.index(quantity), len(PARTS))
+    return PARTS[part], plane
 
 
 def reaction_index(part: ReactionPart) -> tuple[int, Literal[0, 1]]:

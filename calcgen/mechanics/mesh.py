@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
@@ -97,8 +98,11 @@ def triangulate(outlines: Sequence[Outline], size: Size) -> Mesh:
     return _joined([refine(_corners_of(part), size) for part in outlines])
 
 
-def refined(mesh: Mesh, marked: BoolArray) -> Mesh:
-    """Return a finer mesh, with points in the middles of the edges of the marked triangles (m,)."""
+def refined(mesh: Mesh, marked: BoolArray, thin_beyond: float = math.inf) -> Mesh:
+    """Return a finer mesh, with points in the middles of the edges of the marked triangles (m,).
+
+    thin_beyond : the length beyond which triangles may be thin, m.
+    """
     split = np.zeros(len(mesh.points), dtype=bool)
     split[mesh.triangles[marked, 3:]] = True
     parts = []
@@ -121,7 +125,7 @@ def refined(mesh: Mesh, marked: BoolArray) -> Mesh:
             np.searchsorted(kept, pairs),
             np.concatenate((ring[~cut], ring[cut], ring[cut])),
         )
-        parts.append(refine(corners, Size()))
+        parts.append(refine(corners, Size(thin_beyond=thin_beyond)))
     return _joined(parts)
 
 

@@ -268,7 +268,7 @@ BLOCKS = (
     Worked("L-16", "lift.q_cap", _V16 * _S_cap / _I16, "N/mm", "V S/I", FACETS),
     Worked("L-16", "lift.root.σ", _root, "MPa", "M y/I", FACETS),
     Worked("L-16", "lift.root.τ", _V16 * _S_root / (_I16 * 0.005) / 1e3, "MPa", "V S/(I t)", FACETS),
-    Worked("L-16", "trip.M_el", F_Y * _I16 / 0.067, "kN·m", "f_y W", FACETS),
+    Worked("L-16", "trip.M_el", -F_Y * _I16 / 0.067, "kN·m", "f_y W, hogging", FACETS),
     Worked(
         "L-15",
         "bowl.σ_max",

@@ -91,7 +91,7 @@ def _shear(data: BeamData, w: float, other_w: float | None, add: Callable[[str, 
         if not data.shear.sideways and "lateral" in data.model.planes:
             says.append("not so sideways, where the shear stiffness is not known")
         elif data.model.coupled:
-            says.append("each plane by itself")
+            says.append("each plane by itself: how shear couples the planes of a skew section is left out")
         add("plane sections, shear deformation included", "met", "; ".join(says))
         return
     share = None

@@ -123,12 +123,17 @@ def _names_are_free(block: SectionBlock, scope: Scope, axes: Axes) -> bool:
     for line in block.items:
         if isinstance(line, PartLine | HoleLine | BarsLine):
             name = line.target.name
-            if name in names(axes) or name in DIMENSIONS:
+            found = names(axes).get(name)
+            meaning = found.meaning if found is not None else DIMENSIONS.get(name)
+            if meaning is not None:
                 free = False
+                section = block.target.name
                 scope.report.error(
                     "name-hides-result",
                     line.target.span,
                     f"'{plain(name)}' is the name of a property of sections",
+                    hint=f"{section}.{name} reads the {meaning} of the section; "
+                    f"choose another name, such as {name}_1",
                 )
     return free
 

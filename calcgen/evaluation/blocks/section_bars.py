@@ -8,6 +8,7 @@ from dataclasses import dataclass, replace
 from itertools import combinations
 
 import numpy as np
+from numpy.typing import NDArray
 
 from calcgen.evaluation.blocks.shape import point_of, point_text
 from calcgen.evaluation.quantity import quantity_of, si
@@ -18,12 +19,14 @@ from calcgen.mechanics.boolean import inside
 from calcgen.mechanics.composite import transformed_inertia
 from calcgen.mechanics.field import Bars, Law, Piece
 from calcgen.mechanics.outline import Outline
-from calcgen.quantities.display import number_text, show
-from calcgen.quantities.measure import from_si
+from calcgen.quantities.display import show
+from calcgen.quantities.measure import from_si, measure
 from calcgen.text import Related
 
 MOST_BARS = 1000  # of one line
-TOUCHING = 1e-9  # of the distance: bars closer than touching by more than this overlap
+TOUCHING = 1e-9  # of the reach: smaller distances are rounding
+
+NOTHING = 1e-9  # of what a part has: less is left by rounding
 
 
 @dataclass(frozen=True)
@@ -84,14 +87,15 @@ def _count(line: BarsLine, scope: Scope) -> int | None:
             "bars",
             line.count.span,
             "the number of bars is a whole one, 1 or more",
-            label=f"{number_text(value, 6)} bars",
+            label=f"{show(measure(value, None), scope.style).text} bars",
         )
         return None
     if value > MOST_BARS:
+        number = show(measure(value, None), scope.style).text
         scope.report.error(
             "bars",
             line.count.span,
-            f"{number_text(value, 6)} bars are more than the {MOST_BARS} that one line takes",
+            f"{number} bars are more than the {MOST_BARS} that one line takes",
             hint="write several lines, or a part in place of a sheet of bars",
         )
         return None
@@ -128,7 +132,7 @@ def _hosted(
     """Return bars with the part of each, '' where there is none; report those that lie in nothing."""
     points = np.array(bars.points)
     hosts = np.full(len(points), "", dtype=object)
-    for name, outlines in reversed(parts.items()):  # on an edge of two parts, the first
+    for name, outlines in reversed(list(parts.items())):  # on an edge of two parts, the first
         hosts[inside(points, outlines)] = name
     outside = np.flatnonzero((hosts == "") & ~inside(points, holes))
     if outside.size:
@@ -147,7 +151,7 @@ def _warn_of_overlap_in_a_row(bars: PlacedBars, scope: Scope) -> None:
     if len(bars.points) == 1:
         return
     apart = math.dist(bars.points[0], bars.points[-1]) / (len(bars.points) - 1)
-    if not _too_close(apart, bars.diameter or 0.0, bars.reach):
+    if not _too_close(np.array(apart), bars.diameter or 0.0, bars.reach):
         return
     place = point_text(bars.points[0], scope.style)
     if apart == 0.0:
@@ -177,10 +181,11 @@ def _warn_of_overlap(first: PlacedBars, second: PlacedBars, scope: Scope) -> Non
     )
 
 
-def _too_close(apart: FloatArray | float, needed: float, reach: float) -> FloatArray | float:
-    """Tell where distances are less than needed by more than rounding, or nothing at all."""
+def _too_close(apart: FloatArray, needed: float, reach: float) -> NDArray[np.bool_]:
+    """Tell where distances, m, are less than needed by more than rounding, or nothing at all."""
     nothing = TOUCHING * reach
-    return (apart < needed - TOUCHING * needed - nothing) | (apart <= nothing)
+    close: NDArray[np.bool_] = (apart < needed - nothing) | (apart <= nothing)
+    return close
 
 
 def _something_remains(
@@ -202,11 +207,11 @@ def _something_remains(
     displaced = sum(len(group.points) * group.area for group in groups)
     whole = transformed_inertia([Piece(host, outlines)])
     left = transformed_inertia([Piece(host, outlines)], groups)
-    if left.area > 0.0 and left.I_2 > 0.0:
+    if left.area > NOTHING * whole.area and left.I_2 > NOTHING * whole.I_2:
         return True
     unit = "in²" if scope.style.system == "US" else "mm²"
     areas = [show(from_si(area, "m²").shown_in(unit), scope.style).text for area in (displaced, whole.area)]
-    lacking = "area" if left.area <= 0.0 else "stiffness"
+    lacking = "area" if left.area <= NOTHING * whole.area else "stiffness"
     scope.report.error(
         "bars",
         inner[-1].line.target.span,

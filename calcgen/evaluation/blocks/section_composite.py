@@ -78,7 +78,10 @@ def composite_findings(
     else:
         plastic = _plastic_moduli(materials.reference.strength or 0.0, parts)
         values |= plastic
-        way = f"plastic moment over the strength of {plain(materials.reference.name)}"
+        way = (
+            f"plastic moment over the strength of {plain(materials.reference.name)}, "
+            "each material with one strength in tension and compression"
+        )
         provenance |= dict.fromkeys(plastic, way)
         absent = {key: reason for key, reason in absent.items() if key not in plastic}
     return Findings(

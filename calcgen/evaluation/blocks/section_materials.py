@@ -18,6 +18,9 @@ from calcgen.language.blocks.section import (
 from calcgen.quantities.display import show
 from calcgen.text import Span, nearest
 
+APART = 1e9  # largest ratio of two moduli, or of two strengths
+LEAST = 1e-3  # Pa: the smallest modulus or strength
+
 
 @dataclass(frozen=True)
 class Material:
@@ -66,7 +69,7 @@ def materials_of(block: SectionBlock, scope: Scope) -> Materials | None:
     if len(named) > 1 and not _all_have_moduli(named, moduli, scope):
         return None
     reference = _reference(block, named, scope)
-    if reference is None:
+    if reference is None or not _comparable(block, scope):
         return None
     found = {
         name: Material(name, moduli.get(name), strengths.get(name)) for name in {*wanted.values(), reference}
@@ -151,6 +154,34 @@ def _values(
         else:
             values[key][name] = value.si
     return values["modulus"], values["strength"], complete
+
+
+def _comparable(block: SectionBlock, scope: Scope) -> bool:
+    """Report moduli, or strengths, beside which another has no digits left."""
+    for key in ("modulus", "strength"):
+        given = [
+            (value, line)
+            for line in block.items
+            if isinstance(line, MaterialLine) and line.key.name == key
+            for value in [quantity_of(line.value, "stress", scope)]
+            if value is not None
+        ]
+        if not given:
+            continue
+        least, most = (pick(given, key=lambda each: each[0].si) for pick in (min, max))
+        if most[0].si <= APART * least[0].si and least[0].si >= LEAST:
+            continue
+        scope.report.error(
+            "too-far-apart",
+            least[1].value.span,
+            f"the {key} of '{least[1].material.name}' is too small to be computed with",
+            label=show(least[0], scope.style).text,
+            hint=f"beside {show(most[0], scope.style).text} it has no digits left"
+            if len(given) > 1
+            else "a unit or a power of ten may be wrong",
+        )
+        return False
+    return True
 
 
 def _all_have_moduli(named: Mapping[str, Span], moduli: Mapping[str, float], scope: Scope) -> bool:

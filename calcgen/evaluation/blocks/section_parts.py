@@ -31,7 +31,7 @@ from calcgen.quantities.display import number_text
 from calcgen.text import Related, Span
 
 SMALLEST = 1e-11  # m: of a smaller outline the powers that properties are lose digits
-VANISHING = 1e-9  # of the section's reach: a thinner outline has no digits left beside it
+VANISHING = 1e-6  # of the section's reach: beside it a thinner outline has too few digits left
 
 
 @dataclass(frozen=True)
@@ -121,9 +121,10 @@ def _built(text: ShapeText, scope: Scope, catalogue: Catalogue) -> tuple[Shape, 
 
 
 def _all_can_be_seen(parts: Iterable[PlacedPart], bars: Iterable[PlacedBars], scope: Scope) -> bool:
-    """Report parts that vanish beside the section."""
-    reach = max(*(_reach(o) for p in parts for o in p.outlines), *(b.reach for b in bars), 0.0)
-    return all([_can_be_seen(o, reach, p.text.span, scope) for p in parts for o in p.outlines])
+    """Report the first part that vanishes beside the section."""
+    outlines = [(outline, part.text.span) for part in parts for outline in part.outlines]
+    reach = max([_reach(outline) for outline, _ in outlines] + [row.reach for row in bars])
+    return all(_can_be_seen(outline, reach, span, scope) for outline, span in outlines)
 
 
 def _can_be_seen(outline: Outline, reach: float, span: Span, scope: Scope) -> bool:
@@ -132,11 +133,13 @@ def _can_be_seen(outline: Outline, reach: float, span: Span, scope: Scope) -> bo
     thickness = sum(signed_area(ring) for ring in outline.rings) / size if size else 0.0
     if size > SMALLEST and thickness > VANISHING * reach:
         return True
+    style = scope.style
+    beside = f"{length_text(thickness, style)} thick, the section reaches {length_text(reach, style)}"
     scope.report.error(
         "too-far-apart",
         span,
-        f"the shape is too small to be computed with: {length_text(thickness, scope.style)} thick on average",
-        label=f"the section reaches {length_text(reach, scope.style)} from its origin",
+        "the shape is too small to be computed with",
+        label=f"{beside} from its origin" if size > SMALLEST else f"its size is {length_text(size, style)}",
         hint="a unit or a power of ten may be wrong",
     )
     return False

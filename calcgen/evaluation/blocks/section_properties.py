@@ -5,10 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterable, Mapping
 from dataclasses import replace
 
+from calcgen.evaluation.blocks.section_bars import PlacedBars
 from calcgen.evaluation.blocks.section_composite import bars_of, composite_findings, elastic, pieces_of
 from calcgen.evaluation.blocks.section_findings import Findings
 from calcgen.evaluation.blocks.section_materials import Materials
-from calcgen.evaluation.blocks.section_bars import PlacedBars
 from calcgen.evaluation.blocks.section_parts import Layout, PlacedPart
 from calcgen.evaluation.blocks.section_published import in_force, oriented
 from calcgen.evaluation.blocks.section_results import (
@@ -34,6 +34,7 @@ from calcgen.mechanics.second_route.residual import Residual
 from calcgen.mechanics.second_route.section import PUBLISHED, published_residuals, section_residuals
 from calcgen.mechanics.section import section_properties
 from calcgen.quantities.display import Style
+from calcgen.quantities.symbols import plain
 
 
 def section_result(
@@ -71,7 +72,11 @@ def section_result(
         },
         published=published_rows(found, style, axes),
         second_route=_second_route(name, found.residuals, axes),
-        notes=(*layout.notes, *_unpublished(layout, composite=composite), *_pieces(parts)),
+        notes=(
+            *layout.notes,
+            *_unpublished(layout, composite=composite),
+            *_pieces(parts, axes, composite=composite),
+        ),
         lines=_lines(block, scope),
         line=scope.report.source.line_number(block.head_span),
         span=block.head_span,
@@ -200,12 +205,24 @@ def _unpublished(layout: Layout, *, composite: bool) -> tuple[str, ...]:
     return (f"{' and '.join(profiles)} with the outline's properties, not the published ones",)
 
 
-def _pieces(parts: tuple[SectionPart, ...]) -> tuple[str, ...]:
-    """Say where a section does not hang together."""
-    count = separate_pieces([outline for part in parts for outline in part.outlines])
-    if count == 1:
-        return ()
-    return (f"in {count} separate pieces: its properties hold where something else makes them act together",)
+def _pieces(parts: tuple[SectionPart, ...], axes: Axes, *, composite: bool) -> tuple[str, ...]:
+    """Say where parts are taken to be joined, and where a section does not hang together."""
+    outlines = [outline for part in parts for outline in part.outlines]
+    count = separate_pieces(outlines)
+    notes = []
+    if count < len(outlines) and not composite:  # the properties named are those of one material
+        twist, warping = (
+            plain(next(p.name(axes) for p in PROPERTIES if p.key == key)) for key in ("I_t", "I_w")
+        )
+        notes.append(
+            f"parts that touch count as joined along their whole contact: {twist}, {warping}, shear centre "
+            "and areas of shear deformation hold where welds, glue or connectors make them so"
+        )
+    if count > 1:
+        notes.append(
+            f"in {count} separate pieces: its properties hold where something else makes them act together"
+        )
+    return tuple(notes)
 
 
 def _lines(block: SectionBlock, scope: Scope) -> tuple[tuple[str, Column, Column, int], ...]:

@@ -32,7 +32,7 @@ def oriented(table: Mapping[str, float], text: ShapeText, scope: Scope) -> dict[
 
 def quarter_turns(text: ShapeText, scope: Scope) -> int | None:
     """Return the quarter turns of a shape; None where it is turned by another angle."""
-    angle = quantity_of(text.turned, "number", scope) if text.turned is not None else None
+    angle = quantity_of(text.turned, "angle", scope) if text.turned is not None else None
     quarters = angle.si / (0.5 * math.pi) if angle is not None else 0.0
     return round(quarters) if abs(quarters - round(quarters)) <= 1e-9 else None
 

@@ -20,8 +20,8 @@ from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import from_si, measure
 from calcgen.text import Related, nearest
 
-TURNS = 1000.0  # an angle of more turns has lost the digits of where it ends
 HALVINGS = 40  # of the room for a size: more digits than are shown
+NO_ROOM = 1e-4  # of a size: less is not worth telling
 ZERO = 1e-12  # m: a smaller coordinate is rounding
 
 
@@ -141,12 +141,12 @@ def _room(
             return False
         return True
 
-    low, high = 0.0, fault.value
+    low, high = NO_ROOM * fault.value, fault.value
+    if not fits(low):
+        return ""
     for _ in range(HALVINGS):
         middle = 0.5 * (low + high)
         low, high = (middle, high) if fits(middle) else (low, middle)
-    if low == 0.0 or high == fault.value:
-        return ""
     return f"beside the other sizes there is room up to {_size(fault.parameter, high, form, style)}"
 
 
@@ -206,18 +206,10 @@ def placed_shape(shape: Shape, text: ShapeText, scope: Scope) -> Shape | None:
     turned = 0.0
     place: Point | None = (0.0, 0.0)
     if text.turned is not None:
-        angle = quantity_of(text.turned, "number", scope)
+        angle = quantity_of(text.turned, "angle", scope)
         if angle is None:
             return None
         turned = angle.si
-        if abs(turned) > TURNS * math.tau:
-            scope.report.error(
-                "number-too-large",
-                text.turned.span,
-                f"a turn by {show(angle, scope.style).text} has lost where it ends",
-                hint=f"the limit is {TURNS:.0f} full turns; write the angle that is left without them",
-            )
-            return None
     if text.at is not None:
         place = point_of(text.at, scope)
     if place is None:
@@ -239,10 +231,10 @@ def point_of(text: PointText, scope: Scope) -> Point | None:
 
 def length_text(value: float, style: Style) -> str:
     """Return a length, m, as sections show it."""
-    exact = value if abs(value) > ZERO else 0.0
-    return show(from_si(exact, "m").shown_in("in" if style.system == "US" else "mm"), style).text
+    return show(from_si(value, "m").shown_in("in" if style.system == "US" else "mm"), style).text
 
 
 def point_text(point: Point, style: Style) -> str:
     """Return a place in the section's own coordinates."""
-    return f"({length_text(point[0], style)}, {length_text(point[1], style)})"
+    x, y = (length_text(value if abs(value) > ZERO else 0.0, style) for value in point)
+    return f"({x}, {y})"

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Sequence
+from typing import Any
 
 import numpy as np
 
@@ -32,14 +33,19 @@ def joined(outlines: Sequence[Outline]) -> tuple[Outline, ...]:
     corners = np.concatenate([part.exterior for part in outlines])
     size = float(np.ptp(corners, axis=0).max())
     region = union_all([Polygon(part.exterior, part.holes) for part in outlines])
-    for step in (1.0, -3.0, 2.0):  # closes slits between edges that touch but for rounding; parts mere points
+    for step in (1.0, -3.0):  # closes slits between edges that touch but for rounding; parts mere points
         region = region.buffer(step * SNAP * size, join_style="mitre")
-    pieces = [orient(polygon) for polygon in getattr(region, "geoms", (region,))]
+    grown = [piece.buffer(2.0 * SNAP * size, join_style="mitre") for piece in _polygons(region)]
+    pieces = [orient(polygon) for piece in grown for polygon in _polygons(piece)]
     found = [
         Outline(np.array(piece.exterior.coords[:-1]), tuple(np.array(r.coords[:-1]) for r in piece.interiors))
         for piece in pieces
     ]
     return tuple(sorted(found, key=lambda piece: (piece.bounds.left, piece.bounds.bottom)))
+
+
+def _polygons(region: Any) -> tuple[Any, ...]:
+    return tuple(polygon for polygon in getattr(region, "geoms", (region,)) if not polygon.is_empty)
 
 
 def along_walls(outlines: Sequence[Outline]) -> FloatArray:
@@ -128,8 +134,9 @@ def _simplified(ring: FloatArray, tolerance: float) -> FloatArray:
     ring = np.roll(ring, -first, axis=0)
     closed = np.concatenate((ring, ring[:1]))
     kept = np.zeros(len(closed), dtype=bool)
-    kept[[0, _farthest(ring, ring[0]), -1]] = True
-    kept |= _beyond(closed, np.flatnonzero(kept), 0.0)  # three corners or more, however small the ring
+    second = _farthest(ring, ring[0])
+    kept[[0, second, -1]] = True
+    kept[1 + _farthest_from_chord(closed[1:-1], ring[0], ring[second])] = True  # three, however small the ring
     while (further := _beyond(closed, np.flatnonzero(kept), tolerance)).any():
         kept |= further
         if np.count_nonzero(kept) > MOST_CORNERS + 1:
@@ -141,6 +148,11 @@ def _simplified(ring: FloatArray, tolerance: float) -> FloatArray:
 def _farthest(ring: FloatArray, place: FloatArray) -> int:
     distance = np.hypot(*(ring - place).T)
     return int(np.argmax(distance >= distance.max() * (1.0 - 1e-9)))  # the first of equals
+
+
+def _farthest_from_chord(places: FloatArray, start: FloatArray, end: FloatArray) -> int:
+    along, to_place = end - start, places - start
+    return int(np.argmax(np.abs(along[0] * to_place[:, 1] - along[1] * to_place[:, 0])))
 
 
 def _beyond(closed: FloatArray, chosen: IntArray, tolerance: float) -> BoolArray:

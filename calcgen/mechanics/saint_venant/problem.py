@@ -2,13 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 
 import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.delaunay import Size, cross
+from calcgen.mechanics.delaunay import BoolArray, Size, cross
 from calcgen.mechanics.mesh import Mesh, refined, triangulate
 from calcgen.mechanics.outline import Outline
 from calcgen.mechanics.saint_venant.boundary import mean_thickness
@@ -29,11 +29,14 @@ REFINEMENTS = 6
 SHARE = 0.7  # of the gap: so much of it lies in the triangles that are refined
 SIDES_PER_THICKNESS = 0.8
 SIDES_PER_ROOT_OF_AREA = 7.0
-SIDES = 2000.0  # on the edge, about: those of a foil may be longer than it is thick
+LONG = 3.0  # of the mean thickness: triangles that are longer may be thin in a slender outline
+SLENDER = 600.0  # length of all edges over mean thickness: beyond, triangles may be thin
 RE_ENTRANT = 0.25 * np.pi  # a corner that turns inwards by more has a singular stress, and small triangles
 FINEST = 0.08  # of the mean thickness: triangles at such a corner
 MOST_RE_ENTRANT = 60  # with more of them refinement is left to the bounds
-TRIANGLES = 15_000  # no refinement beyond
+MOST_SHARP = 100  # with more of them edges of a slender outline are not graded
+SHARP = 0.25 * np.pi  # a corner that turns by more disturbs the stress in a slender wall
+TRIANGLES = 6_000  # of all meshes together: no refinement beyond
 
 
 @dataclass(frozen=True, eq=False)
@@ -106,42 +109,59 @@ def _enclosed(mesh: Mesh, hole: int) -> float:
 
 def meshed_for_torsion(outlines: tuple[Outline, ...]) -> tuple[Mesh, FloatArray, Torsion]:
     """Mesh, and refine until the bounds of J are close; return mesh, its stiffness and the torsion on it."""
-    thickness = mean_thickness(outlines)
-    area = sum(_area(part) for part in outlines)
-    corners = re_entrant_corners(outlines)
-    mesh = triangulate(
-        outlines,
-        Size(
-            everywhere=max(
-                min(thickness / SIDES_PER_THICKNESS, area**0.5 / SIDES_PER_ROOT_OF_AREA),
-                2.0 * area / thickness / SIDES,
-            ),
-            near=corners if len(corners) <= MOST_RE_ENTRANT else None,
-            at_points=FINEST * thickness,
-        ),
-    )
+    size = _size(outlines)
+    mesh = triangulate(outlines, size)
     local = stiffness(mesh)
     found = torsion(mesh, local)
+    triangles = len(mesh.triangles)
     for _ in range(REFINEMENTS):
-        if found.J_upper - found.J_lower <= GAP * found.J_lower or len(mesh.triangles) > TRIANGLES:
+        if found.J_upper - found.J_lower <= GAP * found.J_lower or triangles > TRIANGLES:
             break
         order = np.argsort(-found.gap, kind="stable")
         enough = int(np.searchsorted(np.cumsum(found.gap[order]), SHARE * found.gap.sum())) + 1
         marked = np.zeros(len(order), dtype=bool)
         marked[order[:enough]] = True
-        mesh = refined(mesh, marked)
+        mesh = refined(mesh, marked, size.thin_beyond)
+        triangles += len(mesh.triangles)
         local = stiffness(mesh)
         found = torsion(mesh, local)
     return mesh, local, found
 
 
+def _size(outlines: Sequence[Outline]) -> Size:
+    """Return the size of triangles: of slender outlines that of edges only, which are short at sharp corners.
+
+    Between those the stress of a slender wall is quadratic across it and hardly changes along it, so that long
+    triangles from edge to edge hold it.
+    """
+    thickness = mean_thickness(outlines)
+    area = sum(_area(part) for part in outlines)
+    if 2.0 * area / thickness > SLENDER * thickness:
+        sharp = _corners_that_turn(outlines, lambda turn: np.abs(turn) > SHARP)
+        few = len(sharp) <= MOST_SHARP
+        return Size(
+            near=sharp if few else None, at_points=FINEST * thickness, thin_beyond=LONG * thickness
+        )
+    corners = re_entrant_corners(outlines)
+    return Size(
+        everywhere=min(thickness / SIDES_PER_THICKNESS, area**0.5 / SIDES_PER_ROOT_OF_AREA),
+        near=corners if len(corners) <= MOST_RE_ENTRANT else None,
+        at_points=FINEST * thickness,
+    )
+
+
 def re_entrant_corners(outlines: Sequence[Outline]) -> FloatArray:
     """Return the corners (k, 2) at which the outline turns inwards sharply."""
+    return _corners_that_turn(outlines, lambda turn: turn < -RE_ENTRANT)
+
+
+def _corners_that_turn(outlines: Sequence[Outline], so: Callable[[FloatArray], BoolArray]) -> FloatArray:
+    """Return the corners (k, 2) that the outline turns at, to the left positive, as is asked."""
     found = []
     for part in outlines:
         for ring in part.rings:
             into, out_of = ring - np.roll(ring, 1, axis=0), np.roll(ring, -1, axis=0) - ring
-            found.append(ring[np.arctan2(cross(into, out_of), np.sum(into * out_of, axis=1)) < -RE_ENTRANT])
+            found.append(ring[so(np.arctan2(cross(into, out_of), np.sum(into * out_of, axis=1)))])
     return np.concatenate(found)
 
 

@@ -26,8 +26,8 @@ def field_residuals(
     """Compare ∫σ dA, -∫σ y dA and ∫σ x dA, bars included, with N, M and M_lat.
 
     Each difference is divided by the integral of the same thing's magnitude; for residual stress, which has
-    no forces, of the stress before unloading. x and y run from `about`, m: the field's reference point where
-    it is not given.
+    no forces, of what was loaded and what was taken away. x and y run from `about`, m: the field's reference
+    point where it is not given.
     """
     x_0, y_0 = about or (field.plane.x_bar, field.plane.y_bar)
     places, terms, magnitudes = _terms(field)
@@ -47,7 +47,7 @@ def _residual(what: str, terms: FloatArray, magnitudes: FloatArray, given: float
 
 
 def _terms(field: StressField) -> tuple[FloatArray, FloatArray, FloatArray]:
-    """Places (n, 2), m, of fibres and bars, the force in each, N, and its magnitude before unloading."""
+    """Places (n, 2), m, of fibres and bars, the force in each, N, and its magnitude, loaded and unloaded."""
     plane = field.plane
     angle = math.atan2(plane.g_x, plane.g_y)  # turning by it brings the steepest strain upright
     cos, sin = math.cos(angle), math.sin(angle)
@@ -63,17 +63,18 @@ def _terms(field: StressField) -> tuple[FloatArray, FloatArray, FloatArray]:
         here = np.column_stack((bundle.x, bundle.y)) @ upright.T + reference
         loaded = bundle.area * _stress(piece.law, s)
         places.append(here)
-        forces.append(loaded - bundle.area * _taken_away(piece.law, field.unloaded, here))
-        magnitudes.append(np.abs(loaded))
+        away = bundle.area * _taken_away(piece.law, field.unloaded, here)
+        forces.append(loaded - away)
+        magnitudes.append(np.abs(loaded) + np.abs(away))
     for group in field.bars:
         s = plane.at(group.points)
-        stress, away = _stress(group.law, s), _taken_away(group.law, field.unloaded, group.points)
+        stress, taken = _stress(group.law, s), _taken_away(group.law, field.unloaded, group.points)
         if group.displaced is not None:
             stress = stress - _stress(group.displaced, s)
-            away = away - _taken_away(group.displaced, field.unloaded, group.points)
+            taken = taken - _taken_away(group.displaced, field.unloaded, group.points)
         places.append(group.points)
-        forces.append(group.area * (stress - away))
-        magnitudes.append(np.abs(group.area * stress))
+        forces.append(group.area * (stress - taken))
+        magnitudes.append(group.area * (np.abs(stress) + np.abs(taken)))
     return np.concatenate(places), np.concatenate(forces), np.concatenate(magnitudes)
 
 

@@ -1,0 +1,240 @@
+"""One crossing of a beam in one direction: each effect as cubics in the position of the train.
+
+While every axle stays in its element, an effect at a place is one cubic in the position, because each
+influence line is; under an axle that moves along, the moment is a quartic. Nothing is sampled.
+"""
+
+from __future__ import annotations
+
+from dataclasses import dataclass
+from functools import cached_property
+
+import numpy as np
+
+from calcgen.mechanics.arrays import FloatArray
+from calcgen.mechanics.beam import Quantity, piecewise
+from calcgen.mechanics.beam.results import TIE, Side
+from calcgen.mechanics.combinations import ReactionPart
+from calcgen.mechanics.influence import Influence, IntArray, V, reaction_index, shift
+from calcgen.mechanics.trains import Direction, Position, Train, sense
+
+_SAMPLES = (1.0 - np.cos(np.pi * (np.arange(4.0) + 0.5) / 4)) / 2  # Chebyshev: four values fix a cubic
+_FROM_SAMPLES = np.linalg.inv(_SAMPLES[:, None] ** np.arange(4.0)).T
+_BERNSTEIN = np.array([[1, 0, 0, 0], [1, 1 / 3, 0, 0], [1, 2 / 3, 1 / 3, 0], [1, 1, 1, 1]])
+
+
+@dataclass(frozen=True, eq=False)
+class Cubics:
+    """Effects at k places as cubics (k, j, 4) on intervals of the position, `starts` and `lengths` (k, j)."""
+
+    starts: FloatArray
+    lengths: FloatArray
+    coefficients: FloatArray
+
+
+@dataclass(frozen=True, eq=False)
+class Passage:
+    """A train that crosses in one direction.
+
+    Its position u is the place of the first axle; it is cut where an axle meets a node, so that in each of j
+    intervals each of k axles stays in one element or off the beam.
+    """
+
+    influence: Influence
+    train: Train
+    direction: Direction
+
+    @cached_property
+    def offsets(self) -> FloatArray:
+        """Place of each axle less that of the first, (k,), m."""
+        return np.array([-sense(self.direction) * offset for offset in self.train.offsets])
+
+    @cached_property
+    def cuts(self) -> FloatArray:
+        """Positions between which no axle meets a node, (j + 1,)."""
+        found: FloatArray = np.unique(self.influence.nodes[:, None] - self.offsets)
+        apart = np.diff(found, prepend=-np.inf) > 1e-3 * self.influence.model.tolerance
+        return np.asarray(found[apart])
+
+    @cached_property
+    def elements(self) -> IntArray:
+        """Element of each axle in each interval, (k, j); -1 off the beam."""
+        nodes = self.influence.nodes
+        x = (self.cuts[:-1] + self.cuts[1:]) / 2 + self.offsets[:, None]
+        found = np.searchsorted(nodes, x) - 1
+        return np.where((x < nodes[0]) | (x > nodes[-1]), -1, found)
+
+    @cached_property
+    def _weights(self) -> FloatArray:
+        """Part of an axle's load that acts in each plane of the influence lines, (r,)."""
+        return np.array(
+            [1.0 if plane == "vertical" else self.train.lateral for plane in self.influence.planes]
+        )
+
+    def _summed(self, lines: FloatArray) -> FloatArray:
+        """Sum lines (..., r, n, 4) over the axles: cubics (..., j, 4) in the part of each interval passed."""
+        nodes = self.influence.nodes
+        lines = np.einsum("...rnk,r->...nk", lines, self._weights)
+        lengths = np.diff(nodes)
+        total = np.zeros((*lines.shape[:-2], len(self.cuts) - 1, 4))
+        for load, offset, elements in zip(self.train.axles, self.offsets, self.elements, strict=True):
+            on = np.flatnonzero(elements >= 0)
+            e = elements[on]
+            moved = shift(
+                (self.cuts[on] + offset - nodes[e]) / lengths[e], np.diff(self.cuts)[on] / lengths[e]
+            )
+            total[..., on, :] += load * np.einsum("...jk,jkl->...jl", lines[..., e, :], moved)
+        return total
+
+    @cached_property
+    def states(self) -> FloatArray:
+        """State at the start of each element under the train, (n, 4, p, j, 4)."""
+        return self._summed(self.influence.states)
+
+    def reaction(self, support: int, part: ReactionPart) -> Cubics:
+        own, which = reaction_index(part)
+        cubics = self._summed(self.influence.support_forces[support, own, which])
+        return Cubics(self.cuts[None, :-1], np.diff(self.cuts)[None], cubics[None])
+
+    def _share(self, rows: FloatArray) -> FloatArray:
+        """Give what an axle of unit load adds to a quantity at a distance behind it: powers of it, (4,)."""
+        own = [list(self.influence.model.planes).index(plane) for plane in self.influence.planes]
+        return np.asarray(-rows[:, V, own] @ self._weights)
+
+    def at(self, quantity: Quantity, element: int, x: FloatArray) -> Cubics:
+        """Give the effects at places (k,) within one element."""
+        rows = self.influence.rows(quantity, element)
+        sigma = x - self.influence.nodes[element]
+        row = np.tensordot(sigma[:, None] ** np.arange(4.0), rows, axes=1)
+        cubics = np.einsum("sip,ipjk->sjk", row, self.states[element])
+        shared = (self.elements == element).any(axis=0)
+        near, far = np.flatnonzero(shared), np.flatnonzero(~shared)
+        starts, lengths = np.broadcast_to(self.cuts[:-1], cubics.shape[:2]), np.diff(self.cuts)
+        # Where an axle shares the element, the position is cut where an axle meets the place, too.
+        low, high = self.cuts[near, None], self.cuts[near + 1, None]
+        meets = np.clip((x[:, None] - self.offsets)[:, None, :], low, high)
+        ends = np.broadcast_to(low, (*meets.shape[:2], 1)), np.broadcast_to(high, (*meets.shape[:2], 1))
+        cuts = np.sort(np.concatenate([ends[0], meets, ends[1]], axis=2), axis=2)
+        parts = np.diff(cuts, axis=2)
+        u = cuts[..., :-1, None] + parts[..., None] * _SAMPLES
+        values = piecewise.values(
+            cubics[:, near, None, None, :], (u - low[..., None]) / lengths[near, None, None]
+        )
+        share = self._share(rows)
+        for load, offset, elements in zip(
+            self.train.axles, self.offsets, self.elements[:, near], strict=True
+        ):
+            d = x[:, None, None, None] - (u + offset)
+            passed = (elements == element)[:, None, None] & (d > 0.0)
+            values += load * np.where(passed, piecewise.values(share, d), 0.0)
+        k = len(x)
+        return Cubics(
+            np.concatenate([starts[:, far], cuts[..., :-1].reshape(k, -1)], axis=1),
+            np.concatenate([np.broadcast_to(lengths[far], (k, len(far))), parts.reshape(k, -1)], axis=1),
+            np.concatenate([cubics[:, far], (values @ _FROM_SAMPLES).reshape(k, -1, 4)], axis=1),
+        )
+
+    def under_axles(
+        self, quantity: Quantity, start: float, end: float
+    ) -> list[tuple[float, float, Position]]:
+        """Give extremes of M or V at a place that moves with an axle, between `start` and `end`."""
+        found: list[tuple[float, float, Position]] = []
+        nodes, lengths = self.influence.nodes, np.diff(self.cuts)
+        for axle, (offset, elements) in enumerate(zip(self.offsets, self.elements, strict=True)):
+            low = np.clip((start - offset - self.cuts[:-1]) / lengths, 0.0, 1.0)
+            high = np.clip((end - offset - self.cuts[:-1]) / lengths, 0.0, 1.0)
+            on = np.flatnonzero((elements >= 0) & (high > low))
+            if not len(on):
+                continue
+            polynomials = np.array([self._under(quantity, axle, int(j)) for j in on])  # (on, sides, 6)
+            for side in range(polynomials.shape[1]):
+                t, values = _stationary(polynomials[:, side], low[on], high[on])
+                for index in (np.argmax(values), np.argmin(values)):
+                    row, column = np.unravel_index(index, values.shape)
+                    u = float(self.cuts[on[row]] + lengths[on[row]] * t[row, column])
+                    place = min(max(u + float(offset), float(nodes[0])), float(nodes[-1]))
+                    part = float(t[row, column])
+                    limit: Side | None = "right" if part == 0.0 else "left" if part == 1.0 else None
+                    position = Position(u, self.direction, limit)
+                    found.append((float(values[row, column]), place, position))
+        return found
+
+    def _under(self, quantity: Quantity, axle: int, interval: int) -> FloatArray:
+        """Give the effect just before and just behind a moving axle in an interval: polynomials (2, 6)."""
+        element = int(self.elements[axle, interval])
+        rows = self.influence.rows(quantity, element)
+        distance = self.cuts[interval] + self.offsets[axle] - self.influence.nodes[element]
+        length = self.cuts[interval + 1] - self.cuts[interval]
+        # The powers of the distance from the element's start are polynomials in the part passed.
+        moving = np.tensordot(shift(distance, length), rows, axes=([0], [0]))  # (power of t, part, plane)
+        cubics = self.states[element][:, :, interval]
+        result = np.zeros(piecewise.DEGREE + 2)
+        for power in range(4):
+            result[power : power + 4] += np.einsum("ip,ipk->k", moving[power], cubics)
+        share = self._share(rows)
+        for other, load in enumerate(self.train.axles):
+            behind = self.offsets[axle] - self.offsets[other]
+            if self.elements[other, interval] == element and behind > 0.0:
+                result[0] += load * float(piecewise.values(share, np.array(behind)))
+        own = np.zeros_like(result)
+        own[0] = self.train.axles[axle] * share[0]
+        return np.array([result, result + own])[:, : piecewise.DEGREE + 1]
+
+
+def nothing(places: int) -> FloatArray:
+    """No train on the beam: no effect, at no position."""
+    found = np.zeros((2, 4, places))
+    found[:, 1] = np.nan
+    return found
+
+
+def bettered(cubics: Cubics, passage: Passage, known: FloatArray, noise: float) -> FloatArray:
+    """Better what is known of k places, (2, 4, k), by the extremes of their cubics."""
+    c = cubics.coefficients
+    control = c @ _BERNSTEIN.T  # a cubic stays between its control values, and begins and ends at two of them
+    control[cubics.lengths == 0.0] = 0.0
+    ends = control[..., [0, 3]]
+    t = np.zeros((*c.shape[:2], 4))
+    t[..., 1] = 1.0
+    values = ends[..., [0, 1, 0, 0]]
+    best, least = (bound(ends, axis=(1, 2))[:, None] for bound in (np.max, np.min))
+    curved = (control.max(axis=-1) > best) | (control.min(axis=-1) < least)
+    t[curved, 2:] = inner = _turns(c[curved])
+    values[curved, 2:] = piecewise.values(c[curved][:, None], inner)
+    values[np.abs(values) <= noise] = 0.0
+    k = len(values)
+    u = (cubics.starts[..., None] + cubics.lengths[..., None] * t).reshape(k, -1)
+    limit = ((t == 0.0) * 1.0 - (t == 1.0) * 1.0).reshape(k, -1)
+    values = values.reshape(k, -1)
+    result, each = known.copy(), np.arange(k)
+    for row, sign in ((0, 1.0), (1, -1.0)):
+        best = (sign * values).max(axis=1)
+        # Of equal positions the first: rounding must not choose.
+        first = np.where(sign * values >= (best - TIE * np.abs(best))[:, None], u, np.inf).argmin(axis=1)
+        left = np.full(k, float(passage.direction == "left"))
+        new = np.stack([values[each, first], u[each, first], left, limit[each, first]])
+        result[row] = np.where(best > sign * known[row, 0] * (1.0 + TIE), new, known[row])
+    return result
+
+
+def _turns(cubics: FloatArray) -> FloatArray:
+    """Give the stationary points in (0, 1) of cubics (k, 4), (k, 2), and 0 for each that is not there."""
+    c = cubics.T
+    with np.errstate(divide="ignore", invalid="ignore"):
+        # Both roots of c_1 + 2 c_2 t + 3 c_3 t², without taking like numbers from each other.
+        q = -(c[2] + np.copysign(np.sqrt(c[2] ** 2 - 3.0 * c[1] * c[3]), c[2]))
+        t = np.stack([q / (3.0 * c[3]), c[1] / q], axis=-1)
+    return np.where((t > 0.0) & (t < 1.0), t, 0.0)
+
+
+def _stationary(polynomials: FloatArray, low: FloatArray, high: FloatArray) -> tuple[FloatArray, FloatArray]:
+    """Give ends and stationary points of polynomials (k, 6) in [low, high]: t and values, (k, 6) each."""
+    t = np.repeat(low[:, None], piecewise.DEGREE + 1, axis=1)
+    t[:, 1] = high
+    below, above = piecewise.bounds(polynomials)
+    ends = piecewise.values(polynomials[:, None], t[:, :2])
+    for number in np.flatnonzero((above > ends.max()) | (below < ends.min())):
+        inner = piecewise.roots(piecewise.derivative(polynomials[number]))
+        inner = inner[(inner > low[number]) & (inner < high[number])]
+        t[number, 2 : 2 + len(inner)] = inner
+    return t, piecewise.values(polynomials[:, None], t)
