@@ -11,10 +11,12 @@ from calcgen.evaluation.blocks.inputs import evaluate_inputs
 from calcgen.evaluation.blocks.prose import evaluate_prose, evaluate_sheet
 from calcgen.evaluation.blocks.section import evaluate_section
 from calcgen.evaluation.blocks.stress import evaluate_stress
+from calcgen.evaluation.blocks.table import evaluate_table
 from calcgen.evaluation.blocks.working import evaluate_working
 from calcgen.evaluation.checks import Labels
 from calcgen.evaluation.citations import check_citations
 from calcgen.evaluation.formulas import shown
+from calcgen.evaluation.lookups import lookups_of
 from calcgen.evaluation.order import feeds_of, in_order
 from calcgen.evaluation.results import (
     AssumptionsResult,
@@ -38,6 +40,7 @@ from calcgen.language.blocks.inputs import InputsBlock
 from calcgen.language.blocks.section import SectionBlock
 from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.blocks.stress import StressBlock
+from calcgen.language.blocks.table import TableBlock
 from calcgen.language.blocks.working import Derivation, WorkingBlock
 from calcgen.language.calc import Block, Calc, FailedBlock, Prose
 from calcgen.profiles.catalogue import Catalogue
@@ -151,6 +154,7 @@ def evaluate_calc(calc: Calc, setting: Setting, upstream: Mapping[str, Scope]) -
         depends=tuple(Origin(f.calc, f.name.dotted) for f in feeds_of(calc)),
         diagnostics=diagnostics,
         standing=_standing(checks, diagnostics),
+        lookups=lookups_of(calc, segments, scope),
     )
     return result, scope
 
@@ -175,6 +179,8 @@ def _evaluate_block(
             return evaluate_beam(segment, scope)
         case StressBlock():
             return evaluate_stress(segment, scope, labels)
+        case TableBlock():
+            return evaluate_table(segment, scope)
         case FailedBlock():
             return segment
     raise AssertionError(segment)
@@ -188,7 +194,7 @@ def _defined_names(calc: Calc) -> frozenset[str]:
                 names.update(i.target.name for i in block.items)
             case WorkingBlock():
                 names.update(i.target.name for i in block.items if isinstance(i, Derivation))
-            case SectionBlock() | BeamBlock() | StressBlock():
+            case SectionBlock() | BeamBlock() | StressBlock() | TableBlock():
                 names.add(block.target.name)
             case _:
                 pass

@@ -37,6 +37,10 @@ _COMPARE: dict[str, Callable[[float, float], bool]] = {
 }
 
 
+_OF_VALUES = frozenset({"no-such-head", "outside-beam", "table-empty-cell", "table-range"})
+"""Faults in reading a block that depend on values alone, as arithmetic does."""
+
+
 @dataclass(frozen=True)
 class Evaluator:
     """Evaluates expressions over a scope. `quiet` leaves arithmetic faults unreported."""
@@ -99,7 +103,7 @@ class Evaluator:
             if any(v is None for v in values):
                 return None
             arguments = tuple(v for v in values if v is not None)
-        return self.scope.value(node, arguments)
+        return self.scope.value(node, arguments, self.report.without(_OF_VALUES) if self.quiet else None)
 
     def _unary(self, node: Unary) -> Measure | None:
         operand = self.measure(node.operand)

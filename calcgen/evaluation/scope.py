@@ -19,8 +19,11 @@ _CONSTANT_VALUES = {
 }
 
 
+_CALLED = frozenset({"table"})  # kinds that are read by their name with arguments
+
+
 class Thing(Protocol):
-    """What a block defines: its results are read by dotted names."""
+    """What a block defines: its results are read by dotted names, those of a table by its name, called."""
 
     @property  # read-only, so that a frozen type fits
     def kind(self) -> str:
@@ -91,12 +94,15 @@ class Scope:
             return None
         if head in self.things:
             thing = self.things[head]
-            if len(name.parts) == 1:
+            called = thing.kind in _CALLED
+            if len(name.parts) == 1 and not (called and arguments is not None):
                 to.error(
                     "block-is-no-value",
                     name.span,
-                    f"'{head}' is a {thing.kind}, not a value",
-                    hint=f"name one of its results after a dot: {head}.…",
+                    f"'{plain(head)}' is a {thing.kind}, not a value",
+                    hint=f"look up one of its values: {head}(row, column)"
+                    if called
+                    else f"name one of its results after a dot: {head}.…",
                 )
                 return None
             return thing.read(name, arguments, to)

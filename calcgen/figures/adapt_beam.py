@@ -8,7 +8,7 @@ from itertools import pairwise
 from calcgen.evaluation.results import BeamResult, CombinationResult, GroupResult, LoadRow
 from calcgen.figures.beam import BeamDrawing, Stretch
 from calcgen.figures.beam_diagrams import Diagram, Extreme
-from calcgen.figures.beam_loads import CoupleLoad, Distributed, Load, LoadCase, PointLoad
+from calcgen.figures.beam_loads import CoupleLoad, Distributed, Effect, Load, LoadCase, PointLoad
 from calcgen.figures.beam_supports import Kind, Support
 from calcgen.mechanics.beam import Quantity
 from calcgen.mechanics.combinations import Envelope, Governing
@@ -141,6 +141,8 @@ def _load(row: LoadRow, style: Style) -> Load:
         return PointLoad(start, row.values[0], label)
     if row.kind == "moment":
         return CoupleLoad(start, end, label, clockwise=row.values[0] >= 0)
+    if row.kind == "gradient":
+        return Effect(start, end, label)
     return Distributed(start, end, row.values[0], row.values[-1], label)
 
 

@@ -8,14 +8,14 @@ from pathlib import PurePosixPath
 
 from markdown_it.token import Token
 
-from calcgen.language.blocks import LATER, NAMED, READERS, Block
+from calcgen.language.blocks import LATER, NAMED, READERS, ROWED, Block
 from calcgen.language.blocks.reading import BlockText, not_available_yet
 from calcgen.language.calc import Calc, FailedBlock, Prose
 from calcgen.language.errors import ReadingError
-from calcgen.language.lines import read_lines
+from calcgen.language.lines import read_lines, read_rows, reference_column
 from calcgen.language.markdown import parser
 from calcgen.language.names import canonical_name, defined_names, name_end
-from calcgen.language.nodes import WORDS, Named
+from calcgen.language.nodes import WORDS, Column, Named
 from calcgen.language.prose import read_prose
 from calcgen.text import Diagnostic, Report, SourceFile, Span, error, nearest
 
@@ -137,12 +137,13 @@ def _read_fence(fence: Token, report: Report) -> tuple[Block | FailedBlock, froz
             raise _unclosed(head_span)
         if kind in LATER:
             raise not_available_yet(f"the block '{kind}'", head)
-        name = _block_name(kind, head, source)
+        named, reference = _split_head(kind, head, source)
+        name = _block_name(kind, named, source)
     except ReadingError as fault:
         fault.report_to(report)
         return FailedBlock(kind, span), _names_in(fence, source)
-    lines = read_lines(source, content, report)
-    outcome = READERS[kind](BlockText(kind, name, head, span, lines), report)
+    lines = read_rows(source, content) if kind in ROWED else read_lines(source, content, report)
+    outcome = READERS[kind](BlockText(kind, name, head, span, lines, reference), report)
     return outcome.block or FailedBlock(kind, span), outcome.failed_names
 
 
@@ -154,6 +155,16 @@ def _content(source: SourceFile, first: int, last: int, indent: int) -> list[Spa
         blank = min(indent, len(text) - len(text.lstrip(" ")))
         spans.append(Span(start + blank, start + len(text)))
     return spans
+
+
+def _split_head(kind: str, head: Span, source: SourceFile) -> tuple[Span, Column | None]:
+    """Split the head of a table at its '|': kind and name, and where it comes from."""
+    text = source.slice(head)
+    bar = text.find("|") if kind in ROWED else -1
+    if bar < 0:
+        return head, None
+    named = Span(head.start, head.start + len(text[:bar].rstrip()))
+    return named, reference_column(source, Span(head.start + bar + 1, head.end))
 
 
 def _block_name(kind: str, head: Span, source: SourceFile) -> Named | None:

@@ -1,4 +1,4 @@
-"""Lines of a live block: three columns, continuation lines, comments, citations."""
+"""Lines of a live block: three columns, continuation lines, comments, citations; rows of a table."""
 
 from __future__ import annotations
 
@@ -20,7 +20,8 @@ class Line:
 
     Attributes
     ----------
-    columns : the columns as typed, one to three; the first is the statement and may be empty.
+    columns : the columns as typed, one to three; the first is the statement and may be empty. The row of a
+        table has any number, and no annotations.
     span : from the first character to the last.
     """
 
@@ -67,6 +68,26 @@ def read_lines(source: SourceFile, physical: Iterable[Span], report: Report) -> 
             )
             gathered.append([span])
     return tuple(_line(source, spans, report) for spans in gathered)
+
+
+def read_rows(source: SourceFile, physical: Iterable[Span]) -> tuple[Line, ...]:
+    """Split the rows of a table at each '|'; a row is one physical line, and may start with white space."""
+    rows: list[Line] = []
+    for span in physical:
+        text = source.slice(span)
+        if not text.strip() or text.startswith("#"):
+            continue
+        cells = tuple(Pieced.join(source, [cell]) for cell in _split(source, span))
+        whole = _trimmed(source, span)
+        nothing = Column("", Span(whole.end, whole.end))
+        rows.append(Line(cells, Annotations(nothing, nothing), whole))
+    return tuple(rows)
+
+
+def reference_column(source: SourceFile, span: Span) -> Column:
+    """Return a text that says where something comes from, with its citations."""
+    text = Pieced.join(source, [_trimmed(source, span)])
+    return _cited(text, _column(text))
 
 
 def _line(source: SourceFile, physical: list[Span], report: Report) -> Line:

@@ -92,8 +92,8 @@ class Governs:
 class Band:
     """An envelope for drawing: smallest and largest value (k,) at places `x`, with both sides of nodes.
 
-    What governs is told apart at these places; a stretch ends midway between two of them. The position of a
-    train changes from place to place and is not told.
+    What governs is told apart at the places within elements; a stretch ends midway between two of them, or at
+    a node. The position of a train changes from place to place and is not told: ask `Effects.at`.
     """
 
     x: FloatArray

@@ -28,10 +28,10 @@ class Overlap:
 
 @dataclass(frozen=True)
 class SelfContact:
-    """Where a ring meets itself: the corners at which the two edges start, and the place, m."""
+    """Where a ring meets itself: the corners at which each of two edges starts and ends, and the place, m."""
 
-    first: int
-    second: int
+    first: tuple[int, int]
+    second: tuple[int, int]
     place: Point
 
 
@@ -52,7 +52,7 @@ def self_contact(corners: Sequence[Point]) -> SelfContact | None:
     from shapely.ops import nearest_points
 
     place, _ = nearest_points(*(LineString([start[edge], end[edge]]) for edge in pair))
-    first, second = (int(kept[edge]) for edge in pair)
+    first, second = ((int(kept[edge]), int(kept[(edge + 1) % len(kept)])) for edge in pair)
     return SelfContact(first, second, (float(place.x), float(place.y)))
 
 

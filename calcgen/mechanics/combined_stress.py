@@ -23,7 +23,7 @@ import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.field import Piece, StressField
-from calcgen.mechanics.shear import WORK, Cuts
+from calcgen.mechanics.shear import WORK, Cuts, Direction
 from calcgen.mechanics.stress import BoolArray
 from calcgen.mechanics.wall_shear import WallFlow, WallTorsion
 from calcgen.mechanics.walls import Graph
@@ -32,6 +32,7 @@ Description: TypeAlias = Literal["outline", "walls"]
 NormalStress: TypeAlias = Callable[[Piece, FloatArray], FloatArray]  # of a piece, at points (n, 2): (n,), Pa
 TorsionStress: TypeAlias = Callable[[FloatArray], FloatArray]  # at points (n, 2): magnitudes (n,), Pa
 
+TOUCHING = 1e-9  # of a cut's length: pieces closer than this touch
 TIED = 1e-9  # relatively: of stations closer than this the first is taken
 INTERVALS = 48  # of a cut that passes in and out of the material very often, about so many have stations
 ENDS_AND_MIDDLE = np.array([0.0, 0.5, 1.0])
@@ -106,17 +107,29 @@ def outline_stations(
     upright: Cuts,
     sigma: NormalStress,
     torsion: TorsionStress | None = None,
+    *,
+    alone: Direction | None = None,
 ) -> Stations:
     """Evaluate both stresses over the actual outline of pieces, whose cuts under V and V_lat are given.
 
     Stations lie on the cuts of both profiles, so the places of extremes are as fine as these. Where a cut
     crosses a gap its stress counts as none.
+
+    Where one force acts alone, `alone` names the cuts across it: 'level' for V, 'upright' for V_lat. The cuts
+    along it then count only where they are the shorter, as in the flange of an I under V: the mean over a cut
+    as long as a web tells nothing of the stress at one place on it.
     """
     of_piece, points, inside = _places(level, upright)
-    tau = np.hypot(
-        _mean(level, points[:, 1], inside[:, 1], of_piece),
-        _mean(upright, points[:, 0], inside[:, 0], of_piece),
-    )
+    level_tau = _mean(level, points[:, 1], inside[:, 1], of_piece)
+    upright_tau = _mean(upright, points[:, 0], inside[:, 0], of_piece)
+    if alone is not None and len(points) * len(level.start) <= WORK:
+        across = _extent(level, points[:, 1], inside[:, 1], points[:, 0] - upright.origin)
+        down = _extent(upright, points[:, 0], inside[:, 0], level.origin - points[:, 1])
+        if alone == "level":
+            upright_tau = np.where(down < across, upright_tau, 0.0)
+        else:
+            level_tau = np.where(across < down, level_tau, 0.0)
+    tau = np.hypot(level_tau, upright_tau)
     if torsion is not None:
         tau = tau + np.abs(torsion(points))
     normal = np.empty(len(points))
@@ -211,6 +224,27 @@ def _places(level: Cuts, upright: Cuts) -> tuple[FloatArray, FloatArray, FloatAr
                         points.append((height, level.origin - along))
                         inside.append((side, -towards))
     return np.array(piece), np.array(points), np.array(inside)
+
+
+def _extent(cuts: Cuts, levels: FloatArray, inside: FloatArray, along: FloatArray) -> FloatArray:
+    """Length of the material on the cut through each place, m, over all pieces that touch there."""
+    keys, where = np.unique(np.column_stack((levels, inside)), axis=0, return_inverse=True)
+    found = np.zeros(len(levels))
+    for i, (level, side) in enumerate(keys.tolist()):
+        intervals = sorted((first, last) for _, first, last in cuts.material(level, above=side > 0.0))
+        joined: list[list[float]] = []
+        for first, last in intervals:
+            if joined and first <= joined[-1][1] + TOUCHING * (last - joined[-1][0]):
+                joined[-1][1] = max(joined[-1][1], last)
+            else:
+                joined.append([first, last])
+        if not joined:
+            continue
+        starts, ends = np.array(joined).T
+        at = np.flatnonzero(where.ravel() == i)
+        nearest = np.argmin(np.maximum(starts - along[at, None], along[at, None] - ends), axis=1)
+        found[at] = (ends - starts)[nearest]
+    return found
 
 
 def _mean(cuts: Cuts, levels: FloatArray, inside: FloatArray, piece: FloatArray) -> FloatArray:

@@ -26,8 +26,9 @@ THIN = 0.5 / math.sin(SMALLEST_ANGLE)  # circumradius over shortest side of a tr
 ACUTE = math.radians(75.0)  # corners below it are split in shells; the theory asks for 60°
 ENCROACHED = 1e-9  # of the squared length: how far inside the circle over an edge a point must lie
 SMALLEST = 1e-7  # of the size: sides that are not split for the sake of a better angle
+POINTS = 6_000  # no more for better triangles
 WORK = 60_000  # points of all rounds together: no more rounds for better triangles
-MOST_WORK = 300_000  # no more rounds for edges that are missing
+MOST_WORK = 200_000  # no more rounds for edges that are missing
 AT_ONCE = 1_000  # points put in one round; bounds the memory of comparing all pairs
 FAR = 4.0  # of the size: corners of a square round all points, so that no edge lies on the convex hull
 
@@ -50,20 +51,25 @@ class Size:
     """The length that sides of triangles should not exceed, m.
 
     `everywhere`; near each of the points `near` (n, 2) less: `at_points` plus `slope` times the distance.
-    Triangles and edges longer than `thin_beyond` are left as they are: such triangles may be thin.
+    Triangles may be thin that have a side shorter than `finest`, or one longer than `thin_beyond`.
     """
 
     everywhere: float = math.inf
     near: FloatArray | None = None
     at_points: float = 0.0
     slope: float = 0.6
+    finest: float = 0.0
     thin_beyond: float = math.inf
 
     def at(self, places: FloatArray) -> FloatArray:
         """Return the length, m, at places (n, 2), m."""
-        length = np.full(len(places), self.everywhere)
-        for point in () if self.near is None else self.near:
-            np.minimum(length, self.at_points + self.slope * np.hypot(*(places - point).T), out=length)
+        everywhere = np.full(len(places), self.everywhere)
+        if self.near is None or len(self.near) == 0:
+            return everywhere
+        from scipy.spatial import KDTree  # loaded only where something is meshed
+
+        distance = KDTree(self.near).query(places)[0]
+        length: FloatArray = np.minimum(everywhere, self.at_points + self.slope * distance)
         return length
 
 
@@ -76,7 +82,7 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
         Where the edges cannot all be made sides of triangles, because they cross or all but touch.
     """
     acute = _acute_corners(corners)
-    extent = float(np.ptp(corners.points, axis=0).max())
+    smallest = max(size.finest, SMALLEST * float(np.ptp(corners.points, axis=0).max()))
     long: BoolArray = _lengths(corners) > size.at(_middles(corners))
     while long.any():
         corners = _split(corners, long, acute)
@@ -85,9 +91,10 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
     while True:
         inside, missing, encroached_upon = _triangles(corners)
         work += len(corners.points)
-        good_enough = work > WORK
-        short = _lengths(corners) <= size.thin_beyond
-        broken: BoolArray = missing if good_enough else missing | (encroached_upon & short)
+        good_enough = work > WORK or len(corners.points) > POINTS
+        length = _lengths(corners)
+        improved = (length > size.finest) & (length <= size.thin_beyond)
+        broken: BoolArray = missing if good_enough else missing | (encroached_upon & improved)
         if broken.any():
             if work > MOST_WORK:
                 break
@@ -95,14 +102,15 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
             continue
         if good_enough:
             break
-        centres = _centres_of_bad(corners, inside, size, acute, SMALLEST * extent)
+        middles, centres = _centres_of_bad(corners, inside, size, acute, smallest)
         encroached = _encroached_by(centres, corners)
-        if encroached.any():
-            centres = centres[~encroached.any(axis=1)]
-            struck: BoolArray = np.logical_or.reduce(encroached, axis=0)
-            corners = _split(corners, struck, acute)
-        elif len(centres) == 0:
+        struck: BoolArray = np.logical_or.reduce(encroached, axis=0) & (length > size.finest)
+        lost = encroached.any(axis=1) | _leave(middles, centres, corners, encroached_upon)
+        centres = centres[~lost]
+        if not struck.any() and len(centres) == 0:
             break
+        if struck.any():
+            corners = _split(corners, struck, acute)
         corners = Corners(np.concatenate((corners.points, centres)), corners.edges, corners.ring)
     if missing.any() or not _closed(corners, inside):
         raise MeshError("the edges of the outline cannot be made sides of triangles")
@@ -122,13 +130,16 @@ def _triangles(corners: Corners) -> tuple[IntArray, BoolArray, BoolArray]:
     """
     from scipy.sparse import coo_array  # loaded only where something is meshed
     from scipy.sparse.csgraph import connected_components
-    from scipy.spatial import Delaunay
+    from scipy.spatial import Delaunay, QhullError
 
     points = corners.points
     low, high = points.min(axis=0), points.max(axis=0)
     far = FAR * float(np.max(high - low)) * np.array([[-1.0, -1.0], [1.0, -1.0], [1.0, 1.0], [-1.0, 1.0]])
     n = len(points) + 4
-    found = Delaunay(np.concatenate((points - 0.5 * (low + high), far)))
+    try:
+        found = Delaunay(np.concatenate((points - 0.5 * (low + high), far)))
+    except QhullError as flat:  # all points lie on one line, to the digits there are
+        raise MeshError("the outline has no width") from flat
     triangles = found.simplices.astype(np.intp)
     sides = triangles * n + np.roll(triangles, -1, axis=1)  # from each corner to the next
     order = np.argsort(sides, axis=None)
@@ -216,8 +227,8 @@ def _split(corners: Corners, which: BoolArray, acute: FloatArray) -> Corners:
 
 def _centres_of_bad(
     corners: Corners, inside: IntArray, size: Size, acute: FloatArray, smallest: float
-) -> FloatArray:
-    """Return centres of the circles round triangles that are too thin or too large, the worst ones first.
+) -> tuple[FloatArray, FloatArray]:
+    """Return middles of triangles that are too thin or too large, the worst first, and of the circles round them.
 
     Of centres that lie in each other's circle only the first is kept: the others may not be needed then.
     A triangle that is thin because of an acute corner of the outline cannot be helped.
@@ -252,8 +263,8 @@ def _centres_of_bad(
     centres = corner[bad, 0] + to_centre
     x, y = centres.T
     near = np.hypot(x[:, None] - x, y[:, None] - y) < radius[bad]  # within the circle of the row
-    kept: FloatArray = centres[~np.tril(near, -1).any(axis=1)]
-    return kept
+    kept = ~np.tril(near, -1).any(axis=1)
+    return corner[bad[kept]].mean(axis=1), centres[kept]
 
 
 def _encroached_by(centres: FloatArray, corners: Corners) -> BoolArray:
@@ -262,3 +273,20 @@ def _encroached_by(centres: FloatArray, corners: Corners) -> BoolArray:
     distance = np.hypot(centres[:, :1] - middle[:, 0], centres[:, 1:] - middle[:, 1])
     within: BoolArray = distance < half
     return within
+
+
+def _leave(middles: FloatArray, centres: FloatArray, corners: Corners, which: BoolArray) -> BoolArray:
+    """Tell for each centre (c,) whether one of the edges marked lies between it and its triangle's middle."""
+    start, end = (corners.points[corners.edges[which, k]] for k in range(2))
+    along = end - start
+
+    def side(points: FloatArray) -> FloatArray:
+        found: FloatArray = along[:, 0] * (points[:, None, 1] - start[:, 1]) - along[:, 1] * (
+            points[:, None, 0] - start[:, 0]
+        )
+        return found
+
+    way = centres - middles
+    ends = [way[:, :1] * (p[:, 1] - middles[:, 1:]) - way[:, 1:] * (p[:, 0] - middles[:, :1]) for p in (start, end)]
+    beyond: BoolArray = ((side(centres) <= 0.0) & (side(middles) > 0.0) & (ends[0] * ends[1] <= 0.0)).any(axis=1)
+    return beyond

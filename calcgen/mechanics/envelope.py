@@ -15,6 +15,7 @@ from __future__ import annotations
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
+from itertools import pairwise
 from typing import Final
 
 import numpy as np
@@ -33,8 +34,8 @@ from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import PARTS, BeamModel, CaseSolution, Load, Quantity, piecewise, scaled, solve
 from calcgen.mechanics.beam.results import TIE
 from calcgen.mechanics.combinations import ReactionPart
-from calcgen.mechanics.crossing import Crossing, Reach
 from calcgen.mechanics.influence import BoolArray, influence, quantity_index, reaction_index
+from calcgen.mechanics.moving_loads import Crossing, Reach
 from calcgen.mechanics.patterns import by_length, loaded_lengths
 from calcgen.mechanics.peaks import Places, closed_in, divided, stationary
 
@@ -118,12 +119,12 @@ class Effects:
         return EffectRange(high, low)
 
     def band(self, quantity: Quantity, points_per_element: int = 20) -> Band:
-        """Give the envelope of a quantity for drawing."""
+        """Give the envelope of a quantity for drawing, with at least two points an element."""
         joints = self._joints(0.0, self.model.length)
         x, right = divided(joints[:-1], joints[1:], points_per_element)
         shares = self._shares(quantity, x.ravel(), right.ravel())
         high, low = self._sums(shares, low=False), self._sums(shares, low=True)
-        governs = (self._stretches(shares, low, low=True), self._stretches(shares, high, low=False))
+        governs = self._stretches(shares, joints, low=True), self._stretches(shares, joints, low=False)
         return Band(shares.x, low.min(axis=0), high.max(axis=0), *governs)
 
     def loads(self, effect: Effect) -> tuple[Load, ...]:
@@ -306,22 +307,28 @@ class Effects:
                 found.append(Pattern(name, tuple(numbers)))
         return tuple(found)
 
-    def _stretches(self, shares: _Shares, sums: FloatArray, *, low: bool) -> tuple[Governs, ...]:
-        x, signed = shares.x, -sums if low else sums
+    def _stretches(self, shares: _Shares, joints: FloatArray, *, low: bool) -> tuple[Governs, ...]:
+        """Tell what governs between the joints, by the places inside: at a joint an effect may be 0."""
+        sums = self._sums(shares, low=low)
+        signed = -sums if low else sums
         best = signed.max(axis=0)
-        governing = np.argmax(signed >= best - TIE * np.abs(best), axis=0)
-        signs = np.sign(shares.parts)
+        shape = len(joints) - 1, -1
+        inner = np.arange(len(shares.x)).reshape(shape)[:, 1:-1]
+        x = shares.x[inner]
+        edges = np.concatenate([joints[:-1, None], (x[:, :-1] + x[:, 1:]) / 2], axis=1).ravel().tolist()
+        governing = np.argmax(signed >= best - TIE * np.abs(best), axis=0)[inner.ravel()]
+        signs = np.sign(shares.parts[:, inner.ravel()])
         changes = np.any(np.diff(signs, axis=1) != 0.0, axis=0) | (np.diff(governing) != 0)
-        firsts = np.concatenate([[0], np.flatnonzero(changes) + 1])
-        edges = [float(x[0]), *((x[firsts[1:] - 1] + x[firsts[1:]]) / 2).tolist(), float(x[-1])]
+        firsts = [0, *(np.flatnonzero(changes) + 1).tolist()]
         found: list[Governs] = []
-        for first, start, end in zip(firsts, edges[:-1], edges[1:], strict=True):
+        for first, last in pairwise([*firsts, len(edges)]):
             number = int(governing[first])
             what = self.combinations[number].name, self._loaded(signs[:, first], number, low=low)
+            end = edges[last] if last < len(edges) else float(joints[-1])
             if found and (found[-1].combination, found[-1].patterns) == what:
                 found[-1] = replace(found[-1], end=end)
-            elif end > start:
-                found.append(Governs(start, end, *what))
+            else:
+                found.append(Governs(edges[first], end, *what))
         return tuple(found)
 
     # Extremes along the beam.

@@ -42,7 +42,7 @@ W, ROTATION, M, V = range(4)
 """Order of a state."""
 
 NEGLIGIBLE: Final = 1e-12
-"""Part of a line's largest coefficient below which a piece of it is rounding error, and zero."""
+"""Part of the largest effect of a unit load anywhere below which an effect is rounding error, and zero."""
 
 _CHUNK = 256  # load cases solved at a time, so that long beams do not fill the memory
 _GAUSS_POINTS, _GAUSS_WEIGHTS = np.polynomial.legendre.leggauss(3)  # exact to degree 5: a cubic times a line
@@ -149,7 +149,7 @@ class Influence:
     `nodes` (n + 1,), m. `states` (n, 4, p, r, n, 4): deflection, rotation, moment and shear at the start of
     each element, in each of p planes, under a unit load in each of `planes` on each element, as a cubic in
     the part of that element's length passed. `support_forces` (s, p, 2, r, n, 4): force and moment of each
-    support.
+    support. `rounding` (parts, p): size below which a part of a state is rounding error in the solution.
     """
 
     model: BeamModel
@@ -157,6 +157,7 @@ class Influence:
     planes: tuple[Plane, ...]
     states: FloatArray
     support_forces: FloatArray
+    rounding: FloatArray
 
     def line(
         self, quantity: Quantity, x: float, side: Side | None = None, plane: Plane = "vertical"
@@ -182,13 +183,14 @@ class Influence:
         t = (place - self.nodes[number]) / h
         # A load in the same element, before the place, has taken its share from the shear there.
         before = pieces[number] - (rows[:, V, own] * h ** np.arange(4.0)) @ shift(t, -1.0)
+        noise = self.noise(quantity)
         if 0.0 < t < 1.0:
             halves = np.array([before @ shift(0.0, t), pieces[number] @ shift(t, 1.0 - t)])
             pieces = np.concatenate([pieces[:number], halves, pieces[number + 1 :]])
-            return _line(np.insert(self.nodes, number + 1, place), pieces)
+            return _line(np.insert(self.nodes, number + 1, place), pieces, noise)
         if t >= 1.0:
             pieces[number] = before
-        return _line(self.nodes, pieces)
+        return _line(self.nodes, pieces, noise)
 
     def reaction(
         self, support: int, part: ReactionPart = "force", plane: Plane = "vertical"
@@ -197,7 +199,8 @@ class Influence:
         own, which = reaction_index(part)
         if own >= self.support_forces.shape[1]:
             raise ValueError("the bending stiffness about the vertical axis is not known: no lateral results")
-        return _line(self.nodes, self.support_forces[support, own, which, self._load_plane(plane)])
+        noise = self.reaction_noise(part)
+        return _line(self.nodes, self.support_forces[support, own, which, self._load_plane(plane)], noise)
 
     def locate(self, x: FloatArray, *, right: BoolArray) -> tuple[FloatArray, IntArray]:
         """Give the places (k,), moved onto a node within the model's tolerance, and the elements they lie in.
@@ -245,7 +248,15 @@ class Influence:
         powers = np.diff(self.nodes)[:, None] ** np.arange(4.0)
         rows = np.array([self.rows(quantity, element) for element in range(len(powers))])
         largest = np.abs(self.states).max(axis=(3, 4, 5))
-        return NEGLIGIBLE * float(np.einsum("nk,nkip,nip->n", powers, np.abs(rows), largest).max())
+        own = NEGLIGIBLE * float(np.einsum("nk,nkip,nip->n", powers, np.abs(rows), largest).max())
+        part, plane = quantity_index(quantity)
+        return max(own, float(self.rounding[PARTS.index(part), plane]))
+
+    def reaction_noise(self, part: ReactionPart) -> float:
+        """Give the size below which the effect of a unit load on a part of a reaction is rounding error."""
+        plane, which = reaction_index(part)
+        own = NEGLIGIBLE * float(np.abs(self.support_forces[:, :, which]).max())
+        return max(own, float(self.rounding[PARTS.index("M" if which else "V"), plane]))
 
     def _load_plane(self, plane: Plane) -> int:
         if plane not in self.planes:
@@ -288,13 +299,15 @@ def influence(model: BeamModel, planes: Sequence[Plane] = ("vertical",)) -> Infl
     n, p = len(nodes) - 1, len(model.planes)
     states = np.zeros((n, 4, p, len(planes), n, 4))
     forces = np.zeros((len(model.supports), p, 2, len(planes), n, 4))
+    rounding = np.zeros((len(PARTS), p))
     inner = np.arange(n)
     for number, plane in enumerate(planes):
         loads: list[Load] = [PointLoad(float(x), 1.0, plane) for x in nodes]
         ends = [(float(a), float(b), 1.0 / float(b - a)) for a, b in pairwise(nodes)]
         loads += [DistributedLoad(a, b, q, q, plane) for a, b, q in ends]
         loads += [DistributedLoad(a, b, -q, q, plane) for a, b, q in ends]
-        starts, reactions = _start_states(model, loads)  # (cases, n, 4, p), (cases, s, p, 2)
+        starts, reactions, noise = _start_states(model, loads)  # (cases, n, 4, p), (cases, s, p, 2)
+        rounding = np.maximum(rounding, noise)
         data = np.stack([starts[:n], starts[1 : n + 1], starts[n + 1 : 2 * n + 1], starts[2 * n + 1 :]])
         # A load at the start of an element is within it: the shear before it is meant.
         data[0, inner, inner, V, list(model.planes).index(plane)] += 1.0
@@ -303,14 +316,15 @@ def influence(model: BeamModel, planes: Sequence[Plane] = ("vertical",)) -> Infl
             [reactions[:n], reactions[1 : n + 1], reactions[n + 1 : 2 * n + 1], reactions[2 * n + 1 :]]
         )
         forces[:, :, :, number] = np.einsum("kd,despf->spfek", _TO_CUBIC, data)
-    return Influence(model, nodes, tuple(planes), states, forces)
+    return Influence(model, nodes, tuple(planes), states, forces, rounding)
 
 
-def _start_states(model: BeamModel, loads: Sequence[Load]) -> tuple[FloatArray, FloatArray]:
-    """State at the start of each element, and forces of the supports, under each load alone."""
+def _start_states(model: BeamModel, loads: Sequence[Load]) -> tuple[FloatArray, FloatArray, FloatArray]:
+    """State at the start of each element, forces of the supports under each load alone, and rounding error."""
     order = [PARTS.index("w"), PARTS.index("rotation"), PARTS.index("M"), PARTS.index("V")]
     starts: list[FloatArray] = []
     reactions: list[FloatArray] = []
+    noise = np.zeros((len(PARTS), len(model.planes)))
     for first in range(0, len(loads), _CHUNK):
         chunk = loads[first : first + _CHUNK]
         solved: list[CaseSolution] = list(
@@ -318,7 +332,8 @@ def _start_states(model: BeamModel, loads: Sequence[Load]) -> tuple[FloatArray, 
         )
         starts.extend(solution.pieces[..., 0][:, order] for solution in solved)
         reactions.extend(solution.support_forces for solution in solved)
-    return np.array(starts), np.array(reactions)
+        noise = np.max([noise, *(solution.noise for solution in solved)], axis=0)
+    return np.array(starts), np.array(reactions), noise
 
 
 def shift(start: float | FloatArray, length: float | FloatArray) -> FloatArray:
@@ -345,7 +360,6 @@ def reaction_index(part: ReactionPart) -> tuple[int, Literal[0, 1]]:
     return int(part.endswith("_lat")), 0 if part.startswith("force") else 1
 
 
-def _line(nodes: FloatArray, pieces: FloatArray) -> InfluenceLine:
-    size = NEGLIGIBLE * float(np.abs(pieces).max())
-    rounding = np.abs(pieces).max(axis=1, keepdims=True) <= size
+def _line(nodes: FloatArray, pieces: FloatArray, noise: float) -> InfluenceLine:
+    rounding = np.abs(pieces).max(axis=1, keepdims=True) <= noise
     return InfluenceLine(nodes, np.where(rounding, 0.0, pieces))

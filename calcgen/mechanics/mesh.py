@@ -2,7 +2,6 @@
 
 from __future__ import annotations
 
-import math
 from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from functools import cached_property
@@ -98,10 +97,10 @@ def triangulate(outlines: Sequence[Outline], size: Size) -> Mesh:
     return _joined([refine(_corners_of(part), size) for part in outlines])
 
 
-def refined(mesh: Mesh, marked: BoolArray, thin_beyond: float = math.inf) -> Mesh:
+def refined(mesh: Mesh, marked: BoolArray, size: Size | None = None) -> Mesh:
     """Return a finer mesh, with points in the middles of the edges of the marked triangles (m,).
 
-    thin_beyond : the length beyond which triangles may be thin, m.
+    size : what else is asked of the triangles.
     """
     split = np.zeros(len(mesh.points), dtype=bool)
     split[mesh.triangles[marked, 3:]] = True
@@ -125,7 +124,7 @@ def refined(mesh: Mesh, marked: BoolArray, thin_beyond: float = math.inf) -> Mes
             np.searchsorted(kept, pairs),
             np.concatenate((ring[~cut], ring[cut], ring[cut])),
         )
-        parts.append(refine(corners, Size(thin_beyond=thin_beyond)))
+        parts.append(refine(corners, size or Size()))
     return _joined(parts)
 
 

@@ -13,7 +13,7 @@ import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import Quantity, piecewise
-from calcgen.mechanics.beam.results import TIE, Side
+from calcgen.mechanics.beam.results import TIE
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.mechanics.influence import Influence, IntArray, V, reaction_index, shift
 from calcgen.mechanics.trains import Direction, Position, Train, sense
@@ -92,6 +92,7 @@ class Passage:
         return self._summed(self.influence.states)
 
     def reaction(self, support: int, part: ReactionPart) -> Cubics:
+        """Give one part of a support's reaction, as at one place."""
         own, which = reaction_index(part)
         cubics = self._summed(self.influence.support_forces[support, own, which])
         return Cubics(self.cuts[None, :-1], np.diff(self.cuts)[None], cubics[None])
@@ -134,10 +135,32 @@ class Passage:
             np.concatenate([cubics[:, far], (values @ _FROM_SAMPLES).reshape(k, -1, 4)], axis=1),
         )
 
+    def on_end(self, quantity: Quantity, *, last: bool) -> list[tuple[float, float]]:
+        """Give the effect at an end of the beam while an axle stands on it, and the position, for each axle.
+
+        No position beside it gives that effect: the axle is before the place at the last end, and behind it
+        at the first one, whereas from within the beam it comes to the end on the other side.
+        """
+        influence, planes = self.influence, self.influence.planes
+        end = float(influence.nodes[-1 if last else 0])
+        lines = [influence.line(quantity, end, "left" if last else "right", plane) for plane in planes]
+        share = float(self._share(influence.rows(quantity, -1 if last else 0))[0])
+        found: list[tuple[float, float]] = []
+        for axle, offset in enumerate(self.offsets):
+            x = end - offset + self.offsets
+            x[axle] = end
+            on = (x >= influence.nodes[0]) & (x <= influence.nodes[-1])
+            effects = sum(
+                weight * line.values(x[on]) for weight, line in zip(self._weights, lines, strict=True)
+            )
+            total = float(np.array(self.train.axles)[on] @ effects)
+            found.append((total + self.train.axles[axle] * (-share if last else share), float(end - offset)))
+        return found
+
     def under_axles(
         self, quantity: Quantity, start: float, end: float
     ) -> list[tuple[float, float, Position]]:
-        """Give extremes of M or V at a place that moves with an axle, between `start` and `end`."""
+        """Give extremes of M or V just before and behind a moving axle: value, place and position."""
         found: list[tuple[float, float, Position]] = []
         nodes, lengths = self.influence.nodes, np.diff(self.cuts)
         for axle, (offset, elements) in enumerate(zip(self.offsets, self.elements, strict=True)):
@@ -153,9 +176,8 @@ class Passage:
                     row, column = np.unravel_index(index, values.shape)
                     u = float(self.cuts[on[row]] + lengths[on[row]] * t[row, column])
                     place = min(max(u + float(offset), float(nodes[0])), float(nodes[-1]))
-                    part = float(t[row, column])
-                    limit: Side | None = "right" if part == 0.0 else "left" if part == 1.0 else None
-                    position = Position(u, self.direction, limit)
+                    # A place just before the axle has the axle on its right.
+                    position = Position(u, self.direction, "left" if side else "right")
                     found.append((float(values[row, column]), place, position))
         return found
 
@@ -204,7 +226,9 @@ def bettered(cubics: Cubics, passage: Passage, known: FloatArray, noise: float) 
     values[np.abs(values) <= noise] = 0.0
     k = len(values)
     u = (cubics.starts[..., None] + cubics.lengths[..., None] * t).reshape(k, -1)
-    limit = ((t == 0.0) * 1.0 - (t == 1.0) * 1.0).reshape(k, -1)
+    # Within the model's tolerance of an end of its interval a position is a limit there.
+    near = 2.0 * passage.influence.model.tolerance / np.maximum(cubics.lengths[..., None], 1e-300)
+    limit = np.where(t <= np.minimum(near, 0.5), 1.0, np.where(t >= 1.0 - near, -1.0, 0.0)).reshape(k, -1)
     values = values.reshape(k, -1)
     result, each = known.copy(), np.arange(k)
     for row, sign in ((0, 1.0), (1, -1.0)):
@@ -214,6 +238,18 @@ def bettered(cubics: Cubics, passage: Passage, known: FloatArray, noise: float) 
         left = np.full(k, float(passage.direction == "left"))
         new = np.stack([values[each, first], u[each, first], left, limit[each, first]])
         result[row] = np.where(best > sign * known[row, 0] * (1.0 + TIE), new, known[row])
+    return result
+
+
+def with_values(
+    values: list[tuple[float, float]], passage: Passage, known: FloatArray, noise: float
+) -> FloatArray:
+    """Better what is known of one place, (2, 4), by effects at single positions."""
+    result = known.copy()
+    for value, u in values:
+        for row, sign in ((0, 1.0), (1, -1.0)):
+            if sign * value > max(sign * result[row, 0] * (1.0 + TIE), noise):
+                result[row] = value, u, float(passage.direction == "left"), 0.0
     return result
 
 

@@ -57,8 +57,8 @@ class Train:
 class Position:
     """Where a train stands: the place of its first axle, m, and the direction in which it runs.
 
-    Where the effect jumps there, as a reaction does when an axle leaves a free end, or the shear beside a
-    support, it is a limit: the train stands just `beside` that place, on the side named.
+    Where the effect jumps there, as the shear does when an axle passes, or a reaction when one leaves a free
+    end, it is a limit: the train stands just `beside` that place, on the side named.
     """
 
     x: float

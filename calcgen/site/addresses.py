@@ -16,12 +16,14 @@ from calcgen.evaluation.results import (
     SectionResult,
     Segment,
     StressResult,
+    TableResult,
     WorkingResult,
 )
 from calcgen.language.blocks.assumptions import Assumption, AssumptionsBlock
 from calcgen.language.blocks.beam import BeamBlock
 from calcgen.language.blocks.section import SectionBlock
 from calcgen.language.blocks.stress import StressBlock
+from calcgen.language.blocks.table import TableBlock
 
 COVER = "index.html"
 INPUTS = "inputs.html"
@@ -62,9 +64,8 @@ def source_line(number: str, line: int) -> str:
 
 def assumptions_of(calc: EvaluatedCalc) -> tuple[tuple[str, Assumption], ...]:
     """Return the assumptions of a calc, each with its anchor: its number, where no value has that name."""
-    names = set(calc.values) | {
-        s.target.name for s in calc.calc.segments if isinstance(s, SectionBlock | BeamBlock | StressBlock)
-    }
+    blocks = SectionBlock | BeamBlock | StressBlock | TableBlock
+    names = set(calc.values) | {s.target.name for s in calc.calc.segments if isinstance(s, blocks)}
     found: list[tuple[str, Assumption]] = []
     for block in calc.calc.segments:
         if isinstance(block, AssumptionsBlock):
@@ -107,6 +108,8 @@ def _anchors(segment: Segment) -> Iterator[str]:
             yield segment.name
             yield from (f"{segment.name}.{r.name}" for r in segment.results)
             yield from (c.address for c in [segment.check] if c is not None)
+        case TableResult():
+            yield segment.name
         case BeamResult():
             yield segment.name
             for group in segment.groups:

@@ -15,6 +15,7 @@ from calcgen.evaluation.results import (
     Segment,
     SheetResult,
     StressResult,
+    TableResult,
     WorkingResult,
 )
 from calcgen.language.blocks.sheet import SheetBlock
@@ -27,6 +28,7 @@ from calcgen.site.blocks.inputs import InputsView, inputs_view
 from calcgen.site.blocks.prose import ProseView, prose_view
 from calcgen.site.blocks.section import SectionView, section_view
 from calcgen.site.blocks.stress import StressView, stress_view
+from calcgen.site.blocks.table import TableView, table_view
 from calcgen.site.blocks.working import WorkingView, working_view
 from calcgen.site.context import Context
 from calcgen.site.facts import PackageInput
@@ -35,7 +37,15 @@ from calcgen.site.standing import StandingView, standing_view
 from calcgen.site.views import DiagnosticView, Link, diagnostic_view
 
 SegmentView: TypeAlias = (
-    ProseView | AssumptionsView | InputsView | WorkingView | SectionView | BeamView | StressView | FailedView
+    ProseView
+    | AssumptionsView
+    | InputsView
+    | WorkingView
+    | SectionView
+    | BeamView
+    | StressView
+    | TableView
+    | FailedView
 )
 
 
@@ -149,5 +159,7 @@ def _segment(segment: Segment, context: Context) -> SegmentView | None:
             return beam_view(segment, context)
         case StressResult():
             return stress_view(segment, context)
+        case TableResult():
+            return table_view(segment, context)
         case FailedBlock():
             return failed_view(segment, context)

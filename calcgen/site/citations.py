@@ -11,6 +11,7 @@ from calcgen.evaluation.results import (
     EvaluatedCalc,
     InputRow,
     InputsResult,
+    TableResult,
     WorkingResult,
 )
 from calcgen.language.nodes import Citation
@@ -41,6 +42,8 @@ def _anchors(calc: EvaluatedCalc) -> Iterator[tuple[int, tuple[str, int]]]:
                         yield line.node.span.start, (line.name, line.node.span.end)
                     elif isinstance(line, CheckRow):
                         yield line.node.span.start, (line.result.address, line.node.span.end)
+            case TableResult():
+                yield segment.span.start, (segment.name, segment.span.end)
             case _:
                 pass
     if calc.segments:

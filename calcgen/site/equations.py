@@ -9,12 +9,12 @@ from typing import TypeAlias
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import CheckResult, CheckRow, DerivedRow, Operand
+from calcgen.evaluation.results import CheckResult, CheckRow, DerivedRow, Lookup, Operand
 from calcgen.language.nodes import Cases, Expression, Formula, Name, Number, Text, Truth
 from calcgen.quantities.display import Shown
 from calcgen.site import mathml
 from calcgen.site.extent import extent
-from calcgen.site.mathml import PutIn, formula, quantity, relation, symbol, terms
+from calcgen.site.mathml import PutIn, called, formula, quantity, relation, symbol, terms
 from calcgen.text import SourceFile
 
 _OPPOSITE = {"<": ">=", "<=": ">", ">": "<=", ">=": "<"}
@@ -50,7 +50,7 @@ class Equation:
         return "" if self.length <= _NARROW else "broad" if self.length <= _WIDE else "broadest"
 
 
-def derived(row: DerivedRow, source: SourceFile) -> Equation:
+def derived(row: DerivedRow, source: SourceFile, remarks: Sequence[Markup] = ()) -> Equation:
     """Return a derived value; a step that would only repeat the next one is left out."""
     put_in = put_in_from(row.operands, source)
     node = row.node.formula
@@ -69,7 +69,7 @@ def derived(row: DerivedRow, source: SourceFile) -> Equation:
         steps.append(terms(taken, put_in))
     steps.append((quantity(row.shown),))
     led = [(_EQUALS + step[0], *step[1:]) for step in _without_repeats(steps)]
-    return _equation(symbol(row.name), led, aside)
+    return _equation(symbol(row.name), led, aside, remarks)
 
 
 def stated(name: str, shown: Shown) -> Equation:
@@ -77,7 +77,7 @@ def stated(name: str, shown: Shown) -> Equation:
     return _equation(symbol(name), [(_EQUALS + quantity(shown),)])
 
 
-def check(row: CheckRow, source: SourceFile) -> Equation:
+def check(row: CheckRow, source: SourceFile, remarks: Sequence[Markup] = ()) -> Equation:
     """Return a check: its statement, its sides with numbers put in, and how they stand to each other."""
     node, result = row.node.comparison, row.result
     steps: list[_Step] = [(formula(node),)]
@@ -85,7 +85,7 @@ def check(row: CheckRow, source: SourceFile) -> Equation:
         steps.append((formula(node, put_in_from(row.operands, source)),))
     sides = compared(result.left_shown, result.operator, result.right_shown, satisfied=result.satisfied)
     steps.append((sides,))
-    return _equation("", _without_repeats(steps), beside=_VERDICT)
+    return _equation("", _without_repeats(steps), "", remarks, beside=_VERDICT)
 
 
 def limit(result: CheckResult) -> Equation:
@@ -100,13 +100,20 @@ def combination(name: str, terms: Sequence[str]) -> Equation:
     return _equation(symbol(name), [(_EQUALS + first, *others)])
 
 
-def _equation(left: str, steps: Sequence[_Step], aside: str = "", *, beside: int = 0) -> Equation:
+def looked_up(lookup: Lookup) -> Equation:
+    """Return a value looked up in a table: k_mod(“class 1”, “medium”) = 0.80."""
+    return _equation("", [(f"{called(lookup.table, lookup.arguments)}{_EQUALS}{quantity(lookup.value)}",)])
+
+
+def _equation(
+    left: str, steps: Sequence[_Step], aside: str = "", remarks: Sequence[Markup] = (), *, beside: int = 0
+) -> Equation:
     """Return an equation that shares its line with `beside` other characters."""
     lengths = [extent(left), *(extent(term) for step in steps for term in step)]
     return Equation(
         _element(left),
         tuple(tuple(map(_element, step)) for step in steps),
-        _element(aside),
+        Markup("; ").join([*([_element(aside)] if aside else []), *remarks]),
         math.ceil(max(lengths)) + beside,
     )
 

@@ -7,7 +7,7 @@ spaces, one with numbers or words with a dot.
 from __future__ import annotations
 
 import re
-from collections.abc import Callable
+from collections.abc import Callable, Sequence
 from dataclasses import dataclass
 from enum import IntEnum
 from html import escape
@@ -42,6 +42,7 @@ _TIMES = f"<mo>&#x2062;</mo>{_THIN}"  # invisible times, read aloud as a product
 _DOT = "<mo>·</mo>"
 _FUNCTIONS = {"asin": "arcsin", "acos": "arccos", "atan": "arctan", "atan2": "arctan2", "log10": "log"}
 _SCIENTIFIC = re.compile(r"([0-9.]+) × 10([⁰¹²³⁴⁵⁶⁷⁸⁹⁻]+)")
+_DIGITS = re.compile(r"[0-9][0-9.]*")
 _TYPED_POWER = re.compile(r"([0-9.]+)[eE]([-+]?)0*([0-9]+)")
 _RAISED = str.maketrans("⁰¹²³⁴⁵⁶⁷⁸⁹⁻", "0123456789−")
 
@@ -106,6 +107,12 @@ def relation(operator: str) -> str:
     return f'<mo form="infix">{RELATIONS[operator]}</mo>'
 
 
+def called(name: str, arguments: Sequence[Shown]) -> str:
+    """Return the MathML of a table looked up with values: k_mod(“class 1”, “medium”)."""
+    inside = "<mo>,</mo>".join(_quantity(a).mathml for a in arguments)
+    return _dotted((name,), f"<mrow><mo>(</mo>{inside}<mo>)</mo></mrow>").mathml
+
+
 def _symbol(name: str) -> Piece:
     parts = symbol_of(name)
     letters = parts.base.rstrip("'")
@@ -140,7 +147,7 @@ def _quantity(shown: Shown) -> Piece:
     scientific = _SCIENTIFIC.fullmatch(number)
     if scientific:
         setting = _power_of_ten(scientific[1], scientific[2].translate(_RAISED))
-    elif number[:1].isdigit() or number == "not finite":
+    elif _DIGITS.fullmatch(number) or number == "not finite":
         setting = f"<mn>{number}</mn>"
     elif shown.number in ("yes", "no"):
         return Piece(f"<mtext>{shown.number}</mtext>", first="word", last="word")

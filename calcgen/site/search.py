@@ -18,6 +18,7 @@ from calcgen.evaluation.results import (
     Result,
     SectionResult,
     StressResult,
+    TableResult,
     WorkingResult,
 )
 from calcgen.quantities.symbols import GREEK, plain
@@ -137,6 +138,10 @@ def _calc(calc: EvaluatedCalc, package: PackageInput) -> Iterator[Entry]:
                     words = f"{segment.check.note.text} {segment.check.reference.text}"
                     yield Entry(at(segment.check.address), "check", segment.check.label, words)
                 yield from figures(segment.name)
+            case TableResult():
+                heads = " ".join(head.shown.text for head in (*segment.columns, *segment.rows))
+                words = f"{spelled(segment.name)} {segment.reference.text} {heads}"
+                yield Entry(at(segment.name), "table", plain(segment.name), words)
             case _:
                 pass
     for number, d in enumerate(sorted(calc.diagnostics, key=lambda d: d.severity != "error"), start=1):

@@ -63,6 +63,14 @@ class Report:
         self.source = source
         self._found: list[Diagnostic] = []
 
+    def without(self, codes: frozenset[str]) -> Report:
+        """Return a report that adds to this one, and passes over the faults of some codes."""
+        return _PartialReport(self, codes)
+
+    def add(self, diagnostic: Diagnostic) -> None:
+        """Add a diagnostic."""
+        self._found.append(diagnostic)
+
     def error(
         self,
         code: str,
@@ -74,11 +82,11 @@ class Report:
         related: tuple[Related, ...] = (),
     ) -> None:
         """Add an error."""
-        self._found.append(error(code, self.source, span, message, hint=hint, label=label, related=related))
+        self.add(error(code, self.source, span, message, hint=hint, label=label, related=related))
 
     def warning(self, code: str, span: Span, message: str, *, hint: str = "", label: str = "") -> None:
         """Add a warning."""
-        self._found.append(warning(code, self.source, span, message, hint=hint, label=label))
+        self.add(warning(code, self.source, span, message, hint=hint, label=label))
 
     @property
     def diagnostics(self) -> tuple[Diagnostic, ...]:
@@ -89,6 +97,20 @@ class Report:
     def failed(self) -> bool:
         """Whether an error was found."""
         return any(d.severity == "error" for d in self._found)
+
+
+class _PartialReport(Report):
+    """A report that hands on to another what is not left out."""
+
+    def __init__(self, whole: Report, left_out: frozenset[str]) -> None:
+        super().__init__(whole.source)
+        self._whole = whole
+        self._left_out = left_out
+
+    def add(self, diagnostic: Diagnostic) -> None:
+        if diagnostic.code not in self._left_out:
+            super().add(diagnostic)
+            self._whole.add(diagnostic)
 
 
 def error(

@@ -17,6 +17,7 @@ from calcgen.evaluation.results import (
     Result,
     SectionResult,
     StressResult,
+    TableResult,
     WorkingResult,
 )
 from calcgen.language.blocks.assumptions import Assumption
@@ -72,6 +73,9 @@ def _items(calc: EvaluatedCalc, style: Style) -> Iterable[tuple[str, Item]]:
                     yield a.number, _assumption(a)
             case SectionResult() | BeamResult() | StressResult():
                 yield from _block(segment, _block_text(calc, segment.span), style)
+            case TableResult():
+                typed = _block_text(calc, segment.span)
+                yield segment.name, {"kind": "table", "text": typed, "results": {}}
             case _:
                 pass
 

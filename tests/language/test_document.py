@@ -137,7 +137,7 @@ def test_every_fault_of_a_file_is_reported() -> None:
     assert found(calc) == [
         "3:7 unknown-unit",
         "6:7 missing-operator",
-        "8:4 not-available-yet",
+        "8:4 table-empty",
         "10:1 bad-place",
     ]
     assert [type(s).__name__ for s in calc.segments][-2:] == [FailedBlock.__name__, Prose.__name__]

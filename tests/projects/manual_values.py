@@ -30,6 +30,9 @@ W_JOIST = 78.5 * A_300 * 1e-4  # kN/m
 U1, SLS = 1.35 * 4 + 1.5 * 8, 12  # kN/m, the combinations of M-13-results
 D = 151.25 * 41.25 - 45.0**2  # cm⁸, I_y I_z - I_yz² of the cleat
 RANGE = sqrt((151.25 - 41.25) ** 2 / 4 + 45.0**2)  # cm⁴, radius of its circle of second moments
+# the beams of M-12e-shear, kN and m
+EI_CORBEL, GA_CORBEL = 11e6 * 0.1 * 0.3**3 / 12, 0.69e6 * 0.1 * 0.3 * 5 / 6
+EI_DECK, FREE = 30e6 * 0.3 * 0.2**3 / 12, 10e-6 * 12 / 0.2  # free curvature α ΔT/h
 PHI = 0.5 * (1 + 0.34 * 0.7 + 0.81)
 
 
@@ -79,7 +82,7 @@ BETA = sum(b * h * y * (b**2 / 12 + y**2 + h**2 / 4) for b, h, y in CENTRED) / s
 I_CUT = (165 * 320**3 - 157.5 * 290**3) / 12
 I_LINE = 2 * 165 * 15 * 152.5**2 + 7.5 * 305**3 / 12
 S_FLANGE = 165 * 15 * 152.5
-TAU_WEB = max((S_FLANGE + 7.5 * 145**2 / 2) / I_CUT, (S_FLANGE + 7.5 * 152.5**2 / 2) / I_LINE) * 45e3 / 7.5
+TAU_WEB = (S_FLANGE + 7.5 * 145**2 / 2) / I_CUT * 45e3 / 7.5  # a level cut passes the web alone
 TAU_TOP = S_FLANGE / I_CUT * 45e3 / 7.5
 SIGMA_TOP = -60e6 * 145 / I_CUT
 SIGMA_FACE, TAU_FLANGE = 60e6 * 160 / I_CUT, 45e3 * 82.5 * 152.5 / I_LINE  # q/t of half the flange
@@ -281,6 +284,10 @@ CASES: tuple[Worked, ...] = (
     Worked("M-12c-supports", "w_spring", 0.02 / (512 / (48 * 8000) + 1 / 2000), "mm", "R/k"),
     Worked("M-12c-supports", "M_settled", 3 * 8000 * 0.006 / 16, "kN·m", "3 EI δ/L²"),
     Worked("M-12c-supports", "R_settled", -6 * 8000 * 0.006 / 64, "kN", "-6 EI δ/L³"),
+    Worked(
+        "M-12c-supports", "w_chord", 6 / (3 * sqrt(3)), "mm", "M L²/(9√3 EI) under an end couple 3 EI δ/L²"
+    ),
+    Worked("M-12c-supports", "θ_settled", 0.006 / 4 + 3 * 0.006 / (6 * 4), "", "δ/L + M L/(6 EI)"),
     Worked("M-12d-planes", "w_stepped", 3 * ((64 - 8) / 3 / 16 + 8 / 3 / 8), "mm", "∫ P (L - x)²/EI dx"),
     Worked(
         "M-12d-planes",
@@ -296,6 +303,38 @@ CASES: tuple[Worked, ...] = (
     Worked("M-12d-planes", "M_wind", 0.4 * 36 / 8, "kN·m", "w L²/8"),
     Worked("M-12d-planes", "w_wind", 5 * 0.4 * 6**4 / (384 * 2.1 * I_Z300) * 1e3, "mm", "5 w L⁴/(384 E I_z)"),
     # two equal spans under a uniform load: M = -w L²/8 at the middle, R = 3/8, 5/4 and 3/8 of w L
+    Worked(
+        "M-12e-shear",
+        "w_tip",
+        (12 * 1.5**3 / (3 * EI_CORBEL) + 12 * 1.5 / GA_CORBEL) * 1e3,
+        "mm",
+        "P L³/(3 EI) + P L/(G A_s), A_s = 5/6 b h",
+        ELEMENTS,
+    ),
+    Worked("M-12e-shear", "φ_root", 12 / GA_CORBEL, "", "P/(G A_s)", ELEMENTS),
+    Worked(
+        "M-12e-shear",
+        "φ_tip",
+        12 * 1.5**2 / (2 * EI_CORBEL) + 12 / GA_CORBEL,
+        "",
+        "P L²/(2 EI) + P/(G A_s)",
+        ELEMENTS,
+    ),
+    Worked("M-12e-shear", "θ_wall", 0, "", "held"),
+    Worked(
+        "M-12e-shear",
+        "w_mid",
+        (5 * 5 * 4**4 / (384 * 1500) + (10 - 2.5) / 3000 + 2.5 / 1000) * 1e3,
+        "mm",
+        "5 q L⁴/(384 EI) and, of half the beam, ∫V/(G A_s) dx",
+    ),
+    Worked("M-12e-shear", "θ_end", 5 * 4**3 / (24 * 1500), "", "q L³/(24 EI): of bending alone"),
+    Worked("M-12e-shear", "w_up", -FREE * 36 / 8 * 1e3, "mm", "-α ΔT L²/(8 h)"),
+    Worked("M-12e-shear", "M_s", 0, "kN·m", "a simple beam"),
+    Worked("M-12e-shear", "M_c", EI_DECK * FREE, "kN·m", "EI α ΔT/h"),
+    Worked("M-12e-shear", "w_c", 0, "mm", "no curvature is left"),
+    Worked("M-12e-shear", "M_mid", 1.5 * EI_DECK * FREE, "kN·m", "R L/2"),
+    Worked("M-12e-shear", "R_mid", -3 * EI_DECK * FREE / 6, "kN", "R (2 L)³/(48 EI) = α ΔT (2 L)²/(8 h)"),
     Worked("M-13-results", "M_hog", -U1 * 25 / 8, "kN·m", "-w L²/8"),
     Worked("M-13-results", "M_sag", 9 * U1 * 25 / 128, "kN·m", "9 w L²/128"),
     Worked("M-13-results", "x_sag", 3 * 5 / 8, "m", "3 L/8"),
@@ -314,6 +353,18 @@ CASES: tuple[Worked, ...] = (
         "propped span: x = (1 + √33)/16 L solves 8 x³ - 9 x² + 1 = 0",
     ),
     Worked("M-13-results", "φ_1", SLS * 125 / (48 * 12000), "", "w L³/(48 EI)"),
+    Worked("M-13-results", "θ_s", SLS * 125 / (48 * 12000), "", "w L³/(48 EI)"),
+    Worked("M-13-results", "x_0", 3 * 5 / 4, "m", "3 L/4"),
+    Worked("M-13-results", "x_V", 3 * 5 / 8, "m", "3 L/8"),
+    Worked("M-13-results", "C_b2", 12.5 / (2.5 + 3 / 2 + 4 / 2), "", "M/(w L²) = 1/16, 1/16, 0 and 1/8"),
+    Worked("M-13-results", "C_12", sqrt(35 / (1 + 9 / 4 + 16 / 4)), "", "the same moments"),
+    Worked(
+        "M-13-results",
+        "C_b3",
+        12.5 * 9 / (2.5 * 9 + 3 * 5 + 4 * 8 + 3 * 9),
+        "",
+        "128 M/(w L²) = 5, 8, 9 and 9",
+    ),
     Worked("M-13-results", "M_root", -20, "kN·m", "-P L"),
     Worked("M-13-results", "M_R", 20, "kN·m", "anticlockwise"),
     Worked("M-13-results", "V_root", 10, "kN", "P"),
@@ -455,9 +506,7 @@ CASES: tuple[Worked, ...] = (
         "cm²",
         "A - 2 b t_f + (t_w + 2 r) t_f",
     ),
-    Worked(
-        "M-14c-shear", "τ_w", TAU_WEB, "MPa", "V S/(I b) and q/t; 21.0 in Gere, example 5-14, from memory"
-    ),
+    Worked("M-14c-shear", "τ_w", TAU_WEB, "MPa", "V S/(I b); 21.0 in Gere, example 5-14, from memory"),
     Worked("M-14c-shear", "τ_t", TAU_TOP, "MPa", "V S/(I b); 17.4 in Gere"),
     Worked("M-14c-shear", "σ_t", SIGMA_TOP, "MPa", "M y/I"),
     Worked("M-14c-shear", "σ_v", sqrt(SIGMA_TOP**2 + 3 * TAU_TOP**2), "MPa", "√(σ² + 3 τ²)"),
@@ -551,6 +600,11 @@ CASES: tuple[Worked, ...] = (
     Worked("M-15-signs", "R_l", 3, "kN", "P b/L"),
     Worked("M-15-signs", "σ_s", 10 / 20 + 6 * 6 / 4 + 3 * 6 / 2, "MPa", "N/A + M/W_y + M_lat/W_z"),
     Worked("M-16-second-route", "R_sum", 4 * 6 + 6, "kN", "the loads"),
+    # values of EN 1995-1-1 Table 3.1 and EN 1991-1-3 Table 5.2 from memory
+    Worked("M-24-tables", "k_1", 0.8, "", "as printed"),
+    Worked("M-24-tables", "f_m_d", 0.7 * 24 / 1.3, "MPa", "k_mod f_m,k/γ_M"),
+    Worked("M-24-tables", "s", 0.8 * (60 - 42) / 30 * 1.2, "kPa", "μ_1 = 0.8 (60° - α)/30° above 30°"),
+    Worked("M-24-tables", "p", (12 + 9 + 5.4 + 4) / 4, "kPa", "half-way in both directions"),
 )
 
 UTILISATIONS: dict[tuple[str, str], float | None] = {
@@ -563,4 +617,5 @@ UTILISATIONS: dict[tuple[str, str], float | None] = {
     ("M-14b-elastic", "normal stress at midspan"): 50 / 235,
     ("M-14e-composite", "plate"): 16 * 30e6 * (208 - Y_WOOD) / I_WOOD / 235,
     ("M-14e-composite", "wood"): 30e6 * (200 + Y_WOOD) / I_WOOD / 24,
+    ("M-24-tables", "boards"): 0.8 * 18 / 30 * 1.2 / 7.6,
 }

@@ -165,7 +165,7 @@ def _warn_of_overlap(first: PlacedBars, second: PlacedBars, scope: Scope) -> Non
     """Warn of the first place where bars of two lines overlap."""
     a, b = np.array(first.points), np.array(second.points)
     apart = np.hypot(*(a[:, None, :] - b[None, :, :]).transpose(2, 0, 1))
-    # where a diameter is not known, only bars on one point are known to overlap
+    # of a bar given by its area no more is known than its place
     needed = 0.5 * ((first.diameter or 0.0) + (second.diameter or 0.0))
     close = np.argwhere(_too_close(apart, needed, max(first.reach, second.reach)))
     if not close.size:

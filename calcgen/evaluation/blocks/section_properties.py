@@ -49,7 +49,7 @@ def section_result(
     if composite:
         found = composite_findings(name, materials, parts, bars)
     else:
-        found = _of_one_material(layout, scope, axes)
+        found = _of_one_material(block, layout, scope, axes)
     parts, bars = _with_results(parts, bars, style, axes)
     return SectionResult(
         name=name,
@@ -137,7 +137,7 @@ def _with_results(
     )
 
 
-def _of_one_material(layout: Layout, scope: Scope, axes: Axes) -> Findings:
+def _of_one_material(block: SectionBlock, layout: Layout, scope: Scope, axes: Axes) -> Findings:
     """Find the properties of the outlines; a catalogue's values are in force for one whole profile alone."""
     outlines = tuple(outline for part in layout.parts for outline in part.outlines)
     whole = layout.parts[0] if len(layout.parts) == 1 and layout.parts[0].whole else None
@@ -156,19 +156,27 @@ def _of_one_material(layout: Layout, scope: Scope, axes: Axes) -> Findings:
         whole.shape.dimensions if whole is not None else {},
         whole.shape.walls if whole is not None else (),
     )
+    if not twist.meshed:
+        scope.report.warning(
+            "not-meshed",
+            block.head_span,
+            f"the outline of '{plain(block.target.name)}' could not be meshed",
+            hint="torsion, warping and shear areas by finite elements are missing; leave out what is minute",
+        )
     tables = by_standard(whole, computed.area, profile.published if profile is not None else {}, scope, axes)
     beside = twist.beside | {
         key: (ELEMENTS, twist.elements[key]) for key in ("I_t", "I_w") if key in tables.values
     }
     values = in_force(own, published, computed)
+    known = twist.values | tables.values | values
     return Findings(
         computed=computed,
-        values=twist.values | tables.values | values,
+        values=known,
         provenance=twist.provenance
         | tables.provenance
         | {key: _route(key, value, own, published) for key, value in values.items()},
         beside={key: other for key, other in beside.items() if key not in published},
-        absent=twist.absent | tables.absent,
+        absent={key: why for key, why in twist.absent.items() if key not in known} | tables.absent,
         published=published,
         own={key: float(getattr(computed, attribute)) for key, (attribute, _) in PUBLISHED.items()}
         | twist.elements,

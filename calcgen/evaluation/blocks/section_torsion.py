@@ -9,7 +9,7 @@ from dataclasses import dataclass, field
 from calcgen.mechanics.kern import kern
 from calcgen.mechanics.monosymmetry import monosymmetry
 from calcgen.mechanics.outline import Outline
-from calcgen.mechanics.saint_venant import SaintVenant, saint_venant
+from calcgen.mechanics.saint_venant import MeshError, SaintVenant, saint_venant
 from calcgen.mechanics.second_route.kern import kern_residuals
 from calcgen.mechanics.second_route.residual import Residual
 from calcgen.mechanics.second_route.torsion import closed_form_residual, torsion_residuals
@@ -33,7 +33,9 @@ _CLOSED_FORMS: Mapping[str, Callable[..., TorsionConstant]] = {
     "ellipse": ellipse_torsion,
     "rectangle": rectangle_torsion,
 }
+NOT_MESHED = "the outline could not be meshed for finite elements"
 _PIECES = "no shear connects the separate pieces of the section"
+_BY_ELEMENTS = ("I_t", "I_w", "A_s_v", "A_s_h", "x_s", "y_s", "beta")
 
 
 @dataclass(frozen=True)
@@ -45,6 +47,7 @@ class Torsional:
     beside : label and value of another route.
     absent : why a property is missing.
     elements : I_t and I_w by finite elements, whichever is in force.
+    meshed : whether the finite elements were found.
     """
 
     values: dict[str, float]
@@ -53,6 +56,7 @@ class Torsional:
     absent: dict[str, str] = field(default_factory=dict)
     elements: dict[str, float] = field(default_factory=dict)
     residuals: tuple[Residual, ...] = ()
+    meshed: bool = True
 
 
 def torsional(
@@ -73,23 +77,25 @@ def torsional(
     shape, sizes : word and dimensions of a section of one whole shape, else '' and none.
     walls : its mid-line, empty where it has none.
     """
-    found = saint_venant(*outlines)
+    found = _solved(outlines)
     mid_line = wall_section(walls) if walls else None
-    values = _by_elements(section, found)
+    values = _by_elements(section, found) if found is not None else {}
     elements = {key: value for key, value in values.items() if key in ("I_t", "I_w")}
     where = dict.fromkeys(values, ELEMENTS)
-    where["I_t"] = f"{ELEMENTS}, within {number_text(100.0 * found.gap, 1)} %"
     beside: dict[str, tuple[str, float]] = {}
-    absent = {} if found.shear else dict.fromkeys(("I_w", "A_s_v", "A_s_h", "x_s", "y_s", "beta"), _PIECES)
-    residuals = [r for r in torsion_residuals(found) if r.what == "J"]
+    residuals: list[Residual] = []
+    if found is not None:
+        where["I_t"] = f"{ELEMENTS}, within {number_text(100.0 * found.gap, 1)} %"
+        residuals += [r for r in torsion_residuals(found) if r.what == "J"]
     if mid_line is not None:
-        beside["I_t"] = (mid_line.torsion_method, mid_line.I_t)
-        if not mid_line.closed and found.shear is not None:
+        _beside(beside, values, where, "I_t", mid_line.I_t, mid_line.torsion_method)
+        if not mid_line.closed and (found is None or found.shear is not None):
             _by_mid_line(mid_line, values, where, beside, governs=sizes.get("slope", 0.0) == 0.0)
     exact = _CLOSED_FORMS[shape](**sizes) if shape in _CLOSED_FORMS else None
     if exact is not None:
-        residuals.append(closed_form_residual(exact, found))
-        beside["I_t"] = (ELEMENTS, values["I_t"])
+        if found is not None:
+            residuals.append(closed_form_residual(exact, found))
+            beside["I_t"] = (ELEMENTS, values["I_t"])
         values["I_t"], where["I_t"] = exact.value, exact.method
         if shape in ("circle", "tube"):
             values["I_w"], where["I_w"] = 0.0, "a round section does not warp"
@@ -99,14 +105,38 @@ def torsional(
     core = kern(section, *outlines)
     residuals += kern_residuals(section, core, *outlines)
     reach = {"k_t": core.k_top, "k_b": core.k_bottom, "k_l": core.k_left, "k_r": core.k_right}
+    reason = NOT_MESHED if found is None else _PIECES
     return Torsional(
         values | reach,
         where | dict.fromkeys(reach, "from the outline"),
         beside,
-        absent,
+        {key: reason for key in _BY_ELEMENTS if key not in values},
         elements,
         tuple(residuals),
+        meshed=found is not None,
     )
+
+
+def _solved(outlines: tuple[Outline, ...]) -> SaintVenant | None:
+    try:
+        return saint_venant(*outlines)
+    except MeshError:
+        return None
+
+
+def _beside(
+    beside: dict[str, tuple[str, float]],
+    values: dict[str, float],
+    where: dict[str, str],
+    key: str,
+    value: float,
+    method: str,
+) -> None:
+    """Set a value beside the one in force, or in force where there is none."""
+    if key in values:
+        beside[key] = (method, value)
+    else:
+        values[key], where[key] = value, method
 
 
 def _by_elements(section: Inertia, found: SaintVenant) -> dict[str, float]:
@@ -136,10 +166,11 @@ def _by_mid_line(
     """Set warping constant and shear centre of an open section by its mid-line, or beside those in force."""
     by_mid_line = {"I_w": mid_line.I_w, "x_s": mid_line.x_s, "y_s": mid_line.y_s}
     for key, value in by_mid_line.items():
-        differs = value != values[key]
-        if governs:
-            if differs:
-                beside[key] = (ELEMENTS, values[key])
+        if value == values.get(key):
+            if governs:
+                where[key] = mid_line.warping_method
+        elif governs and key in values:
+            beside[key] = (ELEMENTS, values[key])
             values[key], where[key] = value, mid_line.warping_method
-        elif differs:
-            beside[key] = (mid_line.warping_method, value)
+        else:
+            _beside(beside, values, where, key, value, mid_line.warping_method)

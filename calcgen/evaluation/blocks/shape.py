@@ -112,17 +112,17 @@ def _report_outline(fault: OutlineError, text: ShapeText, points: list[Point], s
         )
         return
 
-    def edge(corner: int) -> str:
-        start, end = (point_text(points[i % len(points)], scope.style) for i in (corner, corner + 1))
+    def edge(corners: tuple[int, int]) -> str:
+        start, end = (point_text(points[corner], scope.style) for corner in corners)
         return f"from {start} to {end}"
 
     scope.report.error(
         "outline",
-        text.points[contact.first].span,
+        text.points[contact.first[0]].span,
         f"the outline crosses or touches itself at {point_text(contact.place, scope.style)}",
         label=f"the edge {edge(contact.first)}",
         hint="corners follow one another around the section, in either sense",
-        related=(Related(text.points[contact.second].span, f"meets the edge {edge(contact.second)}"),),
+        related=(Related(text.points[contact.second[0]].span, f"meets the edge {edge(contact.second)}"),),
     )
 
 

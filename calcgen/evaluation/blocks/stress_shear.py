@@ -80,7 +80,14 @@ def shear_result(request: StressRequest, field: StressField) -> tuple[ShearResul
         residuals += torsion_residuals(walls, torque.walls, request.T)
     normal = field_stress(field)
     described = [
-        outline_stations(pieces, level, upright, normal, torque.magnitude if torque is not None else None)
+        outline_stations(
+            pieces,
+            level,
+            upright,
+            normal,
+            torque.magnitude if torque is not None else None,
+            alone=None if request.V and request.V_lat else "upright" if request.V_lat else "level",
+        )
     ]
     by_mid_line = None if flow is None else _by_mid_line(flow, level, upright)
     if flow is not None and by_mid_line is not None and by_mid_line.any():

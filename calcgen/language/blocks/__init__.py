@@ -13,11 +13,19 @@ from calcgen.language.blocks.reading import BlockText, Outcome
 from calcgen.language.blocks.section import SectionBlock, read_section
 from calcgen.language.blocks.sheet import SheetBlock, read_sheet
 from calcgen.language.blocks.stress import StressBlock, read_stress
+from calcgen.language.blocks.table import TableBlock, read_table
 from calcgen.language.blocks.working import WorkingBlock, read_working
 from calcgen.text import Report
 
 Block: TypeAlias = (
-    SheetBlock | AssumptionsBlock | InputsBlock | WorkingBlock | SectionBlock | BeamBlock | StressBlock
+    SheetBlock
+    | AssumptionsBlock
+    | InputsBlock
+    | WorkingBlock
+    | SectionBlock
+    | BeamBlock
+    | StressBlock
+    | TableBlock
 )
 
 READERS: dict[str, Callable[[BlockText, Report], Outcome[Block]]] = {
@@ -28,11 +36,15 @@ READERS: dict[str, Callable[[BlockText, Report], Outcome[Block]]] = {
     "section": read_section,
     "beam": read_beam,
     "stress": read_stress,
+    "table": read_table,
 }
 """Kinds of block that are read, each with its reader."""
 
 NAMED = frozenset({"section", "beam", "stress", "table"})
 """Kinds whose head carries a name."""
 
-LATER = ("table", "method", "vary", "takes", "proof")
+ROWED = frozenset({"table"})
+"""Kinds with rows of cells instead of lines of three columns, and a reference in their head."""
+
+LATER = ("method", "vary", "takes", "proof")
 """Kinds of the language that are answered 'not available yet'."""

@@ -10,7 +10,7 @@ from calcgen.language.cursor import Cursor
 from calcgen.language.errors import ReadingError
 from calcgen.language.lines import Line
 from calcgen.language.names import defined_names
-from calcgen.language.nodes import Named
+from calcgen.language.nodes import Column, Named
 from calcgen.text import Related, Report, Span, nearest
 
 NodeT = TypeVar("NodeT")
@@ -19,13 +19,19 @@ BlockT_co = TypeVar("BlockT_co", covariant=True)
 
 @dataclass(frozen=True)
 class BlockText:
-    """A live block as it stands in the file: its head and its lines."""
+    """A live block as it stands in the file: its head and its lines.
+
+    Attributes
+    ----------
+    reference : what the head says after '|', in kinds that have rows; None without it.
+    """
 
     kind: str
     name: Named | None
     head_span: Span
     span: Span
     lines: tuple[Line, ...]
+    reference: Column | None = None
 
     @property
     def target(self) -> Named:

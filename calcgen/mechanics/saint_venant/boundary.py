@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Iterable, Sequence
 from typing import Any
 
 import numpy as np
@@ -10,6 +10,7 @@ import numpy as np
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.delaunay import BoolArray, IntArray
 from calcgen.mechanics.outline import Outline, OutlineError, outline
+from calcgen.mechanics.saint_venant.contacts import apart
 
 TOLERANCE = 0.003  # of the mean thickness: sixteen edges to a quarter of a solid circle
 MOST_CORNERS = 1_000  # the tolerance is doubled until no more are left
@@ -17,6 +18,8 @@ DOUBLINGS = 16  # of the tolerance, at most
 EVEN = 1e-6  # of the length of all edges: a smaller mean has no direction
 LEVEL = 1e-9  # rad: a smaller angle is none
 SNAP = 1e-7  # of the size: edges closer than twice this are one, necks thinner than four times this none
+
+LOST = 1e-4  # of the area: a larger change is none of slits and necks
 
 
 def joined(outlines: Sequence[Outline]) -> tuple[Outline, ...]:
@@ -26,16 +29,18 @@ def joined(outlines: Sequence[Outline]) -> tuple[Outline, ...]:
     """
     if len(outlines) == 1:
         return tuple(outlines)
-    from shapely import union_all  # loaded only for a section that is put together
+    from shapely import set_precision, union_all  # loaded only for a section that is put together
     from shapely.geometry import Polygon
     from shapely.geometry.polygon import orient
 
     corners = np.concatenate([part.exterior for part in outlines])
     size = float(np.ptp(corners, axis=0).max())
-    region = union_all([Polygon(part.exterior, part.holes) for part in outlines])
+    union = region = union_all([Polygon(part.exterior, part.holes) for part in outlines])
     for step in (1.0, -3.0):  # closes slits between edges that touch but for rounding; parts mere points
         region = region.buffer(step * SNAP * size, join_style="mitre")
     grown = [piece.buffer(2.0 * SNAP * size, join_style="mitre") for piece in _polygons(region)]
+    if abs(sum(piece.area for piece in grown) - union.area) > LOST * union.area:
+        grown = [set_precision(union, SNAP * size)]  # rarely, a buffer loses a piece
     pieces = [orient(polygon) for piece in grown for polygon in _polygons(piece)]
     found = [
         Outline(np.array(piece.exterior.coords[:-1]), tuple(np.array(r.coords[:-1]) for r in piece.interiors))
@@ -87,7 +92,9 @@ def simplified(outlines: Sequence[Outline]) -> tuple[tuple[Outline, ...], float]
             break
         tolerance *= 2.0
     return tuple(
-        _checked(rings, part, tolerance) for rings, part in zip(found, outlines, strict=True)
+        piece
+        for rings, part in zip(found, outlines, strict=True)
+        for piece in _checked(rings, part, tolerance)
     ), tolerance
 
 
@@ -95,20 +102,22 @@ def _fewer_corners(part: Outline, tolerance: float) -> list[FloatArray]:
     return [_simplified(ring, tolerance) for ring in part.rings]
 
 
-def _count(parts: Sequence[Sequence[FloatArray]]) -> int:
+def _count(parts: Iterable[Sequence[FloatArray]]) -> int:
     return sum(len(ring) for part in parts for ring in part)
 
 
-def _checked(rings: Sequence[FloatArray], part: Outline, tolerance: float) -> Outline:
-    """Return the outline of simplified rings; where they cross, simplify less or more carefully."""
-    for finer in (0.25, 0.0625):
+def _checked(rings: Sequence[FloatArray], part: Outline, tolerance: float) -> tuple[Outline, ...]:
+    """Return the outline of simplified rings; where they cross, simplify its pieces, and less, or more carefully."""
+    pieces = [(part, rings)]
+    for finer in (1.0, 0.25, 0.0625):
         try:
-            return outline(rings[0], rings[1:])
+            return tuple(outline(found[0], found[1:]) for _, found in pieces)
         except OutlineError:
-            rings = _fewer_corners(part, finer * tolerance)
-            if _count([rings]) > MOST_CORNERS:
+            parts = apart([piece for piece, _ in pieces]) if finer == 1.0 else [piece for piece, _ in pieces]
+            pieces = [(piece, _fewer_corners(piece, finer * tolerance)) for piece in parts]
+            if _count([found for _, found in pieces]) > MOST_CORNERS:
                 break
-    return _carefully_simplified(part, tolerance)
+    return tuple(_carefully_simplified(piece, tolerance) for piece, _ in pieces)
 
 
 def _carefully_simplified(part: Outline, tolerance: float) -> Outline:

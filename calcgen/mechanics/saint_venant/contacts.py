@@ -17,8 +17,8 @@ from calcgen.mechanics.delaunay import cross
 from calcgen.mechanics.outline import Outline
 
 CLOSE = 1e-6  # of the size: corners that are nearer to another edge touch it
-GRID = 2e-7  # of the size: edges that are closer than this become one
-BACK = 1e-5  # of the size: how far corners draw back
+GRIDS = (1e-6, 2.3e-6, 5.1e-6)  # of the size: edges that round to the same line become one; the first that does
+BACK = 2e-5  # of the size: how far corners draw back
 LOST = 1e-3  # of the area: an outline that loses more is so thin that it stays as it is
 AT_ONCE = 300_000  # pairs of a corner and an edge that are compared in one step
 
@@ -55,21 +55,31 @@ def _size(part: Outline) -> float:
 
 
 def _pieces(part: Outline) -> tuple[Outline, ...]:
-    """Bring close edges together on a grid, walk round the material corner by corner, and draw corners back."""
-    from shapely import make_valid, union_all  # loaded only for an outline that needs it
+    """Return the pieces of an outline that touches itself."""
+    pieces: tuple[Outline, ...] = (part,)
+    for grid in GRIDS:
+        pieces = _parted(part, grid * _size(part))
+        if not any(_touches_itself(piece) for piece in pieces):
+            break
+    return pieces
+
+
+def _parted(part: Outline, grid: float) -> tuple[Outline, ...]:
+    """Bring close edges together on a grid, walk round the material edge by edge, and draw corners back."""
+    from shapely import make_valid, set_precision  # loaded only for an outline that needs it
     from shapely.geometry import Polygon
 
-    size = _size(part)
     whole = make_valid(Polygon(part.exterior, part.holes))
-    region = union_all([whole], grid_size=GRID * size)
+    region = set_precision(whole, grid)
     edges = list(_edges(region))
     if not edges or abs(region.area - whole.area) > LOST * whole.area:
         return (part,)
     points, index = np.unique(np.array(edges).reshape(-1, 2), axis=0, return_inverse=True)
-    rings = _walked(points, index.reshape(-1, 2))
-    several = np.bincount(index.reshape(-1, 2)[:, 0], minlength=len(points)) > 1
-    exact = _exact(points, np.concatenate(part.rings), GRID * size)
-    return _nested([_drawn_back(exact[ring], several[ring], BACK * size) for ring in rings])
+    pairs = index.reshape(-1, 2)
+    several = np.bincount(pairs[:, 0], minlength=len(points)) > 1
+    exact = _exact(points, np.concatenate(part.rings), grid)
+    rings = _walked(points, pairs)
+    return _nested([_drawn_back(exact[ring], several[ring], BACK * _size(part)) for ring in rings])
 
 
 def _edges(region: object) -> Iterator[tuple[tuple[float, float], tuple[float, float]]]:

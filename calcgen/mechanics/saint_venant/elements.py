@@ -11,7 +11,7 @@ from typing import Any
 import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.delaunay import IntArray
+from calcgen.mechanics.delaunay import IntArray, MeshError
 from calcgen.mechanics.mesh import Mesh
 
 # area coordinates of the nodes: corners, then the middles of edges 0-1, 1-2, 2-0
@@ -56,6 +56,8 @@ def slopes(coordinates: FloatArray) -> FloatArray:
     )
     return np.array(rows).transpose(2, 0, 1)
 
+
+LARGE = 5_000  # unknowns: beyond, minimum degree may take seconds to order those of regular outlines
 
 AT_NODES = slopes(NODES)
 AT_MIDDLES = AT_NODES[3:]
@@ -120,6 +122,11 @@ def solve(mesh: Mesh, local: FloatArray, unknowns: IntArray, loads: FloatArray) 
     unknowns : (n,) the number of the unknown that stands for each node's value, counted from 0; equal numbers
         make equal values, and -1 makes zero.
     loads : (count of unknowns, …).
+
+    Raises
+    ------
+    MeshError
+        Where the matrix is singular.
     """
     from scipy.sparse import coo_array  # loaded only where something is solved
     from scipy.sparse.linalg import splu
@@ -129,7 +136,13 @@ def solve(mesh: Mesh, local: FloatArray, unknowns: IntArray, loads: FloatArray) 
     free = (rows >= 0) & (columns >= 0)
     count = len(loads)
     matrix: Any = coo_array((local[free], (rows[free], columns[free])), shape=(count, count)).tocsc()
-    factors = splu(matrix, permc_spec="MMD_AT_PLUS_A", diag_pivot_thresh=0.0, options={"SymmetricMode": True})
+    order = "MMD_AT_PLUS_A" if count <= LARGE else "COLAMD"
+    try:
+        factors = splu(
+            matrix, permc_spec=order, diag_pivot_thresh=0.0, options={"SymmetricMode": True}
+        )
+    except RuntimeError as singular:  # triangles without area, to the digits there are
+        raise MeshError("a triangle of the outline has no area") from singular
     found = factors.solve(loads)
     values: FloatArray = np.concatenate((found, np.zeros_like(found[:1])))[unknowns]
     return values

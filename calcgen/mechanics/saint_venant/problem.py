@@ -33,10 +33,14 @@ LONG = 3.0  # of the mean thickness: triangles that are longer may be thin in a 
 SLENDER = 600.0  # length of all edges over mean thickness: beyond, triangles may be thin
 RE_ENTRANT = 0.25 * np.pi  # a corner that turns inwards by more has a singular stress, and small triangles
 FINEST = 0.08  # of the mean thickness: triangles at such a corner
-MOST_RE_ENTRANT = 60  # with more of them refinement is left to the bounds
-MOST_SHARP = 100  # with more of them edges of a slender outline are not graded
+SMALLEST = 0.01  # of the mean thickness: sides that are not split for the sake of better angles
+FINER = 0.01  # of that, where the mesh is refined
+FEW = 30  # such corners: with more of them triangles there are larger, and left to refinement
+SIDES = 100.0  # on the edge of a slender outline, at least, for what is cubic along inclined walls
+GRAIN = 1e-6  # of the length of all edges: shorter sides would be lost in the digits of coordinates
 SHARP = 0.25 * np.pi  # a corner that turns by more disturbs the stress in a slender wall
-TRIANGLES = 6_000  # of all meshes together: no refinement beyond
+POINTED = 5.0 / 6.0 * np.pi  # a corner that turns by more ends a wall that has no thickness there
+TRIANGLES = 12_000  # of all meshes together: no refinement beyond
 
 
 @dataclass(frozen=True, eq=False)
@@ -121,7 +125,7 @@ def meshed_for_torsion(outlines: tuple[Outline, ...]) -> tuple[Mesh, FloatArray,
         enough = int(np.searchsorted(np.cumsum(found.gap[order]), SHARE * found.gap.sum())) + 1
         marked = np.zeros(len(order), dtype=bool)
         marked[order[:enough]] = True
-        mesh = refined(mesh, marked, size.thin_beyond)
+        mesh = refined(mesh, marked, Size(finest=FINER * size.finest, thin_beyond=size.thin_beyond))
         triangles += len(mesh.triangles)
         local = stiffness(mesh)
         found = torsion(mesh, local)
@@ -136,18 +140,28 @@ def _size(outlines: Sequence[Outline]) -> Size:
     """
     thickness = mean_thickness(outlines)
     area = sum(_area(part) for part in outlines)
-    if 2.0 * area / thickness > SLENDER * thickness:
-        sharp = _corners_that_turn(outlines, lambda turn: np.abs(turn) > SHARP)
-        few = len(sharp) <= MOST_SHARP
+    length = 2.0 * area / thickness
+    if length > SLENDER * thickness:
+        sharp = _corners_that_turn(outlines, lambda turn: (np.abs(turn) > SHARP) & (turn < POINTED))
         return Size(
-            near=sharp if few else None, at_points=FINEST * thickness, thin_beyond=LONG * thickness
+            everywhere=length / SIDES,
+            near=sharp,
+            at_points=max(_finest(sharp) * thickness, GRAIN * length),
+            finest=SMALLEST * thickness,
+            thin_beyond=LONG * thickness,
         )
     corners = re_entrant_corners(outlines)
     return Size(
         everywhere=min(thickness / SIDES_PER_THICKNESS, area**0.5 / SIDES_PER_ROOT_OF_AREA),
-        near=corners if len(corners) <= MOST_RE_ENTRANT else None,
-        at_points=FINEST * thickness,
+        near=corners,
+        at_points=_finest(corners) * thickness,
+        finest=SMALLEST * thickness,
     )
+
+
+def _finest(corners: FloatArray) -> float:
+    """Return the size at sharp corners, of the mean thickness: the more of them, the coarser."""
+    return min(FINEST * max(1.0, len(corners) / FEW), 1.0 / SIDES_PER_THICKNESS)
 
 
 def re_entrant_corners(outlines: Sequence[Outline]) -> FloatArray:

@@ -2,11 +2,13 @@
 
 from __future__ import annotations
 
+import re
+from collections.abc import Iterable
 from dataclasses import dataclass
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import BeamResult, CombinationResult, GroupResult, Premise
+from calcgen.evaluation.results import BeamResult, CombinationResult, GroupResult, Premise, Result
 from calcgen.language.nodes import Column
 from calcgen.quantities.symbols import canonical, plain
 from calcgen.site.addresses import result_anchor
@@ -15,6 +17,8 @@ from calcgen.site.equations import Equation, combination, stated
 from calcgen.site.figure import FigureSvg
 from calcgen.site.mathml import symbol
 from calcgen.site.views import RouteRow, RowView, ValueRow, result_row, route_row
+
+_FURTHER = re.compile(r"θ_|w_rel_|x_[MV]_0_")  # others stand in the table by another name, or are of one span
 
 
 @dataclass(frozen=True)
@@ -29,11 +33,15 @@ class BeamLineView:
 
 @dataclass(frozen=True)
 class GroupView:
-    """A group of combinations and its results; the name is empty where all cases act together."""
+    """A group of combinations and its results; the name is empty where all cases act together.
+
+    `further` are rotations at supports, deflections from the chords, and where M and V change sign.
+    """
 
     name: str
     combinations: str
     results: tuple[ValueRow, ...]
+    further: tuple[ValueRow, ...]
 
 
 @dataclass(frozen=True)
@@ -102,7 +110,13 @@ def _factors(solved: CombinationResult) -> Equation:
 def _group(beam: BeamResult, group: GroupResult) -> GroupView:
     names = [plain(c.name) for c in group.combinations if c.name]
     alone = names == [plain(group.name)]
-    rows = tuple(
-        result_row(r, result_anchor(beam.name, group.name, r.name), beam.line) for r in group.results
+
+    def rows(results: Iterable[Result]) -> tuple[ValueRow, ...]:
+        return tuple(result_row(r, result_anchor(beam.name, group.name, r.name), beam.line) for r in results)
+
+    return GroupView(
+        name=plain(group.name) if group.name else "",
+        combinations="" if alone else ", ".join(names),
+        results=rows(group.results),
+        further=rows(r for r in group.further if _FURTHER.match(r.name)),
     )
-    return GroupView(plain(group.name) if group.name else "", "" if alone else ", ".join(names), rows)

@@ -9,6 +9,7 @@ from markupsafe import escape
 from calcgen.evaluation.results import CheckResult, CheckRow, DerivedRow, FailedRow, WorkingResult
 from calcgen.site import equations
 from calcgen.site.context import Context
+from calcgen.site.lookups import remarks_on
 from calcgen.site.views import CheckRowView, RowView, TextRow, ValueRow, utilisation_text
 
 
@@ -29,9 +30,12 @@ def _row(row: DerivedRow | CheckRow | FailedRow, context: Context) -> ValueRow |
     match row:
         case DerivedRow():
             view = context.row(row.name, row.node.annotations, row.line)
-            return ValueRow(view, equations.derived(row, context.source))
+            return ValueRow(
+                view, equations.derived(row, context.source, remarks_on(row.node.formula, context))
+            )
         case CheckRow():
-            return check_view(row.result, equations.check(row, context.source), context)
+            remarks = remarks_on(row.node.comparison, context)
+            return check_view(row.result, equations.check(row, context.source, remarks), context)
         case FailedRow():
             return context.failed(row)
 

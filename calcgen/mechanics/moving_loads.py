@@ -20,8 +20,8 @@ from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import RIGID, Quantity
 from calcgen.mechanics.beam.results import TIE, Side
 from calcgen.mechanics.combinations import ReactionPart
-from calcgen.mechanics.influence import NEGLIGIBLE, BoolArray, Influence, quantity_index
-from calcgen.mechanics.passage import Passage, bettered, nothing
+from calcgen.mechanics.influence import BoolArray, Influence, quantity_index
+from calcgen.mechanics.passage import Passage, bettered, nothing, with_values
 from calcgen.mechanics.trains import Position, Train
 
 
@@ -96,15 +96,21 @@ class Crossing:
             for passage in self._passages:
                 cubics = passage.at(quantity, int(element), places[here])
                 found[:, :, here] = bettered(cubics, passage, found[:, :, here], noise)
-        nodes = set(self.influence.nodes.tolist())
-        part = quantity_index(quantity)[0]
-        jumpy = part == "V" or (part == "slope" and self.influence.model.shears)
-        jumps = [(float(x),) if jumpy and float(x) in nodes else () for x in places]
-        return Reach(found[0, 0], found[1, 0], found, lambda i, p: self._attained(p, jumps[i]))
+        ends, jumpy = self.influence.nodes[[0, -1]], self._jumps(quantity)
+        for number in np.flatnonzero(np.isin(places, ends)) if jumpy else ():
+            for passage in self._passages:
+                at_end = passage.on_end(quantity, last=bool(places[number] == ends[1]))
+                found[:, :, number] = with_values(at_end, passage, found[:, :, number], noise)
+        return Reach(
+            found[0, 0],
+            found[1, 0],
+            found,
+            lambda i, position: self._attained(position, (float(places[i]),) if jumpy else ()),
+        )
 
     def reaction_reach(self, support: int, part: ReactionPart = "force") -> Reach:
         """Give the extremes of one part of a support's reaction over all positions, as one place."""
-        noise = NEGLIGIBLE * self._load * float(np.abs(self.influence.support_forces).max())
+        noise = self._load * self.influence.reaction_noise(part)
         found = nothing(1)
         for passage in self._passages:
             found = bettered(passage.reaction(support, part), passage, found, noise)
@@ -151,13 +157,18 @@ class Crossing:
             for low in (False, True)
         ]
         noise = self._noise(quantity)
-        for passage in self._passages:
-            effects += [
-                TrainEffect(value, x, self._attained(position))
-                for value, x, position in passage.under_axles(quantity, a, b)
-                if abs(value) > noise
-            ]
+        under = [each for passage in self._passages for each in passage.under_axles(quantity, a, b)]
+        effects += [
+            TrainEffect(value, x, self._attained(position, (x,) if self._jumps(quantity) else ()))
+            for value, x, position in sorted(under, key=lambda each: each[1])
+            if abs(value) > noise
+        ]
         return TrainRange(_first(effects, 1.0), _first(effects, -1.0))
+
+    def _jumps(self, quantity: Quantity) -> bool:
+        """Tell whether a quantity at a place jumps when an axle passes it."""
+        part = quantity_index(quantity)[0]
+        return part == "V" or (part == "slope" and self.influence.model.shears)
 
     def _attained(self, position: Position, jumps: tuple[float, ...] = ()) -> Position:
         """Give the position at its place, where the effect does not jump there or has its limit as value.

@@ -1,0 +1,91 @@
+"""What a page says of values looked up in tables: where, for what, and between which heads."""
+
+from __future__ import annotations
+
+from collections.abc import Sequence
+
+from markupsafe import Markup, escape
+
+from calcgen.evaluation.results import (
+    BeamResult,
+    CheckRow,
+    DerivedRow,
+    Lookup,
+    ProseResult,
+    SectionResult,
+    StressResult,
+    TableHead,
+    TableResult,
+    WorkingResult,
+)
+from calcgen.language.nodes import Comparison, Formula, Name, Number, Text
+from calcgen.quantities.symbols import plain
+from calcgen.site.context import Context
+from calcgen.site.equations import looked_up
+from calcgen.text import Span
+
+
+def remarks_on(node: Formula | Comparison, context: Context) -> tuple[Markup, ...]:
+    """Return a remark for each value that a line looks up, unless the line itself says all of it."""
+    tables = {t.name: t for t in context.calc.segments if isinstance(t, TableResult)}
+    found = []
+    for lookup in context.calc.lookups:
+        if _inside(lookup.span, node.span):
+            between = between_text(lookup, tables[lookup.table])
+            if between or not _says_all(node):
+                (step,) = looked_up(lookup).steps
+                found.append(Markup("").join([*step, escape(f", {between}" if between else "")]))
+    return tuple(dict.fromkeys(found))
+
+
+def between_text(lookup: Lookup, table: TableResult) -> str:
+    """Return the heads that a lookup interpolates between: 'between the rows 20 mm and 40 mm', or ''."""
+    along = [_two("rows", lookup.rows, table.rows), _two("columns", lookup.columns, table.columns)]
+    texts = [text for text in along if text]
+    return f"between {' and '.join(texts)}" if texts else ""
+
+
+def user_of(lookup: Lookup, context: Context) -> Markup:
+    """Return what looks a value up, as a link: a value, a check, a block, a line of prose."""
+    line = context.source.line_number(lookup.span)
+    anchor, text = _user(lookup.span, context)
+    where = f"line {line}"
+    if not anchor:
+        return escape(where)
+    return Markup('<a href="#{}">{}</a>, {}').format(anchor, text, where)
+
+
+def _user(span: Span, context: Context) -> tuple[str, str]:
+    for block, result in zip(context.calc.calc.segments, context.calc.segments, strict=True):
+        if not _inside(span, block.span):
+            continue
+        match result:
+            case WorkingResult(rows=rows):
+                for row in rows:
+                    if isinstance(row, DerivedRow) and _inside(span, row.node.span):
+                        return row.name, plain(row.name)
+                    if isinstance(row, CheckRow) and _inside(span, row.node.span):
+                        return row.result.address, row.result.label
+            case SectionResult() | BeamResult() | StressResult():
+                return result.name, plain(result.name)
+            case ProseResult():
+                return f"text-{context.source.line_number(result.prose.span)}", "text"
+            case _:
+                pass
+    return "", ""
+
+
+def _two(what: str, indices: Sequence[int], heads: Sequence[TableHead]) -> str:
+    if len(indices) < 2:
+        return ""
+    first, second = (heads[i].shown.text for i in indices)
+    return f"the {what} {first} and {second}"
+
+
+def _says_all(node: Formula | Comparison) -> bool:
+    """Return whether a line is a lookup alone, by literals."""
+    return isinstance(node, Name) and all(isinstance(a, Number | Text) for a in node.arguments or ())
+
+
+def _inside(span: Span, of: Span) -> bool:
+    return of.start <= span.start and span.end <= of.end
