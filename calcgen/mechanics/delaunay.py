@@ -5,6 +5,9 @@ over them) are split; once there are none, points go to the centres of the circl
 too thin or too large (J. Ruppert, A Delaunay refinement algorithm for quality 2-dimensional mesh generation,
 1995, from memory). Edges at an acute corner are split at powers of two from it, so that both sides of the
 corner match and the splitting ends. The work is bounded: at the bound, triangles stay as they are.
+
+Machines that round differently find the same triangles: equal lengths are equal but for a small difference,
+new points lie on a grid, and of four points on one circle a slight shear tells which diagonal is chosen.
 """
 
 from __future__ import annotations
@@ -30,6 +33,12 @@ POINTS = 6_000  # no more for better triangles
 WORK = 60_000  # points of all rounds together: no more rounds for better triangles
 MOST_WORK = 200_000  # no more rounds for edges that are missing
 AT_ONCE = 1_000  # points put in one round; bounds the memory of comparing all pairs
+EQUAL = 1e-9  # of a length: a smaller difference is none
+GRID = 2.0**-33  # of the size, about: new points lie on a grid
+SHEAR = np.array([[1.0, 7.1e-6], [1.3e-5, 1.0]])  # no four points stay on one circle
+SCATTER = np.array(
+    [1414.0, 1732.0]
+)  # of equally bad triangles those come first that lie anywhere, not in a row
 FAR = 4.0  # of the size: corners of a square round all points, so that no edge lies on the convex hull
 
 
@@ -83,10 +92,9 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
     """
     acute = _acute_corners(corners)
     smallest = max(size.finest, SMALLEST * float(np.ptp(corners.points, axis=0).max()))
-    long: BoolArray = _lengths(corners) > size.at(_middles(corners))
-    while long.any():
+    grid = GRID * 2.0 ** math.ceil(math.log2(float(np.ptp(corners.points, axis=0).max())))
+    while (long := _lengths(corners) > (1.0 + EQUAL) * size.at(_middles(corners))).any():
         corners = _split(corners, long, acute)
-        long = _lengths(corners) > size.at(_middles(corners))
     work = 0
     while True:
         inside, missing, encroached_upon = _triangles(corners)
@@ -106,7 +114,7 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
         encroached = _encroached_by(centres, corners)
         struck: BoolArray = np.logical_or.reduce(encroached, axis=0) & (length > size.finest)
         lost = encroached.any(axis=1) | _leave(middles, centres, corners, encroached_upon)
-        centres = centres[~lost]
+        centres = np.round(centres[~lost] / grid) * grid
         if not struck.any() and len(centres) == 0:
             break
         if struck.any():
@@ -137,7 +145,7 @@ def _triangles(corners: Corners) -> tuple[IntArray, BoolArray, BoolArray]:
     far = FAR * float(np.max(high - low)) * np.array([[-1.0, -1.0], [1.0, -1.0], [1.0, 1.0], [-1.0, 1.0]])
     n = len(points) + 4
     try:
-        found = Delaunay(np.concatenate((points - 0.5 * (low + high), far)))
+        found = Delaunay(np.concatenate((points - 0.5 * (low + high), far)) @ SHEAR)
     except QhullError as flat:  # all points lie on one line, to the digits there are
         raise MeshError("the outline has no width") from flat
     triangles = found.simplices.astype(np.intp)
@@ -212,7 +220,8 @@ def _split(corners: Corners, which: BoolArray, acute: FloatArray) -> Corners:
     start, end = corners.edges[which].T
     from_, to = corners.points[start], corners.points[end]
     length = np.hypot(*(to - from_).T)
-    shell = np.exp2(np.round(np.log2(0.5 * length))) / length  # between 0.35 and 0.71
+    exponent = np.round(np.log2(0.5 * length) - EQUAL).astype(int)
+    shell = np.round(np.ldexp(1.0, exponent) / length / GRID) * GRID  # between 0.35 and 0.71
     sharp = np.zeros(len(corners.points), dtype=bool)
     sharp[: len(acute)] = acute != 0.0
     share = np.where(sharp[start] == sharp[end], 0.5, np.where(sharp[start], shell, 1.0 - shell))
@@ -228,7 +237,7 @@ def _split(corners: Corners, which: BoolArray, acute: FloatArray) -> Corners:
 def _centres_of_bad(
     corners: Corners, inside: IntArray, size: Size, acute: FloatArray, smallest: float
 ) -> tuple[FloatArray, FloatArray]:
-    """Return middles of triangles that are too thin or too large, the worst first, and of the circles round them.
+    """Return the middles of triangles that are too thin or too large, the worst first, and of their circles.
 
     Of centres that lie in each other's circle only the first is kept: the others may not be needed then.
     A triangle that is thin because of an acute corner of the outline cannot be helped.
@@ -239,17 +248,19 @@ def _centres_of_bad(
     a, b = corner[:, 1] - corner[:, 0], corner[:, 2] - corner[:, 0]
     doubled = cross(a, b)
     radius = 0.5 * sides.prod(axis=1) / doubled
-    shortest = np.argmin(sides, axis=1)
+    shortest = np.argmax(sides <= (1.0 + EQUAL) * sides.min(axis=1)[:, None], axis=1)
     rows = np.arange(len(inside))
     tip = inside[rows, shortest]
     sharp = np.zeros(len(corners.points))
     sharp[: len(acute)] = acute
     thinness = radius / sides[rows, shortest]
-    thin = (thinness > THIN) & (sharp[tip] <= 0.0) & (sides[rows, shortest] > smallest)
+    thin = (thinness > (1.0 + EQUAL) * THIN) & (sharp[tip] <= 0.0) & (sides[rows, shortest] > smallest)
     excess = radius * math.sqrt(3.0) / size.at(corner.mean(axis=1))  # an equilateral triangle's side
-    bad = np.flatnonzero((thin | (excess > 1.0)) & (sides.max(axis=1) <= size.thin_beyond))
+    bad = np.flatnonzero((thin | (excess > 1.0 + EQUAL)) & (sides.max(axis=1) <= size.thin_beyond))
     worst = np.maximum(np.where(thin, thinness / THIN, 0.0), excess)[bad]
-    bad = bad[np.argsort(-worst, kind="stable")[:AT_ONCE]]
+    scattered = np.mod(corner[bad].mean(axis=1) @ SCATTER / np.ptp(corners.points), 1.0)
+    first = np.lexsort((scattered, np.round(-worst, 6)))
+    bad = bad[first[:AT_ONCE]]
     squared_a, squared_b = (np.sum(v[bad] ** 2, axis=1) for v in (a, b))
     to_centre = (
         np.column_stack(
@@ -262,7 +273,9 @@ def _centres_of_bad(
     )
     centres = corner[bad, 0] + to_centre
     x, y = centres.T
-    near = np.hypot(x[:, None] - x, y[:, None] - y) < radius[bad]  # within the circle of the row
+    near = (
+        np.hypot(x[:, None] - x, y[:, None] - y) < (1.0 - EQUAL) * radius[bad]
+    )  # within the circle of the row
     kept = ~np.tril(near, -1).any(axis=1)
     return corner[bad[kept]].mean(axis=1), centres[kept]
 
@@ -271,7 +284,7 @@ def _encroached_by(centres: FloatArray, corners: Corners) -> BoolArray:
     """Tell for each centre and edge (c, k) whether the centre lies in the circle over the edge."""
     middle, half = _middles(corners), 0.5 * _lengths(corners)
     distance = np.hypot(centres[:, :1] - middle[:, 0], centres[:, 1:] - middle[:, 1])
-    within: BoolArray = distance < half
+    within: BoolArray = distance < (1.0 - EQUAL) * half
     return within
 
 
@@ -287,6 +300,11 @@ def _leave(middles: FloatArray, centres: FloatArray, corners: Corners, which: Bo
         return found
 
     way = centres - middles
-    ends = [way[:, :1] * (p[:, 1] - middles[:, 1:]) - way[:, 1:] * (p[:, 0] - middles[:, :1]) for p in (start, end)]
-    beyond: BoolArray = ((side(centres) <= 0.0) & (side(middles) > 0.0) & (ends[0] * ends[1] <= 0.0)).any(axis=1)
+    ends = [
+        way[:, :1] * (p[:, 1] - middles[:, 1:]) - way[:, 1:] * (p[:, 0] - middles[:, :1])
+        for p in (start, end)
+    ]
+    beyond: BoolArray = ((side(centres) <= 0.0) & (side(middles) > 0.0) & (ends[0] * ends[1] <= 0.0)).any(
+        axis=1
+    )
     return beyond

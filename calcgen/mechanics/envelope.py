@@ -32,6 +32,7 @@ from calcgen.mechanics.actions import (
 )
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import PARTS, BeamModel, CaseSolution, Load, Quantity, piecewise, scaled, solve
+from calcgen.mechanics.beam.mesh import nearest
 from calcgen.mechanics.beam.results import TIE
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.mechanics.influence import BoolArray, influence, quantity_index, reaction_index
@@ -86,7 +87,9 @@ class Effects:
 
     def at(self, quantity: Quantity, x: float) -> EffectRange:
         """Give the extremes of a quantity at one place, on both sides of it."""
-        shares = self._shares(quantity, np.array([x, x]), np.array([False, True]))
+        near = float(self._nodes[nearest(self._nodes, x)])
+        place = near if self.model.same(x, near) else x
+        shares = self._shares(quantity, np.array([place, place]), np.array([False, True]))
         return EffectRange(self._governing(shares, low=False), self._governing(shares, low=True))
 
     def reaction(self, support: int, part: ReactionPart = "force") -> EffectRange:
@@ -352,6 +355,11 @@ class Effects:
         if not self._moving.all():
             places += self._stationary(quantity, joints, seeds, low=low)
         x, right = (np.array(each) for each in zip(*places, strict=True))
+        # As close to a joint as this, a place is the joint itself, on the side from which it was reached.
+        near = joints[nearest(joints, x)]
+        close = np.abs(x - near) <= 2.0 * self.model.tolerance
+        right = np.where(close & (x != near), x > near, right)
+        x = np.where(close, near, x)
         return self._governing(self._shares(quantity, x, right), low=low)
 
     def _stationary(self, quantity: Quantity, joints: FloatArray, seeds: _Shares, *, low: bool) -> Places:

@@ -320,7 +320,7 @@ def influence(model: BeamModel, planes: Sequence[Plane] = ("vertical",)) -> Infl
 
 
 def _start_states(model: BeamModel, loads: Sequence[Load]) -> tuple[FloatArray, FloatArray, FloatArray]:
-    """State at the start of each element, forces of the supports under each load alone, and rounding error."""
+    """State at the start of each element and forces of the supports under each load, and rounding error."""
     order = [PARTS.index("w"), PARTS.index("rotation"), PARTS.index("M"), PARTS.index("V")]
     starts: list[FloatArray] = []
     reactions: list[FloatArray] = []

@@ -24,6 +24,8 @@ from calcgen.mechanics.influence import BoolArray, Influence, quantity_index
 from calcgen.mechanics.passage import Passage, bettered, nothing, with_values
 from calcgen.mechanics.trains import Position, Train
 
+_ROUNDING = 1e-3  # part of the model's tolerance within which an axle stands at a place
+
 
 @dataclass(frozen=True)
 class TrainEffect:
@@ -175,13 +177,20 @@ class Crossing:
 
         It jumps where an axle stands at one of the places `jumps`, or leaves an end that no support holds.
         """
-        model, beside = self.influence.model, position.beside
-        lateral = self.train.lateral != 0.0
+        model, lateral = self.influence.model, self.train.lateral != 0.0
         held = [s.x for s in model.supports if s.w == RIGID and (s.lateral == RIGID or not lateral)]
-        off = {"left": (0.0,), "right": (model.length,), None: ()}[beside]
-        ends = [x for x in off if not any(model.same(x, place) for place in held)]
-        near = any(model.same(x, place) for x in position.places(self.train) for place in (*ends, *jumps))
-        return position if near else replace(position, beside=None)
+        ends: dict[float, Side] = {0.0: "left", model.length: "right"}
+        free = {end: off for end, off in ends.items() if not any(model.same(end, x) for x in held)}
+        for x in position.places(self.train):
+            for place in (*jumps, *free):
+                if not model.same(x, place):
+                    continue
+                side: Side | None = "right" if x > place else "left"
+                if abs(x - place) <= _ROUNDING * model.tolerance:
+                    side = position.beside
+                if place in jumps or side == free[place]:
+                    return replace(position, beside=side)
+        return replace(position, beside=None)
 
     def _noise(self, quantity: Quantity) -> float:
         return self._load * self.influence.noise(quantity)

@@ -6,6 +6,7 @@ from dataclasses import replace
 
 import numpy as np
 import pytest
+from hypothesis import given, settings
 
 from calcgen.mechanics.actions import Actions, Combination, Effect, Pattern
 from calcgen.mechanics.beam import (
@@ -29,6 +30,7 @@ from calcgen.mechanics.influence import influence
 from calcgen.mechanics.moving_loads import Crossing
 from calcgen.mechanics.second_route.moving import extreme_residuals, reaction_residuals
 from calcgen.mechanics.trains import Train
+from tests.mechanics.test_trains import crossings
 
 EI = 2e7
 KIP, FT = 4448.2216152605, 0.3048
@@ -191,6 +193,23 @@ def test_a_crane_runway() -> None:
         assert all(residual.holds for residual in residuals), residuals
     sideways = runway.reaction(1, "force_lat")
     assert all(r.holds for r in reaction_residuals(runway, 1, sideways, "force_lat"))
+
+
+@given(crossings())
+@settings(max_examples=5, deadline=None)
+def test_on_any_beam_what_governs_is_solved_again_and_never_exceeded(drawn: tuple[BeamModel, Train]) -> None:
+    model, train = drawn
+    actions = Actions(
+        {"Q": (DistributedLoad(0.0, model.length, 5e3, 8e3),)}, frozenset({"Q"}), {"T": (train,)}
+    )
+    found = effects(model, actions, (Combination("U", {"Q": 1.5, "T": 200.0}),))
+    for quantity in VERTICAL:
+        extremes, band = found.extremes(quantity), found.band(quantity, 61)
+        size = max(abs(extremes.max.value), abs(extremes.min.value))
+        assert band.high.max() <= extremes.max.value + 1e-9 * size
+        assert band.low.min() >= extremes.min.value - 1e-9 * size
+        residuals = extreme_residuals(found, quantity, extremes)
+        assert all(residual.holds for residual in residuals), residuals
 
 
 def test_a_case_with_trains_alone_leaves_a_beam_at_rest_without_them() -> None:

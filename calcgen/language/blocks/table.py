@@ -146,11 +146,11 @@ def _agree(heads: Sequence[Head], what: str, report: Report) -> None:
     """Report heads of both kinds, and a text that stands twice."""
     odd = next((h for h in heads if h.text and (h.value is None) != (heads[0].value is None)), None)
     if odd is not None and heads[0].text:
-        found = "a text" if odd.value is None else "a quantity"
+        found = "read as a text" if odd.value is None else "a quantity"
         report.error(
             "table-heads",
             odd.span,
-            f"the heads of the {what} are all quantities or all texts, and this is {found}",
+            f"the heads of the {what} are all quantities or all texts, and '{odd.text}' is {found}",
             hint='a number in quotes is a text: "2"; a quantity is a number with its unit: 2 m',
             related=(Related(heads[0].span, "the first head"),),
         )

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Iterable, Sequence
 from typing import Any
 
@@ -18,8 +19,10 @@ DOUBLINGS = 16  # of the tolerance, at most
 EVEN = 1e-6  # of the length of all edges: a smaller mean has no direction
 LEVEL = 1e-9  # rad: a smaller angle is none
 SNAP = 1e-7  # of the size: edges closer than twice this are one, necks thinner than four times this none
-
 LOST = 1e-4  # of the area: a larger change is none of slits and necks
+EQUAL = 1e-9  # of a length: a smaller difference is none, so that rounding decides nothing
+SLENDER = 500.0  # times as long as thick: for what is thinner the grid is finer
+GRID = 2.0**-33  # of the size, about: corners are brought on a grid, so that rounding decides nothing
 
 
 def joined(outlines: Sequence[Outline]) -> tuple[Outline, ...]:
@@ -106,8 +109,18 @@ def _count(parts: Iterable[Sequence[FloatArray]]) -> int:
     return sum(len(ring) for part in parts for ring in part)
 
 
+def on_grid(outlines: Sequence[Outline]) -> tuple[Outline, ...]:
+    """Return the outlines with corners on a fine grid, which machines that round differently find alike."""
+    size = max(float(np.ptp(part.exterior, axis=0).max()) for part in outlines)
+    step = GRID * 2.0 ** math.ceil(math.log2(min(size, SLENDER * mean_thickness(outlines))))
+    return tuple(
+        Outline(np.round(part.exterior / step) * step, tuple(np.round(h / step) * step for h in part.holes))
+        for part in outlines
+    )
+
+
 def _checked(rings: Sequence[FloatArray], part: Outline, tolerance: float) -> tuple[Outline, ...]:
-    """Return the outline of simplified rings; where they cross, simplify its pieces, and less, or more carefully."""
+    """Return the outline of simplified rings; where they cross, take it apart, and simplify less, or carefully."""
     pieces = [(part, rings)]
     for finer in (1.0, 0.25, 0.0625):
         try:
@@ -145,7 +158,9 @@ def _simplified(ring: FloatArray, tolerance: float) -> FloatArray:
     kept = np.zeros(len(closed), dtype=bool)
     second = _farthest(ring, ring[0])
     kept[[0, second, -1]] = True
-    kept[1 + _farthest_from_chord(closed[1:-1], ring[0], ring[second])] = True  # three, however small the ring
+    kept[1 + _farthest_from_chord(closed[1:-1], ring[0], ring[second])] = (
+        True  # three, however small the ring
+    )
     while (further := _beyond(closed, np.flatnonzero(kept), tolerance)).any():
         kept |= further
         if np.count_nonzero(kept) > MOST_CORNERS + 1:
@@ -156,7 +171,7 @@ def _simplified(ring: FloatArray, tolerance: float) -> FloatArray:
 
 def _farthest(ring: FloatArray, place: FloatArray) -> int:
     distance = np.hypot(*(ring - place).T)
-    return int(np.argmax(distance >= distance.max() * (1.0 - 1e-9)))  # the first of equals
+    return int(np.argmax(distance >= distance.max() * (1.0 - EQUAL)))  # the first of equals
 
 
 def _farthest_from_chord(places: FloatArray, start: FloatArray, end: FloatArray) -> int:
@@ -172,7 +187,7 @@ def _beyond(closed: FloatArray, chosen: IntArray, tolerance: float) -> BoolArray
     share = np.clip(np.sum(along * to_point, axis=1) / np.sum(along * along, axis=1), 0.0, 1.0)
     distance = np.hypot(*(to_point - share[:, None] * along).T)
     largest = np.maximum.reduceat(distance, chosen[:-1])
-    candidates = np.flatnonzero((distance > tolerance) & (distance == largest[chord]))
+    candidates = np.flatnonzero((distance > tolerance) & (distance >= largest[chord] * (1.0 - EQUAL)))
     _, first = np.unique(chord[candidates], return_index=True)
     marked = np.zeros(len(closed), dtype=bool)
     marked[candidates[first]] = True

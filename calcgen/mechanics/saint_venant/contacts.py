@@ -7,17 +7,22 @@ its own.
 
 from __future__ import annotations
 
+import itertools
 import math
 from collections.abc import Iterator, Sequence
 
 import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.delaunay import cross
+from calcgen.mechanics.delaunay import BoolArray, IntArray, cross
 from calcgen.mechanics.outline import Outline
 
 CLOSE = 1e-6  # of the size: corners that are nearer to another edge touch it
-GRIDS = (1e-6, 2.3e-6, 5.1e-6)  # of the size: edges that round to the same line become one; the first that does
+GRIDS = (
+    1e-6,
+    2.3e-6,
+    5.1e-6,
+)  # of the size: edges that round to the same line become one; the first that does
 BACK = 2e-5  # of the size: how far corners draw back
 LOST = 1e-3  # of the area: an outline that loses more is so thin that it stays as it is
 AT_ONCE = 300_000  # pairs of a corner and an edge that are compared in one step
@@ -25,7 +30,9 @@ AT_ONCE = 300_000  # pairs of a corner and an edge that are compared in one step
 
 def apart(outlines: Sequence[Outline]) -> tuple[Outline, ...]:
     """Return the outlines, and in the place of one that touches itself its pieces, which do not."""
-    return tuple(piece for part in outlines for piece in (_pieces(part) if _touches_itself(part) else (part,)))
+    return tuple(
+        piece for part in outlines for piece in (_pieces(part) if _touches_itself(part) else (part,))
+    )
 
 
 def _touches_itself(part: Outline) -> bool:
@@ -92,12 +99,11 @@ def _edges(region: object) -> Iterator[tuple[tuple[float, float], tuple[float, f
             continue
         turned = orient(polygon)
         for ring in (turned.exterior, *turned.interiors):
-            places = [(float(x), float(y)) for x, y in ring.coords]
-            yield from zip(places[:-1], places[1:], strict=True)
+            yield from itertools.pairwise((float(x), float(y)) for x, y in ring.coords)
 
 
-def _walked(points: FloatArray, edges: np.ndarray) -> list[list[int]]:
-    """Return rings of points: at each of them on to the first edge that bounds the material of the last one."""
+def _walked(points: FloatArray, edges: IntArray) -> list[list[int]]:
+    """Return rings of points: at each, on to the edge that bounds the same material as the last one."""
     leaving: dict[int, list[int]] = {}
     for number, (start, _) in enumerate(edges.tolist()):
         leaving.setdefault(start, []).append(number)
@@ -114,13 +120,12 @@ def _walked(points: FloatArray, edges: np.ndarray) -> list[list[int]]:
         following.append(min(leaving[end], key=lambda edge, back=back: clockwise(back, edge)))  # type: ignore[misc]
     rings, left = [], set(range(len(edges)))
     while left:
-        first = edge = min(left)
+        edge = min(left)
         ring = []
         while edge in left:
             left.remove(edge)
             ring.append(int(edges[edge, 0]))
             edge = following[edge]
-        assert edge == first
         rings.append(ring)
     return rings
 
@@ -133,8 +138,8 @@ def _exact(points: FloatArray, corners: FloatArray, reach: float) -> FloatArray:
     return np.where((distance < reach)[:, None], corners[nearest], points)
 
 
-def _drawn_back(ring: FloatArray, which: np.ndarray, by: float) -> FloatArray:
-    """Move the corners marked into the material between their edges, unless that fills half a turn or more."""
+def _drawn_back(ring: FloatArray, which: BoolArray, by: float) -> FloatArray:
+    """Move the corners marked into the material between their edges, unless that is half a turn or more."""
     into, out_of = ring - np.roll(ring, 1, axis=0), np.roll(ring, -1, axis=0) - ring
     short = np.minimum(np.hypot(*into.T), np.hypot(*out_of.T))
     into, out_of = (v / np.hypot(*v.T)[:, None] for v in (into, out_of))
@@ -145,7 +150,8 @@ def _drawn_back(ring: FloatArray, which: np.ndarray, by: float) -> FloatArray:
     inwards = np.where(blunt[:, None], left, middle)
     inwards /= np.hypot(*inwards.T)[:, None]
     step = np.where(which & (turn > 0.0), np.minimum(by, 0.25 * short), 0.0)
-    return ring + step[:, None] * inwards
+    drawn: FloatArray = ring + step[:, None] * inwards
+    return drawn
 
 
 def _nested(rings: Sequence[FloatArray]) -> tuple[Outline, ...]:

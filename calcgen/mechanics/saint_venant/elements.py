@@ -138,9 +138,7 @@ def solve(mesh: Mesh, local: FloatArray, unknowns: IntArray, loads: FloatArray) 
     matrix: Any = coo_array((local[free], (rows[free], columns[free])), shape=(count, count)).tocsc()
     order = "MMD_AT_PLUS_A" if count <= LARGE else "COLAMD"
     try:
-        factors = splu(
-            matrix, permc_spec=order, diag_pivot_thresh=0.0, options={"SymmetricMode": True}
-        )
+        factors = splu(matrix, permc_spec=order, diag_pivot_thresh=0.0, options={"SymmetricMode": True})
     except RuntimeError as singular:  # triangles without area, to the digits there are
         raise MeshError("a triangle of the outline has no area") from singular
     found = factors.solve(loads)

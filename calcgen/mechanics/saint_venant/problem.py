@@ -121,7 +121,7 @@ def meshed_for_torsion(outlines: tuple[Outline, ...]) -> tuple[Mesh, FloatArray,
     for _ in range(REFINEMENTS):
         if found.J_upper - found.J_lower <= GAP * found.J_lower or triangles > TRIANGLES:
             break
-        order = np.argsort(-found.gap, kind="stable")
+        order = np.argsort(-np.round(found.gap / found.gap.max(), 6), kind="stable")  # equals in their order
         enough = int(np.searchsorted(np.cumsum(found.gap[order]), SHARE * found.gap.sum())) + 1
         marked = np.zeros(len(order), dtype=bool)
         marked[order[:enough]] = True
@@ -135,7 +135,7 @@ def meshed_for_torsion(outlines: tuple[Outline, ...]) -> tuple[Mesh, FloatArray,
 def _size(outlines: Sequence[Outline]) -> Size:
     """Return the size of triangles: of slender outlines that of edges only, which are short at sharp corners.
 
-    Between those the stress of a slender wall is quadratic across it and hardly changes along it, so that long
+    Between those the stress of a slender wall is linear across it and hardly changes along it, so that long
     triangles from edge to edge hold it.
     """
     thickness = mean_thickness(outlines)

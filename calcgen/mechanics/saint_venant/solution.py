@@ -18,7 +18,7 @@ from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.delaunay import cross
 from calcgen.mechanics.mesh import Mesh
 from calcgen.mechanics.outline import Outline
-from calcgen.mechanics.saint_venant.boundary import along_walls, joined, mean_thickness, simplified
+from calcgen.mechanics.saint_venant.boundary import along_walls, joined, mean_thickness, on_grid, simplified
 from calcgen.mechanics.saint_venant.contacts import apart
 from calcgen.mechanics.saint_venant.elements import mass_times, shapes
 from calcgen.mechanics.saint_venant.problem import (
@@ -161,7 +161,7 @@ def _solved(rings: tuple[tuple[bytes, ...], ...]) -> SaintVenant:
     area, centroid = _area_and_centroid(outlines)
     size, turn = math.sqrt(area), along_walls(outlines)
     coarse, tolerance = simplified([_mapped(part, centroid, turn / size) for part in outlines])
-    coarse = apart(coarse)
+    coarse = on_grid(apart(coarse))
     mesh, local, torsion = meshed_for_torsion(coarse)
     J = 0.5 * (torsion.J_upper + torsion.J_lower)
     per_T = -smoothed(mesh, torsion.stress) / J  # the stress of a unit twist turns counter-clockwise
