@@ -8,7 +8,7 @@ from typing import Literal
 import numpy as np
 from numpy.typing import NDArray
 
-from calcgen.figures.labels import Box, Point
+from calcgen.figures.labels import Box, Point, around
 from calcgen.figures.picture import CHAIN, FIRM, SMALL, Label, Sketch, Stroke, thin
 
 Ring = NDArray[np.float64]
@@ -167,9 +167,11 @@ def draw_axes(sketch: Sketch, box: Box, centre: Point, names: AxisNames) -> None
 
 def draw_principal(sketch: Sketch, box: Box, centre: Point, angle: float) -> None:
     """Draw the principal axes; `angle` in degrees from the horizontal, counter-clockwise, to axis 1."""
+    # bars beside the outline can pull the centroid out of its box
+    frame = around([box, Box(*centre, *centre)]).grown(OVERRUN - 4)
     for name, turn in (("1", radians(angle)), ("2", radians(angle + 90))):
         along = cos(turn), -sin(turn)
-        ends = [_exit(box.grown(OVERRUN - 4), centre, (sign * along[0], sign * along[1])) for sign in (-1, 1)]
+        ends = [_exit(frame, centre, (sign * along[0], sign * along[1])) for sign in (-1, 1)]
         sketch.line(ends, Stroke("ink", 0.8, CHAIN))
         taken = [item.box for item in sketch.items if isinstance(item, Label)]
         for (x, y), sign in zip(ends, (-1, 1), strict=True):

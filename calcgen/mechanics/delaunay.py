@@ -108,7 +108,7 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
                 break
             corners = _split(corners, broken, acute)
             continue
-        if good_enough:
+        if good_enough or _doubled_areas(corners, inside).min() <= 0.0:
             break
         middles, centres = _centres_of_bad(corners, inside, size, acute, smallest)
         encroached = _encroached_by(centres, corners)
@@ -122,7 +122,12 @@ def refine(corners: Corners, size: Size) -> tuple[Corners, IntArray]:
         corners = Corners(np.concatenate((corners.points, centres)), corners.edges, corners.ring)
     if missing.any() or not _closed(corners, inside):
         raise MeshError("the edges of the outline cannot be made sides of triangles")
-    return corners, inside
+    if _doubled_areas(corners, inside).min() <= 0.0:
+        raise MeshError("walls of the outline are too thin for the digits of their coordinates")
+    # where walls are thinner than the finest triangles, points may have come to lie outside
+    used, triangles = np.unique(inside, return_inverse=True)
+    edges = np.searchsorted(used, corners.edges)
+    return Corners(corners.points[used], edges, corners.ring), triangles.reshape(-1, 3)
 
 
 def cross(a: FloatArray, b: FloatArray) -> FloatArray:
@@ -185,10 +190,14 @@ def _triangles(corners: Corners) -> tuple[IntArray, BoolArray, BoolArray]:
 
 def _closed(corners: Corners, inside: IntArray) -> bool:
     """Tell whether the triangles fill what the edges bound."""
-    a, b, c = (corners.points[inside[:, k]] for k in range(3))
     start, end = (corners.points[corners.edges[:, k]] - corners.points[0] for k in range(2))
     bounded = float(cross(start, end).sum())
-    return math.isclose(float(cross(b - a, c - a).sum()), bounded, rel_tol=1e-9)
+    return math.isclose(float(_doubled_areas(corners, inside).sum()), bounded, rel_tol=1e-9)
+
+
+def _doubled_areas(corners: Corners, inside: IntArray) -> FloatArray:
+    a, b, c = (corners.points[inside[:, k]] for k in range(3))
+    return cross(b - a, c - a)
 
 
 def _lengths(corners: Corners) -> FloatArray:

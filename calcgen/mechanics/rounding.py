@@ -33,12 +33,14 @@ def rounded(corners: Sequence[Corner], edges_a_quarter: int = EDGES_A_QUARTER) -
     Raises
     ------
     CornerError
-        Where the tangents of two neighbouring corners are longer than the edge between them.
+        Where two neighbouring corners are one, or their tangents are longer than the edge between them.
     """
     points = np.array([corner[:2] for corner in corners])
     radii = np.array([corner[2] for corner in corners])
     along = np.roll(points, -1, axis=0) - points
     lengths = np.hypot(*along.T)
+    if not lengths.all():  # corners so close that rounding makes them one
+        raise CornerError(int(np.argmin(lengths)))
     out_of = along / lengths[:, None]
     into = np.roll(out_of, 1, axis=0)
     turn = np.arctan2(into[:, 0] * out_of[:, 1] - into[:, 1] * out_of[:, 0], np.sum(into * out_of, axis=1))

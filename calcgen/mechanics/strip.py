@@ -10,7 +10,7 @@ import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray, Point
 from calcgen.mechanics.outline import Outline, OutlineError, outline, signed_area
-from calcgen.mechanics.rounding import SPARE, Corner, rounded
+from calcgen.mechanics.rounding import SPARE, Corner, CornerError, rounded
 from calcgen.mechanics.shape import ShapeError
 
 STRAIGHT = 1e-9  # rad: a smaller turn is none
@@ -59,8 +59,11 @@ def strip_lines(points: Sequence[Point], t: float, r: float) -> StripLines:
         _corners(corners + side * normal, bent * np.where(turn * side > 0.0, r, r + t))
         for side in (0.5 * t, -0.5 * t)
     ]
-    middle = rounded(_corners(corners, bent * (r + 0.5 * t)))
-    rings = _rings(faces, closed=closed)
+    try:
+        middle = rounded(_corners(corners, bent * (r + 0.5 * t)))
+        rings = _rings(faces, closed=closed)
+    except CornerError as error:  # sizes so far apart that rounding decides whether a bend fits
+        raise ShapeError("r", r, "does not fit between the points of the centreline") from error
     try:
         section = outline(rings[0], rings[1:])
     except OutlineError as error:

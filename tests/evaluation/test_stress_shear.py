@@ -122,7 +122,7 @@ def test_flow_across_the_joints_of_a_built_up_section() -> None:
 
 
 def test_a_plate_glued_to_timber_has_no_stress_of_its_edge() -> None:
-    """The largest stress is V S/(I b) at the axis, in the timber; an upright cut through both tells nothing."""
+    """The largest stress is V S/(I b) at the axis, in the timber; a cut along the force tells nothing."""
     text = parts(
         "part wood = rectangle(b = 100 mm, h = 300 mm) of timber",
         "part plate = rectangle(b = 100 mm, h = 6 mm) at (0 mm, -153 mm) of steel",

@@ -9,7 +9,7 @@ from hypothesis import strategies as st
 from shapely import Polygon
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.delaunay import Size
+from calcgen.mechanics.delaunay import MeshError, Size
 from calcgen.mechanics.mesh import Mesh, refined, triangulate
 from calcgen.mechanics.outline import Outline, outline
 from calcgen.mechanics.shapes import angle, box, i_shape, rectangle, tube
@@ -63,6 +63,37 @@ def test_sharp_corners_end_the_refinement(corners: list[tuple[float, float]]) ->
     mesh = triangulate([part], Size(0.1))
     assert mesh.area.sum() == pytest.approx(area(part), rel=1e-12)
     assert len(mesh.triangles) < 6_000
+
+
+def test_long_triangles_may_be_thin_where_that_is_asked() -> None:
+    """A foil of 1/10,000: by good triangles some 30,000; by long ones a few, which are good at its ends."""
+    part = rectangle(b=1.0, h=1e-4).outline
+    size = Size(near=part.exterior, at_points=5e-5, thin_beyond=3e-4)
+    mesh = triangulate([part], size)
+    assert len(mesh.triangles) < 300
+    assert mesh.area.sum() == pytest.approx(1e-4, rel=1e-12)
+    short = np.ptp(mesh.points[mesh.triangles[:, :3]], axis=1).max(axis=1) < 2e-4
+    assert np.count_nonzero(short) > 4
+    assert angles(mesh)[short].min() > 24.99
+    finer = refined(mesh, np.ones(len(mesh.triangles), dtype=bool), Size(thin_beyond=3e-4))
+    assert len(mesh.triangles) < len(finer.triangles) < 10 * len(mesh.triangles)
+
+
+def test_triangles_may_be_thin_where_walls_are_thinner_than_the_finest() -> None:
+    """A neck of 1e-5 beside a hole: good triangles would be 100,000 there."""
+    square = rectangle(b=1.0, h=1.0).outline.exterior
+    part = outline(square, [[(-0.3, -0.49999), (0.3, -0.49999), (0.3, 0.0), (-0.3, 0.0)]])
+    mesh = triangulate([part], Size(0.2, finest=0.005))
+    assert len(mesh.triangles) < 2_000
+    assert mesh.area.sum() == pytest.approx(area(part), rel=1e-12)
+    used = np.unique(mesh.triangles)
+    assert len(used) == len(mesh.points)  # no point lies outside
+
+
+def test_edges_that_cross_are_a_fault() -> None:
+    crossed = Outline(np.array([(0.0, 0.0), (2.0, 0.0), (0.5, 1.0), (1.5, 1.0), (-1.0, -0.5)]))
+    with pytest.raises(MeshError, match="edges"):
+        triangulate([crossed], Size(0.5))
 
 
 @given(outlines(), st.floats(0.02, 0.3))

@@ -397,6 +397,167 @@ def test_awkward_outlines_are_solved_too() -> None:
     assert J(*turned) == pytest.approx(J(*plates), rel=1e-3)
 
 
+PLATE = rectangle(b=0.1, h=0.2).outline
+TIP = outline([(0.05, -0.06), (0.09, -0.08), (0.09, -0.04)])
+FRAME = [(-0.1, -0.1), (0.1, -0.1), (0.1, 0.1), (-0.1, 0.1)]
+# hexagonal star and an I-shaped hole that opens into it, as cut, with two corners 1e-10 m apart
+OPEN = [
+    (-0.04795, 0.04635),
+    (-0.034314973262, -0.0265),
+    (0.007, -0.0265),
+    (0.007, -0.0325),
+    (-0.0144, -0.0325),
+    (-0.0144, -0.070303734062),
+    (0.03365, -0.05595),
+    (0.03545, -0.05115),
+    (0.047949999836, -0.065649999748),
+    (0.047949999907, -0.065649999708),
+    (0.00385, 0.07235),
+]
+TOUCHING: dict[str, tuple[tuple[Outline, ...], int]] = {
+    "a tip on a face": ((PLATE, TIP), 2),
+    "a tip nearly on a face": ((PLATE, TIP.moved(1e-10, 0.0)), 2),
+    "a tip a little in a face": ((PLATE, TIP.moved(-1e-10, 0.0)), 2),
+    "corners that all but coincide": ((Outline(np.array(OPEN)),), 1),
+    "a hole at a point of the edge": (
+        (Outline(np.array(FRAME), (np.array([(0.1, 0.0), (0, 0), (0, 0.05)]),)),),
+        1,
+    ),
+    "a hole nearly at the edge": (
+        (Outline(np.array(FRAME), (np.array([(0.1 - 3e-8, 0.0), (0, 0), (0, 0.05)]),)),),
+        1,
+    ),
+    "two holes at one point": (
+        (
+            Outline(
+                np.array(FRAME),
+                (
+                    np.array([(0.0, 0.0), (-0.05, -0.02), (-0.05, 0.02)]),
+                    np.array([(0.0, 0.0), (0.05, 0.02), (0.05, -0.02)]),
+                ),
+            ),
+        ),
+        1,
+    ),
+    "a hole that leaves two triangles": (
+        (Outline(np.array(FRAME), (np.array([(-0.1, 0.0), (0.0, 0.09), (0.1, 0.0), (0.0, -0.09)]),)),),
+        2,
+    ),
+    "an edge that comes back on itself": (
+        (Outline(np.array([(0, 0), (1, 0), (1, 1), (0.6, 1), (0.5, 1e-9), (0.4, 1), (0, 1)])),),
+        2,
+    ),
+}
+
+
+@pytest.mark.parametrize(("parts", "pieces"), TOUCHING.values(), ids=TOUCHING.keys())
+def test_outlines_that_touch_themselves_come_apart(parts: tuple[Outline, ...], pieces: int) -> None:
+    """Corners draw back by 2e-5 of the size, and the edges that end in them sweep half of that."""
+    found = saint_venant(*parts)
+    area = sum(section_properties(part).area for part in parts)
+    assert found.pieces == pieces
+    assert found.gap < 1e-3
+    assert found.mesh.area.sum() == pytest.approx(area, rel=5e-5)
+    assert len(found.mesh.triangles) < 2_000
+
+
+def test_a_hole_that_touches_the_edge_opens_the_section() -> None:
+    """A tube whose hole touches the outside, against the same with a slit of a thousandth of its size."""
+    theta = np.linspace(0.0, -2.0 * math.pi, 40, endpoint=False)
+    hole = np.column_stack((0.06 + 0.04 * np.cos(theta), 0.04 * np.sin(theta)))
+    slit = outline(
+        np.array(
+            [
+                (-0.1, -0.1),
+                (0.1, -0.1),
+                (0.1, -1e-4),
+                *hole[1:].tolist(),
+                (0.1, 1e-4),
+                (0.1, 0.1),
+                (-0.1, 0.1),
+            ]
+        )
+    )
+    assert J(Outline(np.array(FRAME), (hole,))) == pytest.approx(J(slit), rel=2e-3)
+
+
+def test_no_part_is_lost_where_parts_touch() -> None:
+    """A corner on an arc, at any place: the constants of both add up."""
+    disc, square = circle(d=0.1).outline, rectangle(b=0.05, h=0.05).outline.turned(0.25 * math.pi)
+    expected = J(disc) + J(square)
+    for corner in disc.exterior[::37]:
+        tip = square.exterior[np.argmax(square.exterior @ -corner)]
+        assert J(disc, square.moved(*(corner - tip))) == pytest.approx(expected, rel=1e-3)
+
+
+SLENDER = {
+    "foil 1:100,000": (rectangle(b=10.0, h=1e-4).outline, rectangle_torsion(10.0, 1e-4).value, 1e-4),
+    "foil 1:2,000": (rectangle(b=1.0, h=5e-4).outline, rectangle_torsion(1.0, 5e-4).value, 1e-4),
+    "wedge of 0.2°": (outline([(0.0, 0.0), (0.1, 0.0), (0.1, 3.49067e-4)]), 0.1 * 3.49067e-4**3 / 12.0, 6e-3),
+    "tube 1:20,000": (tube(d=10.0, t=5e-4).outline, 2.0 * math.pi * 4.99975**3 * 5e-4, 1e-4),
+    "box 1:6,000": (box(b=3.0, h=10.0, t=5e-4).outline, 4.0 * (2.9995 * 9.9995) ** 2 * 5e-4 / 25.998, 1e-3),
+    "angle 1:3,000": (angle(h=1.0, b=1.0, t=3e-4).outline, 2.0 * 3e-4**3 / 3.0, 1e-3),
+    "I 1:2,000": (i_shape(h=1.0, b=0.5, t_w=5e-4, t_f=5e-4).outline, 2.0 * 5e-4**3 / 3.0, 2e-3),
+}
+
+
+@pytest.mark.parametrize(("part", "expected", "tolerance"), SLENDER.values(), ids=SLENDER.keys())
+def test_slender_sections_take_few_triangles(part: Outline, expected: float, tolerance: float) -> None:
+    """Against the series, and the thin wall's l t³/3 (a wedge: ∫t³/3 dx) and Bredt's 4A²t/l."""
+    found = saint_venant(part)
+    assert len(found.mesh.triangles) < 1_500
+    assert found.gap < 1e-3
+    assert J(part) == pytest.approx(expected, rel=tolerance)
+
+
+def test_shear_in_slender_walls_that_incline() -> None:
+    """A strip, turned: 5/6 of the area along it, as the flexibility tensor has it at any angle."""
+    part = rectangle(b=1.0, h=5e-4).outline.turned(0.6)
+    corner = np.array([(0.0, 0.0), (1.0, 0.0), (1.0, 5e-4), (5e-4, 5e-4), (5e-4, 1.0), (0.0, 1.0)])
+    legs = sheared(outline(corner))
+    turned = sheared(outline(corner).turned(0.6))
+    assert turned.f_h + turned.f_v == pytest.approx(legs.f_h + legs.f_v, rel=1e-4)
+    strip = sheared(part)
+    assert min(np.linalg.eigvalsh([[strip.f_v, -strip.f_hv], [-strip.f_hv, strip.f_h]])) == pytest.approx(
+        1.2 / 5e-4, rel=1e-4
+    )
+
+
+def test_intricate_sections_stay_within_bounds() -> None:
+    """A plate with stiffeners, and one with fins: hundreds of sharp corners."""
+    stiffeners = [rectangle(b=0.01, h=0.2).outline.moved(-4.75 + 0.5 * i, 0.106) for i in range(20)]
+    fins = [(0.4, 0.05), (0.397, 0.05), (0.397, 0.01), (0.39, 0.01)]
+    comb = [(0.0, 0.0), (0.4, 0.0), *((x - 0.01 * i, y) for i in range(40) for x, y in fins)][:-1]
+    for parts in ([rectangle(b=10.0, h=0.012).outline, *stiffeners], [outline(comb)]):
+        found = saint_venant(*parts)
+        assert found.gap < 1e-3
+        assert len(found.mesh.triangles) < 10_000
+
+
+@pytest.mark.parametrize(
+    "part",
+    [
+        rectangle(b=0.1, h=0.2).outline,
+        circle(d=0.1).outline,
+        i_shape(h=0.3, b=0.15, t_w=0.0071, t_f=0.0107, r=0.015).outline,
+        box(b=0.12, h=0.2, t=0.008, r_o=0.016).outline,
+        LEGS,
+        UNEVEN,
+    ],
+    ids=["rectangle", "circle", "I", "box", "angle", "channel"],
+)
+def test_rounding_decides_nothing(part: Outline) -> None:
+    """Coordinates that differ in their last bits, as between machines, give the same triangles and digits."""
+    found, generator = saint_venant(part), np.random.default_rng(7)
+    for _ in range(2):
+        exterior, *holes = (
+            ring * (1.0 + 1e-15 * generator.standard_normal(ring.shape)) for ring in part.rings
+        )
+        other = saint_venant(Outline(exterior, tuple(holes)))
+        assert np.array_equal(other.mesh.triangles, found.mesh.triangles)
+        np.testing.assert_allclose(values(other), values(found), rtol=1e-10)
+
+
 def test_corners_that_touch_do_not_connect() -> None:
     square = rectangle(b=0.1, h=0.1).outline
     assert saint_venant(square, square.moved(0.1, 0.1)).pieces == 2

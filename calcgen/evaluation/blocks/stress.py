@@ -21,6 +21,7 @@ from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.stress import StressBlock, StressSetting
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Name
+from calcgen.mechanics.saint_venant import MeshError
 from calcgen.mechanics.second_route.curved import curved_residuals
 from calcgen.mechanics.second_route.field import field_residuals
 from calcgen.mechanics.second_route.residual import Residual
@@ -156,7 +157,17 @@ def _stress(block: StressBlock, scope: Scope, labels: Labels) -> StressResult | 
                 "torsion is evaluated for a section of one material",
             )
             return None
-        shear, shear_residuals = shear_result(request, found.field)
+        try:
+            shear, shear_residuals = shear_result(request, found.field)
+        except MeshError:
+            setting = block.setting("T")
+            scope.report.error(
+                "not-meshed",
+                setting.span if setting is not None else block.head_span,
+                "the stress of the torque is not found: the outline of the section cannot be meshed",
+                hint="is a size or a coordinate wrong? very thin spikes beside large faces ask too much",
+            )
+            return None
     results = stress_results(
         request, found.field, found.curved, found.unloaded, found.plastic, shear, scope.style
     )

@@ -151,9 +151,10 @@ def _normal(rows: _Rows, field: StressField) -> None:
     largest, smallest = field.extremes()
     several = len({*(p.name for p in field.pieces), *(b.name for b in field.bars)}) > 1
     for name, extreme in (("σ_max", largest), ("σ_min", smallest)):
-        of = f" of {extreme.part}" if several and extreme.part else ""
         middle = _middle([p for p in field.pieces if p.name == extreme.part] or field.pieces)
-        rows.stress(name, extreme.value, f"{_place(extreme, field.plane, middle, rows.style)}{of}")
+        place = _place(extreme, field.plane, middle, rows.style)
+        of = f" {'in' if field.plane.uniform else 'of'} {extreme.part}" if several and extreme.part else ""
+        rows.stress(name, extreme.value, f"{place}{of}")
     rows.stress("σ_top", field.at_top())
     rows.stress("σ_bottom", field.at_bottom())
 

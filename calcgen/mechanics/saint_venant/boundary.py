@@ -120,7 +120,7 @@ def on_grid(outlines: Sequence[Outline]) -> tuple[Outline, ...]:
 
 
 def _checked(rings: Sequence[FloatArray], part: Outline, tolerance: float) -> tuple[Outline, ...]:
-    """Return the outline of simplified rings; where they cross, take it apart, and simplify less, or carefully."""
+    """Return the outline of simplified rings; where they cross, take it apart and simplify less."""
     pieces = [(part, rings)]
     for finer in (1.0, 0.25, 0.0625):
         try:

@@ -10,6 +10,7 @@ from __future__ import annotations
 import itertools
 import math
 from collections.abc import Iterator, Sequence
+from functools import partial
 
 import numpy as np
 
@@ -85,8 +86,10 @@ def _parted(part: Outline, grid: float) -> tuple[Outline, ...]:
     pairs = index.reshape(-1, 2)
     several = np.bincount(pairs[:, 0], minlength=len(points)) > 1
     exact = _exact(points, np.concatenate(part.rings), grid)
-    rings = _walked(points, pairs)
-    return _nested([_drawn_back(exact[ring], several[ring], BACK * _size(part)) for ring in rings])
+    rings = [ring for walked in _walked(points, pairs) if len(ring := _without_doubles(walked, exact)) > 2]
+    found = _nested([_drawn_back(exact[ring], several[ring], BACK * _size(part)) for ring in rings])
+    area = sum(_doubled_area(ring) for piece in found for ring in piece.rings) / 2.0
+    return found if abs(area - whole.area) <= LOST * whole.area else (part,)
 
 
 def _edges(region: object) -> Iterator[tuple[tuple[float, float], tuple[float, float]]]:
@@ -117,7 +120,7 @@ def _walked(points: FloatArray, edges: IntArray) -> list[list[int]]:
     following = []
     for start, end in edges.tolist():
         back = points[start] - points[end]
-        following.append(min(leaving[end], key=lambda edge, back=back: clockwise(back, edge)))  # type: ignore[misc]
+        following.append(min(leaving[end], key=partial(clockwise, back)))
     rings, left = [], set(range(len(edges)))
     while left:
         edge = min(left)
@@ -136,6 +139,15 @@ def _exact(points: FloatArray, corners: FloatArray, reach: float) -> FloatArray:
 
     distance, nearest = KDTree(corners).query(points)
     return np.where((distance < reach)[:, None], corners[nearest], points)
+
+
+def _without_doubles(ring: list[int], exact: FloatArray) -> list[int]:
+    """Leave out points that have the place of the one before."""
+    return [
+        here
+        for before, here in zip([ring[-1], *ring], ring, strict=False)
+        if (exact[before] != exact[here]).any()
+    ]
 
 
 def _drawn_back(ring: FloatArray, which: BoolArray, by: float) -> FloatArray:
@@ -162,8 +174,8 @@ def _nested(rings: Sequence[FloatArray]) -> tuple[Outline, ...]:
     holes: list[list[FloatArray]] = [[] for _ in outer]
     for hole in rings:
         if _doubled_area(hole) < 0.0:
-            inner = Polygon(hole)
-            holes[next(k for k, ring in enumerate(outer) if Polygon(ring).covers(inner))].append(hole)
+            inside = Polygon(hole).representative_point()
+            holes[next(k for k, ring in enumerate(outer) if Polygon(ring).contains(inside))].append(hole)
     found = [Outline(ring, tuple(own)) for ring, own in zip(outer, holes, strict=True)]
     return tuple(sorted(found, key=lambda piece: (piece.bounds.left, piece.bounds.bottom)))
 

@@ -8,7 +8,7 @@ from dataclasses import dataclass
 import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.delaunay import BoolArray, Size, cross
+from calcgen.mechanics.delaunay import BoolArray, MeshError, Size, cross
 from calcgen.mechanics.mesh import Mesh, refined, triangulate
 from calcgen.mechanics.outline import Outline
 from calcgen.mechanics.saint_venant.boundary import mean_thickness
@@ -29,6 +29,8 @@ REFINEMENTS = 6
 SHARE = 0.7  # of the gap: so much of it lies in the triangles that are refined
 SIDES_PER_THICKNESS = 0.8
 SIDES_PER_ROOT_OF_AREA = 7.0
+COMPACT = 3.0  # root of the area over mean thickness: below it no wall is thin
+SIDES_OF_COMPACT = 10.0  # for a root of its area
 LONG = 3.0  # of the mean thickness: triangles that are longer may be thin in a slender outline
 SLENDER = 600.0  # length of all edges over mean thickness: beyond, triangles may be thin
 RE_ENTRANT = 0.25 * np.pi  # a corner that turns inwards by more has a singular stress, and small triangles
@@ -125,7 +127,10 @@ def meshed_for_torsion(outlines: tuple[Outline, ...]) -> tuple[Mesh, FloatArray,
         enough = int(np.searchsorted(np.cumsum(found.gap[order]), SHARE * found.gap.sum())) + 1
         marked = np.zeros(len(order), dtype=bool)
         marked[order[:enough]] = True
-        mesh = refined(mesh, marked, Size(finest=FINER * size.finest, thin_beyond=size.thin_beyond))
+        try:
+            mesh = refined(mesh, marked, Size(finest=FINER * size.finest, thin_beyond=size.thin_beyond))
+        except MeshError:
+            break  # as fine as the digits of coordinates allow
         triangles += len(mesh.triangles)
         local = stiffness(mesh)
         found = torsion(mesh, local)
@@ -151,8 +156,9 @@ def _size(outlines: Sequence[Outline]) -> Size:
             thin_beyond=LONG * thickness,
         )
     corners = re_entrant_corners(outlines)
+    sides = SIDES_OF_COMPACT if area**0.5 < COMPACT * thickness else SIDES_PER_ROOT_OF_AREA
     return Size(
-        everywhere=min(thickness / SIDES_PER_THICKNESS, area**0.5 / SIDES_PER_ROOT_OF_AREA),
+        everywhere=min(thickness / SIDES_PER_THICKNESS, area**0.5 / sides),
         near=corners,
         at_points=_finest(corners) * thickness,
         finest=SMALLEST * thickness,

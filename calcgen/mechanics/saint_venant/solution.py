@@ -148,7 +148,12 @@ class SaintVenant:
 def saint_venant(*outlines: Outline) -> SaintVenant:
     """Solve torsion and shear of a section of one material, made of one or several outlines.
 
-    Outlines that share an edge act as one. The last solutions are remembered.
+    Outlines that share an edge act as one, those that share a point do not. The last solutions are kept.
+
+    Raises
+    ------
+    MeshError
+        For an outline that cannot be meshed.
     """
     return _solved(tuple(tuple(ring.tobytes() for ring in part.rings) for part in outlines))
 
