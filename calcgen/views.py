@@ -61,7 +61,7 @@ def _changes(changes: Changes, style: Style) -> Iterable[ChangeView]:
 def _first_record(entry: HistoryEntry) -> Iterable[ChangeView]:
     """Yield one line for each calc of the entry that starts a trail: everything in it is new."""
     for calc in entry.changes.calcs:
-        kinds = Counter(c.kind for c in entry.changes if c.calc == calc)
+        kinds = Counter("variation" if c.kind == "vary" else c.kind for c in entry.changes if c.calc == calc)
         counted = ", ".join(f"{n} {kind}{'s' if n > 1 else ''}" for kind, n in sorted(kinds.items()))
         yield ChangeView(calc, calc, "first recorded", "", counted.replace("stresss", "stresses"))
 

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from collections.abc import Hashable, Iterable, Mapping, Sequence
-from dataclasses import dataclass, field
+from dataclasses import dataclass, field, replace
 from typing import Literal
 
 from calcgen.evaluation.blocks.beam import evaluate_beam
@@ -12,6 +12,7 @@ from calcgen.evaluation.blocks.prose import evaluate_prose, evaluate_sheet
 from calcgen.evaluation.blocks.section import evaluate_section
 from calcgen.evaluation.blocks.stress import evaluate_stress
 from calcgen.evaluation.blocks.table import evaluate_table
+from calcgen.evaluation.blocks.vary import evaluate_vary
 from calcgen.evaluation.blocks.working import evaluate_working
 from calcgen.evaluation.checks import Labels
 from calcgen.evaluation.citations import check_citations
@@ -25,6 +26,7 @@ from calcgen.evaluation.results import (
     CheckRow,
     EvaluatedCalc,
     Origin,
+    Plain,
     Premise,
     SecondRoute,
     SectionResult,
@@ -41,6 +43,7 @@ from calcgen.language.blocks.section import SectionBlock
 from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.blocks.stress import StressBlock
 from calcgen.language.blocks.table import TableBlock
+from calcgen.language.blocks.vary import VaryBlock
 from calcgen.language.blocks.working import Derivation, WorkingBlock
 from calcgen.language.calc import Block, Calc, FailedBlock, Prose
 from calcgen.profiles.catalogue import Catalogue
@@ -124,24 +127,36 @@ def not_evaluated(calc: Calc, reason: str, found: tuple[Diagnostic, ...]) -> Eva
     return EvaluatedCalc(calc, (), {}, (), (), (), (), diagnostics, standing, reason)
 
 
-def evaluate_calc(calc: Calc, setting: Setting, upstream: Mapping[str, Scope]) -> tuple[EvaluatedCalc, Scope]:
-    """Evaluate one calc; `upstream` holds the scopes of the calcs that may feed it."""
+def evaluate_calc(
+    calc: Calc, setting: Setting, upstream: Mapping[str, Scope], replaced: Mapping[str, Plain] | None = None
+) -> tuple[EvaluatedCalc, Scope]:
+    """Evaluate one calc.
+
+    `upstream` holds the scopes of the calcs that may feed it, `replaced` the values of inputs that have
+    others than are written.
+    """
     report = Report(calc.source)
     scope = Scope(report, setting.style, failed=set(calc.failed_names), later=_defined_names(calc))
     labels = Labels()
     found: dict[int, Segment] = {}
     for index, segment in enumerate(calc.segments):
-        if not isinstance(segment, Prose | SheetBlock):
-            found[index] = _evaluate_block(segment, scope, labels, setting, upstream)
+        if not isinstance(segment, _TOLD):
+            found[index] = _evaluate_block(segment, scope, labels, setting, upstream, replaced or {})
     for index, segment in enumerate(calc.segments):
         if isinstance(segment, Prose):
             found[index] = evaluate_prose(segment, scope)
         elif isinstance(segment, SheetBlock):
             found[index] = evaluate_sheet(segment, scope)
-    segments = tuple(found[i] for i in range(len(calc.segments)))
     check_citations(calc, setting.references, report)
+    _report_residuals(tuple(found.values()), report)
+    once = replace(calc, segments=tuple(s for s in calc.segments if not isinstance(s, _TOLD)))
+    for index, segment in enumerate(calc.segments):
+        if isinstance(segment, VaryBlock):
+            found[index] = evaluate_vary(
+                segment, calc, scope, setting.catalogue, lambda r: evaluate_calc(once, setting, upstream, r)
+            )
+    segments = tuple(found[i] for i in range(len(calc.segments)))
     second_route = _second_route(segments)
-    _report_residuals(segments, report)
     diagnostics = tuple(sorted({*calc.diagnostics, *report.diagnostics}, key=lambda d: d.order))
     checks = _checks(segments)
     result = EvaluatedCalc(
@@ -159,18 +174,23 @@ def evaluate_calc(calc: Calc, setting: Setting, upstream: Mapping[str, Scope]) -
     return result, scope
 
 
+_TOLD = Prose | SheetBlock | VaryBlock
+"""Segments that define nothing and are evaluated when the rest is known; a calc is repeated without them."""
+
+
 def _evaluate_block(
     segment: Block | FailedBlock,
     scope: Scope,
     labels: Labels,
     setting: Setting,
     upstream: Mapping[str, Scope],
+    replaced: Mapping[str, Plain],
 ) -> Segment:
     match segment:
         case AssumptionsBlock():
             return AssumptionsResult(segment)
         case InputsBlock():
-            return evaluate_inputs(segment, scope, upstream)
+            return evaluate_inputs(segment, scope, upstream, replaced)
         case WorkingBlock():
             return evaluate_working(segment, scope, labels)
         case SectionBlock():

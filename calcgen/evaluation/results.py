@@ -6,6 +6,7 @@ from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
+from calcgen.evaluation.blocks.beam_states import States
 from calcgen.language.blocks.assumptions import AssumptionsBlock
 from calcgen.language.blocks.inputs import Input
 from calcgen.language.blocks.sheet import SheetBlock
@@ -13,7 +14,7 @@ from calcgen.language.blocks.working import Check, Derivation
 from calcgen.language.calc import Calc, FailedBlock, Prose
 from calcgen.language.nodes import Column
 from calcgen.mechanics.arrays import FloatArray, Point
-from calcgen.mechanics.beam import BeamModel, CaseSolution
+from calcgen.mechanics.beam import BeamModel
 from calcgen.mechanics.combined_stress import CombinedExtremes
 from calcgen.mechanics.curved import CurvedStress
 from calcgen.mechanics.field import StressField
@@ -365,11 +366,11 @@ class SectionResult:
 
 @dataclass(frozen=True)
 class CombinationResult:
-    """One combination with the factor of each case, its solution, and every named result of it."""
+    """One combination with the factor of each case, its states, and every named result of it."""
 
     name: str
     factors: Mapping[str, float]
-    solution: CaseSolution
+    states: States
     results: tuple[Result, ...]
 
 
@@ -382,13 +383,17 @@ class GroupResult:
 
     name: str
     combinations: tuple[CombinationResult, ...]
+    states: States
     results: tuple[Result, ...]
     further: tuple[Result, ...]
 
 
 @dataclass(frozen=True)
 class LoadRow:
-    """One load as shown: '5.0 kN/m from 6 m to 14 m'; `label` its size alone; `values` in SI, places in m."""
+    """One load as shown: '5.0 kN/m from 6 m to 14 m'; `label` its size alone; `values` in SI, places in m.
+
+    A train has the load of each axle in `values`, and `number` counts the trains of its case, from 0.
+    """
 
     case: str
     kind: str
@@ -401,6 +406,7 @@ class LoadRow:
     note: Column
     reference: Column
     line: int
+    number: int = 0
 
 
 @dataclass(frozen=True)
@@ -408,7 +414,8 @@ class BeamResult:
     """A beam with its model, loads, and results by group; numbers in SI.
 
     `spans` are the stretches of the `span` line, from and to; `support_kinds` has the word of each support of
-    the model, `support_notes` how it settles; `lines` each line as typed, with its columns.
+    the model, `support_notes` how it settles; `patterned` the cases that act on adverse spans alone; `lines`
+    each line as typed, with its columns.
     """
 
     name: str
@@ -418,6 +425,7 @@ class BeamResult:
     support_kinds: tuple[str, ...]
     support_notes: tuple[str, ...]
     case_kinds: Mapping[str, str]
+    patterned: frozenset[str]
     loads: tuple[LoadRow, ...]
     groups: tuple[GroupResult, ...]
     settings: tuple[Result, ...]
@@ -582,6 +590,63 @@ class Lookup:
     span: Span
 
 
+@dataclass(frozen=True)
+class VaryRun:
+    """A calc evaluated once with another value of the input.
+
+    Attributes
+    ----------
+    shown : the value, a designation or a number in the unit of its column.
+    mass : of the section, where the input names one whose mass is published; `mass_shown` with it.
+    values, texts : of each expression in the unit of its column; None and '—' where there is none.
+    fault : what the first error says, '' where the run has none.
+    checked : whether the run has checks and no error; `satisfied` is whether every one of them is satisfied.
+    governing : label and utilisation of the check that governs; the latter may be None.
+    present, lightest : whether it has the present value; whether it is the lightest, or one of them, that
+        satisfies every check.
+    """
+
+    value: Plain
+    shown: Shown
+    mass: Measure | None
+    mass_shown: Shown | None
+    values: tuple[Measure | None, ...]
+    texts: tuple[str, ...]
+    fault: str
+    checked: bool
+    satisfied: bool
+    governing: tuple[str, float | None] | None
+    present: bool
+    lightest: bool = False
+
+
+@dataclass(frozen=True)
+class VaryResult:
+    """A calc repeated over the values of one input.
+
+    Attributes
+    ----------
+    name : the block's anchor, which no name can be: 'vary-L'.
+    input, unit : what is varied, and the unit its values are shown in; '' for sections.
+    present : its value in the calc.
+    pattern : of the designations tried, '' where a quantity is varied.
+    heads : the expressions as typed; units : those of their columns.
+    lines : each line as typed, with its columns and its number.
+    """
+
+    name: str
+    input: str
+    unit: str
+    present: Plain
+    pattern: str
+    heads: tuple[str, ...]
+    units: tuple[str, ...]
+    runs: tuple[VaryRun, ...]
+    lines: tuple[tuple[str, Column, Column, int], ...]
+    line: int
+    span: Span
+
+
 Segment: TypeAlias = (
     ProseResult
     | SheetResult
@@ -592,6 +657,7 @@ Segment: TypeAlias = (
     | BeamResult
     | StressResult
     | TableResult
+    | VaryResult
     | FailedBlock
 )
 

@@ -5,13 +5,15 @@ from __future__ import annotations
 from collections.abc import Iterable, Sequence
 from itertools import pairwise
 
-from calcgen.evaluation.results import BeamResult, CombinationResult, GroupResult, LoadRow
+from calcgen.evaluation.blocks.beam_arrangement import arrangement
+from calcgen.evaluation.blocks.beam_states import Found, States, Varying, single
+from calcgen.evaluation.results import BeamResult, GroupResult, LoadRow
 from calcgen.figures.beam import BeamDrawing, Stretch
 from calcgen.figures.beam_diagrams import Diagram, Extreme
 from calcgen.figures.beam_loads import CoupleLoad, Distributed, Effect, Load, LoadCase, PointLoad
 from calcgen.figures.beam_supports import Kind, Support
 from calcgen.mechanics.beam import Quantity
-from calcgen.mechanics.combinations import Envelope, Governing
+from calcgen.mechanics.combinations import Governing
 from calcgen.quantities.display import Style, number_text, show
 from calcgen.quantities.measure import from_si, magnitude_in
 from calcgen.quantities.symbols import plain
@@ -41,9 +43,9 @@ def beam_drawings(beam: BeamResult, ident: str, style: Style) -> tuple[BeamDrawi
     for number, group in enumerate(beam.groups):
         for suffix in ("", "_lat"):
             plane = "lateral" if suffix else "vertical"
-            cases = _cases(beam, plane, style) if number == 0 else ()
             if suffix and not _active(group):
                 continue
+            cases = _cases(beam, plane, style) if number == 0 else ()
             drawings.append(
                 BeamDrawing(
                     ident=f"{ident}-{group.name}{suffix}",
@@ -52,7 +54,7 @@ def beam_drawings(beam: BeamResult, ident: str, style: Style) -> tuple[BeamDrawi
                     end=beam.model.length * _per_metre(style),
                     supports=_supports(beam, suffix, style),
                     cases=cases,
-                    diagrams=tuple(_diagram(group, q, suffix, style) for q in ("V", "M", "w")),
+                    diagrams=tuple(_diagram(beam, group, q, suffix, style) for q in ("V", "M", "w")),
                     stretches=_stretches(beam, style),
                     hinges=tuple(x * _per_metre(style) for x in beam.model.hinges),
                     note=_note(group),
@@ -123,14 +125,50 @@ def _stretches(beam: BeamResult, style: Style) -> tuple[Stretch, ...]:
 
 def _cases(beam: BeamResult, plane: str, style: Style) -> tuple[LoadCase, ...]:
     by_case: dict[str, list[Load]] = {}
+    standing: dict[str, str] = {}
     for row in beam.loads:
-        if row.plane == plane:
+        if row.kind == "train":
+            loads, says = _train(beam, row, plane, style)
+            if loads:
+                by_case.setdefault(row.case, []).extend(loads)
+                standing[row.case] = says
+        elif row.plane == plane:
             by_case.setdefault(row.case, []).append(_load(row, style))
     cases = []
-    for case, loads in by_case.items():
-        kind = beam.case_kinds.get(case, "")
-        cases.append(LoadCase(f"{plain(case)}, {kind}" if kind else plain(case), tuple(loads)))
+    for case, drawn in by_case.items():
+        pattern = "in patterns" if case in beam.patterned else ""
+        words = plain(case), beam.case_kinds.get(case, ""), pattern, standing.get(case, "")
+        cases.append(LoadCase(", ".join(word for word in words if word), tuple(drawn)))
     return tuple(cases)
+
+
+def _train(beam: BeamResult, row: LoadRow, plane: str, style: Style) -> tuple[list[Load], str]:
+    """Return a train where it stands for the largest moment, or the smallest, and in words which of them."""
+    suffix = "_lat" if plane == "lateral" else ""
+    for group in beam.groups:
+        if not isinstance(group.states, Varying):
+            continue
+        found = group.states.extremes(f"M{suffix}")  # type: ignore[arg-type]
+        for name, effect in (("max", found.max), ("min", found.min)):
+            for placed in effect.trains:
+                if (placed.case, placed.train) != (row.case, row.number):
+                    continue
+                train = group.states.effects.actions.trains[placed.case][placed.train]
+                loads = [x for x in placed.position.loads(train, beam.model) if x.plane == plane]
+                of = f" of {plain(group.name)}" if group.name else ""
+                return [
+                    _axle(load.x, load.value, style) for load in loads
+                ], f"train as for M_{name}{suffix}{of}"
+    if plane == "lateral":
+        return [], ""
+    factor = _per_metre(style)
+    return [Effect(row.start * factor, row.end * factor, row.label)], "train along the beam"
+
+
+def _axle(x: float, value: float, style: Style) -> PointLoad:
+    force = from_si(value, "N")
+    label = show(force.shown_in(style.default_unit(force.dimension)), style).text
+    return PointLoad(x * _per_metre(style), value, label)
 
 
 def _load(row: LoadRow, style: Style) -> Load:
@@ -146,14 +184,13 @@ def _load(row: LoadRow, style: Style) -> Load:
     return Distributed(start, end, row.values[0], row.values[-1], label)
 
 
-def _diagram(group: GroupResult, symbol: str, suffix: str, style: Style) -> Diagram:
+def _diagram(beam: BeamResult, group: GroupResult, symbol: str, suffix: str, style: Style) -> Diagram:
     title, unit, down = _TITLES[symbol]
     quantity: Quantity = f"{symbol}{suffix}"  # type: ignore[assignment]
-    envelope = Envelope({c.name: c.solution for c in group.combinations})
-    several = len(group.combinations) > 1
-    upper, lower = _curves(envelope, group.combinations, quantity, style, several=several)
-    found = envelope.extremes(quantity)
-    note = (_LATERAL_NOTES if suffix else _NOTES)[symbol]
+    upper, lower = _curves(group.states, quantity, style)
+    found = group.states.extremes(quantity)
+    causes = _causes(group, (("max", found.max), ("min", found.min)), beam.spans, style)
+    note = "; ".join(((_LATERAL_NOTES if suffix else _NOTES)[symbol], *causes))
     return Diagram(
         title=title,
         curve=upper,
@@ -164,24 +201,35 @@ def _diagram(group: GroupResult, symbol: str, suffix: str, style: Style) -> Diag
     )
 
 
-def _curves(
-    envelope: Envelope,
-    combinations: Sequence[CombinationResult],
-    quantity: Quantity,
+def _causes(
+    group: GroupResult,
+    found: Iterable[tuple[str, Found]],
+    spans: Sequence[tuple[float, float]],
     style: Style,
-    *,
-    several: bool,
+) -> Iterable[str]:
+    """Say what causes each extreme, where patterns and trains do."""
+    for which, effect in found:
+        if isinstance(group.states, Varying) and not isinstance(effect, Governing) and effect.value != 0.0:
+            combination = [plain(effect.combination)] if len(group.combinations) > 1 else []
+            words = [*combination, *arrangement(effect, group.states.effects, spans, style)]
+            if words:
+                yield f"{which}: {', '.join(words)}"
+
+
+def _curves(
+    states: States, quantity: Quantity, style: Style
 ) -> tuple[tuple[tuple[float, float], ...], tuple[tuple[float, float], ...]]:
     factor = _per_metre(style)
-    if several:
-        band = envelope.band(quantity, _POINTS)
+    solution = single(states)
+    if solution is None:
+        band = states.band(quantity, _POINTS)
         x = (band.x * factor).tolist()
         return tuple(zip(x, band.high.tolist(), strict=True)), tuple(zip(x, band.low.tolist(), strict=True))
-    places, values = combinations[0].solution.polyline(quantity, _POINTS)
+    places, values = solution.polyline(quantity, _POINTS)
     return tuple(zip((places * factor).tolist(), values.tolist(), strict=True)), ()
 
 
-def _extremes(found: Iterable[Governing], unit: str, symbol: str, style: Style) -> Iterable[Extreme]:
+def _extremes(found: Iterable[Found], unit: str, symbol: str, style: Style) -> Iterable[Extreme]:
     for governing in dict.fromkeys(found):
         if governing.value == 0.0:
             continue

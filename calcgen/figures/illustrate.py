@@ -7,7 +7,7 @@ from dataclasses import dataclass, replace
 from typing import Literal
 
 from calcgen.evaluation.conventions import Axes
-from calcgen.evaluation.results import BeamResult, EvaluatedCalc, SectionResult, StressResult
+from calcgen.evaluation.results import BeamResult, EvaluatedCalc, SectionResult, StressResult, VaryResult
 from calcgen.figures.adapt_beam import beam_drawings
 from calcgen.figures.adapt_section import section_drawing, title_of
 from calcgen.figures.adapt_shear import (
@@ -17,6 +17,7 @@ from calcgen.figures.adapt_shear import (
     torsion_drawing,
 )
 from calcgen.figures.adapt_stress import field_drawing, stress_drawing
+from calcgen.figures.adapt_vary import vary_drawing
 from calcgen.figures.beam import compose_beam
 from calcgen.figures.conventions import ConventionDrawing, compose_conventions
 from calcgen.figures.field import compose_field
@@ -28,6 +29,7 @@ from calcgen.figures.shear import compose_shear
 from calcgen.figures.stress import compose_stress
 from calcgen.figures.svg import render
 from calcgen.figures.torsion import compose_torsion
+from calcgen.figures.vary import compose_vary
 from calcgen.quantities.display import Style
 
 
@@ -67,6 +69,12 @@ def illustrate(calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple
                 )
             case StressResult():
                 figures[segment.name] = tuple(_of_stress(segment, ident, axes, style))
+            case VaryResult():
+                curves = vary_drawing(segment, ident, style)
+                if curves is not None:
+                    figures[segment.name] = (
+                        Figure(compose_vary(curves, "wide"), compose_vary(curves, "narrow")),
+                    )
             case _:
                 pass
     return figures

@@ -2,7 +2,6 @@
 
 from collections.abc import Sequence
 from dataclasses import dataclass
-from math import floor, log10
 
 import numpy as np
 
@@ -24,6 +23,7 @@ from calcgen.figures.picture import (
     wrap,
 )
 from calcgen.figures.svg import render
+from calcgen.figures.ticks import ticks
 
 SIDES: dict[Width, float] = {"wide": 250.0, "narrow": 205.0}  # pixels of the square panel
 AROUND = 0.08  # of the panel, between the curve and its edge
@@ -143,36 +143,19 @@ def _draw_ticks(sketch: Sketch, plane: _Plane, panel: Box, drawing: InteractionD
     """Draw a hairline at each round value, its number outside the panel, and the names of the axes."""
     lines = []
     free = -np.inf
-    for value, text in _ticks(plane.low[0], plane.high[0]):
+    for value, text in ticks(plane.low[0], plane.high[0]):
         x, _ = plane.at(value, 0.0)
         lines.append([(x, panel.top), (x, panel.bottom)])
         label = Label(x, panel.bottom + 13, text, SMALL, colour="muted")
         if label.box.left > free:
             free = sketch.label(label).box.right + 6
-    for value, text in _ticks(plane.low[1], plane.high[1]):
+    for value, text in ticks(plane.low[1], plane.high[1]):
         _, y = plane.at(0.0, value)
         lines.append([(panel.left, y), (panel.right, y)])
         sketch.label(Label(panel.left - 5, y + 3.5, text, SMALL, "right", colour="muted"))
     sketch.lines(lines, HAIR)
     sketch.label(Label(panel.right, panel.bottom + 28, drawing.moment_title, SMALL, "right"))
     sketch.label(Label(panel.left, panel.top - 8, drawing.axial_title, SMALL, "left"))
-
-
-def _ticks(low: float, high: float) -> list[tuple[float, str]]:
-    """Round values within a range, about five, with their text."""
-    about = (high - low) / 6.5
-    power = 10.0 ** floor(log10(about))
-    step = next(m * power for m in (1, 2, 5, 10) if m * power >= about * (1 - 1e-9))
-    digits = max(0, -floor(log10(step) + 1e-9))
-    form = ".0e" if digits > 4 or step >= 1e6 else f".{digits}f"
-    return [
-        (n * step, f"{n * step:{form}}".replace("-", "−") if n else "0")
-        for n in _whole(low / step, high / step)
-    ]
-
-
-def _whole(low: float, high: float) -> range:
-    return range(int(np.ceil(low - 1e-9)), int(np.floor(high + 1e-9)) + 1)
 
 
 def _draw_ray(

@@ -8,10 +8,10 @@ import numpy as np
 
 from calcgen.figures.labels import Box, text_width
 from calcgen.figures.outline import Part, Tone, draw_tone
-from calcgen.figures.picture import DASH, LINE, SMALL, Label, Sketch, Stroke, wrap
+from calcgen.figures.picture import CHAIN, DASH, LINE, SMALL, Label, Sketch, Stroke, wrap
 from calcgen.figures.zones import Zone, ZoneKind, draw_zone_mark
 
-Mark = Literal["bar", "pressed bar", "line", "dashes", "joint"]
+Mark = Literal["bar", "pressed bar", "line", "dashes", "chain", "joint"]
 
 BREADTH, HEIGHT = 16.0, 10.0  # pixels of a swatch
 AFTER = 6.0  # from a swatch to its words
@@ -70,6 +70,8 @@ def _draw_swatch(sketch: Sketch, box: Box, swatch: Tone | ZoneKind | Mark) -> No
             sketch.dot(middle, 3.2, "paper", Stroke("ink", 1.4))
         case "dashes":
             sketch.line(ends, Stroke("ink", 1.0, DASH))
+        case "chain":
+            sketch.line(ends, Stroke("ink", 1.0, CHAIN))
         case "line":
             sketch.line(ends, Stroke("ink", 1.5))
         case "joint":

@@ -17,6 +17,7 @@ from calcgen.evaluation.results import (
     Segment,
     StressResult,
     TableResult,
+    VaryResult,
     WorkingResult,
 )
 from calcgen.language.blocks.assumptions import Assumption, AssumptionsBlock
@@ -108,7 +109,7 @@ def _anchors(segment: Segment) -> Iterator[str]:
             yield segment.name
             yield from (f"{segment.name}.{r.name}" for r in segment.results)
             yield from (c.address for c in [segment.check] if c is not None)
-        case TableResult():
+        case TableResult() | VaryResult():
             yield segment.name
         case BeamResult():
             yield segment.name

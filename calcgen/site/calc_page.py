@@ -16,6 +16,7 @@ from calcgen.evaluation.results import (
     SheetResult,
     StressResult,
     TableResult,
+    VaryResult,
     WorkingResult,
 )
 from calcgen.language.blocks.sheet import SheetBlock
@@ -29,6 +30,7 @@ from calcgen.site.blocks.prose import ProseView, prose_view
 from calcgen.site.blocks.section import SectionView, section_view
 from calcgen.site.blocks.stress import StressView, stress_view
 from calcgen.site.blocks.table import TableView, table_view
+from calcgen.site.blocks.vary import VaryView, vary_view
 from calcgen.site.blocks.working import WorkingView, working_view
 from calcgen.site.context import Context
 from calcgen.site.facts import PackageInput
@@ -45,6 +47,7 @@ SegmentView: TypeAlias = (
     | BeamView
     | StressView
     | TableView
+    | VaryView
     | FailedView
 )
 
@@ -161,5 +164,7 @@ def _segment(segment: Segment, context: Context) -> SegmentView | None:
             return stress_view(segment, context)
         case TableResult():
             return table_view(segment, context)
+        case VaryResult():
+            return vary_view(segment, context)
         case FailedBlock():
             return failed_view(segment, context)

@@ -12,6 +12,7 @@ from calcgen.evaluation.results import (
     InputRow,
     InputsResult,
     TableResult,
+    VaryResult,
     WorkingResult,
 )
 from calcgen.language.nodes import Citation
@@ -42,7 +43,7 @@ def _anchors(calc: EvaluatedCalc) -> Iterator[tuple[int, tuple[str, int]]]:
                         yield line.node.span.start, (line.name, line.node.span.end)
                     elif isinstance(line, CheckRow):
                         yield line.node.span.start, (line.result.address, line.node.span.end)
-            case TableResult():
+            case TableResult() | VaryResult():
                 yield segment.span.start, (segment.name, segment.span.end)
             case _:
                 pass

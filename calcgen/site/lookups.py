@@ -16,6 +16,7 @@ from calcgen.evaluation.results import (
     StressResult,
     TableHead,
     TableResult,
+    VaryResult,
     WorkingResult,
 )
 from calcgen.language.nodes import Comparison, Formula, Name, Number, Text
@@ -68,6 +69,8 @@ def _user(span: Span, context: Context) -> tuple[str, str]:
                         return row.result.address, row.result.label
             case SectionResult() | BeamResult() | StressResult():
                 return result.name, plain(result.name)
+            case VaryResult():
+                return result.name, f"vary {plain(result.input)}"
             case ProseResult():
                 return f"text-{context.source.line_number(result.prose.span)}", "text"
             case _:

@@ -19,6 +19,7 @@ from calcgen.evaluation.results import (
     SectionResult,
     StressResult,
     TableResult,
+    VaryResult,
     WorkingResult,
 )
 from calcgen.quantities.symbols import GREEK, plain
@@ -142,6 +143,11 @@ def _calc(calc: EvaluatedCalc, package: PackageInput) -> Iterator[Entry]:
                 heads = " ".join(head.shown.text for head in (*segment.columns, *segment.rows))
                 words = f"{spelled(segment.name)} {segment.reference.text} {heads}"
                 yield Entry(at(segment.name), "table", plain(segment.name), words)
+            case VaryResult():
+                tried = segment.pattern or " ".join(run.shown.text for run in segment.runs)
+                words = f"{spelled(segment.input)} {' '.join(segment.heads)} {tried}"
+                yield Entry(at(segment.name), "vary", f"vary {plain(segment.input)}", words)
+                yield from figures(segment.name)
             case _:
                 pass
     for number, d in enumerate(sorted(calc.diagnostics, key=lambda d: d.severity != "error"), start=1):

@@ -18,6 +18,7 @@ from calcgen.evaluation.results import (
     SectionResult,
     StressResult,
     TableResult,
+    VaryResult,
     WorkingResult,
 )
 from calcgen.language.blocks.assumptions import Assumption
@@ -76,6 +77,9 @@ def _items(calc: EvaluatedCalc, style: Style) -> Iterable[tuple[str, Item]]:
             case TableResult():
                 typed = _block_text(calc, segment.span)
                 yield segment.name, {"kind": "table", "text": typed, "results": {}}
+            case VaryResult():
+                typed = _block_text(calc, segment.span)
+                yield segment.name, {"kind": "vary", "text": typed, "results": {}}
             case _:
                 pass
 

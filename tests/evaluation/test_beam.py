@@ -150,8 +150,6 @@ def test_results_that_are_not_there(name: str, code: str) -> None:
         ((*SIMPLE, "combination C1 = 1.35*P"), "unknown-case"),
         ((*SIMPLE, "combination M_max = G"), "name-hides-result"),
         ((*SIMPLE, "load M_max uniform 1 kN/m"), "name-hides-result"),
-        ((*SIMPLE, "load T train 80 kN, 40 kN spaced 2 m"), "not-available-yet"),
-        ((*SIMPLE, "pattern G"), "not-available-yet"),
         ((*SIMPLE, "shear_deformation = yes"), "stiffness-missing"),
         ((*SIMPLE, "GA_s = 3 MN from 1 m to 2 m"), "stiffness-missing"),
         ((*SIMPLE, "GA_s = 0 kN"), "not-positive"),

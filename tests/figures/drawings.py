@@ -20,11 +20,13 @@ from calcgen.figures.shear import ShearDrawing, compose_shear
 from calcgen.figures.stress import compose_stress
 from calcgen.figures.stress_drawing import Couple, Force, Mark, StressDrawing, StressPanel
 from calcgen.figures.torsion import TorsionDrawing, compose_torsion
+from calcgen.figures.vary import VaryDrawing, compose_vary
 from tests.figures.interactions import INTERACTIONS
 from tests.figures.rings import circle, rectangle
 from tests.figures.section_models import FIELDS, SECTIONS
 from tests.figures.shear_models import FLOWS, SHEARS, TORSIONS
 from tests.figures.stress_models import STRESS_MODELS
+from tests.figures.varied import VARIED
 
 ANGLE = Part((np.array([(0, 0), (100, 0), (100, 12), (12, 12), (12, 150), (0, 150)], dtype=float),))
 TEE = Part(
@@ -411,6 +413,7 @@ Drawing = (
     | FlowDrawing
     | TorsionDrawing
     | InteractionDrawing
+    | VaryDrawing
     | FieldDrawing
     | BeamDrawing
     | ConventionDrawing
@@ -452,7 +455,7 @@ _NAMED: dict[str, Drawing] = {
 
 _ALL: list[tuple[str, Drawing]] = [
     (name, drawing)
-    for named in (_NAMED, SECTIONS, FIELDS, STRESS_MODELS, SHEARS, FLOWS, TORSIONS, INTERACTIONS)
+    for named in (_NAMED, SECTIONS, FIELDS, STRESS_MODELS, SHEARS, FLOWS, TORSIONS, INTERACTIONS, VARIED)
     for name, drawing in named.items()
 ]
 DRAWINGS: dict[str, Drawing] = {
@@ -474,6 +477,8 @@ def compose(drawing: Drawing, width: Width) -> Picture:
             return compose_torsion(drawing, width)
         case InteractionDrawing():
             return compose_interaction(drawing, width)
+        case VaryDrawing():
+            return compose_vary(drawing, width)
         case FieldDrawing():
             return compose_field(drawing, width)
         case BeamDrawing():

@@ -605,6 +605,8 @@ CASES: tuple[Worked, ...] = (
     Worked("M-24-tables", "f_m_d", 0.7 * 24 / 1.3, "MPa", "k_mod f_m,k/γ_M"),
     Worked("M-24-tables", "s", 0.8 * (60 - 42) / 30 * 1.2, "kPa", "μ_1 = 0.8 (60° - α)/30° above 30°"),
     Worked("M-24-tables", "p", (12 + 9 + 5.4 + 4) / 4, "kPa", "half-way in both directions"),
+    Worked("M-25-vary", "M_Ed", 8 * 6**2 / 8, "kN·m", "w L²/8"),
+    Worked("M-25-vary", "M_c_Rd", 366.6 * 235 / 1000, "kN·m", "W_pl f_y; EN 10365, from memory"),
 )
 
 UTILISATIONS: dict[tuple[str, str], float | None] = {
@@ -618,4 +620,5 @@ UTILISATIONS: dict[tuple[str, str], float | None] = {
     ("M-14e-composite", "plate"): 16 * 30e6 * (208 - Y_WOOD) / I_WOOD / 235,
     ("M-14e-composite", "wood"): 30e6 * (200 + Y_WOOD) / I_WOOD / 24,
     ("M-24-tables", "boards"): 0.8 * 18 / 30 * 1.2 / 7.6,
+    ("M-25-vary", "bending"): 36 / (366.6 * 0.235),
 }

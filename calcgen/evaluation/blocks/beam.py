@@ -7,27 +7,26 @@ import re
 from collections.abc import Sequence
 from dataclasses import dataclass
 
-from calcgen.evaluation.blocks.beam_combinations import Combination
 from calcgen.evaluation.blocks.beam_lines import SPAN, is_result, length_text
 from calcgen.evaluation.blocks.beam_model import BeamData, read_beam
 from calcgen.evaluation.blocks.beam_premises import premises
 from calcgen.evaluation.blocks.beam_reading import Reading, beam_measure
-from calcgen.evaluation.blocks.beam_results import group_results, moves_sideways, relieving_cases
+from calcgen.evaluation.blocks.beam_results import group_results, relieving_cases
+from calcgen.evaluation.blocks.beam_second_route import second_route
+from calcgen.evaluation.blocks.beam_states import Solved, States
 from calcgen.evaluation.results import (
     BeamResult,
     CombinationResult,
     GroupResult,
     Plain,
     Result,
-    SecondRoute,
 )
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.beam import BeamBlock
-from calcgen.language.blocks.section import LaterLine
 from calcgen.language.calc import FailedBlock
 from calcgen.language.nodes import Column, Name
-from calcgen.mechanics.beam import CaseSolution, UnstableBeam, combine, combined, solve
-from calcgen.mechanics.second_route.beam import beam_residuals
+from calcgen.mechanics.actions import Combination
+from calcgen.mechanics.beam import UnstableBeam, solve
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import Measure, from_si
 from calcgen.quantities.symbols import plain
@@ -45,8 +44,8 @@ class BeamThing:
     def read(self, name: Name, arguments: tuple[Plain, ...] | None, report: Report) -> Measure | None:
         """Return a result; report one that does not exist, or that has several states."""
         parts, spans = list(name.parts[1:]), list(name.spans[1:])
-        solutions = self._states(parts, spans, report)
-        if solutions is None:
+        states = self._states(parts, spans, report)
+        if states is None:
             return None
         stretch: tuple[float, float] | None = None
         if parts and SPAN.match(parts[0]):
@@ -70,16 +69,14 @@ class BeamThing:
                 hint="results are M_max, V_abs, w_max, R_1, M_max(2.5 m), …",
             )
             return None
-        return Reading(self.result, solutions, self.style, report, spans[0]).read(
-            parts[0], stretch, arguments
-        )
+        return Reading(self.result, states, self.style, report, spans[0]).read(parts[0], stretch, arguments)
 
-    def _states(self, parts: list[str], spans: list[Span], report: Report) -> dict[str, CaseSolution] | None:
-        """Take the name of a group or combination off the parts and return its solutions."""
-        groups = {g.name: {c.name: c.solution for c in g.combinations} for g in self.result.groups}
+    def _states(self, parts: list[str], spans: list[Span], report: Report) -> States | None:
+        """Take the name of a group or combination off the parts and return its states."""
+        groups = {g.name: g.states for g in self.result.groups}
         if "" in groups:
             return groups[""]
-        singles = {c.name: {c.name: c.solution} for g in self.result.groups for c in g.combinations}
+        singles = {c.name: c.states for g in self.result.groups for c in g.combinations}
         known = {**singles, **groups}
         head = parts[0]
         if head in known:
@@ -121,7 +118,7 @@ def evaluate_beam(block: BeamBlock, scope: Scope) -> BeamResult | FailedBlock:
 def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None:
     name = block.target.name
     try:
-        solutions = solve(data.model, data.cases)
+        solved = Solved(data.model, data.actions, solve(data.model, data.actions.cases))
     except UnstableBeam as fault:
         scope.report.error(
             "unstable", block.head_span, _motion(fault, scope.style), hint="add a support, or remove a hinge"
@@ -130,25 +127,12 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
     except ValueError as fault:
         scope.report.error("beam", block.head_span, str(fault))
         return None
-    everything = Combination("", "", dict.fromkeys(data.cases, 1.0), block.head_span)
-    combinations = data.combinations or (everything,)
-    if not solutions:
+    groups = _groups(data, solved, scope.style)
+    if not groups:
         scope.report.error("load-missing", block.head_span, f"the beam '{plain(name)}' has no load")
         return None
-    spans = _ends(data.spans)
-    by_group: dict[str, list[CombinationResult]] = {}
-    for c in combinations:
-        solution = combine(solutions, c.factors)
-        shown, further = group_results({c.name: solution}, data.model, spans, scope.style, beam_measure)
-        result = CombinationResult(c.name, c.factors, solution, (*shown, *further))
-        by_group.setdefault(c.group or c.name, []).append(result)
-    groups = []
-    for name_of_group, members in by_group.items():
-        states = {m.name: m.solution for m in members}
-        shown, further = group_results(states, data.model, spans, scope.style, beam_measure)
-        groups.append(GroupResult(name_of_group, tuple(members), shown, further))
     for group in groups:
-        for case in relieving_cases(group, solutions, data.case_kinds):
+        for case in relieving_cases(group, solved.cases, data.case_kinds):
             scope.report.warning(
                 "relieving-permanent",
                 block.head_span,
@@ -159,28 +143,61 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         name=name,
         section=", ".join(dict.fromkeys(s.result.name for s in data.sections)),
         model=data.model,
-        spans=spans,
+        spans=_ends(data.spans),
         support_kinds=data.support_kinds,
         support_notes=data.support_notes,
-        case_kinds={case: data.case_kinds.get(case, "") for case in data.cases},
+        case_kinds={case: data.case_kinds.get(case, "") for case in data.actions.cases},
+        patterned=data.actions.patterned,
         loads=data.rows,
-        groups=tuple(groups),
+        groups=groups,
         settings=_shown_settings(data, scope.style),
         restrained=data.is_restrained if data.restrained is not None else None,
-        premises=premises(name, data, groups, _other_deflection(data, combinations), scope.style),
-        second_route=_second_route(name, data, groups),
+        premises=premises(name, data, groups, _other_deflection(data, groups), scope.style),
+        second_route=second_route(name, data, groups),
         lines=_lines(block, scope),
         line=scope.report.source.line_number(block.head_span),
         span=block.head_span,
     )
 
 
-def _other_deflection(data: BeamData, combinations: Sequence[Combination]) -> float | None:
+def _groups(data: BeamData, solved: Solved, style: Style) -> tuple[GroupResult, ...]:
+    """Return the groups of combinations with their results; without any written, all cases act together."""
+    if not solved.cases:
+        return ()
+    spans = _ends(data.spans)
+
+    def results(states: States) -> tuple[tuple[Result, ...], tuple[Result, ...]]:
+        return group_results(states, data.model, spans, style, beam_measure)
+
+    by_group: dict[str, list[Combination]] = {}
+    for written in data.combinations:
+        combination = Combination(written.name, written.factors)
+        by_group.setdefault(written.group or written.name, []).append(combination)
+    groups: list[GroupResult] = []
+    for name, combinations in (by_group or {"": [_everything(data)]}).items():
+        members: list[CombinationResult] = []
+        for c in combinations:
+            states = solved.states([c])
+            shown, further = results(states)
+            members.append(CombinationResult(c.name, c.factors, states, (*shown, *further)))
+        if len(members) > 1:
+            states = solved.states(combinations)
+            shown, further = results(states)
+        groups.append(GroupResult(name, tuple(members), states, shown, further))
+    return tuple(groups)
+
+
+def _everything(data: BeamData) -> Combination:
+    return Combination("", dict.fromkeys(data.actions.cases, 1.0))
+
+
+def _other_deflection(data: BeamData, groups: Sequence[GroupResult]) -> float | None:
     """Return the largest deflection by the other choice about shear, None where it is not known."""
     if data.shear.other is None:
         return None
-    solutions = solve(data.shear.other, data.cases)
-    return max(combine(solutions, c.factors).extremes("w").abs for c in combinations)
+    other = Solved(data.shear.other, data.actions, solve(data.shear.other, data.actions.cases))
+    found = [other.states([Combination(c.name, c.factors) for c in g.combinations]) for g in groups]
+    return max(abs(states.extremes("w").abs.value) for states in found)
 
 
 def _ends(lengths: tuple[float, ...]) -> tuple[tuple[float, float], ...]:
@@ -198,24 +215,7 @@ def _lines(block: BeamBlock, scope: Scope) -> tuple[tuple[str, Column, Column, i
             source.line_number(line.span),
         )
         for line in block.lines
-        if not isinstance(line, LaterLine)
     )
-
-
-def _second_route(name: str, data: BeamData, groups: Sequence[GroupResult]) -> tuple[SecondRoute, ...]:
-    """Return, for each comparison, the worst residual over all combinations."""
-    worst: dict[str, SecondRoute] = {}
-    for group in groups:
-        for c in group.combinations:
-            loads = combined(data.cases, c.factors)
-            for r in beam_residuals(data.model, loads, c.solution):
-                if r.what.endswith("_lat") and not moves_sideways(c.solution):
-                    continue
-                row = SecondRoute.found(name, r.what, r.residual, r.tolerance, r.quantity)
-                held = worst.get(r.what)
-                if held is None or not abs(r.residual) <= abs(held.residual):
-                    worst[r.what] = row
-    return tuple(worst.values())
 
 
 def _shown_settings(data: BeamData, style: Style) -> tuple[Result, ...]:

@@ -11,6 +11,7 @@ from calcgen.language.blocks.beam import (
     CombinationLine,
     LoadLine,
     SupportLine,
+    TrainLine,
 )
 from calcgen.mechanics.beam import (
     Load,
@@ -81,6 +82,7 @@ def combinations_of(
                 hint="write in which case it acts: settles 5 mm in S",
             )
     named = [c.target for c in lines.of(CaseLine)] + [c.case for c in lines.of(LoadLine)]
+    named += [c.case for c in lines.of(TrainLine)]
     named += [s.settles_case for s in settling if s.settles_case is not None]
     for target in named:
         if found and not lines.failed and target.name not in used:

@@ -12,6 +12,7 @@ from calcgen.language.blocks.beam import (
     BeamSetting,
     CaseLine,
     LoadLine,
+    TrainLine,
 )
 from calcgen.mechanics.beam import (
     DistributedLoad,
@@ -37,6 +38,8 @@ def loads_of(
         loads, row = _load(lines, line, properties, expansion)
         cases.setdefault(line.case.name, []).extend(loads)
         rows.append(row)
+    for train in lines.of(TrainLine):
+        cases.setdefault(train.case.name, [])
     return cases, rows
 
 

@@ -11,6 +11,7 @@ from calcgen.evaluation.blocks.beam_loads import loads_of
 from calcgen.evaluation.blocks.beam_shear import ShearDeformation, choose, shear_modulus_of, shear_stiffnesses
 from calcgen.evaluation.blocks.beam_stiffness import common_modulus, modulus_of, properties_of, stiffness_of
 from calcgen.evaluation.blocks.beam_supports import hinges_of, supports_of
+from calcgen.evaluation.blocks.beam_trains import patterned_of, require_lateral, trains_of
 from calcgen.evaluation.blocks.section import SectionThing, section_named
 from calcgen.evaluation.formulas import Evaluator
 from calcgen.evaluation.quantity import quantity_of
@@ -21,24 +22,21 @@ from calcgen.language.blocks.beam import (
     BeamSetting,
     SpanLine,
 )
-from calcgen.mechanics.beam import (
-    BeamModel,
-    Load,
-    Stretch,
-)
+from calcgen.mechanics.actions import Actions
+from calcgen.mechanics.beam import BeamModel, Stretch
 from calcgen.quantities.measure import Measure
 from calcgen.text import Related
 
 
 @dataclass(frozen=True)
 class BeamData:
-    """A beam block in SI: the model, the loads of each case, and what the page shows beside them.
+    """A beam block in SI: the model, what acts on it in each case, and what the page shows beside them.
 
     `sections` holds the section of each stretch that has one; `G` and `expansion` stand where they are given.
     """
 
     model: BeamModel
-    cases: Mapping[str, tuple[Load, ...]]
+    actions: Actions
     case_kinds: Mapping[str, str]
     rows: tuple[LoadRow, ...]
     combinations: tuple[Combination, ...]
@@ -75,6 +73,8 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
     cases, rows = loads_of(lines, properties, expansion)
     for case, load in supports.settling:
         cases.setdefault(case, []).append(load)
+    trains, train_rows = trains_of(lines, kinds)
+    patterned = patterned_of(lines, kinds, cases)
     combinations = combinations_of(lines, kinds, cases)
     if lines.failed:
         return None
@@ -84,6 +84,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
     except ValueError as fault:
         lines.fault("beam", lines.block.head_span, str(fault))
         return None
+    require_lateral(lines, model)
     sections = tuple(p.section for p in properties if p.section is not None)
     model, shear = choose(
         lines, model, sections, shear_stiffness, settings.get("shear_deformation"), wanted=shears
@@ -92,9 +93,9 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         return None
     return BeamData(
         model=model,
-        cases={name: tuple(loads) for name, loads in cases.items()},
+        actions=Actions({name: tuple(loads) for name, loads in cases.items()}, patterned, trains),
         case_kinds=kinds,
-        rows=tuple(rows),
+        rows=(*rows, *train_rows),
         combinations=combinations,
         sections=sections,
         E=common_modulus(properties, E),

@@ -30,7 +30,7 @@ def premises(
 
     lengths = [b - a for a, b in data.model.spans] or [data.model.length]
     unit: Literal["in", "mm"] = "in" if style.system == "US" else "mm"
-    deflections = [c.solution.extremes("w").abs for g in groups for c in g.combinations]
+    deflections = [abs(g.states.extremes("w").abs.value) for g in groups]
     _shear(data, max(deflections), other_w, add)
     share = max(deflections) / max(lengths)
     shown = length_text(max(deflections), style, unit)

@@ -3,14 +3,14 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Mapping
 from dataclasses import dataclass
 
 from calcgen.evaluation.blocks.beam_lines import CROSSING, EXTREME, REACTION, SHAPE, STATE, length_text
 from calcgen.evaluation.blocks.beam_spans import chord_range, least_shape
+from calcgen.evaluation.blocks.beam_states import States, Varying, names_of, single
 from calcgen.evaluation.results import BeamResult, Plain
 from calcgen.mechanics.beam import CaseSolution, Plane, Quantity
-from calcgen.mechanics.combinations import Envelope, ReactionPart
+from calcgen.mechanics.combinations import ReactionPart
 from calcgen.quantities.display import Style
 from calcgen.quantities.measure import Measure, from_si
 from calcgen.quantities.symbols import plain
@@ -44,7 +44,7 @@ class Reading:
     """One result asked for by name."""
 
     beam: BeamResult
-    solutions: Mapping[str, CaseSolution]
+    states: States
     style: Style
     report: Report
     span: Span
@@ -71,12 +71,12 @@ class Reading:
                 f"'{word}' is a result of a span, not of a place", f"write {word}, or span_1.{word}"
             )
         if extreme and place is not None and extreme[3] != "abs" and not extreme[1]:
-            found = Envelope(self.solutions).at(_quantity(extreme[2], extreme[4]), place)
-            return self._measure(extreme[2], getattr(found, extreme[3]).value)
+            there = self.states.at(_quantity(extreme[2], extreme[4]), place)
+            return self._measure(extreme[2], getattr(there, extreme[3]).value)
         if state and place is not None:
-            if not self._one_state(word, f"{word}_max(…)"):
+            solution = self._one_state(word, f"{word}_max(…)")
+            if solution is None:
                 return None
-            (solution,) = self.solutions.values()
             return self._measure(state[1], solution.at(_quantity(state[1], state[2]), place))
         if state and place is None:
             return self._fault(
@@ -114,20 +114,31 @@ class Reading:
             return None
         return min(max(x, 0.0), self.beam.model.length)
 
-    def _one_state(self, word: str, instead: str) -> bool:
-        if len(self.solutions) == 1:
-            return True
-        self._fault(
-            f"'{word}' has several states here: {', '.join(self.solutions)}",
-            f"name one combination, or write {instead}",
-        )
-        return False
+    def _one_state(self, word: str, instead: str) -> CaseSolution | None:
+        solution = single(self.states)
+        if solution is None and isinstance(self.states, Varying):
+            self._fault(
+                f"'{word}' has several states here: patterns and trains make many of one combination",
+                f"write {instead}",
+            )
+        elif solution is None:
+            self._fault(
+                f"'{word}' has several states here: {', '.join(names_of(self.states))}",
+                f"name one combination, or write {instead}",
+            )
+        return solution
 
     def _extreme(self, match: re.Match[str], stretch: tuple[float, float] | None) -> Measure | None:
         start, end = stretch if stretch is not None else (None, None)
         if match[2] == "w_rel":
             plane: Plane = "lateral" if match[4] else "vertical"
-            chords = chord_range(self.solutions, plane, start, end)
+            chords = chord_range(self.states, plane, start, end)
+            if chords is None and isinstance(self.states, Varying):
+                return self._fault(
+                    "supports give way, or none hold the deflection here: with patterns or trains there is "
+                    "no one chord",
+                    "w_max is counted from the undeflected axis",
+                )
             if chords is None:
                 return self._fault(
                     "no two supports hold the deflection here, so it has no chord to be counted from",
@@ -135,7 +146,7 @@ class Reading:
                 )
             found = chords
         else:
-            found = Envelope(self.solutions).extremes(_quantity(match[2], match[4]), start, end)
+            found = self.states.extremes(_quantity(match[2], match[4]), start, end)
         governing = getattr(found, match[3])
         if match[1]:
             return self._measure("x", governing.x)
@@ -150,9 +161,9 @@ class Reading:
             part = "force_lat" if match[4] else "force"
         else:
             part = "moment_lat" if match[4] else "moment"
-        if which is None and not self._one_state(match[0], f"{match[0]}_max"):
+        if which is None and self._one_state(match[0], f"{match[0]}_max") is None:
             return None
-        found = Envelope(self.solutions).reaction(number - 1, part)
+        found = self.states.reaction(number - 1, part)
         return self._measure(match[1], getattr(found, which or "max").value)
 
     def _turning(self, match: re.Match[str]) -> Measure | None:
@@ -160,10 +171,10 @@ class Reading:
         number, which = int(match[2]), match[3]
         if not self._is_support(number):
             return None
-        if which is None and not self._one_state(match[0], f"{match[0]}_max"):
+        if which is None and self._one_state(match[0], f"{match[0]}_max") is None:
             return None
         x = self.beam.model.supports[number - 1].x
-        found = Envelope(self.solutions).at(_quantity("rotation", match[4]), x)
+        found = self.states.at(_quantity("rotation", match[4]), x)
         governing = found.abs if which is None else getattr(found, which)
         return self._measure("slope", governing.value)
 
@@ -178,9 +189,9 @@ class Reading:
         """Return the place of the contraflexure point, or of zero shear, by its number from the left."""
         symbol, number = match[1], match[2]
         stem = f"x_{symbol}_0"
-        if not self._one_state(match[0], f"{symbol}_max(…) for a place"):
+        solution = self._one_state(match[0], f"{symbol}_max(…) for a place")
+        if solution is None:
             return None
-        (solution,) = self.solutions.values()
         places = solution.crossings(_quantity(symbol, match[3]), *(stretch or (None, None)))
         texts = ", ".join(length_text(x, self.style, self._unit) for x in places)
         if not places:
@@ -198,6 +209,11 @@ class Reading:
         self, factor: str, stretch: tuple[float, float] | None, arguments: tuple[Plain, ...] | None
     ) -> Measure | None:
         """Return the moment shape factor of a span, or of the stretch between two places."""
+        if isinstance(self.states, Varying):
+            return self._fault(
+                f"{factor} belongs to one state, and patterns and trains make many",
+                f"write a combination without them for {factor}",
+            )
         if arguments is not None and len(arguments) == 2 and stretch is None:
             start, end = (self._place((each,)) for each in arguments)
             if start is None or end is None:
@@ -216,7 +232,7 @@ class Reading:
                 f"{factor} belongs to the stretch between two restraints",
                 f"write span_1.{factor}, or {factor}(0 m, 2.5 m)",
             )
-        return from_si(least_shape(self.solutions, *stretch)[factor], "")
+        return from_si(least_shape(self.states.solutions, *stretch)[factor], "")
 
     def _measure(self, quantity: str, value: float) -> Measure:
         return beam_measure(quantity, value, self.style)

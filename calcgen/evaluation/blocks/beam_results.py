@@ -5,10 +5,13 @@ from __future__ import annotations
 from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 
+from calcgen.evaluation.blocks.beam_arrangement import arrangement
 from calcgen.evaluation.blocks.beam_spans import chord_range
+from calcgen.evaluation.blocks.beam_states import Found, States, Varying, names_of, single
 from calcgen.evaluation.results import GroupResult, Result
+from calcgen.mechanics.actions import Effect
 from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
-from calcgen.mechanics.combinations import Envelope, Governing, ReactionPart
+from calcgen.mechanics.combinations import ReactionPart
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import Measure
 
@@ -32,27 +35,32 @@ LISTED_SPANS = 12  # up to so many spans are listed one by one; those of a longe
 class _Rows:
     """Makes the results of one group, or of one combination alone."""
 
-    envelope: Envelope
-    several: bool
+    states: States
+    spans: Sequence[tuple[float, float]]
     style: Style
     measured: Measured
 
-    def row(
-        self, name: str, kind: str, governing: Governing, meaning: str, *, placed: bool = False
-    ) -> Result:
-        """Return a result with its place and, where there are several, its combination."""
+    @property
+    def several(self) -> bool:
+        """Whether there are several states, so that a result is the largest or the smallest of them."""
+        return single(self.states) is None
+
+    def row(self, name: str, kind: str, governing: Found, meaning: str, *, placed: bool = False) -> Result:
+        """Return a result with its place and, where there are several states, what causes it."""
         value = self.measured(kind, governing.value, self.style)
         says = []
         if placed and governing.value != 0:
             says.append(f"at {show(self.measured('x', governing.x, self.style), self.style).text}")
-        if self.several:
+        if len(names_of(self.states)) > 1:
             says.append(governing.combination)
+        if isinstance(governing, Effect) and isinstance(self.states, Varying):
+            says += arrangement(governing, self.states.effects, self.spans, self.style)
         return Result(name, meaning, value, show(value, self.style), ", ".join(says))
 
     def extremes(self, symbol: str, suffix: str) -> Iterator[Result]:
         """Give the largest and the smallest of M, V or w, and the places of those of M."""
         word, sense = (_SENSE_LAT if suffix else _SENSE)[symbol]
-        found = self.envelope.extremes(f"{symbol}{suffix}")  # type: ignore[arg-type]
+        found = self.states.extremes(f"{symbol}{suffix}")  # type: ignore[arg-type]
         for which, adjective, governing in (("max", "largest", found.max), ("min", "smallest", found.min)):
             name = f"{symbol}_{which}{suffix}"
             yield self.row(name, symbol, governing, f"{adjective} {word}, {sense}", placed=True)
@@ -63,14 +71,14 @@ class _Rows:
     def magnitude(self, symbol: str, suffix: str) -> Result:
         """Give the largest magnitude of M, V or w."""
         word, _ = (_SENSE_LAT if suffix else _SENSE)[symbol]
-        found = self.envelope.extremes(f"{symbol}{suffix}").abs  # type: ignore[arg-type]
+        found = self.states.extremes(f"{symbol}{suffix}").abs  # type: ignore[arg-type]
         found = replace(found, value=abs(found.value))
         return self.row(f"{symbol}_abs{suffix}", symbol, found, f"largest magnitude of {word}", placed=True)
 
     def reaction(self, number: int, symbol: str, suffix: str, *, by_extremes: bool) -> Iterator[Result]:
         """Give the reaction force R or moment M_R of a support, as one value or as largest and smallest."""
         part: ReactionPart = _PARTS[symbol, suffix]
-        found = self.envelope.reaction(number - 1, part)
+        found = self.states.reaction(number - 1, part)
         meaning = f"{_REACTIONS[part]} of support {number}"
         stem = f"{symbol}_{number}"
         if by_extremes:
@@ -82,7 +90,7 @@ class _Rows:
     def turning(self, model: BeamModel, suffix: str) -> Iterator[Result]:
         """Give the rotation of the section at each support, as one value or as largest and smallest."""
         for number, support in enumerate(model.supports, start=1):
-            found = self.envelope.at(f"rotation{suffix}", support.x)  # type: ignore[arg-type]
+            found = self.states.at(f"rotation{suffix}", support.x)  # type: ignore[arg-type]
             meaning = f"rotation at support {number} (positive clockwise{_FROM_ABOVE[suffix]})"
             if self.several:
                 yield self.row(f"θ_{number}_max{suffix}", "slope", found.max, f"largest {meaning}")
@@ -95,7 +103,7 @@ class _Rows:
     ) -> Iterator[Result]:
         """Give the largest and smallest deflection from the chord of its span."""
         start, end = span if span is not None else (None, None)
-        found = chord_range(self.envelope.solutions, "lateral" if suffix else "vertical", start, end)
+        found = chord_range(self.states, "lateral" if suffix else "vertical", start, end)
         if found is None:
             return
         for which, adjective, governing in (("max", "largest", found.max), ("min", "smallest", found.min)):
@@ -106,9 +114,9 @@ class _Rows:
 
     def crossings(self, suffix: str) -> Iterator[Result]:
         """Give the points of contraflexure and of zero shear, where there is one state."""
-        if self.several:
+        solution = single(self.states)
+        if solution is None:
             return
-        (solution,) = self.envelope.solutions.values()
         for symbol, meaning in (("M", "point of contraflexure"), ("V", "point of zero shear")):
             places = solution.crossings(f"{symbol}{suffix}")  # type: ignore[arg-type]
             for number, x in enumerate(places, start=1):
@@ -120,7 +128,7 @@ class _Rows:
         """Give the extremes of one span."""
         stem = f"span_{number}."
         for symbol, (word, _) in (_SENSE_LAT if suffix else _SENSE).items():
-            found = self.envelope.extremes(f"{symbol}{suffix}", *span)  # type: ignore[arg-type]
+            found = self.states.extremes(f"{symbol}{suffix}", *span)  # type: ignore[arg-type]
             for which, adjective, governing in (
                 ("max", "largest", found.max),
                 ("min", "smallest", found.min),
@@ -146,7 +154,7 @@ _REACTIONS: dict[ReactionPart, str] = {
 
 
 def group_results(
-    solutions: Mapping[str, CaseSolution],
+    states: States,
     model: BeamModel,
     spans: Sequence[tuple[float, float]],
     style: Style,
@@ -154,14 +162,14 @@ def group_results(
 ) -> tuple[tuple[Result, ...], tuple[Result, ...]]:
     """Return the results of a group of combinations: those its table shows, and further names for them.
 
-    Shown are extremes with place and combination, and reactions; the further ones are magnitudes, reactions
-    by the names that the table does not use, rotations at supports, deflections from the chords, the places
-    where M and V change sign, and the extremes of each of `spans`.
+    Shown are extremes with place, combination and arrangement of loads, and reactions; the further ones are
+    magnitudes, reactions by the names that the table does not use, rotations at supports, deflections from
+    the chords, the places where M and V change sign, and the extremes of each of `spans`.
     """
-    rows = _Rows(Envelope(solutions), len(solutions) > 1, style, measured)
+    rows = _Rows(states, spans, style, measured)
     shown: list[Result] = []
     further: list[Result] = []
-    planes = ("", "_lat") if any(moves_sideways(s) for s in solutions.values()) else ("",)
+    planes = ("", "_lat") if moves_sideways(states, model) else ("",)
     for suffix in planes:
         for symbol in _SENSE:
             shown += rows.extremes(symbol, suffix)
@@ -186,9 +194,15 @@ def group_results(
     return tuple(shown), tuple(further)
 
 
-def moves_sideways(solution: CaseSolution) -> bool:
+def moves_sideways(states: States | CaseSolution, model: BeamModel) -> bool:
     """Whether anything happens in the lateral plane."""
-    return "lateral" in solution.model.planes and any(solution.extremes(q).abs > 0 for q in _SIDEWAYS)
+    if "lateral" not in model.planes:
+        return False
+    if isinstance(states, CaseSolution):
+        return any(states.extremes(q).abs > 0 for q in _SIDEWAYS)
+    if isinstance(states, Varying):
+        return any(abs(states.extremes(q).abs.value) > 0 for q in _SIDEWAYS)
+    return any(moves_sideways(solution, model) for solution in states.solutions.values())
 
 
 def relieving_cases(
@@ -198,16 +212,15 @@ def relieving_cases(
 
     A share below a hundredth of the governing value does not count.
     """
-    envelope = Envelope({c.name: c.solution for c in group.combinations})
     found: list[str] = []
     for case in solutions:
         factors = [c.factors[case] for c in group.combinations if case in c.factors]
         if kinds.get(case) != "permanent" or not factors or any(abs(f - 1.0) < 1e-12 for f in factors):
             continue
-        moments = envelope.extremes("M")
+        moments = group.states.extremes("M")
         shares = [(m.value, solutions[case].at("M", m.x)) for m in (moments.max, moments.min)]
         for index in range(len(solutions[case].model.supports)):
-            reaction = envelope.reaction(index)
+            reaction = group.states.reaction(index)
             own = solutions[case].reactions[index].force
             shares += [(reaction.max.value, own), (reaction.min.value, own)]
         if any(total * own < 0 and abs(own) > 0.01 * abs(total) for total, own in shares):

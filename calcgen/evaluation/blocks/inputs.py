@@ -11,18 +11,24 @@ from calcgen.language.blocks.inputs import Feed, Input, InputsBlock
 from calcgen.text import nearest
 
 
-def evaluate_inputs(block: InputsBlock, scope: Scope, upstream: Mapping[str, Scope]) -> InputsResult:
-    """Define the inputs of a block."""
-    return InputsResult(tuple(_row(item, scope, upstream) for item in block.items), block.span)
+def evaluate_inputs(
+    block: InputsBlock, scope: Scope, upstream: Mapping[str, Scope], replaced: Mapping[str, Plain]
+) -> InputsResult:
+    """Define the inputs of a block; those `replaced` have other values than are written."""
+    return InputsResult(tuple(_row(item, scope, upstream, replaced) for item in block.items), block.span)
 
 
-def _row(item: Input, scope: Scope, upstream: Mapping[str, Scope]) -> InputRow | FailedRow:
+def _row(
+    item: Input, scope: Scope, upstream: Mapping[str, Scope], replaced: Mapping[str, Plain]
+) -> InputRow | FailedRow:
     name = item.target.name
     line = scope.report.source.line_number(item.span)
     free = scope.define(item.target)
     value: Plain | None
     origin: Origin | None = None
-    if isinstance(item.value, Feed):
+    if name in replaced:
+        value = replaced[name]
+    elif isinstance(item.value, Feed):
         value = fed_value(item.value, scope, upstream)
         origin = Origin(item.value.calc, item.value.name.dotted)
     else:

@@ -14,6 +14,7 @@ from calcgen.language.blocks.section import SectionBlock, read_section
 from calcgen.language.blocks.sheet import SheetBlock, read_sheet
 from calcgen.language.blocks.stress import StressBlock, read_stress
 from calcgen.language.blocks.table import TableBlock, read_table
+from calcgen.language.blocks.vary import VaryBlock, read_vary
 from calcgen.language.blocks.working import WorkingBlock, read_working
 from calcgen.text import Report
 
@@ -26,6 +27,7 @@ Block: TypeAlias = (
     | BeamBlock
     | StressBlock
     | TableBlock
+    | VaryBlock
 )
 
 READERS: dict[str, Callable[[BlockText, Report], Outcome[Block]]] = {
@@ -37,6 +39,7 @@ READERS: dict[str, Callable[[BlockText, Report], Outcome[Block]]] = {
     "beam": read_beam,
     "stress": read_stress,
     "table": read_table,
+    "vary": read_vary,
 }
 """Kinds of block that are read, each with its reader."""
 
@@ -46,5 +49,5 @@ NAMED = frozenset({"section", "beam", "stress", "table"})
 ROWED = frozenset({"table"})
 """Kinds with rows of cells instead of lines of three columns, and a reference in their head."""
 
-LATER = ("method", "vary", "takes", "proof")
+LATER = ("method", "takes", "proof")
 """Kinds of the language that are answered 'not available yet'."""

@@ -5,7 +5,6 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
-from calcgen.language.blocks.section import LaterLine
 from calcgen.language.nodes import Annotations, Expression, Named
 from calcgen.text import Span
 
@@ -97,6 +96,32 @@ class LoadLine:
 
 
 @dataclass(frozen=True)
+class TrainLine:
+    """`load T train 80 kN, 80 kN, 40 kN spaced 1.2 m, 3.6 m lateral 0.1`.
+
+    The axle loads from the first axle to the last, the distances between them, one less, and the part of each
+    axle load that acts sideways; None where none is written.
+    """
+
+    case: Named
+    axles: tuple[Expression, ...]
+    spacings: tuple[Expression, ...]
+    lateral: Expression | None
+    annotations: Annotations
+    span: Span
+    statement_span: Span
+
+
+@dataclass(frozen=True)
+class PatternLine:
+    """`pattern Q`: the case acts on those spans alone where it is adverse."""
+
+    case: Named
+    annotations: Annotations
+    span: Span
+
+
+@dataclass(frozen=True)
 class Term:
     """One term of a combination: `1.35*G`; `factor` is None for 1. `sign` is +1 or -1."""
 
@@ -118,7 +143,15 @@ class CombinationLine:
 
 
 BeamLine: TypeAlias = (
-    SpanLine | BeamSetting | SupportLine | HingeLine | CaseLine | LoadLine | CombinationLine | LaterLine
+    SpanLine
+    | BeamSetting
+    | SupportLine
+    | HingeLine
+    | CaseLine
+    | LoadLine
+    | TrainLine
+    | PatternLine
+    | CombinationLine
 )
 
 

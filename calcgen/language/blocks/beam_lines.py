@@ -13,18 +13,20 @@ from calcgen.language.blocks.beam import (
     CombinationLine,
     HingeLine,
     LoadLine,
+    PatternLine,
     Plane,
     SpanLine,
     SupportLine,
     Term,
+    TrainLine,
 )
 from calcgen.language.blocks.reading import BlockText, Outcome, one_of, only_once, read_each
-from calcgen.language.blocks.section import LaterLine, later_line
 from calcgen.language.cursor import Cursor
 from calcgen.language.errors import ReadingError
 from calcgen.language.expressions import expression
 from calcgen.language.lines import Line
 from calcgen.language.nodes import Binary, Expression, Name, Named, Unary
+from calcgen.language.tokens import Token
 from calcgen.text import Report, Span, nearest
 
 STOPS = frozenset({"at", "from", "to", "in", "settles", "rotation", "lateral", "spaced"})
@@ -32,8 +34,6 @@ STOPS = frozenset({"at", "from", "to", "in", "settles", "rotation", "lateral", "
 
 SETTINGS = ("section", "E", "G", "EI", "GA_s", "restrained", "shear_deformation", "expansion")
 STRETCHES = ("section", "EI", "GA_s")
-LATER_SETTINGS: tuple[str, ...] = ()
-LATER_LOADS = ("train",)
 CASE_KINDS = (
     "permanent",
     "imposed",
@@ -56,6 +56,7 @@ LOADS: dict[str, LoadKind] = {
     "self_weight": "self_weight",
     "gradient": "gradient",
 }
+KINDS = (*LOADS, "train")
 SupportKind: TypeAlias = Literal["pin", "roller", "fixed", "spring"]
 SUPPORTS: dict[str, SupportKind] = {"pin": "pin", "roller": "roller", "fixed": "fixed", "spring": "spring"}
 
@@ -63,22 +64,19 @@ ReadLine: TypeAlias = Callable[[Line, Cursor], BeamLine]
 
 
 def read_beam(block: BlockText, report: Report) -> Outcome[BeamBlock]:
-    """Read the lines of a beam; a line of a later release is answered 'not available yet'."""
+    """Read the lines of a beam."""
     settings: dict[str, Span] = {}
     cases: dict[str, Span] = {}
     combinations: dict[str, Span] = {}
+    patterns: dict[str, Span] = {}
 
     def read(line: Line, cursor: Cursor) -> BeamLine:
         token = cursor.token
         word = token.text
-        if word in LATER_SETTINGS or word == "pattern" or (word == "load" and _later_load(cursor)):
-            return later_line(line, _later_load(cursor) or word, report)
         if word in READERS:
             node = READERS[word](line, cursor)
         else:
-            one_of(
-                word, cursor.span(token), (*READERS, *SETTINGS, "pattern", *LATER_SETTINGS), "line of a beam"
-            )
+            one_of(word, cursor.span(token), (*READERS, *SETTINGS), "line of a beam")
             node = _setting(line, cursor)
         cursor.finish()
         match node:
@@ -90,14 +88,14 @@ def read_beam(block: BlockText, report: Report) -> Outcome[BeamBlock]:
                 only_once(node.target, cases, "load case")
             case CombinationLine():
                 only_once(node.target, combinations, "combination")
+            case PatternLine():
+                only_once(node.case, patterns, "pattern")
             case _:
                 pass
         return node
 
     lines, failed = read_each(block.lines, report, read, STOPS)
-    if failed or any(
-        isinstance(line, LaterLine) for line in lines
-    ):  # a beam without one of its loads is wrong
+    if failed:  # a beam without one of its loads is wrong
         return Outcome(None, frozenset({block.target.name}))
     return Outcome(BeamBlock(block.target, tuple(lines), block.span, block.head_span))
 
@@ -105,10 +103,7 @@ def read_beam(block: BlockText, report: Report) -> Outcome[BeamBlock]:
 def _span(line: Line, cursor: Cursor) -> SpanLine:
     cursor.take()
     cursor.expect("=", hint="write span = 6 m, 8 m, 6 m")
-    lengths = [expression(cursor)]
-    while cursor.accept(","):
-        lengths.append(expression(cursor))
-    return SpanLine(tuple(lengths), line.annotations, line.span)
+    return SpanLine(_row(cursor), line.annotations, line.span)
 
 
 def _setting(line: Line, cursor: Cursor) -> BeamSetting:
@@ -157,9 +152,9 @@ def _case(line: Line, cursor: Cursor) -> CaseLine:
     return CaseLine(target, kind, line.annotations, line.span)
 
 
-def _load(line: Line, cursor: Cursor) -> LoadLine:
+def _load(line: Line, cursor: Cursor) -> LoadLine | TrainLine:
     cursor.take()
-    if cursor.token.text in LOADS and cursor.following.text not in (*LOADS, "lateral"):
+    if cursor.token.text in KINDS and cursor.following.text not in (*KINDS, "lateral"):
         kind_token = cursor.token
         raise ReadingError(
             "load-without-case",
@@ -170,7 +165,10 @@ def _load(line: Line, cursor: Cursor) -> LoadLine:
     case = cursor.named("a load case")
     sideways = cursor.token
     plane: Plane = "lateral" if cursor.accept("lateral") else "vertical"
-    kind = LOADS[_word(cursor, (*LOADS, *LATER_LOADS), "kind of load")]
+    word = _word(cursor, KINDS, "kind of load")
+    if word == "train":
+        return _train(line, cursor, case, sideways if plane == "lateral" else None)
+    kind = LOADS[word]
     if cursor.sees("lateral"):
         raise ReadingError(
             "unexpected",
@@ -206,13 +204,41 @@ def _load(line: Line, cursor: Cursor) -> LoadLine:
     )
 
 
-def _later_load(cursor: Cursor) -> str:
-    """Return the kind of a load that is not available yet, or ''."""
-    words = [t.text for t in cursor.tokens[:4]]
-    if words[:1] != ["load"]:
-        return ""
-    kind = words[3] if words[2:3] == ["lateral"] and len(words) > 3 else words[2] if len(words) > 2 else ""
-    return f"load {kind}" if kind in LATER_LOADS else ""
+def _train(line: Line, cursor: Cursor, case: Named, sideways: Token | None) -> TrainLine:
+    hint = f"write load {case.name} train 80 kN, 80 kN spaced 3 m lateral 0.1 for a tenth of each axle load"
+    if sideways is not None:
+        raise ReadingError(
+            "unexpected",
+            cursor.span(sideways),
+            "the axles of a train press down, and a part of that may act sideways",
+            hint=hint,
+        )
+    axles = _row(cursor)
+    spaced = cursor.token
+    spacings = _row(cursor) if cursor.accept("spaced") else ()
+    if len(spacings) != len(axles) - 1:
+        wanted = f"{len(axles)} axle{'s have' if len(axles) > 1 else ' has'} {len(axles) - 1}"
+        raise ReadingError(
+            "unexpected",
+            cursor.span(spaced),
+            f"{wanted} distance{'' if len(axles) == 2 else 's'} between them, not {len(spacings)}",
+            hint="write train 80 kN, 80 kN, 40 kN spaced 1.2 m, 3.6 m",
+        )
+    lateral = expression(cursor) if cursor.accept("lateral") else None
+    return TrainLine(case, axles, spacings, lateral, line.annotations, line.span, line.statement_span)
+
+
+def _row(cursor: Cursor) -> tuple[Expression, ...]:
+    """Read one value or several, with commas between them."""
+    values = [expression(cursor)]
+    while cursor.accept(","):
+        values.append(expression(cursor))
+    return tuple(values)
+
+
+def _pattern(line: Line, cursor: Cursor) -> PatternLine:
+    cursor.take()
+    return PatternLine(cursor.named("a load case"), line.annotations, line.span)
 
 
 def _combination(line: Line, cursor: Cursor) -> CombinationLine:
@@ -288,6 +314,7 @@ READERS: dict[str, ReadLine] = {
     "hinge": _hinge,
     "case": _case,
     "load": _load,
+    "pattern": _pattern,
     "combination": _combination,
 }
 """The first word of a line and its reader; other lines are settings."""

@@ -9,7 +9,6 @@ from typing import TypeAlias
 from calcgen.language.blocks.reading import (
     BlockText,
     Outcome,
-    not_available_yet,
     one_of,
     only_once,
     read_each,
@@ -129,14 +128,6 @@ class ReferenceLine:
     annotations: Annotations
     span: Span
     statement_span: Span
-
-
-@dataclass(frozen=True)
-class LaterLine:
-    """A line of the language that this release reads but does not evaluate yet."""
-
-    what: str
-    span: Span
 
 
 SectionLine: TypeAlias = ShapeLine | PartLine | HoleLine | BarsLine | MaterialLine | ReferenceLine
@@ -306,12 +297,6 @@ def _target(cursor: Cursor, what: str, seen: dict[str, Span]) -> Named:
 
 def _material(cursor: Cursor) -> Named | None:
     return cursor.named("the material") if cursor.accept("of") else None
-
-
-def later_line(line: Line, what: str, report: Report) -> LaterLine:
-    """Answer a line that this release does not evaluate yet."""
-    not_available_yet(f"'{what}'", line.statement_span).report_to(report)
-    return LaterLine(what, line.span)
 
 
 def read_shape(cursor: Cursor) -> ShapeText:

@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass
 
 from calcgen.language.blocks.reading import BlockText, Outcome, one_of, only_once, read_each
-from calcgen.language.blocks.section import LaterLine, Point, read_point
+from calcgen.language.blocks.section import Point, read_point
 from calcgen.language.cursor import Cursor
 from calcgen.language.errors import ReadingError
 from calcgen.language.expressions import expression
@@ -44,7 +44,6 @@ class StressBlock:
     target: Named
     settings: tuple[StressSetting, ...]
     points: tuple[StressPoint, ...]
-    later: tuple[LaterLine, ...]
     span: Span
     head_span: Span
 
@@ -75,7 +74,7 @@ def read_stress(block: BlockText, report: Report) -> Outcome[StressBlock]:
         return Outcome(None, frozenset({block.target.name}))
     settings = tuple(i for i in items if isinstance(i, StressSetting))
     found = tuple(i for i in items if isinstance(i, StressPoint))
-    return Outcome(StressBlock(block.target, settings, found, (), block.span, block.head_span))
+    return Outcome(StressBlock(block.target, settings, found, block.span, block.head_span))
 
 
 def _read_stress_point(line: Line, cursor: Cursor, seen: dict[str, Span]) -> StressPoint:

@@ -1,0 +1,92 @@
+"""The states of a group of combinations: one each, or many where patterns and trains make them."""
+
+from __future__ import annotations
+
+from collections.abc import Mapping, Sequence
+from dataclasses import dataclass, field
+from typing import TypeAlias
+
+from calcgen.mechanics.actions import Actions, Band, Combination, Effect, EffectRange
+from calcgen.mechanics.beam import RIGID, BeamModel, CaseSolution, Plane, Quantity, Settlement, combine
+from calcgen.mechanics.combinations import Envelope, Governing, ReactionPart
+from calcgen.mechanics.envelope import Effects, effects
+
+
+@dataclass(frozen=True, eq=False)
+class Varying:
+    """Effects of combinations that take a case in patterns or a train; extremes are found once."""
+
+    effects: Effects
+    _found: dict[tuple[Quantity, float | None, float | None], EffectRange] = field(default_factory=dict)
+
+    @property
+    def names(self) -> tuple[str, ...]:
+        """The combinations."""
+        return tuple(c.name for c in self.effects.combinations)
+
+    def extremes(
+        self, quantity: Quantity, start: float | None = None, end: float | None = None
+    ) -> EffectRange:
+        """Give the extremes of a quantity from `start` to `end`, over all that may act."""
+        key = quantity, start, end
+        if key not in self._found:
+            self._found[key] = self.effects.extremes(quantity, start, end)
+        return self._found[key]
+
+    def at(self, quantity: Quantity, x: float) -> EffectRange:
+        """Give the extremes of a quantity at one place."""
+        return self.effects.at(quantity, x)
+
+    def reaction(self, support: int, part: ReactionPart = "force") -> EffectRange:
+        """Give the extremes of one part of a support's reaction."""
+        return self.effects.reaction(support, part)
+
+    def band(self, quantity: Quantity, points_per_element: int = 20) -> Band:
+        """Give the envelope of a quantity for drawing."""
+        return self.effects.band(quantity, points_per_element)
+
+    def holds_deflection(self, a: float, b: float, plane: Plane) -> bool:
+        """Tell whether supports at both places keep w at zero whatever acts; no chord then moves."""
+        cases = self.effects.actions.cases.values()
+        if any(isinstance(load, Settlement) for loads in cases for load in loads):
+            return False
+        model = self.effects.model
+        held = [s.x for s in model.supports if (s.w if plane == "vertical" else s.lateral) == RIGID]
+        return all(any(model.same(x, end) for x in held) for end in (a, b))
+
+
+States: TypeAlias = Envelope | Varying
+Found: TypeAlias = Governing | Effect
+
+
+def names_of(states: States) -> tuple[str, ...]:
+    """Return the combinations of a group, in the order written."""
+    return states.names if isinstance(states, Varying) else tuple(states.solutions)
+
+
+def single(states: States) -> CaseSolution | None:
+    """Return the one state that there is, None where there are several."""
+    if isinstance(states, Varying) or len(states.solutions) > 1:
+        return None
+    (solution,) = states.solutions.values()
+    return solution
+
+
+@dataclass(frozen=True, eq=False)
+class Solved:
+    """A beam with each of its cases solved, from which the states of any group of combinations follow."""
+
+    model: BeamModel
+    actions: Actions
+    cases: Mapping[str, CaseSolution]
+
+    def states(self, combinations: Sequence[Combination]) -> States:
+        """Give the states of a group of combinations."""
+        if any(self.varies(c) for c in combinations):
+            return Varying(effects(self.model, self.actions, combinations))
+        return Envelope({c.name: combine(self.cases, c.factors) for c in combinations})
+
+    def varies(self, combination: Combination) -> bool:
+        """Tell whether a combination takes a case in patterns or a train."""
+        varying = {*self.actions.patterned, *self.actions.trains}
+        return any(factor != 0.0 and case in varying for case, factor in combination.factors.items())
