@@ -45,7 +45,8 @@ def first_contact(
     totals = np.cumsum(counts)
     if totals[-1] > PAIRS_AT_ONCE:
         swept = cells(start, end, follower)
-        found = first_of(swept.left, swept.right)
+        # where two corners are one place, no cell need lie between the edges that meet there
+        found = first_of(*_same_places(start, tolerance)) or first_of(swept.left, swept.right)
         if found is not None or swept.complete:
             return found
     first = 0
@@ -57,6 +58,13 @@ def first_contact(
             return found
         first = last
     return None
+
+
+def _same_places(points: FloatArray, tolerance: float) -> tuple[IntArray, IntArray]:
+    """List corners within the tolerance of each other, as neighbours in the order of their places."""
+    order = np.lexsort(points.T)
+    near = np.flatnonzero((np.abs(np.diff(points[order], axis=0)) <= tolerance).all(axis=1))
+    return order[near], order[near + 1]
 
 
 def _overlaps(low: FloatArray, high: FloatArray) -> tuple[IntArray, IntArray]:

@@ -113,6 +113,12 @@ def test_results_that_are_not_there(name: str, code: str) -> None:
     assert codes(stress("M = 1 kN·m", working=(f"x = s.{name}",))) == [code]
 
 
+def test_a_point_has_the_utilisation_of_the_limit() -> None:
+    """σ = M·y/I at half the depth: 7.5 of 20 MPa."""
+    found = values("M = 10 kN·m", "limit = 20 MPa", "point p = (0 mm, 50 mm)")
+    assert found["p.utilisation"] == pytest.approx(7.5 / 20)
+
+
 def test_a_point_outside_the_section_is_a_warning() -> None:
     calc = stress("M = 1 kN·m", "point p = (0 mm, 101 mm)", "point q = (50 mm, 100 mm)")
     assert codes(calc) == ["point-outside"]

@@ -8,7 +8,7 @@ from collections.abc import Callable
 
 import numpy as np
 import pytest
-from hypothesis import given, settings
+from hypothesis import example, given, settings
 from hypothesis import strategies as st
 from shapely import LineString, Polygon
 
@@ -128,6 +128,7 @@ def swept(monkeypatch: pytest.MonkeyPatch) -> None:
 
 @pytest.mark.usefixtures("swept")
 @given(st.lists(st.tuples(st.integers(0, 6), st.integers(0, 6)), min_size=3, max_size=9))
+@example([(2, 2), (1, 0), (1, 2), (0, 0), (0, 3), (1, 2)])  # two corners at one place
 @settings(max_examples=300, deadline=None)
 def test_the_sweep_refuses_exactly_what_is_not_simple(corners: list[tuple[int, int]]) -> None:
     """Shapely as the oracle; on a grid of 7 × 7 crossings, contacts and level edges are frequent."""

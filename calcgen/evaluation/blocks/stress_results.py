@@ -120,7 +120,8 @@ def stress_results(
         value = normal_at(field, curved, point)
         where = f"at {place_text(point, style)}"
         rows.stress(name, value, where, "normal stress at the point, tension positive")
-        parts[name] = _at_point(value, point, shear, style)
+        limit = request.limit.si if request.limit is not None else None
+        parts[name] = _at_point(value, point, shear, limit, style)
     unit = _unit_of_stresses(rows.rows, style)
     return NamedResults(
         _in_one_unit(rows.rows, unit, style),
@@ -299,9 +300,13 @@ def _parts(field: StressField, style: Style) -> dict[str, tuple[Result, ...]]:
     return found
 
 
-def _at_point(sigma: float, point: Point, shear: ShearResult | None, style: Style) -> tuple[Result, ...]:
+def _at_point(
+    sigma: float, point: Point, shear: ShearResult | None, limit: float | None, style: Style
+) -> tuple[Result, ...]:
     rows = _Rows(style)
     rows.stress("σ", sigma, "", "normal stress, tension positive")
+    if limit is not None:
+        rows.add("utilisation", measure(abs(sigma) / limit, None), "", "normal stress over the limit")
     if shear is not None:
         tau = shear.at(point)
         rows.stress("τ", tau, "", "shear stress")
