@@ -334,3 +334,14 @@ def test_premises_of_shear_and_torsion() -> None:
     premises = {p.premise: p.verdict for p in stress("V = 1 kN", "T = 1 kN·m", section=RECTANGLE).premises}
     assert premises["shear through the shear centre"] == "left to judgement"
     assert premises["free warping"] == "left to judgement"
+
+
+@pytest.mark.parametrize(
+    "shape",
+    ["rectangle(b = 50 mm, h = 100 mm)", "circle(d = 50 mm)", "trapezium(b_t = 2 cm, b_b = 6 cm, h = 8 cm)"],
+)
+def test_torsion_without_walls_has_a_second_route(shape: str) -> None:
+    calc = stress("T = 1 kN·m", section=section(f"shape = {shape}"))
+    rows = {r.what for r in calc.second_route if r.of == "s"}
+    assert {"T", "torsion constant"} <= rows
+    assert all(r.holds for r in calc.second_route)

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import math
 from collections.abc import Callable, Mapping, Sequence
-from dataclasses import dataclass
+from dataclasses import dataclass, replace
 
 import numpy as np
 
@@ -30,6 +30,8 @@ from calcgen.mechanics.second_route.shear import (
     torsion_residuals,
     wall_residuals,
 )
+from calcgen.mechanics.second_route.torsion import closed_form_residual
+from calcgen.mechanics.second_route.torsion import torsion_residuals as element_residuals
 from calcgen.mechanics.shear import Cuts, ShearForces, cuts, gain
 from calcgen.mechanics.stress import BoolArray
 from calcgen.mechanics.torsion import (
@@ -78,6 +80,12 @@ def shear_result(request: StressRequest, field: StressField) -> tuple[ShearResul
     torque = _torque(request, walls) if request.T else None
     if torque is not None and torque.walls is not None and walls is not None:
         residuals += torsion_residuals(walls, torque.walls, request.T)
+    elif torque is not None:
+        solution = saint_venant(*section.outlines)
+        exact = _closed_form(request)
+        again = [*element_residuals(solution)]
+        again += [] if exact is None else [closed_form_residual(exact, solution)]
+        residuals += [replace(r, what="torsion constant") if r.what == "J" else r for r in again]
     normal = field_stress(field)
     described = [
         outline_stations(
