@@ -7,6 +7,7 @@ right and y up. Places are from the centre of the section, m.
 from __future__ import annotations
 
 import math
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
 
 TERMS = 60  # of the series for a rectangle; they fall off like 1/n⁵ and faster
@@ -82,3 +83,20 @@ def rectangle_torsion(b: float, h: float) -> TorsionConstant:
 def _sech(u: float) -> float:
     """Return 1/cosh u without overflow, for u ≥ 0."""
     return 2.0 * math.exp(-u) / (1.0 + math.exp(-2.0 * u))
+
+
+CLOSED_FORMS: Mapping[str, tuple[Callable[..., TorsionConstant], tuple[str, ...]]] = {
+    "circle": (circle_torsion, ("d",)),
+    "tube": (tube_torsion, ("d", "t")),
+    "ellipse": (ellipse_torsion, ("b", "h")),
+    "rectangle": (rectangle_torsion, ("b", "h")),
+}
+"""By the word of the shape: the closed form, and the sizes that it takes."""
+
+
+def closed_form(shape: str, sizes: Mapping[str, float]) -> TorsionConstant | None:
+    """Return the closed form of a shape with the given sizes, m, by symbol; None where there is none."""
+    if shape not in CLOSED_FORMS:
+        return None
+    form, names = CLOSED_FORMS[shape]
+    return form(*(sizes[name] for name in names))

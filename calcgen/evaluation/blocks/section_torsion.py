@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 import math
-from collections.abc import Callable, Mapping
+from collections.abc import Mapping
 from dataclasses import dataclass, field
 
 from calcgen.mechanics.kern import kern
@@ -14,25 +14,13 @@ from calcgen.mechanics.second_route.kern import kern_residuals
 from calcgen.mechanics.second_route.residual import Residual
 from calcgen.mechanics.second_route.torsion import closed_form_residual, torsion_residuals
 from calcgen.mechanics.section import Inertia
-from calcgen.mechanics.torsion import (
-    TorsionConstant,
-    circle_torsion,
-    ellipse_torsion,
-    rectangle_torsion,
-    tube_torsion,
-)
+from calcgen.mechanics.torsion import closed_form
 from calcgen.mechanics.walls import Wall, WallSection, wall_section
 from calcgen.quantities.display import number_text, rounded
 
 ELEMENTS = "finite elements"
 DIGITS = 6  # of values by elements: the last ones of a float differ between machines
 NO_WARPING = 1e-12  # of the area cubed: a smaller warping constant is rounding
-_CLOSED_FORMS: Mapping[str, Callable[..., TorsionConstant]] = {
-    "circle": circle_torsion,
-    "tube": tube_torsion,
-    "ellipse": ellipse_torsion,
-    "rectangle": rectangle_torsion,
-}
 NOT_MESHED = "the outline could not be meshed for finite elements"
 _PIECES = "no shear connects the separate pieces of the section"
 _BY_ELEMENTS = ("I_t", "I_w", "A_s_v", "A_s_h", "x_s", "y_s", "beta")
@@ -91,7 +79,7 @@ def torsional(
         _beside(beside, values, where, "I_t", mid_line.I_t, mid_line.torsion_method)
         if not mid_line.closed and (found is None or found.shear is not None):
             _by_mid_line(mid_line, values, where, beside, governs=sizes.get("slope", 0.0) == 0.0)
-    exact = _CLOSED_FORMS[shape](**sizes) if shape in _CLOSED_FORMS else None
+    exact = closed_form(shape, sizes)
     if exact is not None:
         if found is not None:
             residuals.append(closed_form_residual(exact, found))

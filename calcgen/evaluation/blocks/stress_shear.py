@@ -34,13 +34,7 @@ from calcgen.mechanics.second_route.torsion import closed_form_residual
 from calcgen.mechanics.second_route.torsion import torsion_residuals as element_residuals
 from calcgen.mechanics.shear import Cuts, ShearForces, cuts, gain
 from calcgen.mechanics.stress import BoolArray
-from calcgen.mechanics.torsion import (
-    TorsionConstant,
-    circle_torsion,
-    ellipse_torsion,
-    rectangle_torsion,
-    tube_torsion,
-)
+from calcgen.mechanics.torsion import TorsionConstant, closed_form
 from calcgen.mechanics.wall_shear import WallFlow, WallTorsion, wall_flow, wall_torsion
 from calcgen.mechanics.walls import Graph, WallSection, wall_section
 
@@ -237,18 +231,7 @@ def _torque(request: StressRequest, walls: WallSection | None) -> _Torque:
 def _closed_form(request: StressRequest) -> TorsionConstant | None:
     """Return the closed form of a section of one whole shape; None where there is none."""
     section = request.section
-    sizes = {r.name: r.value.si for r in section.further}
-    match section.shape:
-        case "circle":
-            return circle_torsion(sizes["d"])
-        case "tube":
-            return tube_torsion(sizes["d"], sizes["t"])
-        case "ellipse":
-            return ellipse_torsion(sizes["b"], sizes["h"])
-        case "rectangle":
-            return rectangle_torsion(sizes["b"], sizes["h"])
-        case _:
-            return None
+    return closed_form(section.shape, {r.name: r.value.si for r in section.further})
 
 
 def _at(
