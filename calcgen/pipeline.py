@@ -12,7 +12,7 @@ from calcgen import __version__
 from calcgen.catalogues import joined_catalogue
 from calcgen.current import key_of
 from calcgen.evaluation.calc import Memory, Setting, evaluate_all
-from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.figures.illustrate import Drawn, Studio, conventions
 from calcgen.language.calc import Calc, Prose
 from calcgen.language.document import calc_from

@@ -13,7 +13,8 @@ from calcgen.evaluation.blocks.beam import BeamThing
 from calcgen.evaluation.blocks.beam_lines import is_result
 from calcgen.evaluation.blocks.stress_results import RESULT_MEANINGS
 from calcgen.evaluation.conventions import DIMENSIONS, PROPERTIES
-from calcgen.evaluation.results import BeamResult, StressResult
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.language.blocks import LATER as LATER_BLOCKS
 from calcgen.language.blocks import NAMED, READERS, sheet, stress
 from calcgen.language.blocks import beam_lines as beam

@@ -19,22 +19,12 @@ from calcgen.evaluation.citations import check_citations
 from calcgen.evaluation.formulas import shown
 from calcgen.evaluation.lookups import lookups_of
 from calcgen.evaluation.order import feeds_of, in_order
-from calcgen.evaluation.results import (
-    AssumptionsResult,
-    BeamResult,
-    CheckResult,
-    CheckRow,
-    EvaluatedCalc,
-    Origin,
-    Plain,
-    Premise,
-    SecondRoute,
-    SectionResult,
-    Segment,
-    Standing,
-    StressResult,
-    WorkingResult,
-)
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc, Segment
+from calcgen.evaluation.results.common import Origin, Plain, Premise, SecondRoute, Standing
+from calcgen.evaluation.results.lines import AssumptionsResult, CheckResult, CheckRow, WorkingResult
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.assumptions import AssumptionsBlock
 from calcgen.language.blocks.beam import BeamBlock

@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from calcgen.evaluation.formulas import Evaluator
-from calcgen.evaluation.results import Plain
+from calcgen.evaluation.results.common import Plain
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import Cases, Formula
 from calcgen.quantities.display import describe

@@ -6,7 +6,7 @@ import math
 from dataclasses import dataclass
 
 from calcgen.evaluation.formulas import Evaluator, shown
-from calcgen.evaluation.results import CheckResult
+from calcgen.evaluation.results.lines import CheckResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import Column, Comparison, Expression, Number, Unary
 from calcgen.quantities.display import rounded

@@ -6,7 +6,7 @@ import math
 from collections.abc import Callable
 from dataclasses import dataclass, replace
 
-from calcgen.evaluation.results import Plain
+from calcgen.evaluation.results.common import Plain
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import (
     Binary,

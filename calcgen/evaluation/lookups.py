@@ -8,7 +8,9 @@ from dataclasses import fields, is_dataclass, replace
 from calcgen.evaluation.blocks.table_lookup import TableThing
 from calcgen.evaluation.formulas import Evaluator, shown
 from calcgen.evaluation.operands import names_in
-from calcgen.evaluation.results import CheckRow, DerivedRow, Lookup, Segment, WorkingResult
+from calcgen.evaluation.results.calc import Segment
+from calcgen.evaluation.results.lines import CheckRow, DerivedRow, WorkingResult
+from calcgen.evaluation.results.table import Lookup
 from calcgen.evaluation.scope import Scope
 from calcgen.language.calc import Calc, FailedBlock, Prose
 from calcgen.language.nodes import Cases, Name

@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import replace
 
 from calcgen.evaluation.formulas import Evaluator, shown
-from calcgen.evaluation.results import Operand
+from calcgen.evaluation.results.common import Operand
 from calcgen.evaluation.scope import Scope
 from calcgen.language.nodes import Binary, Call, Cases, Comparison, Condition, Formula, Logic, Name, Unary
 from calcgen.text import Report

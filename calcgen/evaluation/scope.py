@@ -5,7 +5,7 @@ from __future__ import annotations
 from dataclasses import dataclass, field
 from typing import Protocol
 
-from calcgen.evaluation.results import Plain
+from calcgen.evaluation.results.common import Plain
 from calcgen.language.nodes import CONSTANTS, FUNCTIONS, Name, Named
 from calcgen.quantities.display import Style
 from calcgen.quantities.measure import Measure, from_si, measure

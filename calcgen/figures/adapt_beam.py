@@ -7,7 +7,7 @@ from itertools import pairwise
 
 from calcgen.evaluation.blocks.beam_arrangement import arrangement
 from calcgen.evaluation.blocks.beam_states import Found, States, Varying, single
-from calcgen.evaluation.results import BeamResult, GroupResult, LoadRow
+from calcgen.evaluation.results.beam import BeamResult, GroupResult, LoadRow
 from calcgen.figures.beam import BeamDrawing, Stretch
 from calcgen.figures.beam_diagrams import Diagram, Extreme
 from calcgen.figures.beam_loads import CoupleLoad, Distributed, Effect, Load, LoadCase, PointLoad

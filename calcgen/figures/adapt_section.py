@@ -6,7 +6,7 @@ import math
 from collections.abc import Iterable
 
 from calcgen.evaluation.conventions import Axes
-from calcgen.evaluation.results import SectionResult
+from calcgen.evaluation.results.section import SectionResult
 from calcgen.figures.dimensions import Dimension, Side
 from calcgen.figures.outline import AMERICAN, EUROCODE, AxisNames, Bar, Part, Tone
 from calcgen.figures.section import SectionDrawing

@@ -11,7 +11,7 @@ from collections.abc import Iterable, Sequence
 
 import numpy as np
 
-from calcgen.evaluation.results import ShearResult, StressResult
+from calcgen.evaluation.results.stress import ShearResult, StressResult
 from calcgen.figures.adapt_section import bars_label, bars_of, length_factor, length_unit, parts_of, title_of
 from calcgen.figures.adapt_stress import Scales
 from calcgen.figures.flow import FlowDrawing, FlowForce, Wall

@@ -7,7 +7,8 @@ from collections.abc import Iterable, Sequence
 from dataclasses import dataclass
 
 from calcgen.evaluation.conventions import Axes
-from calcgen.evaluation.results import SectionResult, StressResult
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.figures.adapt_section import (
     axis_names,
     bars_label,

@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from calcgen.evaluation.results import VaryResult, VaryRun
+from calcgen.evaluation.results.vary import VaryResult, VaryRun
 from calcgen.figures.vary import Panel, Trial, VaryDrawing
 from calcgen.quantities.display import Style, show
 from calcgen.quantities.measure import Measure, magnitude_in

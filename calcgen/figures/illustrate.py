@@ -7,7 +7,11 @@ from dataclasses import dataclass, replace
 from typing import Literal
 
 from calcgen.evaluation.conventions import Axes
-from calcgen.evaluation.results import BeamResult, EvaluatedCalc, SectionResult, StressResult, VaryResult
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
+from calcgen.evaluation.results.vary import VaryResult
 from calcgen.figures.adapt_beam import beam_drawings
 from calcgen.figures.adapt_section import section_drawing, title_of
 from calcgen.figures.adapt_shear import (

@@ -6,20 +6,13 @@ from collections.abc import Iterator
 from functools import lru_cache
 from urllib.parse import quote
 
-from calcgen.evaluation.results import (
-    BeamResult,
-    CheckRow,
-    DerivedRow,
-    EvaluatedCalc,
-    InputRow,
-    InputsResult,
-    SectionResult,
-    Segment,
-    StressResult,
-    TableResult,
-    VaryResult,
-    WorkingResult,
-)
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc, Segment
+from calcgen.evaluation.results.lines import CheckRow, DerivedRow, InputRow, InputsResult, WorkingResult
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
+from calcgen.evaluation.results.table import TableResult
+from calcgen.evaluation.results.vary import VaryResult
 from calcgen.language.blocks.assumptions import Assumption, AssumptionsBlock
 from calcgen.language.blocks.beam import BeamBlock
 from calcgen.language.blocks.section import SectionBlock

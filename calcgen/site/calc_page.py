@@ -5,20 +5,19 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TypeAlias
 
-from calcgen.evaluation.results import (
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc, Segment
+from calcgen.evaluation.results.lines import (
     AssumptionsResult,
-    BeamResult,
-    EvaluatedCalc,
     InputsResult,
     ProseResult,
-    SectionResult,
-    Segment,
     SheetResult,
-    StressResult,
-    TableResult,
-    VaryResult,
     WorkingResult,
 )
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
+from calcgen.evaluation.results.table import TableResult
+from calcgen.evaluation.results.vary import VaryResult
 from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.calc import FailedBlock
 from calcgen.site import addresses

@@ -5,16 +5,10 @@ from __future__ import annotations
 from collections.abc import Iterator
 
 from calcgen.evaluation.citations import citations_of
-from calcgen.evaluation.results import (
-    CheckRow,
-    DerivedRow,
-    EvaluatedCalc,
-    InputRow,
-    InputsResult,
-    TableResult,
-    VaryResult,
-    WorkingResult,
-)
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.lines import CheckRow, DerivedRow, InputRow, InputsResult, WorkingResult
+from calcgen.evaluation.results.table import TableResult
+from calcgen.evaluation.results.vary import VaryResult
 from calcgen.language.nodes import Citation
 from calcgen.site.addresses import assumptions_of
 

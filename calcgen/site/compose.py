@@ -7,7 +7,7 @@ from collections.abc import Callable, Iterable, Iterator
 from dataclasses import dataclass
 from functools import partial
 
-from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.site import addresses, registers
 from calcgen.site.calc_page import calc_view
 from calcgen.site.cover import cover_view

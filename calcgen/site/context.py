@@ -6,7 +6,8 @@ from dataclasses import dataclass
 
 from markupsafe import Markup, escape
 
-from calcgen.evaluation.results import EvaluatedCalc, FailedRow
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.lines import FailedRow
 from calcgen.language.nodes import Annotations, Column
 from calcgen.site.facts import PackageInput
 from calcgen.site.figure import FigureSvg

@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Iterator
 from dataclasses import dataclass
 
-from calcgen.evaluation.results import EvaluatedCalc, InputRow, InputsResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.lines import InputRow, InputsResult
 from calcgen.site import addresses
 from calcgen.site.calc_page import sheet_texts
 from calcgen.site.facts import ChangeView, PackageInput

@@ -9,7 +9,9 @@ from typing import TypeAlias
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import CheckResult, CheckRow, DerivedRow, Lookup, Operand
+from calcgen.evaluation.results.common import Operand
+from calcgen.evaluation.results.lines import CheckResult, CheckRow, DerivedRow
+from calcgen.evaluation.results.table import Lookup
 from calcgen.language.nodes import Cases, Expression, Formula, Name, Number, Text, Truth
 from calcgen.quantities.display import Shown
 from calcgen.site import mathml

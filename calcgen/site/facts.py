@@ -6,7 +6,7 @@ from collections.abc import Mapping
 from dataclasses import dataclass, field
 from typing import Literal
 
-from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.site.figure import FigureSvg
 from calcgen.text import Diagnostic
 

@@ -6,19 +6,12 @@ from collections.abc import Sequence
 
 from markupsafe import Markup, escape
 
-from calcgen.evaluation.results import (
-    BeamResult,
-    CheckRow,
-    DerivedRow,
-    Lookup,
-    ProseResult,
-    SectionResult,
-    StressResult,
-    TableHead,
-    TableResult,
-    VaryResult,
-    WorkingResult,
-)
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.lines import CheckRow, DerivedRow, ProseResult, WorkingResult
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
+from calcgen.evaluation.results.table import Lookup, TableHead, TableResult
+from calcgen.evaluation.results.vary import VaryResult
 from calcgen.language.nodes import Comparison, Formula, Name, Number, Text
 from calcgen.quantities.symbols import plain
 from calcgen.site.context import Context

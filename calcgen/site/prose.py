@@ -14,7 +14,7 @@ from markdown_it.renderer import RendererHTML
 from markdown_it.token import Token
 from markupsafe import Markup
 
-from calcgen.evaluation.results import ProseResult
+from calcgen.evaluation.results.lines import ProseResult
 from calcgen.language.markdown import parser
 from calcgen.quantities.display import Shown
 from calcgen.site.addresses import calc_page, link, nearest_anchor

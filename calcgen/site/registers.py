@@ -7,7 +7,8 @@ from dataclasses import dataclass
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import EvaluatedCalc, InputRow, InputsResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.lines import InputRow, InputsResult
 from calcgen.language.blocks.inputs import Feed, InputsBlock
 from calcgen.language.nodes import Citation, Column
 from calcgen.site import addresses

@@ -7,19 +7,12 @@ import math
 from collections.abc import Iterable
 from typing import TypeAlias
 
-from calcgen.evaluation.results import (
-    BeamResult,
-    CheckResult,
-    DerivedRow,
-    EvaluatedCalc,
-    InputRow,
-    InputsResult,
-    Plain,
-    Result,
-    SectionResult,
-    StressResult,
-    WorkingResult,
-)
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.common import Plain, Result
+from calcgen.evaluation.results.lines import CheckResult, DerivedRow, InputRow, InputsResult, WorkingResult
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.language.blocks.assumptions import AssumptionsBlock
 from calcgen.quantities.display import Shown, rounded
 from calcgen.quantities.measure import Measure, magnitude_in

@@ -6,22 +6,22 @@ import json
 from collections.abc import Callable, Iterator
 from dataclasses import dataclass
 
-from calcgen.evaluation.results import (
-    BeamResult,
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.common import Result
+from calcgen.evaluation.results.lines import (
     CheckRow,
     DerivedRow,
-    EvaluatedCalc,
     FailedRow,
     InputRow,
     InputsResult,
     ProseResult,
-    Result,
-    SectionResult,
-    StressResult,
-    TableResult,
-    VaryResult,
     WorkingResult,
 )
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
+from calcgen.evaluation.results.table import TableResult
+from calcgen.evaluation.results.vary import VaryResult
 from calcgen.quantities.symbols import GREEK, plain
 from calcgen.site import addresses
 from calcgen.site.calc_page import sheet_texts

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.site import addresses
 from calcgen.site.calc_page import diagnostics_of
 from calcgen.site.views import Link

@@ -8,7 +8,8 @@ from dataclasses import dataclass
 
 from markupsafe import Markup, escape
 
-from calcgen.evaluation.results import CheckResult, Result, SecondRoute
+from calcgen.evaluation.results.common import Result, SecondRoute
+from calcgen.evaluation.results.lines import CheckResult
 from calcgen.language.nodes import Column
 from calcgen.quantities.display import number_text
 from calcgen.quantities.symbols import symbol as symbol_of

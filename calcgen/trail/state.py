@@ -4,23 +4,22 @@ from __future__ import annotations
 
 from collections.abc import Iterable, Mapping, Sequence
 
-from calcgen.evaluation.results import (
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.common import Plain, Result
+from calcgen.evaluation.results.lines import (
     AssumptionsResult,
-    BeamResult,
     CheckResult,
     CheckRow,
     DerivedRow,
-    EvaluatedCalc,
     InputRow,
     InputsResult,
-    Plain,
-    Result,
-    SectionResult,
-    StressResult,
-    TableResult,
-    VaryResult,
     WorkingResult,
 )
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import StressResult
+from calcgen.evaluation.results.table import TableResult
+from calcgen.evaluation.results.vary import VaryResult
 from calcgen.language.blocks.assumptions import Assumption
 from calcgen.quantities.display import Style, rounded
 from calcgen.quantities.measure import Measure, magnitude_in

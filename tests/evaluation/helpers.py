@@ -5,7 +5,7 @@ from __future__ import annotations
 from typing import Literal
 
 from calcgen.evaluation.calc import Setting, evaluate_all
-from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.language.document import calc_from
 from calcgen.profiles.catalogue import builtin_catalogue
 from calcgen.quantities.display import Style

@@ -4,7 +4,8 @@ from __future__ import annotations
 
 from calcgen.evaluation.calc import Setting, evaluate_all
 from calcgen.evaluation.conventions import Axes
-from calcgen.evaluation.results import EvaluatedCalc, StressResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.language.document import calc_from
 from calcgen.profiles.catalogue import builtin_catalogue
 from calcgen.quantities.display import Style

@@ -4,7 +4,9 @@ from __future__ import annotations
 
 import pytest
 
-from calcgen.evaluation.results import BeamResult, EvaluatedCalc, Premise
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.common import Premise
 from calcgen.quantities.measure import Measure
 from tests.evaluation.helpers import codes, evaluated, fence, shown
 

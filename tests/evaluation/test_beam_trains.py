@@ -4,7 +4,9 @@ from __future__ import annotations
 
 import pytest
 
-from calcgen.evaluation.results import BeamResult, EvaluatedCalc, Result
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.common import Result
 from calcgen.figures.adapt_beam import beam_drawings
 from calcgen.figures.beam_loads import PointLoad
 from calcgen.quantities.display import Style

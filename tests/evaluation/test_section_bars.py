@@ -10,7 +10,8 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from calcgen.evaluation.results import EvaluatedCalc, SectionResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.section import SectionResult
 from calcgen.mechanics.boolean import inside
 from calcgen.mechanics.outline import outline
 from tests.evaluation.helpers import codes, evaluated, fence

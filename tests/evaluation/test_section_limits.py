@@ -7,7 +7,8 @@ import math
 import pytest
 
 from calcgen.evaluation.quantity import LARGEST
-from calcgen.evaluation.results import EvaluatedCalc, SectionResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.section import SectionResult
 from calcgen.quantities.display import KINDS
 from tests.evaluation.helpers import codes, evaluated, fence
 

@@ -8,7 +8,8 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from calcgen.evaluation.results import EvaluatedCalc, SectionResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.section import SectionResult
 from tests.evaluation.helpers import codes, evaluated, fence
 
 RIB = "part rib = rectangle(b = 300 mm, h = 500 mm) of concrete"

@@ -4,7 +4,7 @@ import pytest
 
 from calcgen.evaluation.blocks import section_torsion
 from calcgen.evaluation.blocks.section_torsion import NOT_MESHED
-from calcgen.evaluation.results import SectionResult
+from calcgen.evaluation.results.section import SectionResult
 from calcgen.mechanics.outline import Outline
 from calcgen.mechanics.saint_venant import MeshError
 from calcgen.mechanics.torsion import rectangle_torsion

@@ -8,7 +8,8 @@ from hypothesis import given, settings
 from hypothesis import strategies as st
 from scipy.interpolate import RegularGridInterpolator
 
-from calcgen.evaluation.results import EvaluatedCalc, TableResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.table import TableResult
 from calcgen.quantities.measure import Measure
 from tests.evaluation.helpers import codes, evaluated, fence, shown
 

@@ -6,7 +6,8 @@ import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
-from calcgen.evaluation.results import EvaluatedCalc, VaryResult, VaryRun
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.vary import VaryResult, VaryRun
 from calcgen.profiles.catalogue import builtin_catalogue
 from calcgen.quantities.measure import Measure, magnitude_in
 from tests.evaluation.helpers import codes, evaluated, fence

@@ -6,7 +6,7 @@ from collections.abc import Mapping, Sequence
 from functools import cache
 
 from calcgen.evaluation.calc import Setting, evaluate_all
-from calcgen.evaluation.results import EvaluatedCalc
+from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.language.document import calc_from
 from calcgen.profiles.catalogue import builtin_catalogue, read_catalogue
 from calcgen.project import load_project

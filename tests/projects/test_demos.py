@@ -9,7 +9,9 @@ from pathlib import Path
 import pytest
 
 from calcgen.evaluation.calc import Setting, evaluate_all
-from calcgen.evaluation.results import AssumptionsResult, EvaluatedCalc, InputRow, InputsResult, StressResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.lines import AssumptionsResult, InputRow, InputsResult
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.language.document import calc_from
 from calcgen.profiles.catalogue import builtin_catalogue
 from calcgen.project import load_project

@@ -6,7 +6,8 @@ from collections.abc import Mapping
 
 import pytest
 
-from calcgen.evaluation.results import DerivedRow, EvaluatedCalc, WorkingResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.lines import DerivedRow, WorkingResult
 from calcgen.quantities.measure import Measure, dimension_of, magnitude_in, unit_size
 from tests.projects.evaluating import evaluated_manual
 from tests.projects.manual import MANUAL, chapters, live_kinds, shown_and_live

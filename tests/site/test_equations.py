@@ -5,7 +5,8 @@ from __future__ import annotations
 import pytest
 from markupsafe import Markup
 
-from calcgen.evaluation.results import CheckRow, DerivedRow, EvaluatedCalc, WorkingResult
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.lines import CheckRow, DerivedRow, WorkingResult
 from calcgen.site import equations
 from calcgen.site.equations import Equation
 from tests.evaluation.helpers import working

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import pytest
 
-from calcgen.evaluation.results import ProseResult
+from calcgen.evaluation.results.lines import ProseResult
 from calcgen.site.prose import ProseRenderer, image_path
 from tests.evaluation.helpers import evaluated, fence
 

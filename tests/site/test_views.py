@@ -4,7 +4,7 @@ from __future__ import annotations
 
 import pytest
 
-from calcgen.evaluation.results import CheckResult
+from calcgen.evaluation.results.lines import CheckResult
 from calcgen.language.nodes import Citation, Column
 from calcgen.site.facts import ReferenceFacts
 from calcgen.site.views import bar, utilisation_text, words

@@ -14,13 +14,8 @@ from calcgen.evaluation.blocks.beam_reading import Reading, beam_measure
 from calcgen.evaluation.blocks.beam_results import group_results, relieving_cases
 from calcgen.evaluation.blocks.beam_second_route import second_route
 from calcgen.evaluation.blocks.beam_states import Solved, States
-from calcgen.evaluation.results import (
-    BeamResult,
-    CombinationResult,
-    GroupResult,
-    Plain,
-    Result,
-)
+from calcgen.evaluation.results.beam import BeamResult, CombinationResult, GroupResult
+from calcgen.evaluation.results.common import Plain, Result
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.beam import BeamBlock
 from calcgen.language.calc import FailedBlock

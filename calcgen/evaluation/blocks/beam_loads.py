@@ -7,7 +7,7 @@ import math
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.blocks.beam_stiffness import Property
 from calcgen.evaluation.quantity import quantity_of
-from calcgen.evaluation.results import LoadRow
+from calcgen.evaluation.results.beam import LoadRow
 from calcgen.language.blocks.beam import (
     BeamSetting,
     CaseLine,

@@ -15,7 +15,7 @@ from calcgen.evaluation.blocks.beam_trains import patterned_of, require_lateral,
 from calcgen.evaluation.blocks.section import SectionThing, section_named
 from calcgen.evaluation.formulas import Evaluator
 from calcgen.evaluation.quantity import quantity_of
-from calcgen.evaluation.results import LoadRow
+from calcgen.evaluation.results.beam import LoadRow
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.beam import (
     BeamBlock,

@@ -8,7 +8,8 @@ from typing import Literal
 from calcgen.evaluation.blocks.beam_lines import length_text
 from calcgen.evaluation.blocks.beam_model import BeamData
 from calcgen.evaluation.blocks.beam_shear import SLENDER, slenderness
-from calcgen.evaluation.results import GroupResult, Premise, Verdict
+from calcgen.evaluation.results.beam import GroupResult
+from calcgen.evaluation.results.common import Premise, Verdict
 from calcgen.quantities.display import Style, number_text
 
 NEGLIGIBLE = 0.05  # part of the deflection up to which that from shear is left out (common practice)

@@ -8,7 +8,8 @@ from dataclasses import dataclass
 from calcgen.evaluation.blocks.beam_lines import CROSSING, EXTREME, REACTION, SHAPE, STATE, length_text
 from calcgen.evaluation.blocks.beam_spans import chord_range, least_shape
 from calcgen.evaluation.blocks.beam_states import States, Varying, names_of, single
-from calcgen.evaluation.results import BeamResult, Plain
+from calcgen.evaluation.results.beam import BeamResult
+from calcgen.evaluation.results.common import Plain
 from calcgen.mechanics.beam import CaseSolution, Plane, Quantity
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.quantities.display import Style

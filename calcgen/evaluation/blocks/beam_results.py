@@ -8,7 +8,8 @@ from dataclasses import dataclass, replace
 from calcgen.evaluation.blocks.beam_arrangement import arrangement
 from calcgen.evaluation.blocks.beam_spans import chord_range
 from calcgen.evaluation.blocks.beam_states import Found, States, Varying, names_of, single
-from calcgen.evaluation.results import GroupResult, Result
+from calcgen.evaluation.results.beam import GroupResult
+from calcgen.evaluation.results.common import Result
 from calcgen.mechanics.actions import Effect
 from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
 from calcgen.mechanics.combinations import ReactionPart

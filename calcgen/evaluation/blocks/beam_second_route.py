@@ -8,7 +8,8 @@ from dataclasses import replace
 from calcgen.evaluation.blocks.beam_model import BeamData
 from calcgen.evaluation.blocks.beam_results import moves_sideways
 from calcgen.evaluation.blocks.beam_states import Varying, single
-from calcgen.evaluation.results import GroupResult, SecondRoute
+from calcgen.evaluation.results.beam import GroupResult
+from calcgen.evaluation.results.common import SecondRoute
 from calcgen.mechanics.beam import CaseSolution, Load, Quantity, combined, solve
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.mechanics.second_route.beam import beam_residuals

@@ -6,7 +6,7 @@ from collections.abc import Mapping, Sequence
 
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.quantity import quantity_of
-from calcgen.evaluation.results import LoadRow
+from calcgen.evaluation.results.beam import LoadRow
 from calcgen.language.blocks.beam import PatternLine, TrainLine
 from calcgen.language.nodes import Expression
 from calcgen.mechanics.beam import BeamModel, Load, Settlement

@@ -5,7 +5,8 @@ from __future__ import annotations
 from collections.abc import Mapping
 
 from calcgen.evaluation.formulas import Evaluator, shown, with_unit
-from calcgen.evaluation.results import FailedRow, InputRow, InputsResult, Origin, Plain
+from calcgen.evaluation.results.common import Origin, Plain
+from calcgen.evaluation.results.lines import FailedRow, InputRow, InputsResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.inputs import Feed, Input, InputsBlock
 from calcgen.text import nearest

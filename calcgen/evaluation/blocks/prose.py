@@ -3,7 +3,7 @@
 from __future__ import annotations
 
 from calcgen.evaluation.formulas import Evaluator, shown
-from calcgen.evaluation.results import ProseResult, SheetResult
+from calcgen.evaluation.results.lines import ProseResult, SheetResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.sheet import SheetBlock
 from calcgen.language.calc import Prose

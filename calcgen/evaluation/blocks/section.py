@@ -9,7 +9,8 @@ from calcgen.evaluation.blocks.section_materials import materials_of
 from calcgen.evaluation.blocks.section_parts import layout_of
 from calcgen.evaluation.blocks.section_properties import section_result
 from calcgen.evaluation.conventions import DIMENSIONS, Axes, names, other, translation
-from calcgen.evaluation.results import Plain, Result, SectionResult
+from calcgen.evaluation.results.common import Plain, Result
+from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.section import BarsLine, HoleLine, PartLine, SectionBlock
 from calcgen.language.calc import FailedBlock

@@ -9,7 +9,7 @@ import numpy as np
 from calcgen.evaluation.blocks.section_findings import Findings
 from calcgen.evaluation.blocks.section_materials import Materials
 from calcgen.evaluation.conventions import PROPERTIES
-from calcgen.evaluation.results import BarsPart, SectionPart
+from calcgen.evaluation.results.section import BarsPart, SectionPart
 from calcgen.mechanics.composite import transformed_properties
 from calcgen.mechanics.field import Bars, Law, Piece
 from calcgen.mechanics.second_route.composite import composite_residuals

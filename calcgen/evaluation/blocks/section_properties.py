@@ -23,7 +23,8 @@ from calcgen.evaluation.blocks.section_results import (
 from calcgen.evaluation.blocks.section_standards import by_standard
 from calcgen.evaluation.blocks.section_torsion import ELEMENTS, torsional
 from calcgen.evaluation.conventions import PROPERTIES, Axes
-from calcgen.evaluation.results import BarsPart, Result, SecondRoute, SectionPart, SectionResult
+from calcgen.evaluation.results.common import Result, SecondRoute
+from calcgen.evaluation.results.section import BarsPart, SectionPart, SectionResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.section import SectionBlock
 from calcgen.language.nodes import Column

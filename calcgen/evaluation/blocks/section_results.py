@@ -7,7 +7,8 @@ from collections.abc import Mapping, Sequence
 
 from calcgen.evaluation.blocks.section_findings import Findings
 from calcgen.evaluation.conventions import DIMENSIONS, HORIZONTAL, PROPERTIES, VERTICAL, Axes, PropertyName
-from calcgen.evaluation.results import Published, Result
+from calcgen.evaluation.results.common import Result
+from calcgen.evaluation.results.section import Published
 from calcgen.mechanics.composite import PartModuli
 from calcgen.mechanics.outline import Outline
 from calcgen.mechanics.section import Inertia

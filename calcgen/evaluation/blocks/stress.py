@@ -16,7 +16,9 @@ from calcgen.evaluation.blocks.stress_results import (
 )
 from calcgen.evaluation.blocks.stress_shear import shear_result
 from calcgen.evaluation.checks import Labels, Statement, judge
-from calcgen.evaluation.results import CheckResult, Plain, SecondRoute, StressResult
+from calcgen.evaluation.results.common import Plain, SecondRoute
+from calcgen.evaluation.results.lines import CheckResult
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.stress import StressBlock, StressSetting
 from calcgen.language.calc import FailedBlock

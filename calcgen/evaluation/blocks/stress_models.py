@@ -10,7 +10,8 @@ from typing import TypeVar
 from calcgen.evaluation.blocks.section_composite import bars_of, elastic, pieces_of
 from calcgen.evaluation.blocks.stress_request import Model, StressRequest
 from calcgen.evaluation.formulas import shown
-from calcgen.evaluation.results import BarsPart, PlasticResult, SectionPart, SectionResult
+from calcgen.evaluation.results.section import BarsPart, SectionPart, SectionResult
+from calcgen.evaluation.results.stress import PlasticResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.stress import StressBlock
 from calcgen.mechanics.curved import CurvatureError, CurvedStress, curved_stress

@@ -7,7 +7,9 @@ from collections.abc import Iterable
 from calcgen.evaluation.blocks.stress_request import StressRequest
 from calcgen.evaluation.blocks.stress_results import compressed_depth, strain_extremes
 from calcgen.evaluation.formulas import shown
-from calcgen.evaluation.results import Premise, SectionResult, ShearResult, Verdict
+from calcgen.evaluation.results.common import Premise, Verdict
+from calcgen.evaluation.results.section import SectionResult
+from calcgen.evaluation.results.stress import ShearResult
 from calcgen.evaluation.scope import Scope
 from calcgen.mechanics.curved import CurvedStress
 from calcgen.mechanics.field import Bars, Piece, StressField

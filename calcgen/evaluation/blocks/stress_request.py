@@ -10,7 +10,7 @@ from typing import Literal, TypeAlias, cast
 from calcgen.evaluation.blocks.section import section_named
 from calcgen.evaluation.formulas import shown
 from calcgen.evaluation.quantity import quantity_of, si
-from calcgen.evaluation.results import SectionResult
+from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.stress import StressBlock, StressSetting
 from calcgen.language.nodes import Name

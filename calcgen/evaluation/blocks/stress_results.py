@@ -9,7 +9,8 @@ from dataclasses import dataclass, field
 import numpy as np
 
 from calcgen.evaluation.blocks.stress_request import StressRequest
-from calcgen.evaluation.results import PlasticResult, Result, ShearResult
+from calcgen.evaluation.results.common import Result
+from calcgen.evaluation.results.stress import PlasticResult, ShearResult
 from calcgen.mechanics.arrays import Point
 from calcgen.mechanics.combined_stress import StressState
 from calcgen.mechanics.curved import CurvedStress

@@ -10,7 +10,8 @@ import numpy as np
 
 from calcgen.evaluation.blocks.stress_models import elastic_parts
 from calcgen.evaluation.blocks.stress_request import StressRequest
-from calcgen.evaluation.results import SectionPart, ShearResult
+from calcgen.evaluation.results.section import SectionPart
+from calcgen.evaluation.results.stress import ShearResult
 from calcgen.mechanics.arrays import FloatArray, Point
 from calcgen.mechanics.boolean import contact
 from calcgen.mechanics.combined_stress import (

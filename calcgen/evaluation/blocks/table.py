@@ -7,7 +7,7 @@ from itertools import pairwise
 
 from calcgen.evaluation.blocks.table_lookup import TableThing, places_of
 from calcgen.evaluation.formulas import Evaluator
-from calcgen.evaluation.results import TableCell, TableHead, TableResult
+from calcgen.evaluation.results.table import TableCell, TableHead, TableResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.table import Cell, Head, TableBlock
 from calcgen.language.calc import FailedBlock

@@ -7,7 +7,8 @@ from dataclasses import dataclass
 from itertools import pairwise
 from typing import TypeAlias
 
-from calcgen.evaluation.results import Plain, TableHead, TableResult
+from calcgen.evaluation.results.common import Plain
+from calcgen.evaluation.results.table import TableHead, TableResult
 from calcgen.language.nodes import Name
 from calcgen.quantities.display import Shown, Style, describe, rounded
 from calcgen.quantities.measure import Measure, magnitude_in

@@ -7,7 +7,9 @@ from dataclasses import dataclass, replace
 from typing import TypeAlias
 
 from calcgen.evaluation.formulas import Evaluator, shown
-from calcgen.evaluation.results import EvaluatedCalc, Plain, VaryResult, VaryRun
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.common import Plain
+from calcgen.evaluation.results.vary import VaryResult, VaryRun
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.inputs import InputsBlock
 from calcgen.language.blocks.vary import Over, Show, Steps, Varied, VaryBlock

@@ -6,7 +6,7 @@ from calcgen.evaluation.cases import evaluate
 from calcgen.evaluation.checks import Labels, judge, read_sides
 from calcgen.evaluation.formulas import shown, with_unit
 from calcgen.evaluation.operands import operands_of
-from calcgen.evaluation.results import CheckRow, DerivedRow, FailedRow, WorkingResult
+from calcgen.evaluation.results.lines import CheckRow, DerivedRow, FailedRow, WorkingResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.working import Check, Derivation, WorkingBlock
 

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import AssumptionsResult
+from calcgen.evaluation.results.lines import AssumptionsResult
 from calcgen.site.addresses import assumptions_of
 from calcgen.site.context import Context
 

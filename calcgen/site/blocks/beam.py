@@ -8,7 +8,8 @@ from dataclasses import dataclass
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import BeamResult, CombinationResult, GroupResult, Premise, Result
+from calcgen.evaluation.results.beam import BeamResult, CombinationResult, GroupResult
+from calcgen.evaluation.results.common import Premise, Result
 from calcgen.language.nodes import Column
 from calcgen.quantities.symbols import canonical, plain
 from calcgen.site.addresses import result_anchor

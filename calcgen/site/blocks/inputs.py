@@ -6,7 +6,7 @@ from dataclasses import dataclass, replace
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import InputRow, InputsResult
+from calcgen.evaluation.results.lines import InputRow, InputsResult
 from calcgen.site import addresses
 from calcgen.site.context import Context
 from calcgen.site.equations import stated

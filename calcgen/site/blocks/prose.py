@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import ProseResult
+from calcgen.evaluation.results.lines import ProseResult
 from calcgen.site.context import Context
 
 

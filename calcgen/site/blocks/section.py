@@ -7,7 +7,8 @@ from dataclasses import dataclass
 
 from markupsafe import Markup, escape
 
-from calcgen.evaluation.results import BarsPart, Published, Result, SectionPart, SectionResult
+from calcgen.evaluation.results.common import Result
+from calcgen.evaluation.results.section import BarsPart, Published, SectionPart, SectionResult
 from calcgen.language.nodes import Column
 from calcgen.quantities.symbols import plain
 from calcgen.site.context import Context

@@ -7,7 +7,8 @@ from dataclasses import dataclass, replace
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import Premise, StressResult
+from calcgen.evaluation.results.common import Premise
+from calcgen.evaluation.results.stress import StressResult
 from calcgen.quantities.symbols import plain
 from calcgen.site.blocks.working import check_view
 from calcgen.site.context import Context

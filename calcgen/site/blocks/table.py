@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 from markupsafe import Markup, escape
 
-from calcgen.evaluation.results import TableHead, TableResult
+from calcgen.evaluation.results.table import TableHead, TableResult
 from calcgen.quantities.display import describe
 from calcgen.quantities.measure import Measure
 from calcgen.site.context import Context

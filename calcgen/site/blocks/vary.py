@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 from markupsafe import Markup
 
-from calcgen.evaluation.results import VaryResult, VaryRun
+from calcgen.evaluation.results.vary import VaryResult, VaryRun
 from calcgen.language.nodes import Column
 from calcgen.quantities.symbols import plain
 from calcgen.site.context import Context

@@ -6,7 +6,7 @@ from dataclasses import dataclass
 
 from markupsafe import escape
 
-from calcgen.evaluation.results import CheckResult, CheckRow, DerivedRow, FailedRow, WorkingResult
+from calcgen.evaluation.results.lines import CheckResult, CheckRow, DerivedRow, FailedRow, WorkingResult
 from calcgen.site import equations
 from calcgen.site.context import Context
 from calcgen.site.lookups import remarks_on
