@@ -93,9 +93,9 @@ def build(folder: Path, out: Path | None, because: str | None, *, strict: bool, 
 
 def _built(request: Request) -> Outcome:
     """Build; the stages are loaded here, so that a package that is current does not wait for them."""
-    from calcgen.pipeline import Workshop, build
-
     with _progress() as step, _no_collection():
+        from calcgen.pipeline import Workshop, build
+
         return build(request, Workshop(), step)
 
 
@@ -224,7 +224,7 @@ def _who(root: Path) -> str:
 
 @contextmanager
 def _no_collection() -> Iterator[None]:
-    """Put off the collection of garbage: a build makes a million objects and few cycles."""
+    """Put off the collection of garbage: a build and its imports make a million objects and few cycles."""
     gc.disable()
     try:
         yield

@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from dataclasses import asdict, dataclass, field
-from pathlib import Path
+from pathlib import Path, PurePosixPath
 from posixpath import normpath
 from urllib.parse import unquote
 
@@ -13,6 +13,7 @@ from calcgen.catalogues import joined_catalogue
 from calcgen.current import key_of
 from calcgen.evaluation.calc import Memory, Setting, evaluate_all
 from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.figures.adapt_map import map_drawing
 from calcgen.figures.illustrate import Drawn, Studio, conventions
 from calcgen.language.calc import Calc, Prose
 from calcgen.language.document import calc_from
@@ -21,6 +22,7 @@ from calcgen.profiles import Catalogue
 from calcgen.project import Project, ProjectFiles, Reference, load_project
 from calcgen.publishing import PublishError, publish, recover
 from calcgen.quantities.display import Style
+from calcgen.site import addresses
 from calcgen.site.compose import Composed, compose
 from calcgen.site.facts import PackageInput, ProjectFacts, ReferenceFacts
 from calcgen.site.figure import FigureSvg
@@ -41,7 +43,7 @@ from calcgen.trail import (
     replay,
 )
 from calcgen.trail.state import state_of
-from calcgen.views import history_views, previous_views
+from calcgen.views import history_views, previous_views, unrecorded_views
 
 PROGRAM = f"calcgen {__version__}"
 
@@ -92,10 +94,11 @@ def _build(
     style = Style(project.units, project.digits, project.depth, project.preferred_units)
     catalogue, faults = _catalogue(files.profiles, workshop)
     setting = Setting(project.axes, style, catalogue, frozenset(files.references))
-    evaluated = evaluate_all(calcs, setting, workshop.memory)
+    unread = _unread(found)
+    evaluated = evaluate_all(calcs, setting, workshop.memory, unread)
     diagnostics = (*found, *faults, *missing, *(d for calc in evaluated for d in calc.diagnostics))
     step("comparing with the trail")
-    trail = _record(request, evaluated, files, style)
+    trail = _record(request, evaluated, unread, files, style)
     step("drawing")
     figures = {
         (calc.number, name): row
@@ -103,6 +106,9 @@ def _build(
         for name, row in workshop.studio.draw(calc, project.axes, style).items()
     }
     signs = workshop.studio.draw_one(conventions(project.axes, project.depth))
+    previous = previous_views(trail.trail, trail.changes, style)
+    was = {address: value.was for address, value in previous.items()}
+    sheets = workshop.studio.draw_map(map_drawing(evaluated, was, addresses.calc_link, addresses.feeds_link))
     step("writing")
     package = PackageInput(
         project=_facts(project),
@@ -110,9 +116,11 @@ def _build(
         references={key: _reference(r) for key, r in files.references.items()},
         figures={address: tuple(_figure(d) for d in row) for address, row in figures.items()},
         conventions=(_figure(signs),),
-        previous=previous_views(trail.trail, trail.changes, style),
+        map=tuple(_figure(sheet) for sheet in sheets),
+        previous=previous,
         history=history_views(trail.trail, style),
         pending=trail.pending,
+        unrecorded=unrecorded_views(trail.trail, trail.changes, style) if trail.pending else (),
         version=__version__,
         diagnostics=(*found, *faults, *missing),
         built=trail.trail.order[-1].when if trail.trail.order else "",
@@ -133,6 +141,12 @@ def _build(
         durable=request.durable,
     )
     return Outcome(summaries, diagnostics, published=True, notes=trail.notes, trail_at_fault=trail.at_fault)
+
+
+def _unread(found: tuple[Diagnostic, ...]) -> frozenset[str]:
+    """Return the numbers of calcs whose files cannot be read, from the faults of the project's files."""
+    paths = (PurePosixPath(d.source.path) for d in found)
+    return frozenset(path.stem for path in paths if path.parent.name == "calcs")
 
 
 def _facts(project: Project) -> ProjectFacts:
@@ -162,7 +176,7 @@ def _reference(r: Reference) -> ReferenceFacts:
 
 
 def _figure(drawn: Drawn) -> FigureSvg:
-    return FigureSvg(drawn.title, drawn.description, drawn.wide, drawn.narrow)
+    return FigureSvg(drawn.title, drawn.description, drawn.wide, drawn.narrow, drawn.listed)
 
 
 def _calc(source: SourceFile, workshop: Workshop) -> Calc:
@@ -207,14 +221,18 @@ class _Recorded:
 
 
 def _record(
-    request: Request, calcs: tuple[EvaluatedCalc, ...], files: ProjectFiles, style: Style
+    request: Request,
+    calcs: tuple[EvaluatedCalc, ...],
+    unread: frozenset[str],
+    files: ProjectFiles,
+    style: Style,
 ) -> _Recorded:
     """Append what changed to the trail, or only compare with it."""
     references = {key: f"{r.title} {r.edition}".strip() for key, r in files.references.items()}
     path = request.root / TRAIL
 
     def state(trail: Trail) -> State:
-        return state_of(calcs, references, replay(trail), style)
+        return state_of(calcs, references, replay(trail), style, unread)
 
     if not request.records:
         trail, faults = load(path)

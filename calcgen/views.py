@@ -33,6 +33,11 @@ def previous_views(trail: Trail, changes: Changes, style: Style) -> dict[str, Pr
     return {address: PreviousValue(texts[address], _when(p)) for address, p in found.items()}
 
 
+def unrecorded_views(trail: Trail, pending: Changes, style: Style) -> tuple[ChangeView, ...]:
+    """Return the changes that a trail does not record yet; none where it has no entry, and all is new."""
+    return tuple(_changes(pending, style)) if trail.order else ()
+
+
 def _when(p: Previous) -> str:
     return f"at {p.issue.more['revision']}" if p.issue is not None else f"on {p.entry.when[:10]}"
 
@@ -60,8 +65,10 @@ def _changes(changes: Changes, style: Style) -> Iterable[ChangeView]:
 
 def _first_record(entry: HistoryEntry) -> Iterable[ChangeView]:
     """Yield one line for each calc of the entry that starts a trail: everything in it is new."""
-    for calc in entry.changes.calcs:
-        kinds = Counter("variation" if c.kind == "vary" else c.kind for c in entry.changes if c.calc == calc)
+    by_calc: dict[str, Counter[str]] = {calc: Counter() for calc in entry.changes.calcs}
+    for c in entry.changes:
+        by_calc[c.calc]["variation" if c.kind == "vary" else c.kind] += 1
+    for calc, kinds in by_calc.items():
         counted = ", ".join(f"{n} {kind}{'s' if n > 1 else ''}" for kind, n in sorted(kinds.items()))
         yield ChangeView(calc, calc, "first recorded", "", counted.replace("stresss", "stresses"))
 
@@ -74,12 +81,14 @@ def _heading(number: int, entry: Entry) -> str:
 
 def _change(change: Change, style: Style) -> ChangeView:
     before, after = change.before, change.after
+    was, now = ("" if item is None else item_text(item, style) for item in (before, after))
     if before is not None and after is not None and "results" in after:
-        was, now = _block_texts(before, after, style)
-    else:
-        was = item_text(before, style) if before is not None else ""
-        now = item_text(after, style) if after is not None else ""
-    return ChangeView(change.address, _name(change), f"{change.kind} {_WORDS[change.how]}", was, now)
+        results = _block_texts(before, after, style)
+        if before.get("value") == after.get("value") and any(results):
+            was, now = results
+    what = f"{change.kind} {_WORDS[change.how]}"
+    fed = change.kind == "input" and change.how == "moved"
+    return ChangeView(change.address, _name(change), what, was, now, fed)
 
 
 def _name(change: Change) -> str:

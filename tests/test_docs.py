@@ -10,13 +10,15 @@ import pytest
 
 from calcgen import cli
 from calcgen.evaluation.blocks.beam import BeamThing
+from calcgen.evaluation.blocks.beam_influence import readable
 from calcgen.evaluation.blocks.beam_lines import is_result
 from calcgen.evaluation.blocks.stress_results import RESULT_MEANINGS
+from calcgen.evaluation.combination_sets.standard import standard_sets
 from calcgen.evaluation.conventions import DIMENSIONS, PROPERTIES
 from calcgen.evaluation.results.beam import BeamResult
 from calcgen.evaluation.results.stress import StressResult
 from calcgen.language.blocks import LATER as LATER_BLOCKS
-from calcgen.language.blocks import NAMED, READERS, sheet, stress
+from calcgen.language.blocks import NAMED, READERS, beam_cases, sheet, stress
 from calcgen.language.blocks import beam_lines as beam
 from calcgen.language.blocks.section import SHAPES
 from calcgen.language.nodes import CONSTANTS, FUNCTIONS, WORDS
@@ -174,7 +176,12 @@ def test_every_line_of_a_beam() -> None:
 
 
 def test_every_kind_of_case() -> None:
-    assert set(beam.CASE_KINDS) <= words()
+    assert set(beam_cases.CASE_KINDS) <= words()
+
+
+def test_every_combination_set_and_its_factors() -> None:
+    assert {row[0].strip("`") for row in rows("M-12g-combinations")} >= set(standard_sets())
+    assert set(beam.FACTORS) <= words()
 
 
 def test_every_result_of_a_beam() -> None:
@@ -195,6 +202,13 @@ def test_every_result_of_a_beam() -> None:
         of_beam = re.sub(r"^span_\d+\.", "", name.removesuffix("_lat"))
         general = re.sub(r"^(R|M_R|θ|x_M_0|x_V_0)_\d+", r"\1_1", of_beam)
         assert general in words(), name
+
+
+def test_every_result_of_an_influence_line() -> None:
+    shown = {word.replace("η_2_", "η_1_") for word in words()}
+    assert set(readable("η_1")) <= shown
+    named = {symbol for row in rows("M-12h-influence") for symbol in row[0].split(", ")}
+    assert {*beam.OF_PLACES, *beam.OF_SUPPORTS} <= named
 
 
 def test_each_documented_result_of_a_beam_can_be_read() -> None:

@@ -2,12 +2,13 @@
 
 from __future__ import annotations
 
-from collections.abc import Hashable, Iterable, Mapping, Sequence
+from collections.abc import Hashable, Mapping, Sequence
 from dataclasses import dataclass, field, replace
 from typing import Literal
 
 from calcgen.evaluation.blocks.beam import evaluate_beam
-from calcgen.evaluation.blocks.inputs import evaluate_inputs
+from calcgen.evaluation.blocks.fed import Upstream
+from calcgen.evaluation.blocks.inputs import evaluate_inputs, origin_of
 from calcgen.evaluation.blocks.prose import evaluate_prose, evaluate_sheet
 from calcgen.evaluation.blocks.section import evaluate_section
 from calcgen.evaluation.blocks.stress import evaluate_stress
@@ -20,8 +21,8 @@ from calcgen.evaluation.formulas import shown
 from calcgen.evaluation.lookups import lookups_of
 from calcgen.evaluation.order import feeds_of, in_order
 from calcgen.evaluation.results.beam import BeamResult
-from calcgen.evaluation.results.calc import EvaluatedCalc, Segment
-from calcgen.evaluation.results.common import Origin, Plain, Premise, SecondRoute, Standing
+from calcgen.evaluation.results.calc import EvaluatedCalc, Hindrance, Segment
+from calcgen.evaluation.results.common import Plain, Premise, SecondRoute, Standing
 from calcgen.evaluation.results.lines import AssumptionsResult, CheckResult, CheckRow, WorkingResult
 from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.results.stress import StressResult
@@ -64,10 +65,6 @@ class Memory:
             self._setting = setting
             self._kept.clear()
 
-    def key(self, calc: Calc, upstream: Iterable[str]) -> Hashable:
-        """Return what the evaluation of a calc depends on: its text, and the keys of what feeds it."""
-        return (calc.source, tuple(self._kept[n][0] for n in sorted(upstream) if n in self._kept))
-
     def recall(self, number: str, key: Hashable) -> tuple[EvaluatedCalc, Scope] | None:
         """Return the calc evaluated under this key."""
         kept = self._kept.get(number)
@@ -79,52 +76,85 @@ class Memory:
 
 
 def evaluate_all(
-    calcs: Sequence[Calc], setting: Setting, memory: Memory | None = None
+    calcs: Sequence[Calc],
+    setting: Setting,
+    memory: Memory | None = None,
+    unread: frozenset[str] = frozenset(),
 ) -> tuple[EvaluatedCalc, ...]:
-    """Evaluate calcs, those that feed others first; returned in the order of their numbers."""
+    """Evaluate calcs, those that feed others first; returned in the order of their numbers.
+
+    A calc on a loop, or fed by one that is in error or not evaluated, is not evaluated itself. `unread` are
+    the numbers of calcs whose files cannot be read.
+    """
     memory = memory or Memory()
     memory.prepare(setting)
     order = in_order(calcs)
     scopes: dict[str, Scope] = {}
     done: dict[str, EvaluatedCalc] = {}
-    for calc in order.cyclic:
-        found = tuple(d for d in order.diagnostics if d.source == calc.source)
-        done[calc.number] = not_evaluated(calc, "it is part of a loop of calcs that feed each other", found)
+    numbers = frozenset(calc.number for calc in calcs)
+    for calc, found, reason in order.faulty:
+        done[calc.number] = not_evaluated(calc, found, reason)
     for calc in order.calcs:
-        broken = sorted(
-            {
-                f.calc
-                for f in feeds_of(calc)
-                if f.calc in done and done[f.calc].standing in ("in error", "not evaluated")
-            }
-        )
-        if broken:
-            reasons = (f"{n}, which feeds it, is {done[n].standing}" for n in broken)
-            done[calc.number] = not_evaluated(calc, "; ".join(reasons), ())
+        feeders = sorted({feed.calc for feed in feeds_of(calc)})
+        hindrances = tuple(h for n in feeders if n in done for h in [_hindrance(done[n])] if h is not None)
+        if hindrances:
+            reason = "; ".join(h.text for h in hindrances)
+            done[calc.number] = not_evaluated(calc, (), reason, hindrances)
             continue
-        key = memory.key(calc, {f.calc for f in feeds_of(calc)})
-        result, scope = memory.recall(calc.number, key) or evaluate_calc(calc, setting, scopes)
+        key = _depends_on(calc, tuple((n, done.get(n)) for n in feeders), (numbers, unread))
+        result, scope = memory.recall(calc.number, key) or evaluate_calc(
+            calc, setting, Upstream(calc.number, scopes, numbers, unread)
+        )
         memory.keep(key, result, scope)
         done[calc.number], scopes[calc.number] = result, scope
     return tuple(done[n] for n in sorted(done))
 
 
-def not_evaluated(calc: Calc, reason: str, found: tuple[Diagnostic, ...]) -> EvaluatedCalc:
+def _depends_on(
+    calc: Calc, feeders: tuple[tuple[str, EvaluatedCalc | None], ...], known: Hashable
+) -> Hashable:
+    """Return what an evaluation depends on: the calc's text, and what feeds it as it was evaluated.
+
+    Where a feeder does not exist, the fault that tells it depends on the numbers that are `known`.
+    """
+    missing = any(feeder is None for _, feeder in feeders)
+    return (calc.source, feeders, known if missing else None)
+
+
+def _hindrance(feeder: EvaluatedCalc) -> Hindrance | None:
+    """Return why a calc cannot feed others, None where it can."""
+    if feeder.standing == "in error":
+        return Hindrance(feeder.number, feeder.standing, feeder.number)
+    if feeder.standing == "not evaluated":
+        return Hindrance(feeder.number, feeder.standing, feeder.hindrances[0].root)
+    return None
+
+
+def not_evaluated(
+    calc: Calc, found: tuple[Diagnostic, ...], reason: str, hindrances: tuple[Hindrance, ...] = ()
+) -> EvaluatedCalc:
     """Return a calc of which nothing is evaluated; one with errors of its own is in error."""
     diagnostics = calc.diagnostics + found
     failed = any(d.severity == "error" for d in diagnostics)
-    standing: Standing = "in error" if failed else "not evaluated"
-    return EvaluatedCalc(calc, (), {}, (), (), (), (), diagnostics, standing, reason)
+    return EvaluatedCalc(
+        calc=calc,
+        segments=(),
+        values={},
+        checks=(),
+        premises=(),
+        second_route=(),
+        depends=tuple(origin_of(f, calc.source) for f in feeds_of(calc)),
+        diagnostics=diagnostics,
+        standing="in error" if failed else "not evaluated",
+        reason=reason,
+        hindrances=hindrances,
+    )
 
 
 def evaluate_calc(
-    calc: Calc, setting: Setting, upstream: Mapping[str, Scope], replaced: Mapping[str, Plain] | None = None
+    calc: Calc, setting: Setting, upstream: Upstream, replaced: Mapping[str, Plain] | None = None
 ) -> tuple[EvaluatedCalc, Scope]:
-    """Evaluate one calc.
-
-    `upstream` holds the scopes of the calcs that may feed it, `replaced` the values of inputs that have
-    others than are written.
-    """
+    """Evaluate one calc; `replaced` holds the values of inputs that have others than are written."""
     report = Report(calc.source)
     scope = Scope(report, setting.style, failed=set(calc.failed_names), later=_defined_names(calc))
     labels = Labels()
@@ -156,7 +186,7 @@ def evaluate_calc(
         checks=checks,
         premises=_premises(segments),
         second_route=second_route,
-        depends=tuple(Origin(f.calc, f.name.dotted) for f in feeds_of(calc)),
+        depends=tuple(origin_of(f, calc.source) for f in feeds_of(calc)),
         diagnostics=diagnostics,
         standing=_standing(checks, diagnostics),
         lookups=lookups_of(calc, segments, scope),
@@ -173,7 +203,7 @@ def _evaluate_block(
     scope: Scope,
     labels: Labels,
     setting: Setting,
-    upstream: Mapping[str, Scope],
+    upstream: Upstream,
     replaced: Mapping[str, Plain],
 ) -> Segment:
     match segment:

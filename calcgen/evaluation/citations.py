@@ -3,11 +3,9 @@
 from __future__ import annotations
 
 import re
-from collections.abc import Iterator
-from dataclasses import fields, is_dataclass
 
-from calcgen.language.calc import Calc, Prose
-from calcgen.language.nodes import Citation, Column
+from calcgen.language.calc import Calc
+from calcgen.language.nodes import Citation
 from calcgen.text import Report, nearest
 
 _CITED = re.compile(r"\[([^\s\[\]|]+)[^\[\]]*\]")
@@ -15,14 +13,7 @@ _CITED = re.compile(r"\[([^\s\[\]|]+)[^\[\]]*\]")
 
 def citations_of(calc: Calc) -> tuple[Citation, ...]:
     """Return the citations of a calc in the order they stand."""
-    found = (
-        c
-        for s in calc.segments
-        if not isinstance(s, Prose)
-        for column in _columns(s)
-        for c in column.citations
-    )
-    return tuple(sorted(found, key=lambda c: c.span))
+    return tuple(sorted((c for column in calc.columns for c in column.citations), key=lambda c: c.span))
 
 
 def check_citations(calc: Calc, known: frozenset[str], report: Report) -> None:
@@ -37,7 +28,7 @@ def check_citations(calc: Calc, known: frozenset[str], report: Report) -> None:
                 hint=f"the nearest key is '{found}'" if found else "add it there, with its title and edition",
             )
 
-    for column in (c for s in calc.segments if not isinstance(s, Prose) for c in _columns(s)):
+    for column in calc.columns:
         found_here = [] if column.citations else _CITED.findall(column.text)
         if any(key in known for key in found_here):
             report.warning(
@@ -46,14 +37,3 @@ def check_citations(calc: Calc, known: frozenset[str], report: Report) -> None:
                 "a citation in the second column is not a reference",
                 hint="citations stand in the third column: statement | what it is | [KEY place]",
             )
-
-
-def _columns(node: object) -> Iterator[Column]:
-    if isinstance(node, Column):
-        yield node
-    elif isinstance(node, tuple):
-        for item in node:
-            yield from _columns(item)
-    elif is_dataclass(node):
-        for part in fields(node):
-            yield from _columns(getattr(node, part.name))

@@ -12,6 +12,7 @@ from calcgen.evaluation.results.calc import Segment
 from calcgen.evaluation.results.lines import CheckRow, DerivedRow, WorkingResult
 from calcgen.evaluation.results.table import Lookup
 from calcgen.evaluation.scope import Scope
+from calcgen.language.blocks.inputs import Feed
 from calcgen.language.calc import Calc, FailedBlock, Prose
 from calcgen.language.nodes import Cases, Name
 from calcgen.text import Report
@@ -39,7 +40,18 @@ def lookups_of(calc: Calc, segments: Sequence[Segment], scope: Scope) -> tuple[L
             if heads is not None:
                 rows, columns = (tuple(index for index, _ in along) for along in heads)
                 texts = tuple(shown(v, scope) for v in arguments)
-                found.append(Lookup(table.result.name, texts, rows, columns, shown(value, scope), name.span))
+                found.append(
+                    Lookup(
+                        table.result.name,
+                        texts,
+                        rows,
+                        columns,
+                        tuple(table.result.rows[i].shown.text for i in rows),
+                        tuple(table.result.columns[i].shown.text for i in columns),
+                        shown(value, scope),
+                        name.span,
+                    )
+                )
     return tuple(found)
 
 
@@ -71,9 +83,11 @@ def _names_of(row: DerivedRow) -> Iterator[Name]:
 
 
 def _inside(node: object) -> Iterator[Name]:
-    """Yield every name in a node of a block."""
+    """Yield every name in a node of a block that is read in this calc."""
     if isinstance(node, Prose):
         yield from (place.name for place in node.places)
+    elif isinstance(node, Feed):
+        yield from _inside(node.name.arguments)  # the name itself is one of the other calc
     elif isinstance(node, tuple):
         for item in node:
             yield from _inside(item)

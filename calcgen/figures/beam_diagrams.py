@@ -7,10 +7,13 @@ from itertools import pairwise
 import numpy as np
 from numpy.typing import NDArray
 
+from calcgen.figures.beam_governing import Strip
 from calcgen.figures.labels import Obstacles, Point, spread, text_width, two_lanes
 from calcgen.figures.picture import DASH, LINE, SMALL, THIN, Anchor, Label, Sketch, Stroke, thin, wrap
+from calcgen.figures.signs import draw_signs
 
 HEIGHT = 78.0  # pixels from the lowest to the highest value
+MARK = 6.0  # pixels of a mark on the zero line to either side
 CURVE = Stroke("ink", 1.5)
 LOWER = Stroke("ink", 1.5, DASH)
 
@@ -29,7 +32,9 @@ class Diagram:
     """One quantity along the beam as points (x, value); x does not decrease, a jump repeats its x.
 
     With `lower`, `curve` is the largest and `lower` the least value of an envelope. `down` puts positive
-    values below the line, as for a moment drawn on the tension side or a deflection.
+    values below the line, as for a moment drawn on the tension side or a deflection. `signed` tells positive
+    from negative parts by their fill and a sign; `mark` is a place to be marked on the zero line. `inner` has
+    the curve of each state within an envelope, where they are few; `strips` tell what governs its edges.
     """
 
     title: str
@@ -38,6 +43,10 @@ class Diagram:
     extremes: tuple[Extreme, ...] = ()
     down: bool = False
     note: str = ""
+    signed: bool = False
+    mark: float | None = None
+    inner: tuple[tuple[Point, ...], ...] = ()
+    strips: tuple[Strip, ...] = ()
 
 
 @dataclass(frozen=True)
@@ -64,17 +73,25 @@ def draw_diagram(
     labels = _placed(diagram, lines, ends, points, width)
     heights = np.concatenate([line[:, 1] for line in lines])
     boxes = [placed.label.box for placed in labels]
-    highest = min(float(heights.min()), 0.0, *(box.top for box in boxes))
-    lowest = max(float(heights.max()), 0.0, *(box.bottom for box in boxes))
+    least = 0.0 if diagram.mark is None else MARK
+    highest = min(float(heights.min()), -least, *(box.top for box in boxes))
+    lowest = max(float(heights.max()), least, *(box.bottom for box in boxes))
     zero = y + 8 - highest
     drop = np.array([0.0, zero])
-    _draw_curves(sketch, curve + drop, None if lower is None else lower + drop, ends, zero)
+    inner = [_pixels(points, across, factor) + drop for points in diagram.inner]
+    _draw_curves(sketch, curve + drop, None if lower is None else lower + drop, inner, ends, zero)
     for placed in labels:
         leader = [(x, at + zero) for x, at in placed.leader]
         if len(leader) > 1:
             sketch.line(leader, THIN)
         sketch.dot(leader[0], 2.2, "ink")
         sketch.label(placed.label.moved(0, zero))
+    if diagram.mark is not None:
+        x = across(diagram.mark)
+        sketch.line([(x, zero - MARK), (x, zero + MARK)], Stroke("ink", 2.2))
+    if diagram.signed:
+        boxes = [box.moved(0, zero) for box in boxes]
+        draw_signs(sketch, curve + drop, zero, boxes, 1 if diagram.down else -1)
     return zero + lowest
 
 
@@ -103,19 +120,24 @@ def _draw_head(sketch: Sketch, diagram: Diagram, top: float, width: float) -> fl
 def _pixels(
     points: tuple[Point, ...], across: Callable[[float], float], factor: float
 ) -> NDArray[np.float64]:
-    return thin([(across(x), factor * value) for x, value in points])
+    x, values = np.array(points).T
+    left, right = across(points[0][0]), across(points[-1][0])
+    length = (x[-1] - x[0]) or 1.0
+    return thin(np.column_stack([left + (x - x[0]) / length * (right - left), factor * values]))
 
 
 def _draw_curves(
     sketch: Sketch,
     curve: NDArray[np.float64],
     lower: NDArray[np.float64] | None,
+    inner: Sequence[NDArray[np.float64]],
     ends: tuple[Point, Point],
     zero: float,
 ) -> None:
     base = [(ends[0][0], zero), (ends[1][0], zero)]
     other = np.array(base) if lower is None else lower
     sketch.fill([np.vstack([curve, other[::-1]])], "section", opacity=0.9)
+    sketch.lines(inner, THIN)
     sketch.line(base, Stroke("ink", 0.9))
     if lower is None:
         sketch.line([base[0], *curve, base[1]], CURVE)

@@ -6,8 +6,9 @@ from math import ceil
 
 import numpy as np
 
-from calcgen.figures.labels import Obstacles, Point, spread, two_lanes
-from calcgen.figures.picture import HAIR, LINE, SMALL, THIN, Anchor, Label, Sketch, Stroke
+from calcgen.figures.beam_lanes import LoadLane
+from calcgen.figures.labels import Obstacles, Point, text_width
+from calcgen.figures.picture import HAIR, LINE, SMALL, THIN, Label, Sketch, Stroke, wrap
 
 TALL, LOW = 24.0, 9.0  # of the arrows of the largest and of the smallest load
 POINT_ARROW = 32.0
@@ -74,30 +75,36 @@ def draw_case(
     `across` gives the pixel of a place along the beam, `largest` the load per length drawn tallest.
     """
     spread_out = [load for load in case.loads if isinstance(load, Distributed | Effect)]
-    tiers = _tiers(spread_out)
+    tiers = [_Tier.of(tier, across, width, largest) for tier in _tiers(spread_out)]
     singles = sorted(
         (load for load in case.loads if isinstance(load, PointLoad | CoupleLoad)), key=lambda s: _middle(s)
     )
-    tops = [max(_height(load, largest) for load in tier) + LINE + 4 for tier in tiers]
-    stack = sum(tops)
+    stack = sum(tier.height for tier in tiers)
     reach = max(stack + 8 * bool(tiers), POINT_ARROW) if singles else stack
     if singles and all(isinstance(s, CoupleLoad) for s in singles) and not tiers:
         reach = 16.0
-    title = sketch.label(Label(3, top + SMALL, case.title, SMALL, "left", colour="muted"))
-    lane = _Lane.of(singles, across, width)
-    base = title.y + 6 + lane.height + reach + 4
+    y = top + SMALL
+    for number, line in enumerate(wrap(case.title, SMALL, width - 6)):
+        y = sketch.label(Label(3, top + SMALL + number * LINE, line, SMALL, "left", colour="muted")).y
+    lane = LoadLane.of([s.label for s in singles], [across(_middle(s)) for s in singles], width)
+    base = y + 6 + lane.height + reach + 4
     taken = Obstacles(3, width - 3)
     for single in singles:
         x = across(_middle(single))
         taken.add_line([(x, base), (x, base - reach)])
-    for tier, loads in enumerate(tiers):
-        foot = base - sum(tops[:tier])
-        for load in loads:
-            if tier:  # the loads below keep this one off the beam
+    foot = base
+    feet = []
+    for number, tier in enumerate(tiers):
+        for load in tier.loads:
+            if number:  # the loads below keep this one off the beam
                 sketch.line([(across(load.start), foot - 1), (across(load.end), foot - 1)], HAIR)
-            _draw_stretch(sketch, load, foot, across, largest, taken)
+            _draw_stretch(sketch, load, foot, across, largest)
+        feet.append(foot)
+        foot -= tier.height
     for single in singles:
         _draw_single(sketch, single, base, reach, across)
+    for tier, foot in zip(tiers, feet, strict=True):  # over all lines, which their halo interrupts
+        tier.draw(sketch, foot, across, largest, taken)
     lane.draw(sketch, base - reach)
     return base
 
@@ -132,13 +139,58 @@ def _height(load: Distributed | Effect, largest: float) -> float:
     return LOW + (TALL - LOW) * max(abs(load.first), abs(load.last)) / largest
 
 
+@dataclass(frozen=True)
+class _Tier:
+    """Loads side by side along the beam, each with its label over it, or all of them in a lane above."""
+
+    loads: tuple[Distributed | Effect, ...]
+    tall: float  # of the tallest load
+    lane: LoadLane | None
+
+    @staticmethod
+    def of(
+        loads: Sequence[Distributed | Effect], across: Callable[[float], float], width: float, largest: float
+    ) -> "_Tier":
+        """Find out whether each label has room over its load."""
+        tall = max(_height(load, largest) for load in loads)
+        rooms = [across(load.end) - across(load.start) for load in loads]
+        fit = all(text_width(s.label, SMALL) + 4 <= room for s, room in zip(loads, rooms, strict=True))
+        if fit or (len(loads) == 1 and text_width(loads[0].label, SMALL) <= width - 6):
+            return _Tier(tuple(loads), tall, None)
+        ordered = sorted(loads, key=lambda s: s.start)
+        middles = [(across(s.start) + across(s.end)) / 2 for s in ordered]
+        return _Tier(tuple(loads), tall, LoadLane.of([s.label for s in ordered], middles, width))
+
+    @property
+    def height(self) -> float:
+        """How much it takes of the height of its case."""
+        return self.tall + (LINE if self.lane is None else self.lane.height) + 4
+
+    def draw(
+        self,
+        sketch: Sketch,
+        foot: float,
+        across: Callable[[float], float],
+        largest: float,
+        taken: Obstacles,
+    ) -> None:
+        """Write the labels of loads that stand on `foot`, aside of the lines taken where they can be."""
+        if self.lane is not None:
+            self.lane.draw(sketch, foot - self.tall - 2)
+            return
+        for load in self.loads:
+            left, right = across(load.start), across(load.end)
+            top = foot - _height(load, largest) - 6
+            label = Label((left + right) / 2, top, load.label, SMALL, halo=True).within(3, taken.right)
+            room = max((right - left - text_width(load.label, SMALL)) / 2, 0.0)
+            shifts = sorted(np.arange(-room, room + 1e-9, 4.0), key=abs)
+            moved = (label.moved(float(shift), 0) for shift in shifts)
+            label = next((each for each in moved if taken.clear(each.box, 4.0)), label)
+            taken.boxes.append(sketch.label(label).box)
+
+
 def _draw_stretch(
-    sketch: Sketch,
-    load: Distributed | Effect,
-    foot: float,
-    across: Callable[[float], float],
-    largest: float,
-    taken: Obstacles,
+    sketch: Sketch, load: Distributed | Effect, foot: float, across: Callable[[float], float], largest: float
 ) -> None:
     left, right = across(load.start), across(load.end)
     if isinstance(load, Effect):
@@ -146,14 +198,6 @@ def _draw_stretch(
         sketch.line([(left, foot - 5.5), (right, foot - 5.5)], Stroke("ink", 0.8, (4.0, 2.5)))
     else:
         _draw_distributed(sketch, load, foot, (left, right), largest)
-    label = Label((left + right) / 2, foot - _height(load, largest) - 6, load.label, SMALL, halo=True)
-    room = max((right - left) / 2, 1.0)
-    for shift in sorted(np.arange(-room, room + 1, 4.0), key=abs):
-        moved = label.moved(float(shift), 0).within(3, taken.right)
-        if taken.clear(moved.box):
-            label = moved
-            break
-    taken.boxes.append(sketch.label(label.within(3, taken.right)).box)
 
 
 def _draw_distributed(
@@ -201,51 +245,3 @@ def _draw_single(
     if reach > 16:
         x = across(_middle(load))
         sketch.line([(x, base - 10), (x, base - reach)], THIN)
-
-
-@dataclass(frozen=True)
-class _Lane:
-    """Labels above the arrows: level where they fit side by side, else upright, in two lanes, or counted."""
-
-    labels: tuple[tuple[str, float, float], ...]  # text, place of the load, place of the label
-    upright: bool
-    height: float
-    second: float = 0.0  # how far the second lane stands above the first
-    note: str = ""
-
-    @staticmethod
-    def of(
-        singles: Sequence[PointLoad | CoupleLoad], across: Callable[[float], float], width: float
-    ) -> "_Lane":
-        """Find places for the labels of loads, which are in the order of their places."""
-        texts = [single.label for single in singles]
-        wanted = [across(_middle(single)) for single in singles]
-        if not texts:
-            return _Lane((), upright=False, height=0.0)
-        boxes = [Label(0, 0, text, SMALL, "left").box for text in texts]
-        placed = spread(wanted, [box.right + 6 for box in boxes], 3, width - 3)
-        near = placed and all(abs(p - w) <= 40 for p, w in zip(placed, wanted, strict=True))
-        if placed and near:
-            return _Lane(tuple(zip(texts, wanted, placed, strict=True)), upright=False, height=LINE + 6)
-        longest = max(box.right for box in boxes)
-        placed = spread(wanted, [SMALL + 3] * len(texts), 3, width - 3)
-        if placed:
-            return _Lane(tuple(zip(texts, wanted, placed, strict=True)), upright=True, height=longest + 12)
-        placed = two_lanes(wanted, SMALL + 3, 3, width - 3)
-        if placed:
-            rows = tuple(zip(texts, wanted, placed, strict=True))
-            return _Lane(rows, upright=True, height=2 * longest + 20, second=longest + 8)
-        return _Lane((), upright=False, height=LINE, note=f"{len(texts)} loads, too close to label")
-
-    def draw(self, sketch: Sketch, foot: float) -> None:
-        """Draw the labels above `foot`, each with a leader to its load where it stands aside."""
-        for number, (text, load, place) in enumerate(self.labels):
-            lift = 8.0 + (self.second if number % 2 else 0.0)
-            if self.upright or abs(load - place) > 1:
-                rise = [(place, foot - lift + 2)] if lift > 8 else []
-                sketch.line([(load, foot - 1), (place, foot - 6), *rise], THIN)
-            x = place + 0.36 * SMALL if self.upright else place
-            anchor: Anchor = "left" if self.upright else "center"
-            sketch.label(Label(x, foot - lift, text, SMALL, anchor, turned=self.upright))
-        if self.note:
-            sketch.label(Label(3, foot - 5, self.note, SMALL, "left"))

@@ -13,6 +13,7 @@ from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.results.stress import StressResult
 from calcgen.evaluation.results.vary import VaryResult
 from calcgen.figures.adapt_beam import beam_drawings
+from calcgen.figures.adapt_influence import influence_drawings
 from calcgen.figures.adapt_section import section_drawing, title_of
 from calcgen.figures.adapt_shear import (
     flow_drawings,
@@ -26,7 +27,11 @@ from calcgen.figures.beam import compose_beam
 from calcgen.figures.conventions import ConventionDrawing, compose_conventions
 from calcgen.figures.field import compose_field
 from calcgen.figures.flow import compose_flow
+from calcgen.figures.influence import compose_influence
 from calcgen.figures.interaction import compose_interaction
+from calcgen.figures.map import compose_map
+from calcgen.figures.map_drawing import MapDrawing
+from calcgen.figures.map_sheets import MapSheet, sheets_of
 from calcgen.figures.picture import Picture
 from calcgen.figures.section import compose_section
 from calcgen.figures.shear import compose_shear
@@ -47,12 +52,13 @@ class Figure:
 
 @dataclass(frozen=True)
 class Drawn:
-    """A figure as SVG text, with its title and its description in words."""
+    """A figure as SVG text, with its title, its description in words, and what has no room in it."""
 
     title: str
     description: str
     wide: str
     narrow: str
+    listed: tuple[str, ...] = ()
 
 
 def illustrate(calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple[Figure, ...]]:
@@ -70,6 +76,9 @@ def illustrate(calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple
                 figures[segment.name] = tuple(
                     Figure(compose_beam(b, "wide"), compose_beam(b, "narrow"))
                     for b in beam_drawings(segment, ident, style)
+                ) + tuple(
+                    Figure(compose_influence(i, "wide"), compose_influence(i, "narrow"))
+                    for i in influence_drawings(segment, ident, style)
                 )
             case StressResult():
                 figures[segment.name] = tuple(_of_stress(segment, ident, axes, style))
@@ -129,6 +138,7 @@ class Studio:
     def __init__(self) -> None:
         self._composed: dict[str, tuple[EvaluatedCalc, Axes, Style, dict[str, tuple[Figure, ...]]]] = {}
         self._drawn: dict[Figure, Drawn] = {}
+        self._map: tuple[MapDrawing, dict[MapSheet, Drawn]] | None = None
 
     def draw(self, calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple[Drawn, ...]]:
         """Return the figures of a calc as SVG by the name of their block."""
@@ -138,11 +148,23 @@ class Studio:
             self._composed[calc.number] = kept
         return {name: tuple(self.draw_one(figure) for figure in row) for name, row in kept[3].items()}
 
+    def draw_map(self, drawing: MapDrawing) -> tuple[Drawn, ...]:
+        """Return the sheets of the map of which calc feeds which as SVG."""
+        if self._map is None or self._map[0] != drawing:
+            kept = self._map[1] if self._map is not None else {}
+            drawn = {sheet: kept.get(sheet) or self._sheet(sheet) for sheet in sheets_of(drawing)}
+            self._map = (drawing, drawn)
+        return tuple(self._map[1].values())
+
+    def _sheet(self, sheet: MapSheet) -> Drawn:
+        return self.draw_one(Figure(compose_map(sheet, "wide"), compose_map(sheet, "narrow")))
+
     def draw_one(self, figure: Figure) -> Drawn:
         """Return the SVG of a figure."""
         drawn = self._drawn.get(figure)
         if drawn is None:
             wide, narrow = render(figure.wide), render(figure.narrow)
-            drawn = Drawn(figure.wide.title, figure.wide.description, wide, narrow)
+            listed = figure.wide.listed or figure.narrow.listed
+            drawn = Drawn(figure.wide.title, figure.wide.description, wide, narrow, listed)
             self._drawn[figure] = drawn
         return drawn

@@ -36,6 +36,7 @@ def _advance(character: str, bold: bool) -> float:  # noqa: FBT001  the cache's 
     return float(font.load_glyph(index).linearHoriAdvance) / 65536 / 100 if index else 1.0
 
 
+@cache
 def text_width(text: str, size: float, *, bold: bool = False) -> float:
     """Width of `text` in pixels, set in DejaVu Sans without kerning."""
     return size * sum(_advance(character, bold) for character in text)
@@ -74,6 +75,10 @@ class Box:
     def moved(self, dx: float, dy: float) -> "Box":
         """Give the box shifted by (`dx`, `dy`)."""
         return Box(self.left + dx, self.top + dy, self.right + dx, self.bottom + dy)
+
+    def into(self, left: float, right: float) -> float:
+        """Give the shift sideways into [`left`, `right`], or to start at `left` if the box is too long."""
+        return max(min(0.0, right - self.right), left - self.left)
 
     def grown(self, by: float) -> "Box":
         """Give the box with a margin of `by` on every side."""

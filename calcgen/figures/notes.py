@@ -2,6 +2,7 @@
 
 from collections.abc import Iterator
 from dataclasses import dataclass, replace
+from functools import partial
 from math import inf
 
 import numpy as np
@@ -41,10 +42,10 @@ def draw_note(
     def open_to(elbow: Point) -> bool:
         return not any(box.crosses(np.array([point]), np.array([elbow])) for box in others)
 
-    places = list(_places(note, point, around))
-    found = next((p for p in places if obstacles.clear(p.label.box, 3.0) and open_to(p.elbow)), None)
+    places = partial(_places, note, point, around)  # most notes stand at one of the first
+    found = next((p for p in places() if obstacles.clear(p.label.box, 3.0) and open_to(p.elbow)), None)
     if found is None or found.reach > LONG:
-        inside = (p for p in places if obstacles.left <= p.elbow[0] <= obstacles.right)
+        inside = (p for p in places() if obstacles.left <= p.elbow[0] <= obstacles.right)
         aside = (replace(p, label=_aside(p, point, obstacles)) for p in inside)
         near = [p for p in aside if obstacles.clear(p.label.box, 2.0)]
         other = next((p for p in near if open_to(p.elbow)), None)
@@ -53,7 +54,9 @@ def draw_note(
         elif found is None and near:
             found = near[0]
     # a note wider than the frame goes beyond it; in a crowd without end the farthest place must do
-    found = found or next((p for p in places if obstacles.free(p.label.box, 3.0)), places[-1])
+    if found is None:
+        every = list(places())
+        found = next((p for p in every if obstacles.free(p.label.box, 3.0)), every[-1])
     sketch.line([point, found.elbow], THIN)
     obstacles.add_line([point, found.elbow])
     obstacles.boxes.append(sketch.label(found.label).box)

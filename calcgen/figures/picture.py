@@ -40,7 +40,10 @@ HAIR = Stroke("rule", 0.8)
 
 @dataclass(frozen=True)
 class Shape:
-    """One or more rings or polylines that share a stroke and a fill; rings fill by their winding."""
+    """One or more rings or polylines that share a stroke and a fill; rings fill by their winding.
+
+    `href` is where the shape leads, '' for nowhere.
+    """
 
     rings: tuple[tuple[Point, ...], ...]
     closed: bool
@@ -48,6 +51,7 @@ class Shape:
     fill: Colour | None = None
     opacity: float = 1.0
     clip: tuple[tuple[Point, ...], ...] = ()
+    href: str = ""
 
     @property
     def box(self) -> Box:
@@ -59,7 +63,10 @@ class Shape:
 
 @dataclass(frozen=True)
 class Label:
-    """A line of text at the baseline point (x, y); `turned` reads from the bottom to the top."""
+    """A line of text at the baseline point (x, y); `turned` reads from the bottom to the top.
+
+    `href` is where the text leads, '' for nowhere.
+    """
 
     x: float
     y: float
@@ -70,6 +77,7 @@ class Label:
     bold: bool = False
     turned: bool = False
     halo: bool = False
+    href: str = ""
 
     @property
     def box(self) -> Box:
@@ -87,8 +95,7 @@ class Label:
 
     def within(self, left: float, right: float) -> "Label":
         """Give the label shifted sideways into [`left`, `right`], or to start at `left` if it is too long."""
-        box = self.box
-        return self.moved(max(min(0.0, right - box.right), left - box.left), 0.0)
+        return self.moved(self.box.into(left, right), 0.0)
 
 
 Item = Shape | Label
@@ -96,13 +103,17 @@ Item = Shape | Label
 
 @dataclass(frozen=True)
 class Picture:
-    """A finished picture: `frame` is the part of the plane shown, `ident` prefixes the ids of its SVG."""
+    """A finished picture: `frame` is the part of the plane shown, `ident` prefixes the ids of its SVG.
+
+    `listed` is what belongs to the picture and has no room in it.
+    """
 
     ident: str
     title: str
     description: str
     frame: Box
     items: tuple[Item, ...]
+    listed: tuple[str, ...] = ()
 
 
 def label_boxes(picture: Picture) -> tuple[tuple[str, Box], ...]:
@@ -176,6 +187,10 @@ class Sketch:
         self.items.append(label)
         return label
 
+    def lead(self, first: int, href: str) -> None:
+        """Make a link of all that was drawn from the item `first` on."""
+        self.items[first:] = [replace(item, href=href) for item in self.items[first:]]
+
     def box(self) -> Box:
         """Give the smallest box around everything drawn."""
         return around(item.box for item in self.items)
@@ -193,7 +208,7 @@ class Sketch:
 def wrap(text: str, size: float, width: float) -> list[str]:
     """Break text into lines no wider than `width`, as far as its words allow."""
     lines: list[str] = []
-    for word in text.split():
+    for word in filter(None, text.split(" ")):  # a no-break space holds number and unit together
         longer = f"{lines[-1]} {word}" if lines else word
         if lines and text_width(longer, size) <= width:
             lines[-1] = longer
@@ -207,20 +222,18 @@ def thin(points: Points, tolerance: float = 0.1) -> NDArray[np.float64]:
     given = np.asarray(points, dtype=float)
     keep = np.zeros(len(given), dtype=bool)
     keep[[0, -1]] = True
-    spans = [(0, len(given) - 1)]
-    while spans:
-        first, last = spans.pop()
-        if last - first < 2:
-            continue
-        along, offsets = given[last] - given[first], given[first + 1 : last] - given[first]
-        length = float(np.hypot(*along))
-        apart = np.abs(along[0] * offsets[:, 1] - along[1] * offsets[:, 0]) / length if length else None
-        distances = np.hypot(*offsets.T) if apart is None else apart
-        farthest = int(np.argmax(distances)) + first + 1
-        if distances[farthest - first - 1] > tolerance:
-            keep[farthest] = True
-            spans += [(first, farthest), (farthest, last)]
-    return given[keep]
+    while True:  # all lines between points that are kept are halved at once
+        ends = np.flatnonzero(keep)
+        line = np.repeat(np.arange(len(ends) - 1), np.diff(ends))
+        (dx, dy), (x, y) = np.diff(given[ends], axis=0)[line].T, (given[:-1] - given[ends[line]]).T
+        length = np.hypot(dx, dy)
+        apart = np.abs(dx * y - dy * x) / np.where(length, length, 1.0)
+        apart = np.where(length, apart, np.hypot(x, y))
+        farthest = np.maximum.reduceat(apart, ends[:-1])[line]
+        found = np.flatnonzero((apart == farthest) & (farthest > tolerance))
+        if not len(found):
+            return given[keep]
+        keep[found[np.unique(line[found], return_index=True)[1]]] = True
 
 
 def arc(centre: Point, radius: float, start: float, sweep: float, steps: int = 24) -> tuple[Point, ...]:

@@ -1,8 +1,9 @@
 """Profiles over the depth: a zero line, a signed outline, and values that find clear places."""
 
-from collections.abc import Callable, Sequence
+from collections.abc import Callable, Iterable, Iterator, Sequence
 from dataclasses import dataclass
-from itertools import islice, pairwise
+from functools import cache
+from itertools import chain, filterfalse, islice, pairwise
 from math import hypot
 
 import numpy as np
@@ -16,6 +17,7 @@ CHOICES = 12  # clear places among which one is taken whose leader is clear as w
 STEPS = 400  # of three pixels, in search of a clear place for a value
 REACH = 100.0  # pixels from the zero line to the largest value, at most
 ASIDE = tuple(range(-104, 81, 8))  # pixels away from the profile that a value may move
+SIDEWAYS = (0.0, 6.0, -6.0, 12.0, -12.0, 18.0, -18.0)  # pixels to either side that a value over its tip may
 NEAR = 9.0  # pixels; a value moved farther than this has a leader
 ALIKE = 4.0  # ratio of bars' stress to the profile's up to which they share a scale
 
@@ -192,11 +194,8 @@ def _write_over(
     # a zero has no word, and stands where that would
     labels = [Label(x, value_at if mark.value else word_at, mark.label, colour=colour, bold=True)]
     labels += [Label(x, word_at, word_of(mark.value), SMALL, colour=colour)] if mark.value else []
-    steps = [(dx, 3.0 * n) for n in range(STEPS) for dx in (0.0, 6.0, -6.0, 12.0, -12.0, 18.0, -18.0)]
-    steps.sort(key=lambda step: abs(step[0]) + step[1])
-    moved = (_within([label.moved(dx, way * dy) for label in labels], slot, obstacles) for dx, dy in steps)
-    chosen = next(place for place in moved if obstacles.free(around(label.box for label in place), 1.0))
-    for label in chosen:
+    steps = ((dx, way * dy) for dx, dy in _steps_over())
+    for label in next(_free_places(labels, steps, slot, obstacles)):
         obstacles.boxes.append(sketch.label(label).box)
 
 
@@ -211,12 +210,14 @@ def write_beside(
 ) -> None:
     """Write a value beside its tip, or farther away at the end of a leader that crosses no label."""
     away = 1.0 if labels[0].anchor == "left" else -1.0
-    steps = [(dx, sign * 3.0 * n) for dx in ASIDE for n in range(STEPS) for sign in (way, -way)]
+    steps = [(away * dx, way * dy) for dx, dy in _steps_beside()]
+
+    def inside(step: Point) -> bool:
+        return ends[0] <= tip[1] + step[1] <= ends[1] - 6
+
     # a value of the inside is not to be read as one of the end fibres
-    steps.sort(key=lambda step: (not ends[0] <= tip[1] + step[1] <= ends[1] - 6, abs(step[1]) + abs(step[0])))
-    moved = (_within([label.moved(away * dx, dy) for label in labels], slot, obstacles) for dx, dy in steps)
-    free = (place for place in moved if obstacles.free(around(label.box for label in place), 1.0))
-    several = list(islice(free, CHOICES))
+    order = chain(filter(inside, steps), filterfalse(inside, steps))
+    several = list(islice(_free_places(labels, order, slot, obstacles), CHOICES))
     chosen = next((place for place in several if _open(_leader(place, tip), tip, obstacles)), several[0])
     leader = _leader(chosen, tip)
     if hypot(leader[1][0] - tip[0], leader[1][1] - tip[1]) > NEAR:
@@ -224,6 +225,22 @@ def write_beside(
         obstacles.add_line(leader)
     for label in chosen:
         obstacles.boxes.append(sketch.label(label).box)
+
+
+@cache
+def _steps_over() -> tuple[Point, ...]:
+    """Return the steps across and away from a value's place over its tip, nearest first."""
+    return _nearest_first((dx, 3.0 * n) for n in range(STEPS) for dx in SIDEWAYS)
+
+
+@cache
+def _steps_beside() -> tuple[Point, ...]:
+    """Return the steps across and away from a value's place beside its tip, nearest first."""
+    return _nearest_first((dx, sign * 3.0 * n) for dx in ASIDE for n in range(STEPS) for sign in (1, -1))
+
+
+def _nearest_first(steps: Iterable[Point]) -> tuple[Point, ...]:
+    return tuple(sorted(steps, key=lambda step: abs(step[0]) + abs(step[1])))
 
 
 def _leader(labels: Sequence[Label], tip: Point) -> tuple[Point, Point]:
@@ -250,11 +267,17 @@ def _value_and_word(mark: Mark, tip: Point, way: int, *, word: bool = True) -> l
     return [value, Label(x, value.y + 12.5 * way, word_of(mark.value), SMALL, anchor, colour)]
 
 
-def _within(labels: list[Label], slot: tuple[float, float], obstacles: Obstacles) -> list[Label]:
-    """Shift labels sideways into the slot as far as they fit, and into the frame."""
-    longest = max(labels, key=lambda label: label.box.right - label.box.left)
-    shift = longest.within(*slot).within(obstacles.left, obstacles.right).x - longest.x
-    return [label.moved(shift, 0.0) for label in labels]
+def _free_places(
+    labels: Sequence[Label], steps: Iterable[Point], slot: tuple[float, float], obstacles: Obstacles
+) -> Iterator[list[Label]]:
+    """Yield the labels moved by each step, and sideways into the slot and the frame, where they are free."""
+    boxes = [label.box for label in labels]
+    held, longest = around(boxes), max(boxes, key=lambda box: box.right - box.left)
+    for dx, dy in steps:
+        into_slot = dx + longest.moved(dx, 0.0).into(*slot)
+        across = into_slot + longest.moved(into_slot, 0.0).into(obstacles.left, obstacles.right)
+        if obstacles.free(held.moved(across, dy), 1.0):
+            yield [label.moved(across, dy) for label in labels]
 
 
 def word_of(value: float) -> Word:

@@ -1,24 +1,23 @@
 """Picture to SVG text: matplotlib draws, then ids are made the figure's own and colours CSS variables."""
 
 import re
-import warnings
-from collections.abc import Iterable
-from functools import cache
+from collections.abc import Iterable, Iterator, Sequence
 from html import escape
 from io import StringIO
+from itertools import groupby
+from math import ceil
+from operator import itemgetter
 from typing import TYPE_CHECKING
 from xml.etree import ElementTree as ET
 
 import numpy as np
 
-from calcgen.figures.labels import Point
-from calcgen.figures.picture import Colour, Label, Picture, Shape
+from calcgen.figures.labels import Box, Point
+from calcgen.figures.picture import Anchor, Colour, Label, Picture, Shape
 
 if TYPE_CHECKING:
-    from matplotlib.artist import Artist
     from matplotlib.backend_bases import RendererBase
     from matplotlib.path import Path
-    from matplotlib.text import Text
     from matplotlib.transforms import Transform
 
 # The colours on paper; a page overrides each through its CSS variable, on dark ground too.
@@ -45,143 +44,100 @@ FONT = "'Calcgen Sans', 'DejaVu Sans', sans-serif"
 _SVG = "{http://www.w3.org/2000/svg}"
 _VARIABLE = {value: f"var({VARIABLES[name]}, {value})" for name, value in COLOURS.items()}
 _COLOUR = re.compile("|".join(_VARIABLE))
-_FAMILY = re.compile(r"font-family: [^;]*; ")
 _SPACE = re.compile(r"\s*([MLz])\s*")
+_ANCHOR: dict[Anchor, str] = {"left": "start", "center": "middle", "right": "end"}
 _HALO = f"; paint-order: stroke; stroke: {COLOURS['paper']}; stroke-width: 3px"
 
 
 def render(picture: Picture) -> str:
-    """SVG text of `picture`, the same bytes each time, without an XML declaration, for use inside a page."""
-    from matplotlib import rc_context
-    from matplotlib.figure import Figure
+    """SVG text of `picture`, the same bytes each time, without an XML declaration, for use inside a page.
+
+    matplotlib's renderer is told the shapes directly: its figures and artists lay out and measure what has
+    its place already. A line of text is written as it stands, for the reader's browser to set.
+    """
+    from matplotlib.backends.backend_svg import RendererSVG
     from matplotlib.transforms import Affine2D
 
     frame = picture.frame
-    width, height = np.ceil(frame.right - frame.left), np.ceil(frame.bottom - frame.top)
+    width, height = ceil(frame.right - frame.left), ceil(frame.bottom - frame.top)
     to_paper = Affine2D().translate(-frame.left, -frame.top).scale(1, -1).translate(0, height)
     out = StringIO()
-    # rc_context puts the settings back, so nothing outside sees them; a missing glyph is the reader's to have
-    settings = rc_context(
-        {
-            "svg.fonttype": "none",
-            "svg.hashsalt": "calcgen",
-            "path.simplify": False,
-            "lines.scale_dashes": False,
-            "font.family": ["DejaVu Sans"],
-            "text.usetex": False,
-        }
-    )
-    with settings, warnings.catch_warnings():
-        warnings.filterwarnings("ignore", message="Glyph .* missing", category=UserWarning)
-        figure = Figure(figsize=(width / 72, height / 72), dpi=72)  # one point is one pixel
-        figure.patch.set_visible(False)
-        for order, item in enumerate(picture.items):
-            artist = _artist(item, to_paper)
-            artist.set_zorder(order)
-            figure.add_artist(artist)
-        figure.savefig(out, format="svg", metadata={"Date": None})
-    return _own(out.getvalue(), picture, float(width), float(height))
+    renderer = RendererSVG(width, height, out, metadata={"Date": None})  # type: ignore[no-untyped-call]
+    for item in picture.items:
+        if isinstance(item, Shape):
+            _draw(renderer, item, to_paper)
+    renderer.finalize()  # type: ignore[no-untyped-call]
+    return _own(out.getvalue(), picture, width, height)
 
 
-@cache
-def _line_type() -> "type[Text]":
-    """Return the artist of one line of text, without the layout of paragraphs, which takes most time."""
-    from matplotlib.text import Text
+def _draw(renderer: "RendererBase", shape: Shape, to_paper: "Transform") -> None:
+    from matplotlib.colors import to_rgba
+    from matplotlib.transforms import TransformedPath
 
-    class Line(Text):
-        def draw(self, renderer: "RendererBase") -> None:
-            gc = renderer.new_gc()
-            gc.set_foreground(self.get_color())
-            x, up = self.get_transform().transform(self.get_position())
-            y = renderer.get_canvas_width_height()[1] - up  # the renderer of SVG counts down
-            renderer.open_group("text", self.get_gid())
-            renderer.draw_text(
-                gc, x, y, self.get_text(), self.get_fontproperties(), self.get_rotation(), mtext=self
-            )
-            renderer.close_group("text")
-            gc.restore()
-
-    return Line
+    gc = renderer.new_gc()
+    if shape.opacity < 1:
+        gc.set_alpha(shape.opacity)
+    stroke = shape.stroke
+    gc.set_linewidth(stroke.weight if stroke else 0)
+    if stroke:
+        gc.set_foreground(COLOURS[stroke.colour])
+        gc.set_dashes(0, stroke.dash or None)
+    if shape.clip:
+        gc.set_clip_path(TransformedPath(_path(shape.clip, closed=True), to_paper))
+    face = to_rgba(COLOURS[shape.fill]) if shape.fill else None
+    renderer.draw_path(gc, _path(shape.rings, closed=shape.closed), to_paper, face)
 
 
-def _artist(item: Shape | Label, to_paper: "Transform") -> "Artist":
-    from matplotlib.patches import PathPatch
-
-    if isinstance(item, Label):
-        return _line_type()(
-            round(item.x, 2),
-            round(item.y, 2),
-            item.text,
-            color=COLOURS[item.colour],
-            fontsize=item.size,
-            fontweight="bold" if item.bold else "normal",
-            ha=item.anchor,
-            va="baseline",
-            rotation=90 if item.turned else 0,
-            rotation_mode="anchor",
-            parse_math=False,
-            transform=to_paper,
-            gid="halo" if item.halo else None,
-        )
-    stroke = item.stroke
-    patch = PathPatch(
-        _path(item.rings, closed=item.closed),
-        facecolor=COLOURS[item.fill] if item.fill else "none",
-        edgecolor=COLOURS[stroke.colour] if stroke else "none",
-        linewidth=stroke.weight if stroke else 0,
-        linestyle=(0, stroke.dash) if stroke and stroke.dash else "solid",
-        capstyle="butt",
-        joinstyle="round",
-        alpha=item.opacity if item.opacity < 1 else None,
-        transform=to_paper,
-    )
-    if item.clip:
-        patch.set_clip_path(_path(item.clip, closed=True), to_paper)
-    return patch
-
-
-def _path(rings: Iterable[tuple[Point, ...]], *, closed: bool) -> "Path":
+def _path(rings: Sequence[tuple[Point, ...]], *, closed: bool) -> "Path":
     from matplotlib.path import Path
 
-    vertices: list[Point] = []
-    codes: list[np.uint8] = []
-    for ring in rings:
-        points = [*ring, ring[0]] if closed else list(ring)
-        vertices += points
-        codes += [Path.MOVETO] + [Path.LINETO] * (len(points) - 1)
-        if closed:
-            codes[-1] = Path.CLOSEPOLY
-    return Path(np.round(vertices, 2), codes)
+    lines = [(*ring, ring[0]) for ring in rings] if closed else rings
+    ends = np.cumsum([len(line) for line in lines])
+    codes = np.full(ends[-1], Path.LINETO)
+    codes[[0, *ends[:-1]]] = Path.MOVETO
+    if closed:
+        codes[ends - 1] = Path.CLOSEPOLY
+    path = Path(np.round(np.concatenate(lines), 2), codes)
+    path.should_simplify = False
+    return path
 
 
 def _own(drawn: str, picture: Picture, width: float, height: float) -> str:
-    """Keep what matplotlib drew, and make ids, colours and type the page's."""
+    """Keep what matplotlib drew, add the lines of text, and make ids and colours the page's."""
     tree = ET.fromstring(drawn)  # noqa: S314  our own text of a moment ago
     ids: dict[str, str] = {}
     defined = []
     for clip in tree.iter(f"{_SVG}clipPath"):
         ids[clip.attrib["id"]] = own = f"{picture.ident}-clip-{len(ids) + 1}"
         defined.append(f'<clipPath id="{own}">{"".join(_path_text(path, ids) for path in clip)}</clipPath>')
-    shown = []
-    for group in tree.find(f"{_SVG}g") or ():
-        for element in group:
-            if element.tag == f"{_SVG}path":
-                shown.append(_path_text(element, ids))
-            elif element.tag == f"{_SVG}text":
-                shown.append(_label_text(element, halo=group.get("id") == "halo"))
+    paths = iter(tree.findall(f"{_SVG}path"))  # one for each shape, in their order
+    texts = (
+        _label_text(item, picture.frame) if isinstance(item, Label) else _path_text(next(paths), ids)
+        for item in picture.items
+    )
+    shown = [(item.href, text) for item, text in zip(picture.items, texts, strict=True)]
     ident = escape(picture.ident)
     return "\n".join(
         [
-            f'<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 {width:g} {height:g}" role="img"'
+            f'<svg xmlns="http://www.w3.org/2000/svg" viewBox="0 0 {width:g} {height:g}"'
+            # the parts of an image are not read out, nor its links followed
+            f' role="{"group" if any(href for href, _ in shown) else "img"}"'
             f' aria-labelledby="{ident}-title {ident}-desc"'
             f' style="max-width: {width:g}px; font-family: {FONT}; stroke-linejoin: round">',
             f'<title id="{ident}-title">{escape(picture.title)}</title>',
             f'<desc id="{ident}-desc">{escape(picture.description)}</desc>',
             *([f"<defs>{''.join(defined)}</defs>"] if defined else []),
-            *shown,
+            *_linked(shown),
             "</svg>\n",
         ]
     )
+
+
+def _linked(shown: Iterable[tuple[str, str]]) -> Iterator[str]:
+    """Yield elements; those one after the other that lead to one place share a link."""
+    for href, run in groupby(shown, key=itemgetter(0)):
+        texts = [text for _, text in run]
+        yield from [f'<a href="{escape(href)}">', *texts, "</a>"] if href else texts
 
 
 def _path_text(path: ET.Element, ids: dict[str, str]) -> str:
@@ -192,12 +148,17 @@ def _path_text(path: ET.Element, ids: dict[str, str]) -> str:
     return f'<path d="{outline}"{clip}{_style(style) if style else ""}/>'
 
 
-def _label_text(text: ET.Element, *, halo: bool) -> str:
-    style = _FAMILY.sub("", text.get("style", "")) + (_HALO if halo else "")
-    turn = text.get("transform", "")
-    turned = "" if turn.startswith("rotate(-0 ") else f' transform="{turn}"'
-    place = f'x="{text.get("x")}" y="{text.get("y")}"'
-    return f"<text {place}{turned}{_style(style)}>{escape(text.text or '')}</text>"
+def _label_text(label: Label, frame: Box) -> str:
+    x, y = _number(round(label.x, 2) - frame.left), _number(round(label.y, 2) - frame.top)
+    turned = f' transform="rotate(-90 {x} {y})"' if label.turned else ""
+    weight = "font-weight: 700; " if label.bold else ""
+    style = f"{weight}font-size: {_number(label.size)}px; text-anchor: {_ANCHOR[label.anchor]}"
+    style += f"; fill: {COLOURS[label.colour]}{_HALO if label.halo else ''}"
+    return f'<text x="{x}" y="{y}"{turned}{_style(style)}>{escape(label.text)}</text>'
+
+
+def _number(value: float) -> str:
+    return f"{value:f}".rstrip("0").rstrip(".")
 
 
 def _style(style: str) -> str:

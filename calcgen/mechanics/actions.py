@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
+from typing import Final
 
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import Load
@@ -80,24 +81,43 @@ class EffectRange:
 
 @dataclass(frozen=True)
 class Governs:
-    """A stretch of the envelope, from `start` to `end`, m, on which one arrangement gives the extreme."""
+    """A stretch of the envelope, from `start` to `end`, m, on which one arrangement gives the extreme.
+
+    `others`: combinations that give the same extreme all along it, in the order written.
+    """
 
     start: float
     end: float
     combination: str
+    patterns: tuple[Pattern, ...] = ()
+    others: tuple[str, ...] = ()
+
+
+@dataclass(frozen=True, eq=False)
+class Curve:
+    """Values (k,) of one state along the beam: a combination, its cases in patterns on these lengths."""
+
+    combination: str
     patterns: tuple[Pattern, ...]
+    values: FloatArray
 
 
 @dataclass(frozen=True, eq=False)
 class Band:
     """An envelope for drawing: smallest and largest value (k,) at places `x`, with both sides of nodes.
 
-    What governs is told apart at the places within elements; a stretch ends midway between two of them, or at
-    a node. The position of a train changes from place to place and is not told: ask `Effects.at`.
+    `governs_low`, `governs_high` follow one another along the beam (see `calcgen.mechanics.governing`). The
+    position of a train changes from place to place and is not told: ask `Effects.at`. `curves` are those of
+    the states between the edges, none where there are more than `FEW` of them or a train makes them endless.
     """
 
     x: FloatArray
     low: FloatArray
     high: FloatArray
-    governs_low: tuple[Governs, ...]
-    governs_high: tuple[Governs, ...]
+    governs_low: tuple[Governs, ...] = ()
+    governs_high: tuple[Governs, ...] = ()
+    curves: tuple[Curve, ...] = ()
+
+
+FEW: Final = 6
+"""States up to which a band has the curve of each."""

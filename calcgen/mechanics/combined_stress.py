@@ -143,12 +143,8 @@ def passed_alone(g: Graph, level: Cuts, upright: Cuts) -> BoolArray:
     """Return for each wall, (n,), whether the cut through its middle, the more across it, passes no other."""
     middle = g.nodes[g.start] + 0.5 * g.along
     upwards = np.abs(g.along[:, 1]) >= np.abs(g.along[:, 0])
-    return np.array(
-        [
-            len(level.material(y) if up else upright.material(x)) == 1
-            for (x, y), up in zip(middle.tolist(), upwards.tolist(), strict=True)
-        ]
-    )
+    across = zip(level.material(middle[:, 1]), upright.material(middle[:, 0]), upwards.tolist(), strict=True)
+    return np.array([len(passed if up else passed_upright) == 1 for passed, passed_upright, up in across])
 
 
 def wall_stations(
@@ -206,13 +202,14 @@ def _places(level: Cuts, upright: Cuts) -> tuple[FloatArray, FloatArray, FloatAr
     for cuts in (level, upright):
         values = cuts.profile.values
         extreme = cuts.profile.extreme
-        heights = [
-            *zip(values.level.tolist(), values.above.tolist(), strict=True),
-            (extreme.level, extreme.above),
-        ]
-        for height, above in heights:
-            side = 1.0 if above else -1.0
-            intervals = cuts.material(height, above=above)
+        heights, sides = np.append(values.level, extreme.level), np.append(values.above, extreme.above)
+        each = zip(
+            heights.tolist(),
+            np.where(sides, 1.0, -1.0).tolist(),
+            cuts.material(heights, above=sides),
+            strict=True,
+        )
+        for height, side, intervals in each:
             for index, first, last in intervals[:: 1 + len(intervals) // INTERVALS]:
                 for share, towards in ((0.0, 1.0), (0.5, 1.0), (1.0, -1.0)):
                     along = first + share * (last - first)
@@ -228,12 +225,14 @@ def _places(level: Cuts, upright: Cuts) -> tuple[FloatArray, FloatArray, FloatAr
 
 def _extent(cuts: Cuts, levels: FloatArray, inside: FloatArray, along: FloatArray) -> FloatArray:
     """Length of the material on the cut through each place, m, over all pieces that touch there."""
-    keys, where = np.unique(np.column_stack((levels, inside)), axis=0, return_inverse=True)
+    keys, where, count = np.unique(
+        np.column_stack((levels, inside)), axis=0, return_inverse=True, return_counts=True
+    )
+    of_cut = np.split(np.argsort(where.ravel(), kind="stable"), np.cumsum(count)[:-1])
     found = np.zeros(len(levels))
-    for i, (level, side) in enumerate(keys.tolist()):
-        intervals = sorted((first, last) for _, first, last in cuts.material(level, above=side > 0.0))
+    for at, intervals in zip(of_cut, cuts.material(keys[:, 0], above=keys[:, 1] > 0.0), strict=True):
         joined: list[list[float]] = []
-        for first, last in intervals:
+        for first, last in sorted((first, last) for _, first, last in intervals):
             if joined and first <= joined[-1][1] + TOUCHING * (last - joined[-1][0]):
                 joined[-1][1] = max(joined[-1][1], last)
             else:
@@ -241,7 +240,6 @@ def _extent(cuts: Cuts, levels: FloatArray, inside: FloatArray, along: FloatArra
         if not joined:
             continue
         starts, ends = np.array(joined).T
-        at = np.flatnonzero(where.ravel() == i)
         nearest = np.argmin(np.maximum(starts - along[at, None], along[at, None] - ends), axis=1)
         found[at] = (ends - starts)[nearest]
     return found

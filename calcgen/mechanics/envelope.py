@@ -7,23 +7,26 @@ linearly with the number of combinations, and with that of spans where no case v
 
 Extremes along the beam are exact too. Without trains the envelope is piecewise polynomial, with breaks where
 the share of a span changes its sign, and its stationary points are roots. With trains it is exact at any
-place, and its peaks are closed in on from a division of each element into `DIVISIONS`.
+place, and where it is largest is found by bounds of what may be reached on a stretch: no place is left out
+that could exceed the value given.
 """
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-from dataclasses import dataclass, replace
+from collections.abc import Collection, Iterator, Sequence
+from dataclasses import dataclass, field, replace
 from functools import cached_property
-from itertools import pairwise
-from typing import Final
+from itertools import pairwise, product
 
 import numpy as np
 
+from calcgen.mechanics.acting import Acting, Shares
 from calcgen.mechanics.actions import (
+    FEW,
     Actions,
     Band,
     Combination,
+    Curve,
     Effect,
     EffectRange,
     Governs,
@@ -31,17 +34,15 @@ from calcgen.mechanics.actions import (
     Placed,
 )
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.beam import PARTS, BeamModel, CaseSolution, Load, Quantity, piecewise, scaled, solve
+from calcgen.mechanics.beam import BeamModel, Load, Quantity, scaled
 from calcgen.mechanics.beam.mesh import nearest
 from calcgen.mechanics.beam.results import TIE
 from calcgen.mechanics.combinations import ReactionPart
-from calcgen.mechanics.influence import BoolArray, influence, quantity_index, reaction_index
-from calcgen.mechanics.moving_loads import Crossing, Reach
-from calcgen.mechanics.patterns import by_length, loaded_lengths
-from calcgen.mechanics.peaks import Places, closed_in, divided, stationary
-
-DIVISIONS: Final = 12
-"""Parts of an element between which the peaks of an envelope with trains are looked for."""
+from calcgen.mechanics.governing import State, stretches
+from calcgen.mechanics.influence import BoolArray, IntArray
+from calcgen.mechanics.patterns import loaded_lengths
+from calcgen.mechanics.peaks import Places, divided, stationary
+from calcgen.mechanics.search import Curves, highest
 
 
 def effects(
@@ -49,60 +50,75 @@ def effects(
     actions: Actions,
     combinations: Sequence[Combination],
     lengths: Sequence[tuple[float, float]] | None = None,
+    cuts: Sequence[float] = (),
 ) -> Effects:
-    """Give the extreme effects of combinations; patterns load each span and overhang by default."""
-    return Effects(model, actions, tuple(combinations), tuple(lengths or loaded_lengths(model)))
+    """Give the extreme effects of combinations; patterns load each span and overhang by default.
+
+    Between places of `cuts`, m, extremes are found together when the first of them is asked for.
+    """
+    acting = Acting(model, actions, tuple(lengths or loaded_lengths(model)))
+    inner = [x for x in sorted(cuts) if model.tolerance < x < model.length - model.tolerance]
+    apart = [x for x, before in zip(inner, [0.0, *inner], strict=False) if x - before > model.tolerance]
+    return Effects(acting, tuple(combinations), tuple(combinations), (0.0, *apart, model.length))
 
 
 @dataclass(frozen=True, eq=False)
 class Effects:
     """Extreme effects of a group of combinations on a beam; of equal ones the first combination governs.
 
-    `lengths`: start and end, m, of each length that a pattern may load.
+    `siblings` are all combinations whose extremes are found together. `cuts`: places, m, from the start of
+    the beam to its end, between which extremes are found together.
 
     Raises
     ------
-    UnstableBeam
-        Where the supports and hinges leave a motion free.
     KeyError
         For a case that is not among the actions.
     ValueError
-        Where there is no combination, and for actions that the beam cannot carry.
+        Where there is no combination.
     """
 
-    model: BeamModel
-    actions: Actions
+    acting: Acting
     combinations: tuple[Combination, ...]
-    lengths: tuple[tuple[float, float], ...]
+    siblings: tuple[Combination, ...]
+    cuts: tuple[float, ...]
+    _found: dict[Quantity, list[dict[str, EffectRange]]] = field(default_factory=dict)
 
     def __post_init__(self) -> None:
         if not self.combinations:
             raise ValueError("an envelope needs at least one combination")
-        named = {name for combination in self.combinations for name in combination.factors}
+        named = {name for combination in self.siblings for name in combination.factors}
         for name in sorted(named - {*self.actions.cases, *self.actions.trains}):
             raise KeyError(name)
-        for name in sorted(self.actions.patterned - {*self.actions.cases}):
-            raise KeyError(name)
-        _ = self._solutions, self._crossings  # what the beam cannot carry is said at once
+
+    def only(self, names: Collection[str]) -> Effects:
+        """Give the effects of some of the combinations; what is found for one serves the others."""
+        return replace(self, combinations=tuple(c for c in self.siblings if c.name in names))
+
+    @property
+    def model(self) -> BeamModel:
+        """The beam."""
+        return self.acting.model
+
+    @property
+    def actions(self) -> Actions:
+        """What acts on it."""
+        return self.acting.actions
+
+    @property
+    def lengths(self) -> tuple[tuple[float, float], ...]:
+        """Start and end, m, of each length that a pattern may load."""
+        return self.acting.lengths
 
     def at(self, quantity: Quantity, x: float) -> EffectRange:
         """Give the extremes of a quantity at one place, on both sides of it."""
-        near = float(self._nodes[nearest(self._nodes, x)])
+        near = float(self.acting.nodes[nearest(self.acting.nodes, x)])
         place = near if self.model.same(x, near) else x
-        shares = self._shares(quantity, np.array([place, place]), np.array([False, True]))
+        shares = self.acting.shares(quantity, np.array([place, place]), np.array([False, True]))
         return EffectRange(self._governing(shares, low=False), self._governing(shares, low=True))
 
     def reaction(self, support: int, part: ReactionPart = "force") -> EffectRange:
         """Give the extremes of one part of a support's reaction; supports count from 0, from the left."""
-        plane, which = reaction_index(part)
-        self._require(plane)
-        values = np.array([solution.support_forces[support, plane, which] for solution in self._solutions])
-        row = PARTS.index("M" if which else "V")
-        noise = np.array([solution.noise[row, plane] for solution in self._solutions])
-        values = np.where(np.abs(values) <= noise, 0.0, values)
-        reaches = tuple(crossing.reaction_reach(support, part) for _, _, crossing in self._crossings)
-        place = np.array([self.model.supports[support].x])
-        shares = self._split(place, np.array([False]), values[:, None], reaches)
+        shares = self.acting.reaction_shares(support, part)
         return EffectRange(self._governing(shares, low=False), self._governing(shares, low=True))
 
     def extremes(
@@ -115,20 +131,32 @@ class Effects:
         ValueError
             For a range without length, outside the beam, and a lateral quantity without lateral stiffness.
         """
-        joints = self._joints(0.0 if start is None else start, self.model.length if end is None else end)
-        x, right = divided(joints[:-1], joints[1:], DIVISIONS if self._moving.any() else 2)
-        seeds = self._shares(quantity, x.ravel(), right.ravel())
-        high, low = (self._extreme(quantity, joints, seeds, low=low) for low in (False, True))
-        return EffectRange(high, low)
+        ends = 0.0 if start is None else start, self.model.length if end is None else end
+        numbers = [
+            next((i for i, cut in enumerate(self.cuts) if self.model.same(x, cut)), None) for x in ends
+        ]
+        first, last = numbers
+        if first is None or last is None or first >= last:
+            ranges = self._whole._find(quantity, ends)
+        else:
+            if quantity not in self._found:
+                self._found[quantity] = self._whole._find(quantity, self.cuts)
+            ranges = self._found[quantity][first:last]
+        of_each = [[found[c.name] for found in ranges] for c in self.combinations]
+        return EffectRange(
+            _first([_first([e.max for e in each], 1.0) for each in of_each], 1.0),
+            _first([_first([e.min for e in each], -1.0) for each in of_each], -1.0),
+        )
 
     def band(self, quantity: Quantity, points_per_element: int = 20) -> Band:
         """Give the envelope of a quantity for drawing, with at least two points an element."""
-        joints = self._joints(0.0, self.model.length)
+        joints = self._joints((0.0, self.model.length))
         x, right = divided(joints[:-1], joints[1:], points_per_element)
-        shares = self._shares(quantity, x.ravel(), right.ravel())
+        shares = self.acting.shares(quantity, x.ravel(), right.ravel())
         high, low = self._sums(shares, low=False), self._sums(shares, low=True)
-        governs = self._stretches(shares, joints, low=True), self._stretches(shares, joints, low=False)
-        return Band(shares.x, low.min(axis=0), high.max(axis=0), *governs)
+        governs = [self._stretches(shares, joints, sums, low=sums is low) for sums in (low, high)]
+        curves = tuple(self._curves(shares, [*governs[0], *governs[1]]))
+        return Band(shares.x, low.min(axis=0), high.max(axis=0), governs[0], governs[1], curves)
 
     def loads(self, effect: Effect) -> tuple[Load, ...]:
         """Give the loads that cause an effect: those of its combination, in its arrangement, factored."""
@@ -138,75 +166,12 @@ class Effects:
             if name not in self.actions.patterned:
                 found += [scaled(load, factor) for load in self.actions.cases.get(name, ())]
         for pattern in effect.patterns:
-            parts = self._by_length[pattern.case]
+            parts = self.acting.by_length[pattern.case]
             found += [scaled(load, factors[pattern.case]) for i in pattern.lengths for load in parts[i]]
         for placed in effect.trains:
             train = self.actions.trains[placed.case][placed.train]
             found += [scaled(load, factors[placed.case]) for load in placed.position.loads(train, self.model)]
         return tuple(found)
-
-    # What is solved once.
-
-    @cached_property
-    def _fixed(self) -> tuple[str, ...]:
-        return tuple(name for name in self.actions.cases if name not in self.actions.patterned)
-
-    @cached_property
-    def _by_length(self) -> dict[str, tuple[tuple[Load, ...], ...]]:
-        """Loads on each length, of each case in patterns."""
-        return {
-            name: by_length(loads, self.lengths)
-            for name, loads in self.actions.cases.items()
-            if name in self.actions.patterned
-        }
-
-    @cached_property
-    def _parts(self) -> tuple[tuple[str, int], ...]:
-        """Case and length of each part that may act or not."""
-        return tuple(
-            (name, number)
-            for name, parts in self._by_length.items()
-            for number, loads in enumerate(parts)
-            if loads
-        )
-
-    @cached_property
-    def _solutions(self) -> tuple[CaseSolution, ...]:
-        """The beam under each fixed case and under each part, on one mesh."""
-        loads = [self.actions.cases[name] for name in self._fixed]
-        loads += [self._by_length[name][number] for name, number in self._parts]
-        return tuple(solve(self.model, {str(i): each for i, each in enumerate(loads)}).values())
-
-    @cached_property
-    def _pieces(self) -> FloatArray:
-        """Coefficients of all solutions, (s, n, parts, p, 6)."""
-        shape = (0, 1, len(PARTS), len(self.model.planes), piecewise.DEGREE + 1)
-        return (
-            np.array([solution.pieces for solution in self._solutions])
-            if self._solutions
-            else np.zeros(shape)
-        )
-
-    @cached_property
-    def _nodes(self) -> FloatArray:
-        return self._solutions[0].nodes if self._solutions else np.array([0.0, self.model.length])
-
-    @cached_property
-    def _crossings(self) -> tuple[tuple[str, int, Crossing], ...]:
-        """Case, number in it and crossing of each train."""
-        trains = [
-            (name, i, train) for name, each in self.actions.trains.items() for i, train in enumerate(each)
-        ]
-        if not trains:
-            return ()
-        lateral = any(train.lateral != 0.0 for _, _, train in trains)
-        lines = influence(self.model, ("vertical", "lateral") if lateral else ("vertical",))
-        return tuple((name, number, Crossing(lines, train)) for name, number, train in trains)
-
-    @cached_property
-    def _varying(self) -> tuple[str, ...]:
-        """Case of each action that varies: the cases in patterns, then the trains."""
-        return (*self._by_length, *(name for name, _, _ in self._crossings))
 
     @cached_property
     def _factors(self) -> tuple[FloatArray, FloatArray]:
@@ -215,54 +180,18 @@ class Effects:
             np.array([[c.factors.get(name, 0.0) for name in names] for c in self.combinations]).reshape(
                 len(self.combinations), len(names)
             )
-            for names in (self._fixed, self._varying)
+            for names in (self.acting.fixed, self.acting.varying)
         )
         return fixed, varying
 
     @cached_property
-    def _member(self) -> FloatArray:
-        """1 where a part belongs to a case in patterns, else 0: (cases, j)."""
-        rows = [[float(name == case) for name, _ in self._parts] for case in self._by_length]
-        return np.array(rows).reshape(len(self._by_length), len(self._parts))
-
-    @cached_property
     def _moving(self) -> BoolArray:
         """Which combinations take a train, (c,)."""
-        return np.asarray(np.any(self._factors[1][:, len(self._by_length) :] != 0.0, axis=1))
+        return np.asarray(np.any(self._factors[1][:, len(self.acting.by_length) :] != 0.0, axis=1))
 
     # Sums at places.
 
-    def _require(self, plane: int) -> None:
-        if plane >= len(self.model.planes):
-            raise ValueError("the bending stiffness about the vertical axis is not known: no lateral results")
-
-    def _of(self, quantity: Quantity) -> tuple[FloatArray, FloatArray]:
-        """Coefficients (s, n, 6) of a quantity in each solution, and the size of its rounding error (s,)."""
-        name, plane = quantity_index(quantity)
-        self._require(plane)
-        part = PARTS.index(name)
-        return self._pieces[:, :, part, plane], np.array([s.noise[part, plane] for s in self._solutions])
-
-    def _shares(self, quantity: Quantity, x: FloatArray, right: BoolArray) -> _Shares:
-        pieces, noise = self._of(quantity)
-        left, behind = (np.searchsorted(self._nodes, x, side=side) for side in ("left", "right"))
-        element = np.clip(np.where(right, behind, left) - 1, 0, len(self._nodes) - 2)
-        t = (x - self._nodes[element]) / np.diff(self._nodes)[element]
-        values = piecewise.values(pieces[:, element], t)
-        values = np.where(np.abs(values) <= noise[:, None], 0.0, values)
-        reaches = tuple(crossing.reach(quantity, x, right=right) for _, _, crossing in self._crossings)
-        return self._split(x, right, values, reaches)
-
-    def _split(
-        self, x: FloatArray, right: BoolArray, values: FloatArray, reaches: tuple[Reach, ...]
-    ) -> _Shares:
-        values = values.reshape(-1, len(x))
-        fixed, parts = values[: len(self._fixed)], values[len(self._fixed) :]
-        high = np.concatenate([self._member @ np.maximum(parts, 0.0), *(each.high[None] for each in reaches)])
-        low = np.concatenate([self._member @ np.minimum(parts, 0.0), *(each.low[None] for each in reaches)])
-        return _Shares(x, right, fixed, parts, reaches, high, low)
-
-    def _sums(self, shares: _Shares, *, low: bool) -> FloatArray:
+    def _sums(self, shares: Shares, *, low: bool) -> FloatArray:
         """Smallest, or largest, value of each combination at each place, (c, k)."""
         fixed, varying = self._factors
         adding, opposing = (shares.low, shares.high) if low else (shares.high, shares.low)
@@ -272,22 +201,25 @@ class Effects:
 
     # What governs.
 
-    def _governing(self, shares: _Shares, *, low: bool) -> Effect:
+    def _governing(self, shares: Shares, *, low: bool) -> Effect:
         """Give the extreme over combinations and places; of equal ones the first combination, then place."""
         sums = self._sums(shares, low=low)
         signed = -sums if low else sums
         best = float(signed.max())
         number = int(np.argmax(signed >= best - TIE * abs(best)))
-        combination, place = divmod(number, sums.shape[1])
+        return self._effect(shares, *divmod(number, sums.shape[1]), low=low)
+
+    def _effect(self, shares: Shares, combination: int, place: int, *, low: bool) -> Effect:
+        """Give the extreme of one combination at one of the places, and what causes it."""
         factors = self.combinations[combination].factors
         trains: list[Placed] = []
-        for reach, (name, train, _) in zip(shares.reaches, self._crossings, strict=True):
+        for reach, (name, train, _) in zip(shares.reaches, self.acting.crossings, strict=False):
             factor = factors.get(name, 0.0)
             position = reach.position(place, low=low == (factor > 0.0))
             if factor != 0.0 and position is not None:
                 trains.append(Placed(name, train, position))
         return Effect(
-            float(sums[combination, place]),
+            float(self._sums(shares.at(place), low=low)[combination, 0]),
             float(shares.x[place]),
             "right" if shares.right[place] else "left",
             self.combinations[combination].name,
@@ -298,121 +230,201 @@ class Effects:
     def _loaded(self, parts: FloatArray, combination: int, *, low: bool) -> tuple[Pattern, ...]:
         """Give the lengths whose shares (j,) add to the extreme of a combination."""
         found: list[Pattern] = []
-        for name in self._by_length:
+        for name in self.acting.by_length:
             factor = self.combinations[combination].factors.get(name, 0.0)
             wanted = parts * (-factor if low else factor) > 0.0
             numbers = [
                 number
-                for acts, (case, number) in zip(wanted, self._parts, strict=True)
+                for acts, (case, number) in zip(wanted, self.acting.parts, strict=True)
                 if acts and case == name
             ]
             if factor != 0.0:
                 found.append(Pattern(name, tuple(numbers)))
         return tuple(found)
 
-    def _stretches(self, shares: _Shares, joints: FloatArray, *, low: bool) -> tuple[Governs, ...]:
-        """Tell what governs between the joints, by the places inside: at a joint an effect may be 0."""
-        sums = self._sums(shares, low=low)
+    def _stretches(
+        self, shares: Shares, joints: FloatArray, sums: FloatArray, *, low: bool
+    ) -> tuple[Governs, ...]:
+        """Tell what governs along the beam; neighbours that differ in what does not act are one stretch."""
         signed = -sums if low else sums
-        best = signed.max(axis=0)
-        shape = len(joints) - 1, -1
-        inner = np.arange(len(shares.x)).reshape(shape)[:, 1:-1]
-        x = shares.x[inner]
-        edges = np.concatenate([joints[:-1, None], (x[:, :-1] + x[:, 1:]) / 2], axis=1).ravel().tolist()
-        governing = np.argmax(signed >= best - TIE * np.abs(best), axis=0)[inner.ravel()]
-        signs = np.sign(shares.parts[:, inner.ravel()])
-        changes = np.any(np.diff(signs, axis=1) != 0.0, axis=0) | (np.diff(governing) != 0)
-        firsts = [0, *(np.flatnonzero(changes) + 1).tolist()]
         found: list[Governs] = []
-        for first, last in pairwise([*firsts, len(edges)]):
-            number = int(governing[first])
-            what = self.combinations[number].name, self._loaded(signs[:, first], number, low=low)
-            end = edges[last] if last < len(edges) else float(joints[-1])
-            if found and (found[-1].combination, found[-1].patterns) == what:
-                found[-1] = replace(found[-1], end=end)
+        for g in stretches(
+            shares.x,
+            len(joints) - 1,
+            signed,
+            np.sign(shares.parts),
+            TIE * float(np.abs(signed).max()),
+            lambda state, where: self._state(shares, state, where, low=low) * (-1.0 if low else 1.0),
+        ):
+            number, signs = g.state
+            what = Governs(
+                g.start,
+                g.end,
+                self.combinations[number].name,
+                self._loaded(signs, number, low=low),
+                tuple(self.combinations[i].name for i in g.equal),
+            )
+            if found and replace(found[-1], start=g.start, end=g.end) == what:
+                found[-1] = replace(found[-1], end=g.end)
             else:
-                found.append(Governs(edges[first], end, *what))
+                found.append(what)
         return tuple(found)
+
+    def _state(self, shares: Shares, state: State, where: slice, *, low: bool) -> FloatArray:
+        """Give the extreme of one combination at some of the places, its parts acting as their signs tell."""
+        number, signs = state
+        factors = self._factors[1][number, : len(self.acting.by_length)] @ self.acting.member
+        acts = factors * signs < 0.0 if low else factors * signs > 0.0
+        return self._sum(shares, number, acts, where, low=low)
+
+    def _sum(self, shares: Shares, number: int, acts: BoolArray, where: slice, *, low: bool) -> FloatArray:
+        """Give the sum of a combination with those parts (j,) that act and the extreme of its trains."""
+        count = len(self.acting.by_length)
+        fixed, varying = (factors[number] for factors in self._factors)
+        factors = np.where(acts, varying[:count] @ self.acting.member, 0.0)
+        adding, opposing = (shares.low, shares.high) if low else (shares.high, shares.low)
+        return np.asarray(
+            fixed @ shares.fixed[:, where]
+            + factors @ shares.parts[:, where]
+            + np.maximum(varying[count:], 0.0) @ adding[count:, where]
+            + np.minimum(varying[count:], 0.0) @ opposing[count:, where]
+        )
+
+    def _curves(self, shares: Shares, governs: Sequence[Governs]) -> Iterator[Curve]:
+        """Give the curve of each state that governs somewhere, where they are few and no train moves."""
+        states = dict.fromkeys((g.combination, g.patterns) for g in governs)
+        if len(states) > FEW or self._moving.any():
+            return
+        names = [c.name for c in self.combinations]
+        for name, patterns in states:
+            loaded = {(pattern.case, length) for pattern in patterns for length in pattern.lengths}
+            acts = np.array([part in loaded for part in self.acting.parts], dtype=bool)
+            yield Curve(name, patterns, self._sum(shares, names.index(name), acts, slice(None), low=False))
 
     # Extremes along the beam.
 
-    def _joints(self, start: float, end: float) -> FloatArray:
-        """Places from `start` to `end` between which the effects run smoothly."""
+    @property
+    def _whole(self) -> Effects:
+        return replace(self, combinations=self.siblings)
+
+    def _joints(self, cuts: Sequence[float]) -> FloatArray:
+        """Places from the first to the last of `cuts`, them too, between which effects run smoothly."""
         tolerance = self.model.tolerance
-        if end - start <= tolerance:
+        if min(b - a for a, b in pairwise(cuts)) <= tolerance:
             raise ValueError("a range needs a length")
-        if start < -tolerance or end > self.model.length + tolerance:
+        if cuts[0] < -tolerance or cuts[-1] > self.model.length + tolerance:
             raise ValueError("the place lies outside the beam")
-        nodes = [self._nodes, *(crossing.influence.nodes for _, _, crossing in self._crossings)]
+        nodes = [self.acting.nodes, *(crossing.influence.nodes for _, _, crossing in self.acting.crossings)]
         found = np.unique(np.concatenate(nodes))
-        inner = found[(found > start + tolerance) & (found < end - tolerance)]
-        return np.array([start, *inner[np.diff(inner, prepend=-np.inf) > tolerance], end])
+        inner = found[(found > cuts[0] + tolerance) & (found < cuts[-1] - tolerance)]
+        inner = inner[np.diff(inner, prepend=-np.inf) > tolerance]
+        between = np.abs(inner - np.array(cuts)[nearest(np.array(cuts), inner)]) > tolerance
+        return np.sort(np.concatenate([cuts, inner[between]]))
 
-    def _extreme(self, quantity: Quantity, joints: FloatArray, seeds: _Shares, *, low: bool) -> Effect:
-        places: Places = []
+    def _find(self, quantity: Quantity, cuts: Sequence[float]) -> list[dict[str, EffectRange]]:
+        """Give the extremes of each combination in each range between two cuts."""
+        joints = self._joints(cuts)
+        range_of = np.searchsorted(cuts, (joints[:-1] + joints[1:]) / 2) - 1
+        found: list[dict[tuple[int, bool], Effect]] = [{} for _ in cuts[1:]]
         if self._moving.any():
-            places += self._peaks(quantity, joints, seeds, low=low)
+            self._by_bounds(quantity, joints, range_of, found)
         if not self._moving.all():
-            places += self._stationary(quantity, joints, seeds, low=low)
-        x, right = (np.array(each) for each in zip(*places, strict=True))
-        # As close to a joint as this, a place is the joint itself, on the side from which it was reached.
-        near = joints[nearest(joints, x)]
-        close = np.abs(x - near) <= 2.0 * self.model.tolerance
-        right = np.where(close & (x != near), x > near, right)
-        x = np.where(close, near, x)
-        return self._governing(self._shares(quantity, x, right), low=low)
+            self._by_roots(quantity, joints, range_of, found)
+        return [
+            {c.name: EffectRange(each[i, False], each[i, True]) for i, c in enumerate(self.combinations)}
+            for each in found
+        ]
 
-    def _stationary(self, quantity: Quantity, joints: FloatArray, seeds: _Shares, *, low: bool) -> Places:
-        """Give places among which the extreme of combinations without trains lies: nodes and roots."""
-        pieces, noise = self._of(quantity)
-        sign = -1.0 if low else 1.0
-        fixed, varying = (factors[~self._moving] for factors in self._factors)
-        count = len(self._fixed)
+    def _by_roots(
+        self,
+        quantity: Quantity,
+        joints: FloatArray,
+        range_of: IntArray,
+        found: list[dict[tuple[int, bool], Effect]],
+    ) -> None:
+        """Find the extremes of the combinations without trains: they lie at joints and roots."""
+        pieces, noise = self.acting.of(quantity)
+        fixed, varying = self._factors
+        count, nodes = len(self.acting.fixed), self.acting.nodes
         shares = pieces[count:].copy()
         shares[np.abs(shares).max(axis=2) <= noise[count:, None]] = 0.0
-        values = sign * self._sums(seeds, low=low)[~self._moving]
+        own = np.tensordot(fixed, pieces[:count], axes=1)
+        parts = varying[:, : len(self.acting.by_length)] @ self.acting.member
+        ends, sides = divided(joints[:-1], joints[1:], 1)
+        x, right = ends.ravel(), sides.ravel()
+        seeds = self.acting.shares(quantity, x, right, trains=False)
+        h = np.diff(nodes)
+        for number, low in product(range(len(found)), (False, True)):
+            here = np.flatnonzero(range_of == number)
+            start, end = (
+                np.clip((joint - nodes[:-1]) / h, 0.0, 1.0)
+                for joint in (joints[here[0]], joints[here[-1] + 1])
+            )
+            at = slice(2 * here[0], 2 * here[-1] + 2)
+            sign = -1.0 if low else 1.0
+            values = sign * self._sums(seeds, low=low)[:, at]
+            for c in np.flatnonzero(~self._moving).tolist():
+                best = float(values[c].max())
+                equal = values[c] >= best - TIE * abs(best)
+                turns = stationary(sign * own[c, None], sign * parts[c, None], shares, start, end, best)
+                places = [
+                    *zip(x[at][equal].tolist(), right[at][equal].tolist(), strict=True),
+                    *((float(nodes[element] + h[element] * t), True) for element, t in turns),
+                ]
+                found[number][c, low] = self._best_of(quantity, joints, places, c, low=low)
+
+    def _by_bounds(
+        self,
+        quantity: Quantity,
+        joints: FloatArray,
+        range_of: IntArray,
+        found: list[dict[tuple[int, bool], Effect]],
+    ) -> None:
+        """Find the extremes of the combinations with trains."""
+        moving = np.flatnonzero(self._moving)
+
+        def both(shares: Shares) -> FloatArray:
+            high, low = (self._sums(shares, low=low)[moving] for low in (False, True))
+            return np.concatenate([high, -low])
+
+        def bounds(start: FloatArray, length: FloatArray) -> FloatArray:
+            controls = both(self.acting.control_shares(quantity, start, length))
+            return np.asarray(controls.reshape(len(controls), len(start), -1).max(axis=2))
+
+        noise = sum(
+            np.abs(factors[moving]) @ each
+            for factors, each in zip(self._factors, self.acting.noise(quantity), strict=True)
+        )
+        curves = Curves(
+            joints,
+            lambda x, right: both(self.acting.shares(quantity, x, right)),
+            bounds,
+            np.tile(noise, 2),
+        )
+        x, right = self._snapped(joints, *highest(curves, range_of))
+        shares = self.acting.shares(quantity, x.ravel(), right.ravel())
+        for curve, number in np.ndindex(x.shape):
+            c, low = int(moving[curve % len(moving)]), curve >= len(moving)
+            place = curve * x.shape[1] + number
+            found[number][c, low] = self._effect(shares, c, place, low=low)
+
+    def _best_of(
+        self, quantity: Quantity, joints: FloatArray, places: Places, combination: int, *, low: bool
+    ) -> Effect:
+        """Give the extreme of a combination without trains among places; of equal ones the first."""
+        x, right = (np.array(each) for each in zip(*places, strict=True))
+        shares = self.acting.shares(quantity, *self._snapped(joints, x, right), trains=False)
+        values = self._sums(shares, low=low)[combination] * (-1.0 if low else 1.0)
         best = float(values.max())
-        equal = np.any(values >= best - TIE * abs(best), axis=0)
-        h = np.diff(self._nodes)
-        found = stationary(
-            sign * np.tensordot(fixed, pieces[:count], axes=1),
-            sign * varying[:, : len(self._by_length)] @ self._member,
-            shares,
-            np.clip((joints[0] - self._nodes[:-1]) / h, 0.0, 1.0),
-            np.clip((joints[-1] - self._nodes[:-1]) / h, 0.0, 1.0),
-            best,
-        )
-        ends = zip(seeds.x[equal].tolist(), seeds.right[equal].tolist(), strict=True)
-        return [*ends, *((float(self._nodes[element] + h[element] * t), True) for element, t in found)]
+        return self._effect(shares, combination, int(np.argmax(values >= best - TIE * abs(best))), low=low)
 
-    def _peaks(self, quantity: Quantity, joints: FloatArray, seeds: _Shares, *, low: bool) -> Places:
-        """Give places among which the extreme of combinations with trains lies: peaks of the envelope."""
-
-        def height(shares: _Shares) -> FloatArray:
-            sums = self._sums(shares, low=low)[self._moving]
-            return np.asarray((-sums if low else sums).max(axis=0))
-
-        shape = len(joints) - 1, DIVISIONS + 1
-        return closed_in(
-            lambda x, right: height(self._shares(quantity, x, right)),
-            seeds.x.reshape(shape),
-            seeds.right.reshape(shape),
-            height(seeds).reshape(shape),
-        )
+    def _snapped(self, joints: FloatArray, x: FloatArray, right: BoolArray) -> tuple[FloatArray, BoolArray]:
+        """Take a place that is next to a joint for the joint, on the side from which it was reached."""
+        near = joints[nearest(joints, x)]
+        close = np.abs(x - near) <= 2.0 * self.model.tolerance
+        return np.where(close, near, x), np.where(close & (x != near), x > near, right)
 
 
-@dataclass(frozen=True, eq=False)
-class _Shares:
-    """Shares of the actions in an effect at k places `x`, on the right of each where `right` says so.
-
-    Of the fixed cases (f, k), of each part of a case in patterns (j, k), and the largest and the smallest of
-    each action that varies, `high` and `low`, (v, k).
-    """
-
-    x: FloatArray
-    right: BoolArray
-    fixed: FloatArray
-    parts: FloatArray
-    reaches: tuple[Reach, ...]
-    high: FloatArray
-    low: FloatArray
+def _first(effects: Sequence[Effect], sign: float) -> Effect:
+    best = max(sign * effect.value for effect in effects)
+    return next(effect for effect in effects if best - sign * effect.value <= TIE * abs(best))

@@ -14,7 +14,7 @@ from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import cached_property
 from itertools import pairwise
-from typing import Final, Literal, TypeAlias
+from typing import Final, TypeAlias
 
 import numpy as np
 import numpy.typing as npt
@@ -35,8 +35,9 @@ from calcgen.mechanics.beam import (
     solve,
 )
 from calcgen.mechanics.beam.mesh import divide, nearest
-from calcgen.mechanics.beam.results import Part, Side
-from calcgen.mechanics.combinations import ReactionPart
+from calcgen.mechanics.beam.model import SAME_PLACE
+from calcgen.mechanics.beam.results import TIE, Part, Side
+from calcgen.mechanics.combinations import ReactionPart, reaction_index
 
 W, ROTATION, M, V = range(4)
 """Order of a state."""
@@ -81,10 +82,23 @@ class InfluenceLine:
         t = (x - self.nodes[number]) / np.diff(self.nodes)[number]
         return piecewise.values(self.pieces[number], t)
 
+    def beside(self, x: float) -> tuple[float, float]:
+        """Give the line at a place of the load, on its left and on its right: equal where it does not jump.
+
+        A place within a billionth of the beam's length of a node is that node.
+        """
+        near = float(self.nodes[np.argmin(np.abs(self.nodes - x))])
+        place = np.array([near if abs(near - x) <= SAME_PLACE * float(self.nodes[-1]) else x])
+        size = float(np.abs(self.pieces).max())
+        sides = np.array([self.values(place, side)[0] for side in ("left", "right")])
+        left, right = np.where(np.abs(sides) <= NEGLIGIBLE * size, 0.0, sides).tolist()
+        return left, left if abs(right - left) <= TIE * size else right
+
     def extremes(self) -> Extremes:
         """Give the exact largest and smallest value, at a jump of both sides, and the first place of each."""
         x, values = self._candidates(piecewise.derivative(self.pieces))
         tie = NEGLIGIBLE * float(np.abs(values).max())
+        values = np.where(np.abs(values) <= tie, 0.0, values)
         return Extremes(
             float(values.max()),
             float(x[np.argmax(values >= values.max() - tie)]),
@@ -130,6 +144,12 @@ class InfluenceLine:
     def integral(self, start: float, end: float) -> float:
         """Give the area under the line from `start` to `end`: the effect of a uniform load of 1 N/m there."""
         return self.under(DistributedLoad.uniform(start, end, 1.0))
+
+    def areas(self) -> tuple[float, float]:
+        """Give the area under the positive parts and that under the negative ones, at most 0."""
+        cuts = [float(self.nodes[0]), *self.zeros(), float(self.nodes[-1])]
+        parts = [self.integral(a, b) for a, b in pairwise(cuts) if b > a]
+        return sum(part for part in parts if part > 0.0), sum(part for part in parts if part < 0.0)
 
     def _candidates(self, polynomials: FloatArray) -> tuple[FloatArray, FloatArray]:
         """Give ends of the pieces, roots in them of `polynomials`, in order, and the values of the line."""
@@ -243,10 +263,30 @@ class Influence:
                 rows[1, V, own] += g[own]
         return rows
 
+    def all_rows(self, quantity: Quantity) -> FloatArray:
+        """Give `rows` of all elements, (n, power, part, plane)."""
+        if quantity not in self._rows:
+            elements = range(len(self.nodes) - 1)
+            self._rows[quantity] = np.array([self.rows(quantity, element) for element in elements])
+        return self._rows[quantity]
+
+    @cached_property
+    def _rows(self) -> dict[Quantity, FloatArray]:
+        return {}
+
     def noise(self, quantity: Quantity) -> float:
         """Give the size below which the effect of a unit load on a quantity is rounding error."""
+        if quantity not in self._noise:
+            self._noise[quantity] = self._find_noise(quantity)
+        return self._noise[quantity]
+
+    @cached_property
+    def _noise(self) -> dict[Quantity, float]:
+        return {}
+
+    def _find_noise(self, quantity: Quantity) -> float:
         powers = np.diff(self.nodes)[:, None] ** np.arange(4.0)
-        rows = np.array([self.rows(quantity, element) for element in range(len(powers))])
+        rows = self.all_rows(quantity)
         largest = np.abs(self.states).max(axis=(3, 4, 5))
         own = NEGLIGIBLE * float(np.einsum("nk,nkip,nip->n", powers, np.abs(rows), largest).max())
         part, plane = quantity_index(quantity)
@@ -353,11 +393,6 @@ def quantity_index(quantity: Quantity) -> tuple[Part, int]:
     """Give the part of a state that a quantity is, and the number of its plane."""
     plane, part = divmod(QUANTITIES.index(quantity), len(PARTS))
     return PARTS[part], plane
-
-
-def reaction_index(part: ReactionPart) -> tuple[int, Literal[0, 1]]:
-    """Give the plane of a part of a reaction, and 0 for the force, 1 for the moment."""
-    return int(part.endswith("_lat")), 0 if part.startswith("force") else 1
 
 
 def _line(nodes: FloatArray, pieces: FloatArray, noise: float) -> InfluenceLine:

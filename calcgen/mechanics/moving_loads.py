@@ -22,6 +22,7 @@ from calcgen.mechanics.beam.results import TIE, Side
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.mechanics.influence import BoolArray, Influence, quantity_index
 from calcgen.mechanics.passage import Passage, bettered, nothing, with_values
+from calcgen.mechanics.stretch_bounds import stretch_bounds
 from calcgen.mechanics.trains import Position, Train
 
 _ROUNDING = 1e-3  # part of the model's tolerance within which an axle stands at a place
@@ -91,13 +92,10 @@ class Crossing:
         On the right side of a place where `right` (k,) says so, else on its left.
         """
         places, elements = self.influence.locate(np.asarray(x, dtype=np.float64), right=right)
-        noise = self._noise(quantity)
+        noise = self.noise(quantity)
         found = nothing(len(places))
-        for element in np.unique(elements):
-            here = np.flatnonzero(elements == element)
-            for passage in self._passages:
-                cubics = passage.at(quantity, int(element), places[here])
-                found[:, :, here] = bettered(cubics, passage, found[:, :, here], noise)
+        for passage in self._passages:
+            found = bettered(passage.at(quantity, elements, places), passage, found, noise)
         ends, jumpy = self.influence.nodes[[0, -1]], self._jumps(quantity)
         for number in np.flatnonzero(np.isin(places, ends)) if jumpy else ():
             for passage in self._passages:
@@ -109,6 +107,12 @@ class Crossing:
             found,
             lambda i, position: self._attained(position, (float(places[i]),) if jumpy else ()),
         )
+
+    def bounds(self, quantity: Quantity, start: FloatArray, length: FloatArray) -> FloatArray:
+        """Give control values (2, k, 7) that no effect exceeds on k stretches, each within an element."""
+        _, elements = self.influence.locate(start + length / 2, right=np.zeros(len(start), dtype=bool))
+        each = [stretch_bounds(p, quantity, elements, start, length) for p in self._passages]
+        return np.stack([np.max([b[0] for b in each], axis=0), np.min([b[1] for b in each], axis=0)])
 
     def reaction_reach(self, support: int, part: ReactionPart = "force") -> Reach:
         """Give the extremes of one part of a support's reaction over all positions, as one place."""
@@ -158,7 +162,7 @@ class Crossing:
             for number, x in enumerate(places)
             for low in (False, True)
         ]
-        noise = self._noise(quantity)
+        noise = self.noise(quantity)
         under = [each for passage in self._passages for each in passage.under_axles(quantity, a, b)]
         effects += [
             TrainEffect(value, x, self._attained(position, (x,) if self._jumps(quantity) else ()))
@@ -192,7 +196,8 @@ class Crossing:
                     return replace(position, beside=side)
         return replace(position, beside=None)
 
-    def _noise(self, quantity: Quantity) -> float:
+    def noise(self, quantity: Quantity) -> float:
+        """Give the size below which an effect is rounding error."""
         return self._load * self.influence.noise(quantity)
 
     @property

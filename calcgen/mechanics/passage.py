@@ -14,13 +14,13 @@ import numpy as np
 from calcgen.mechanics.arrays import FloatArray
 from calcgen.mechanics.beam import Quantity, piecewise
 from calcgen.mechanics.beam.results import TIE
-from calcgen.mechanics.combinations import ReactionPart
-from calcgen.mechanics.influence import Influence, IntArray, V, reaction_index, shift
+from calcgen.mechanics.combinations import ReactionPart, reaction_index
+from calcgen.mechanics.influence import BoolArray, Influence, IntArray, V, shift
 from calcgen.mechanics.trains import Direction, Position, Train, sense
 
-_SAMPLES = (1.0 - np.cos(np.pi * (np.arange(4.0) + 0.5) / 4)) / 2  # Chebyshev: four values fix a cubic
-_FROM_SAMPLES = np.linalg.inv(_SAMPLES[:, None] ** np.arange(4.0)).T
-_BERNSTEIN = np.array([[1, 0, 0, 0], [1, 1 / 3, 0, 0], [1, 2 / 3, 1 / 3, 0], [1, 1, 1, 1]])
+SAMPLES = (1.0 - np.cos(np.pi * (np.arange(4.0) + 0.5) / 4)) / 2  # Chebyshev: four values fix a cubic
+FROM_SAMPLES = np.linalg.inv(SAMPLES[:, None] ** np.arange(4.0)).T
+BERNSTEIN = np.array([[1, 0, 0, 0], [1, 1 / 3, 0, 0], [1, 2 / 3, 1 / 3, 0], [1, 1, 1, 1]])
 
 
 @dataclass(frozen=True, eq=False)
@@ -97,42 +97,60 @@ class Passage:
         cubics = self._summed(self.influence.support_forces[support, own, which])
         return Cubics(self.cuts[None, :-1], np.diff(self.cuts)[None], cubics[None])
 
-    def _share(self, rows: FloatArray) -> FloatArray:
-        """Give what an axle of unit load adds to a quantity at a distance behind it: powers of it, (4,)."""
-        own = [list(self.influence.model.planes).index(plane) for plane in self.influence.planes]
-        return np.asarray(-rows[:, V, own] @ self._weights)
+    def share(self, rows: FloatArray) -> FloatArray:
+        """Give what an axle of unit load adds at a distance behind it: powers of it, (..., 4)."""
+        own = [self.influence.model.planes.index(plane) for plane in self.influence.planes]
+        return np.asarray(-rows[..., V, own] @ self._weights)
 
-    def at(self, quantity: Quantity, element: int, x: FloatArray) -> Cubics:
-        """Give the effects at places (k,) within one element."""
-        rows = self.influence.rows(quantity, element)
-        sigma = x - self.influence.nodes[element]
-        row = np.tensordot(sigma[:, None] ** np.arange(4.0), rows, axes=1)
-        cubics = np.einsum("sip,ipjk->sjk", row, self.states[element])
-        shared = (self.elements == element).any(axis=0)
-        near, far = np.flatnonzero(shared), np.flatnonzero(~shared)
-        starts, lengths = np.broadcast_to(self.cuts[:-1], cubics.shape[:2]), np.diff(self.cuts)
+    @cached_property
+    def _shared(self) -> BoolArray:
+        """Whether some axle is in an element in an interval, (n, j)."""
+        found = np.zeros((len(self.influence.nodes) - 1, len(self.cuts) - 1), dtype=bool)
+        axle, j = np.nonzero(self.elements >= 0)
+        found[self.elements[axle, j], j] = True
+        return found
+
+    @cached_property
+    def _near(self) -> IntArray:
+        """Intervals in which some axle is in an element, (n, most of them), filled up by -1."""
+        counts = self._shared.sum(axis=1)
+        found = np.full((len(counts), counts.max(initial=0)), -1)
+        element, j = np.nonzero(self._shared)
+        found[element, np.arange(len(j)) - (np.cumsum(counts) - counts)[element]] = j
+        return found
+
+    def at(self, quantity: Quantity, elements: IntArray, x: FloatArray) -> Cubics:
+        """Give the effects at places (k,) within elements (k,)."""
+        rows = self.influence.all_rows(quantity)[elements]
+        k, j = len(x), len(self.cuts) - 1
+        sigma = x - self.influence.nodes[elements]
+        row = np.einsum("kq,kqip->kip", sigma[:, None] ** np.arange(4.0), rows).reshape(k, -1)
+        cubics = np.empty((k, j, 4))
+        for element in np.unique(elements):
+            here = elements == element
+            cubics[here] = (row[here] @ self.states[element].reshape(row.shape[1], -1)).reshape(-1, j, 4)
         # Where an axle shares the element, the position is cut where an axle meets the place, too.
-        low, high = self.cuts[near, None], self.cuts[near + 1, None]
+        starts, lengths = np.broadcast_to(self.cuts[:-1], (k, j)), np.diff(self.cuts)
+        near = np.maximum(self._near[elements], 0)
+        low = self.cuts[near, None]
+        high = np.where(self._near[elements, :, None] < 0, low, self.cuts[near + 1, None])
         meets = np.clip((x[:, None] - self.offsets)[:, None, :], low, high)
-        ends = np.broadcast_to(low, (*meets.shape[:2], 1)), np.broadcast_to(high, (*meets.shape[:2], 1))
-        cuts = np.sort(np.concatenate([ends[0], meets, ends[1]], axis=2), axis=2)
+        cuts = np.sort(np.concatenate([low, meets, high], axis=2), axis=2)
         parts = np.diff(cuts, axis=2)
-        u = cuts[..., :-1, None] + parts[..., None] * _SAMPLES
+        u = cuts[..., :-1, None] + parts[..., None] * SAMPLES
         values = piecewise.values(
-            cubics[:, near, None, None, :], (u - low[..., None]) / lengths[near, None, None]
+            np.take_along_axis(cubics, near[:, :, None], axis=1)[:, :, None, None],
+            (u - low[..., None]) / lengths[near, None, None],
         )
-        share = self._share(rows)
-        for load, offset, elements in zip(
-            self.train.axles, self.offsets, self.elements[:, near], strict=True
-        ):
+        share = self.share(rows)[:, None, None, None]
+        for load, offset, own in zip(self.train.axles, self.offsets, self.elements, strict=True):
             d = x[:, None, None, None] - (u + offset)
-            passed = (elements == element)[:, None, None] & (d > 0.0)
+            passed = (own[near] == elements[:, None])[:, :, None, None] & (d > 0.0)
             values += load * np.where(passed, piecewise.values(share, d), 0.0)
-        k = len(x)
         return Cubics(
-            np.concatenate([starts[:, far], cuts[..., :-1].reshape(k, -1)], axis=1),
-            np.concatenate([np.broadcast_to(lengths[far], (k, len(far))), parts.reshape(k, -1)], axis=1),
-            np.concatenate([cubics[:, far], (values @ _FROM_SAMPLES).reshape(k, -1, 4)], axis=1),
+            np.concatenate([starts, cuts[..., :-1].reshape(k, -1)], axis=1),
+            np.concatenate([np.where(self._shared[elements], 0.0, lengths), parts.reshape(k, -1)], axis=1),
+            np.concatenate([cubics, (values @ FROM_SAMPLES).reshape(k, -1, 4)], axis=1),
         )
 
     def on_end(self, quantity: Quantity, *, last: bool) -> list[tuple[float, float]]:
@@ -141,10 +159,19 @@ class Passage:
         No position beside it gives that effect: the axle is before the place at the last end, and behind it
         at the first one, whereas from within the beam it comes to the end on the other side.
         """
+        if (quantity, last) not in self._on_end:
+            self._on_end[quantity, last] = self._find_on_end(quantity, last=last)
+        return self._on_end[quantity, last]
+
+    @cached_property
+    def _on_end(self) -> dict[tuple[Quantity, bool], list[tuple[float, float]]]:
+        return {}
+
+    def _find_on_end(self, quantity: Quantity, *, last: bool) -> list[tuple[float, float]]:
         influence, planes = self.influence, self.influence.planes
         end = float(influence.nodes[-1 if last else 0])
         lines = [influence.line(quantity, end, "left" if last else "right", plane) for plane in planes]
-        share = float(self._share(influence.rows(quantity, -1 if last else 0))[0])
+        share = float(self.share(influence.rows(quantity, -1 if last else 0))[0])
         found: list[tuple[float, float]] = []
         for axle, offset in enumerate(self.offsets):
             x = end - offset + self.offsets
@@ -193,7 +220,7 @@ class Passage:
         result = np.zeros(piecewise.DEGREE + 2)
         for power in range(4):
             result[power : power + 4] += np.einsum("ip,ipk->k", moving[power], cubics)
-        share = self._share(rows)
+        share = self.share(rows)
         for other, load in enumerate(self.train.axles):
             behind = self.offsets[axle] - self.offsets[other]
             if self.elements[other, interval] == element and behind > 0.0:
@@ -213,31 +240,32 @@ def nothing(places: int) -> FloatArray:
 def bettered(cubics: Cubics, passage: Passage, known: FloatArray, noise: float) -> FloatArray:
     """Better what is known of k places, (2, 4, k), by the extremes of their cubics."""
     c = cubics.coefficients
-    control = c @ _BERNSTEIN.T  # a cubic stays between its control values, and begins and ends at two of them
+    control = c @ BERNSTEIN.T  # a cubic stays between its control values, and begins and ends at two of them
     control[cubics.lengths == 0.0] = 0.0
     ends = control[..., [0, 3]]
-    t = np.zeros((*c.shape[:2], 4))
-    t[..., 1] = 1.0
     values = ends[..., [0, 1, 0, 0]]
     best, least = (bound(ends, axis=(1, 2))[:, None] for bound in (np.max, np.min))
     curved = (control.max(axis=-1) > best) | (control.min(axis=-1) < least)
-    t[curved, 2:] = inner = _turns(c[curved])
-    values[curved, 2:] = piecewise.values(c[curved][:, None], inner)
+    turns = _turns(c[curved])
+    values[curved, 2:] = piecewise.values(c[curved][:, None], turns)
     values[np.abs(values) <= noise] = 0.0
-    k = len(values)
-    u = (cubics.starts[..., None] + cubics.lengths[..., None] * t).reshape(k, -1)
-    # Within the model's tolerance of an end of its interval a position is a limit there.
-    near = 2.0 * passage.influence.model.tolerance / np.maximum(cubics.lengths[..., None], 1e-300)
-    limit = np.where(t <= np.minimum(near, 0.5), 1.0, np.where(t >= 1.0 - near, -1.0, 0.0)).reshape(k, -1)
-    values = values.reshape(k, -1)
-    result, each = known.copy(), np.arange(k)
-    for row, sign in ((0, 1.0), (1, -1.0)):
-        best = (sign * values).max(axis=1)
+    t = np.zeros(values.shape)
+    t[..., 1] = 1.0
+    t[curved, 2:] = turns
+    result, left = known.copy(), float(passage.direction == "left")
+    for row, sign, bests in ((0, 1.0, values.max(axis=(1, 2))), (1, -1.0, -values.min(axis=(1, 2)))):
         # Of equal positions the first: rounding must not choose.
-        first = np.where(sign * values >= (best - TIE * np.abs(best))[:, None], u, np.inf).argmin(axis=1)
-        left = np.full(k, float(passage.direction == "left"))
-        new = np.stack([values[each, first], u[each, first], left, limit[each, first]])
-        result[row] = np.where(best > sign * known[row, 0] * (1.0 + TIE), new, known[row])
+        equal = np.nonzero(sign * values >= (bests - TIE * np.abs(bests))[:, None, None])
+        u = cubics.starts[equal[:2]] + cubics.lengths[equal[:2]] * t[equal]
+        order = np.lexsort((u, equal[0]))
+        first = order[np.searchsorted(equal[0][order], np.arange(len(values)))]
+        place, interval, number = (each[first] for each in equal)
+        # Within the model's tolerance of an end of its interval a position is a limit there.
+        t_first = t[place, interval, number]
+        near = 2.0 * passage.influence.model.tolerance / np.maximum(cubics.lengths[place, interval], 1e-300)
+        limit = np.where(t_first <= np.minimum(near, 0.5), 1.0, np.where(t_first >= 1.0 - near, -1.0, 0.0))
+        new = np.stack([values[place, interval, number], u[first], np.full(len(place), left), limit])
+        result[row] = np.where(bests > sign * known[row, 0] * (1.0 + TIE), new, known[row])
     return result
 
 
@@ -251,6 +279,19 @@ def with_values(
             if sign * value > max(sign * result[row, 0] * (1.0 + TIE), noise):
                 result[row] = value, u, float(passage.direction == "left"), 0.0
     return result
+
+
+def cubic_extremes(cubics: FloatArray, axis: int) -> FloatArray:
+    """Give the largest and the smallest value on [0, 1] of cubics (..., 4) along one of the other axes."""
+    control = cubics @ BERNSTEIN.T  # a cubic stays between its control values
+    ends = control[..., [0, 3]]
+    high, low = ends.max(axis=-1), ends.min(axis=-1)
+    best, least = high.max(axis=axis, keepdims=True), low.min(axis=axis, keepdims=True)
+    curved = (control.max(axis=-1) > best) | (control.min(axis=-1) < least)
+    inner = piecewise.values(cubics[curved][:, None], _turns(cubics[curved]))
+    high[curved] = np.maximum(high[curved], inner.max(axis=-1, initial=-np.inf))
+    low[curved] = np.minimum(low[curved], inner.min(axis=-1, initial=np.inf))
+    return np.stack([high.max(axis=axis), low.min(axis=axis)])
 
 
 def _turns(cubics: FloatArray) -> FloatArray:

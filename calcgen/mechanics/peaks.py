@@ -1,8 +1,7 @@
-"""Where a curve along a beam is largest: by roots where it is made of polynomials, else by closing in."""
+"""Where curves along a beam, made of polynomials, are largest: by roots."""
 
 from __future__ import annotations
 
-from collections.abc import Callable
 from itertools import pairwise
 from typing import Final, TypeAlias
 
@@ -18,7 +17,6 @@ Places: TypeAlias = list[tuple[float, bool]]
 
 _AT_END: Final = 1e-9  # part of an element's length below which two places in it are one
 _STRAIGHT: Final = 1e-13  # part of a polynomial's largest coefficient that is rounding
-_PARTS, _ROUNDS = 8, 13  # each round leaves a quarter of an interval: 4^-13 of it in the end
 
 
 def divided(start: FloatArray, end: FloatArray, parts: int) -> tuple[FloatArray, BoolArray]:
@@ -93,35 +91,3 @@ def _roots(polynomials: FloatArray) -> FloatArray:
     with np.errstate(divide="ignore", invalid="ignore"):
         t = np.concatenate([-a / b, *(piecewise.roots(each) for each in polynomials[bent])])
     return np.asarray(t[(t > 0.0) & (t < 1.0)])
-
-
-def closed_in(
-    curve: Callable[[FloatArray, BoolArray], FloatArray], x: FloatArray, right: BoolArray, values: FloatArray
-) -> Places:
-    """Give places among which a curve is largest, from its `values` at places of a division, (i, k) each.
-
-    `curve` gives the values at places (k,) on the sides named. It must be continuous within the intervals. A
-    peak between two places is found unless it rises above them by over twice what the curve falls beside.
-    """
-    rise = np.diff(values, axis=1)
-    rising, falling = np.pad(rise, ((0, 0), (1, 0))), -np.pad(rise, ((0, 0), (0, 1)))
-    gain = 2.0 * np.maximum(rising, falling)
-    peaks = (np.minimum(rising, falling) >= 0.0) & (gain > 0.0) & (values + gain >= values.max())
-    equal = values >= values.max() - TIE * abs(values.max())
-    found = list(zip(x[equal].tolist(), right[equal].tolist(), strict=True))
-    row, column = np.nonzero(peaks)
-    a, b = x[row, np.maximum(column - 1, 0)], x[row, np.minimum(column + 1, x.shape[1] - 1)]
-    peak: Places = []
-    for _ in range(_ROUNDS if len(a) else 0):
-        inner, side = divided(a, b, _PARTS)
-        heights = curve(inner.ravel(), side.ravel()).reshape(inner.shape)
-        top, each = heights.argmax(axis=1), np.arange(len(a))
-        before, after = np.maximum(top - 1, 0), np.minimum(top + 1, _PARTS)
-        most = heights[each, top]
-        gain = 2.0 * (most - np.minimum(heights[each, before], heights[each, after]))
-        kept = np.flatnonzero(most + gain >= most.max())
-        if np.all(gain[kept] <= TIE * np.abs(most[kept])):
-            kept = kept[:1]  # equal peaks: the place of the first is enough
-        peak = list(zip(inner[each, top][kept].tolist(), side[each, top][kept].tolist(), strict=True))
-        a, b = inner[each, before][kept], inner[each, after][kept]
-    return [*found, *peak]

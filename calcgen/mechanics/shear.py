@@ -18,6 +18,7 @@ import math
 from collections.abc import Sequence
 from dataclasses import dataclass
 from functools import cached_property
+from itertools import pairwise
 from typing import Literal, TypeAlias
 
 import numpy as np
@@ -30,6 +31,7 @@ from calcgen.mechanics.section import Inertia
 from calcgen.mechanics.stress import BoolArray, Forces, StressPlane, elastic_stress
 
 Direction: TypeAlias = Literal["level", "upright"]
+Intervals: TypeAlias = list[tuple[int, float, float]]
 
 SAME_LEVEL = 1e-12  # of the height: levels closer than this are one
 NO_WIDTH = 1e-9  # of the section's width: a narrower cut passes no material
@@ -163,21 +165,31 @@ class Cuts:
             self.exact,
         )
 
-    def material(self, level: float, *, above: bool = True) -> tuple[tuple[int, float, float], ...]:
-        """Intervals of material on a cut: index of the piece, and where it begins and ends.
+    def material(self, levels: FloatArray, *, above: BoolArray | bool = True) -> list[Intervals]:
+        """Intervals of material on each cut: index of the piece, and where it begins and ends.
 
         x from left to right on a level cut, y from top to bottom on an upright one, from the centroid, m.
         """
-        height = float(self._heights(np.array([level]))[0])
-        low, high = self._reach
-        active = np.flatnonzero(
-            (low <= height) & (height < high) if above else (low < height) & (height <= high)
-        )
-        x = _crossing(self.start[active], self.end[active], height)
-        piece = np.searchsorted(self.first_edge, active, side="right") - 1
-        order = np.lexsort((x, piece))
+        heights = self._heights(levels)
+        sides = np.broadcast_to(np.asarray(above, dtype=bool), levels.shape)
+        at_once = max(1, AT_ONCE // len(self.start))
+        parts = range(0, len(heights), at_once)
+        return [m for i in parts for m in self._few(heights[i : i + at_once], sides[i : i + at_once])]
+
+    def _few(self, heights: FloatArray, sides: BoolArray) -> list[Intervals]:
+        cut, edge = np.nonzero(self._passed(heights[:, None], sides[:, None]))
+        x = _crossing(self.start[edge], self.end[edge], heights[cut])
+        piece = np.searchsorted(self.first_edge, edge, side="right") - 1
+        order = np.lexsort((x, piece, cut))
         left, right = order[0::2], order[1::2]
-        return tuple(zip(piece[left].tolist(), x[left].tolist(), x[right].tolist(), strict=True))
+        intervals = list(zip(piece[left].tolist(), x[left].tolist(), x[right].tolist(), strict=True))
+        ends = np.searchsorted(cut[left], np.arange(len(heights)), side="right").tolist()
+        return [intervals[first:last] for first, last in pairwise([0, *ends])]
+
+    def _passed(self, level: FloatArray, side: BoolArray) -> BoolArray:
+        """Tell which edges, (k, n), cuts at `level`, (k, 1), pass, just above it or just below."""
+        low, high = self._reach
+        return np.where(side, (low <= level) & (level < high), (low < level) & (level <= high))
 
     @property
     def factors(self) -> FloatArray:
@@ -263,7 +275,6 @@ class Cuts:
 
     def _few_integrals(self, level: FloatArray, side: BoolArray) -> tuple[FloatArray, ...]:
         (x_0, y_0), (x_1, y_1) = self.start.T, self.end.T
-        low, high = self._reach
         run = (x_1 - x_0) / (y_1 - y_0)
         y_a, y_b = np.maximum(y_0, level), np.maximum(y_1, level)
         x_a = np.where(y_a == y_0, x_0, x_0 + run * (y_a - y_0))
@@ -271,8 +282,7 @@ class Cuts:
         x_m, y_m, dy = 0.5 * (x_a + x_b), 0.5 * (y_a + y_b), self.factor * (y_b - y_a) / 6.0
         x_moment = np.sum(dy * (x_a**2 + 4.0 * x_m**2 + x_b**2), axis=1) / 2.0
         y_moment = np.sum(dy * (x_a * y_a + 4.0 * x_m * y_m + x_b * y_b), axis=1)
-        active = np.where(side, (low <= level) & (level < high), (low < level) & (level <= high))
-        x = np.where(active, np.sign(y_1 - y_0) * (x_0 + run * (level - y_0)), 0.0)
+        x = np.where(self._passed(level, side), np.sign(y_1 - y_0) * (x_0 + run * (level - y_0)), 0.0)
         widths = np.add.reduceat(x, self.first_edge, axis=1)
         cut_moment = 0.5 * np.sum(self.factor * np.sign(y_1 - y_0) * x * x, axis=1)
         return x_moment, y_moment, widths, cut_moment
@@ -364,7 +374,7 @@ def _bands(
     return np.unique(np.concatenate((even, largest))), False
 
 
-def _crossing(start: FloatArray, end: FloatArray, height: float) -> FloatArray:
+def _crossing(start: FloatArray, end: FloatArray, height: FloatArray) -> FloatArray:
     share = (height - start[:, 1]) / (end[:, 1] - start[:, 1])
     return start[:, 0] + share * (end[:, 0] - start[:, 0])
 

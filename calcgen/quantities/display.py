@@ -178,6 +178,16 @@ def number_text(number: float, digits: int = 4) -> str:
     return f"{sign}{exact.quantize(Decimal(1).scaleb(-places), rounding=ROUND_HALF_UP):f}"
 
 
+def utilisation_text(value: float | None) -> str:
+    """Return a utilisation with three decimals, more where it would read 1.000 without being 1."""
+    if value is None:
+        return "—"
+    if abs(value) >= 10:
+        return number_text(value, 4)
+    texts = (f"{value:.{places}f}" for places in range(3, 13))
+    return next((t for t in texts if value == 1 or float(t) != 1), f"{value:.3f}").replace("-", "−")
+
+
 def rounded(number: float, digits: int = 12) -> float:
     """Return a number rounded to significant digits, so that last-bit differences don't show.
 

@@ -51,6 +51,21 @@ def link(path: str, anchor: str = "") -> str:
     return quote(path) + (f"#{quote(anchor)}" if anchor else "")
 
 
+def calc_link(number: str) -> str:
+    """Return the link to a calc's page."""
+    return link(calc_page(number))
+
+
+def feeds_anchor(giver: str, taker: str) -> str:
+    """Return the anchor, on the map's page, of what one calc takes from another."""
+    return f"{giver}.{taker}"  # no number of a calc has a dot
+
+
+def feeds_link(giver: str, taker: str) -> str:
+    """Return the link to what one calc takes from another."""
+    return link(MAP, feeds_anchor(giver, taker))
+
+
 def source_line(number: str, line: int) -> str:
     """Return the link to a line of a calc's source."""
     return link(source_page(number), f"L{line}")
@@ -108,6 +123,8 @@ def _anchors(segment: Segment) -> Iterator[str]:
             yield segment.name
             for group in segment.groups:
                 yield from (result_anchor(segment.name, group.name, r.name) for r in group.results)
+            for line in segment.influences:
+                yield from (result_anchor(segment.name, "", r.name) for r in line.results)
         case _:
             pass
 

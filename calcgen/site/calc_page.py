@@ -5,6 +5,8 @@ from __future__ import annotations
 from dataclasses import dataclass
 from typing import TypeAlias
 
+from markupsafe import Markup
+
 from calcgen.evaluation.results.beam import BeamResult
 from calcgen.evaluation.results.calc import EvaluatedCalc, Segment
 from calcgen.evaluation.results.lines import (
@@ -33,6 +35,8 @@ from calcgen.site.blocks.vary import VaryView, vary_view
 from calcgen.site.blocks.working import WorkingView, working_view
 from calcgen.site.context import Context
 from calcgen.site.facts import PackageInput
+from calcgen.site.feeds import reason
+from calcgen.site.map_page import Neighbours, neighbours
 from calcgen.site.prose import ProseRenderer
 from calcgen.site.standing import StandingView, standing_view
 from calcgen.site.views import DiagnosticView, Link, diagnostic_view
@@ -61,6 +65,7 @@ class CalcView:
     statements : (label, text) of purpose, scope and conclusion.
     position : of the calc among all, '3 of 7'.
     reason : why it is not evaluated; empty otherwise.
+    neighbours : the calcs that feed it, and those that it feeds.
     """
 
     number: str
@@ -68,7 +73,8 @@ class CalcView:
     facts: tuple[tuple[str, str], ...]
     position: str
     standing: StandingView
-    reason: str
+    reason: Markup
+    neighbours: tuple[Neighbours, ...]
     statements: tuple[tuple[str, str], ...]
     diagnostics: tuple[DiagnosticView, ...]
     segments: tuple[SegmentView, ...]
@@ -79,10 +85,9 @@ class CalcView:
 
 def calc_view(calc: EvaluatedCalc, package: PackageInput, images: dict[str, str]) -> CalcView:
     """Return the page of a calc; `images` gives the path in the package by the path in the project."""
-    numbers = [c.number for c in package.calcs]
-    place = numbers.index(calc.number)
+    place = package.positions[calc.number]
     anchors = addresses.anchors_of(calc)
-    prose = ProseRenderer(calc.calc.source.path, images, frozenset(numbers), anchors)
+    prose = ProseRenderer(calc.calc.source.path, images, package.numbers, anchors)
     context = Context(calc, package, anchors, prose)
     sheet = sheet_texts(calc)
     views = (_segment(segment, context) for segment in calc.segments)
@@ -90,9 +95,10 @@ def calc_view(calc: EvaluatedCalc, package: PackageInput, images: dict[str, str]
         number=calc.number,
         title=calc.calc.title,
         facts=_facts(sheet, package),
-        position=f"{place + 1} of {len(numbers)}",
+        position=f"{place + 1} of {len(package.calcs)}",
         standing=standing_view(calc),
-        reason=calc.reason,
+        reason=reason(calc),
+        neighbours=neighbours(calc, package),
         statements=tuple((k, sheet[k]) for k in ("purpose", "scope", "conclusion") if sheet.get(k)),
         diagnostics=diagnostics_of(calc),
         segments=tuple(view for view in views if view is not None),

@@ -14,6 +14,7 @@ from calcgen.site.cover import cover_view
 from calcgen.site.facts import PackageInput as PackageInput
 from calcgen.site.facts import ProjectFacts
 from calcgen.site.figure import FigureSvg
+from calcgen.site.map_page import map_view
 from calcgen.site.page import FilePage, Frame, HtmlPage, Page
 from calcgen.site.prose import image_asset
 from calcgen.site.results_json import PATH as RESULTS
@@ -49,6 +50,13 @@ class Composed:
 
     def __init__(self) -> None:
         self._kept: dict[str, tuple[object, HtmlPage]] = {}
+        self._around: object = None
+
+    def same(self, around: object) -> object:
+        """Return what surrounds all pages, as the object that it was before where it is equal to that."""
+        if self._around != around:
+            self._around = around
+        return self._around
 
     def page(self, path: str, made_from: object, make: Callable[[], HtmlPage]) -> HtmlPage:
         """Return the page made before from equal things, or make it."""
@@ -79,13 +87,8 @@ def _pages(package: PackageInput, images: dict[str, str], composed: Composed) ->
         template = f"pages/{path.removesuffix('.html')}.html"
         return HtmlPage(path, template, title, content, frame, whole, f"{named} · {title}")
 
-    around = (
-        project,
-        package.references,
-        images,
-        frame,
-        tuple((c.number, c.calc.title) for c in package.calcs),
-    )
+    titles = tuple((c.number, c.calc.title) for c in package.calcs)
+    around = composed.same((project, package.references, images, frame, titles))
 
     def of_calc(
         calc: EvaluatedCalc, path: str, template: str, title: str, view: Callable[[], object]
@@ -105,7 +108,7 @@ def _pages(package: PackageInput, images: dict[str, str], composed: Composed) ->
     yield page(addresses.INPUTS, "Inputs", registers.input_entries(package))
     yield page(addresses.ASSUMPTIONS, "Assumptions", registers.assumption_entries(package))
     yield page(addresses.REFERENCES, "References", registers.reference_entries(package))
-    yield page(addresses.MAP, "Which calc feeds which", registers.map_view(package))
+    yield page(addresses.MAP, "Which calc feeds which", map_view(package))
     yield page(addresses.TRAIL, "Trail", trail_view(package))
     yield page(addresses.CONVENTIONS, "Axes and signs", ConventionsView(project, package.conventions))
     yield page(addresses.CAUTIONS, "Cautions", None)
@@ -116,11 +119,11 @@ def _pages(package: PackageInput, images: dict[str, str], composed: Composed) ->
 
 
 def _behind(calc: EvaluatedCalc, package: PackageInput) -> tuple[object, ...]:
-    """Return what of a package the page of a calc shows: the calc, what feeds it, its figures, its marks."""
-    feeders = {origin.calc for origin in calc.depends}
-    marks = tuple((a, p) for a, p in package.previous.items() if a.partition("#")[0] == calc.number)
-    figures = tuple((name, row) for (number, name), row in package.figures.items() if number == calc.number)
-    return (calc, tuple(c for c in package.calcs if c.number in feeders), figures, marks)
+    """Return what of a package the page of a calc shows: the calc, its neighbours, its figures, its marks."""
+    feeders = tuple(package.by_number.get(n) for n in sorted({origin.calc for origin in calc.depends}))
+    number = calc.number
+    beside = (package.neighbours.get(number), package.drawn.get(number), package.marks.get(number))
+    return (calc, feeders, beside)
 
 
 def _images(package: PackageInput) -> Iterator[tuple[str, FilePage]]:

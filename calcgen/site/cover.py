@@ -2,7 +2,7 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterator
+from collections.abc import Iterable, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
 from calcgen.evaluation.results.calc import EvaluatedCalc
@@ -15,6 +15,7 @@ from calcgen.site.standing import StandingView, standing_view
 from calcgen.site.views import DiagnosticView, Link, diagnostic_view, utilisation_text
 
 MOST_CHANGES = 12  # listed on the cover; the trail has all
+MOST_FED = 4  # inputs told of a calc that changes because of what feeds it
 NEAR = 0.95  # of its limit: a check from here on is looked at first
 
 
@@ -73,6 +74,7 @@ def cover_view(package: PackageInput) -> CoverView:
         Matters("unreferenced inputs", tuple(_inputs(package)), _more(addresses.INPUTS)),
         Matters("warnings", tuple(_warnings(package))),
         Matters(_changed_heading(package), tuple(_changes(package)), _more(addresses.TRAIL)),
+        Matters("calcs downstream of these changes", tuple(_downstream(package)), _more(addresses.MAP)),
     )
     return CoverView(
         facts=_facts(package),
@@ -183,17 +185,46 @@ def _inputs(package: PackageInput) -> Iterator[Matter]:
 
 
 def _changes(package: PackageInput) -> Iterator[Matter]:
-    """Yield the pending changes where there are any, else those of the newest entry."""
-    if package.pending:
-        for address, previous in package.previous.items():
-            yield Matter(change_link(address, package), previous.was)
-    elif package.history:
-        changes = package.history[0].changes
-        for change in changes[:MOST_CHANGES]:
-            yield Matter(change_link(change.address, package, change.name), change_text(change))
-        if len(changes) > MOST_CHANGES:
-            rest = f"{len(changes) - MOST_CHANGES} more changes follow from these"
+    """Yield the first of the changes; the trail has those that it records, the calcs mark all of them."""
+    changes = _latest(package)
+    for change in changes[:MOST_CHANGES]:
+        yield Matter(change_link(change.address, package, change.name), change_text(change))
+    if len(changes) > MOST_CHANGES:
+        rest = f"{len(changes) - MOST_CHANGES} more changes"
+        if package.pending:
+            yield Matter(Link("calcs", "#standing-of-calcs"), f"{rest}, marked there")
+        else:
             yield Matter(Link("trail", addresses.link(addresses.TRAIL)), rest)
+
+
+def _latest(package: PackageInput) -> Sequence[ChangeView]:
+    """Return the changes that the trail does not record yet where there are any, else its newest ones."""
+    if package.pending:
+        return package.unrecorded
+    return package.history[0].changes if package.history else ()
+
+
+def _downstream(package: PackageInput) -> Iterator[Matter]:
+    """Yield each calc that changes because of what feeds it, with the inputs that have changed."""
+    for number, changes in fed_changes(_latest(package)).items():
+        texts = [_fed_text(c, c.name.removeprefix(number).lstrip()) for c in changes]
+        more = f"; and {len(texts) - MOST_FED} more" if len(texts) > MOST_FED else ""
+        link = change_link(changes[0].address, package, number)
+        yield Matter(link, "; ".join(texts[:MOST_FED]) + more)
+
+
+def _fed_text(change: ChangeView, name: str) -> str:
+    """Return a fed input with what it was and is; by its name alone where that takes several numbers."""
+    return name if ";" in change.before else f"{name}: {change.before} → {change.after}"
+
+
+def fed_changes(changes: Iterable[ChangeView]) -> Mapping[str, Sequence[ChangeView]]:
+    """Return by calc, in order, the inputs that follow from changes of other calcs."""
+    found: dict[str, list[ChangeView]] = {}
+    for change in changes:
+        if change.fed:
+            found.setdefault(change.address.partition("#")[0], []).append(change)
+    return dict(sorted(found.items()))
 
 
 def change_link(address: str, package: PackageInput, name: str = "") -> Link:
@@ -206,7 +237,7 @@ def _item_link(address: str, package: PackageInput) -> Link:
     number, _, anchor = address.partition("#")
     if number == "references" and anchor in package.references:
         return Link(anchor, addresses.link(addresses.REFERENCES, anchor))
-    calc = next((c for c in package.calcs if c.number == number), None)
+    calc = package.by_number.get(number)
     if calc is None:
         return Link(address, addresses.link(addresses.TRAIL))
     known = addresses.anchors_of(calc) | {a for a, _ in addresses.assumptions_of(calc) if calc.segments}

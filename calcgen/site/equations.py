@@ -79,6 +79,11 @@ def stated(name: str, shown: Shown) -> Equation:
     return _equation(symbol(name), [(_EQUALS + quantity(shown),)])
 
 
+def named(name: str, text: str) -> Equation:
+    """Return a block that is known by a name: girder, section IPE 240. It is no value, and has no sign."""
+    return Equation(_element(symbol(name)), ((Markup('<span class="which">{}</span>').format(text),),))
+
+
 def check(row: CheckRow, source: SourceFile, remarks: Sequence[Markup] = ()) -> Equation:
     """Return a check: its statement, its sides with numbers put in, and how they stand to each other."""
     node, result = row.node.comparison, row.result
@@ -100,6 +105,31 @@ def combination(name: str, terms: Sequence[str]) -> Equation:
     """Return a combination of load cases; each term but the first has its sign."""
     first, *others = terms
     return _equation(symbol(name), [(_EQUALS + first, *others)])
+
+
+def set_expression(
+    terms: Sequence[tuple[tuple[str, ...], Sequence[tuple[tuple[str, ...], str]]]],
+) -> Equation:
+    """Return an expression of a combination set: each term has its factors and one load or alternatives."""
+
+    def product(factors: Sequence[str], last: str) -> str:
+        written = (f"<mn>{f}</mn>" if f[0].isdigit() else symbol(f) for f in factors)
+        return '<mspace width="0.17em"/>'.join([*written, last])
+
+    shown: list[str] = []
+    for factors, parts in terms:
+        loads = [product(own, symbol(load)) for own, load in parts]
+        either = "<mtext>&#xA0;or&#xA0;</mtext>".join(loads)
+        last = f"<mo>(</mo>{either}<mo>)</mo>" if len(loads) > 1 else either
+        sign = '<mo form="infix">+</mo>' if shown else ""
+        shown.append(sign + product(factors, last))
+    return _equation("", [tuple(shown)])
+
+
+def set_factors(values: Sequence[tuple[str, float]]) -> Equation:
+    """Return the factors of a combination set that belong together: ψ_0 = 0.7, ψ_1 = 0.5."""
+    written = [f"{symbol(name)}{_EQUALS}<mn>{value:.12g}</mn>" for name, value in values]
+    return _equation("", [(text + ("<mo>,</mo>" if text is not written[-1] else ""),) for text in written])
 
 
 def looked_up(lookup: Lookup) -> Equation:

@@ -12,12 +12,16 @@ _TAG = re.compile(r"<[^>]*>")
 
 @dataclass(frozen=True)
 class FigureSvg:
-    """A figure drawn twice; the ids in its texts are unique in the package."""
+    """A figure drawn twice; the ids in its texts are unique in the package.
+
+    `listed` is what belongs to it and has no room in one of the two.
+    """
 
     title: str
     description: str
     wide: str
     narrow: str
+    listed: tuple[str, ...] = ()
 
     @property
     def labels(self) -> str:

@@ -2,41 +2,56 @@
 
 from __future__ import annotations
 
-from collections.abc import Sequence
-
 from markupsafe import Markup, escape
 
 from calcgen.evaluation.results.beam import BeamResult
 from calcgen.evaluation.results.lines import CheckRow, DerivedRow, ProseResult, WorkingResult
 from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.results.stress import StressResult
-from calcgen.evaluation.results.table import Lookup, TableHead, TableResult
+from calcgen.evaluation.results.table import Lookup
 from calcgen.evaluation.results.vary import VaryResult
 from calcgen.language.nodes import Comparison, Formula, Name, Number, Text
 from calcgen.quantities.symbols import plain
 from calcgen.site.context import Context
 from calcgen.site.equations import looked_up
+from calcgen.site.views import RowView, ValueRow
 from calcgen.text import Span
 
 
 def remarks_on(node: Formula | Comparison, context: Context) -> tuple[Markup, ...]:
     """Return a remark for each value that a line looks up, unless the line itself says all of it."""
-    tables = {t.name: t for t in context.calc.segments if isinstance(t, TableResult)}
     found = []
     for lookup in context.calc.lookups:
         if _inside(lookup.span, node.span):
-            between = between_text(lookup, tables[lookup.table])
+            between = between_text(lookup)
             if between or not _says_all(node):
                 (step,) = looked_up(lookup).steps
                 found.append(Markup("").join([*step, escape(f", {between}" if between else "")]))
     return tuple(dict.fromkeys(found))
 
 
-def between_text(lookup: Lookup, table: TableResult) -> str:
+def between_text(lookup: Lookup) -> str:
     """Return the heads that a lookup interpolates between: 'between the rows 20 mm and 40 mm', or ''."""
-    along = [_two("rows", lookup.rows, table.rows), _two("columns", lookup.columns, table.columns)]
-    texts = [text for text in along if text]
+    along = (("rows", lookup.row_heads), ("columns", lookup.column_heads))
+    texts = [f"the {what} {heads[0]} and {heads[1]}" for what, heads in along if len(heads) > 1]
     return f"between {' and '.join(texts)}" if texts else ""
+
+
+def rows_of(table: str, context: Context) -> tuple[ValueRow, ...]:
+    """Return the values looked up in a table, each with what looks it up and between which heads."""
+    lookups = [lookup for lookup in context.calc.lookups if lookup.table == table]
+    return tuple(
+        ValueRow(
+            RowView(
+                f"{table}-lookup-{number}",
+                Markup("for ") + user_of(lookup, context),
+                escape(between_text(lookup)),
+                0,
+            ),
+            looked_up(lookup),
+        )
+        for number, lookup in enumerate(lookups, start=1)
+    )
 
 
 def user_of(lookup: Lookup, context: Context) -> Markup:
@@ -69,13 +84,6 @@ def _user(span: Span, context: Context) -> tuple[str, str]:
             case _:
                 pass
     return "", ""
-
-
-def _two(what: str, indices: Sequence[int], heads: Sequence[TableHead]) -> str:
-    if len(indices) < 2:
-        return ""
-    first, second = (heads[i].shown.text for i in indices)
-    return f"the {what} {first} and {second}"
 
 
 def _says_all(node: Formula | Comparison) -> bool:

@@ -1,4 +1,4 @@
-"""The registers over all calcs: inputs, assumptions, checks, references, and which calc feeds which."""
+"""The registers over all calcs: inputs, assumptions, checks, references."""
 
 from __future__ import annotations
 
@@ -9,11 +9,11 @@ from markupsafe import Markup
 
 from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.evaluation.results.lines import InputRow, InputsResult
-from calcgen.language.blocks.inputs import Feed, InputsBlock
-from calcgen.language.nodes import Citation, Column
+from calcgen.language.nodes import Citation
 from calcgen.site import addresses
 from calcgen.site.citations import cited_lines
 from calcgen.site.facts import PackageInput, ReferenceFacts
+from calcgen.site.feeds import source_link
 from calcgen.site.views import BarView, Link, bar, lettered, utilisation_text, words
 
 
@@ -66,30 +66,9 @@ class ReferenceEntry:
     places: tuple[Link, ...]
 
 
-@dataclass(frozen=True)
-class FeedEntry:
-    """A value that one calc takes from another."""
-
-    giver: Link
-    given: Markup
-    given_href: str
-    taker: Link
-    taken: Markup
-    taken_href: str
-    value: str
-
-
-@dataclass(frozen=True)
-class MapView:
-    """Which calc feeds which; `alone` are the calcs that neither feed nor are fed."""
-
-    feeds: tuple[FeedEntry, ...]
-    alone: tuple[Link, ...]
-
-
 def calc_link(calc: EvaluatedCalc) -> Link:
     """Return the link to a calc's page."""
-    return Link(calc.number, addresses.link(addresses.calc_page(calc.number)))
+    return Link(calc.number, addresses.calc_link(calc.number))
 
 
 def input_entries(package: PackageInput) -> tuple[InputEntry, ...]:
@@ -162,39 +141,6 @@ def reference_entries(package: PackageInput) -> tuple[ReferenceEntry, ...]:
     )
 
 
-def map_view(package: PackageInput) -> MapView:
-    """Return which calc feeds which."""
-    by_number = {calc.number: calc for calc in package.calcs}
-    feeds = []
-    linked: set[str] = set()
-    for calc, row in _inputs(package):
-        if row.origin is not None and row.origin.calc in by_number:
-            giver = by_number[row.origin.calc]
-            anchor = addresses.nearest_anchor(row.origin.name, addresses.anchors_of(giver))
-            linked |= {giver.number, calc.number}
-            feeds.append(
-                FeedEntry(
-                    calc_link(giver),
-                    lettered(tuple(row.origin.name.split("."))),
-                    addresses.link(addresses.calc_page(giver.number), anchor),
-                    calc_link(calc),
-                    lettered((row.name,)),
-                    _on_page(calc, row.name),
-                    row.shown.text,
-                )
-            )
-    for calc, feed in _unevaluated_feeds(package):
-        if feed.calc in by_number:
-            giver = by_number[feed.calc]
-            linked |= {giver.number, calc.number}
-            name = lettered(feed.name.parts)
-            source = addresses.source_line(calc.number, calc.calc.source.line_number(feed.span))
-            feeds.append(
-                FeedEntry(calc_link(giver), name, calc_link(giver).href, calc_link(calc), name, source, "—")
-            )
-    return MapView(tuple(feeds), tuple(calc_link(c) for c in package.calcs if c.number not in linked))
-
-
 def _inputs(package: PackageInput) -> Iterator[tuple[EvaluatedCalc, InputRow]]:
     for calc in package.calcs:
         for segment in calc.segments:
@@ -202,19 +148,9 @@ def _inputs(package: PackageInput) -> Iterator[tuple[EvaluatedCalc, InputRow]]:
                 yield from ((calc, row) for row in segment.rows if isinstance(row, InputRow))
 
 
-def _unevaluated_feeds(package: PackageInput) -> Iterator[tuple[EvaluatedCalc, Feed]]:
-    for calc in package.calcs:
-        for block in calc.calc.segments:
-            if isinstance(block, InputsBlock) and not calc.segments:
-                yield from ((calc, i.value) for i in block.items if isinstance(i.value, Feed))
-
-
 def _source_of(row: InputRow, package: PackageInput) -> Markup:
-    reference: Column = row.node.annotations.reference
-    if row.origin is None:
-        return words(reference, package.references)
-    href = addresses.link(addresses.calc_page(row.origin.calc))
-    return Markup('<a href="{}">{} of {}</a>').format(href, row.origin.name, row.origin.calc)
+    reference = words(row.node.annotations.reference, package.references)
+    return Markup(" ").join(part for part in (source_link(row, package), reference) if part)
 
 
 def _on_page(calc: EvaluatedCalc, anchor: str) -> str:

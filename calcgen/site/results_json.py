@@ -9,7 +9,7 @@ from typing import TypeAlias
 
 from calcgen.evaluation.results.beam import BeamResult
 from calcgen.evaluation.results.calc import EvaluatedCalc
-from calcgen.evaluation.results.common import Plain, Result
+from calcgen.evaluation.results.common import FedBlock, Plain, Result
 from calcgen.evaluation.results.lines import CheckResult, DerivedRow, InputRow, InputsResult, WorkingResult
 from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.results.stress import StressResult
@@ -48,6 +48,7 @@ def results(package: PackageInput) -> Json:
 def _calc(calc: EvaluatedCalc) -> Json:
     sections: dict[str, Json] = {}
     beams: dict[str, Json] = {}
+    combinations: dict[str, Json] = {}
     stresses: dict[str, Json] = {}
     inputs: dict[str, Json] = {}
     values: dict[str, Json] = {}
@@ -61,6 +62,8 @@ def _calc(calc: EvaluatedCalc) -> Json:
                 sections[segment.name] = _section(segment)
             case BeamResult():
                 beams[segment.name] = _beam(segment)
+                if segment.sets:
+                    combinations[segment.name] = _combinations(segment)
             case StressResult():
                 stresses[segment.name] = _stress(segment)
             case _:
@@ -74,6 +77,7 @@ def _calc(calc: EvaluatedCalc) -> Json:
         "sections": sections,
         "assumptions": _assumptions(calc),
         "beams": beams,
+        **({"combinations": combinations} if combinations else {}),
         "stresses": stresses,
         "methods": {},
         "checks": [_check(check) for check in calc.checks],
@@ -97,8 +101,14 @@ def _calc(calc: EvaluatedCalc) -> Json:
 
 def _input(row: InputRow) -> Json:
     annotations = row.node.annotations
-    texts: dict[str, Json] = {"note": annotations.note.text, "reference": annotations.reference.text}
-    return {**_value(row.value, row.shown), **texts, "line": row.line}
+    note, reference = annotations.note.text, annotations.reference.text
+    if isinstance(row.value, FedBlock):  # no value of its own: what it gives stands in the calc it comes from
+        origin = row.origin.text if row.origin is not None else ""
+        note = "; ".join(text for text in (note, f"{row.value.kind} {origin}: {row.shown.text}") if text)
+        value: dict[str, Json] = {"value": None, "unit": ""}
+    else:
+        value = _value(row.value, row.shown)
+    return {**value, "note": note, "reference": reference, "line": row.line}
 
 
 def _derived(row: DerivedRow) -> Json:
@@ -132,14 +142,33 @@ def _stress(stress: StressResult) -> Json:
 
 
 def _beam(beam: BeamResult) -> Json:
-    """Return the results by combination and group; without combinations they hang on the beam itself."""
+    """Return the results by combination and group; without combinations they hang on the beam itself.
+
+    So do influence lines, with combinations or without: each result and each ordinate by its name. Of a
+    standard set the group has results, and its combinations stand in 'combinations'.
+    """
     found: dict[str, Json] = {}
+    for line in beam.influences:
+        found |= _results((*line.results, *line.further, *(ordinate.result for ordinate in line.ordinates)))
     for group in beam.groups:
         if not group.name:
-            return _results((*group.results, *group.further))
-        found |= {c.name: _results(c.results) for c in group.combinations}
+            return found | _results((*group.results, *group.further))
+        found |= {c.name: _results(c.results) for c in group.combinations if c.results}
         found[group.name] = _results((*group.results, *group.further))
     return found
+
+
+def _combinations(beam: BeamResult) -> dict[str, Json]:
+    """Return the combinations that standard sets generate: group, factors and source."""
+    return {
+        c.name: {
+            "group": each.group,
+            "factors": {case: _number(factor) for case, factor in c.factors.items()},
+            "source": each.expressions[c.expression].source,
+        }
+        for each in beam.sets
+        for c in each.combinations
+    }
 
 
 def _results(results: Iterable[Result]) -> dict[str, Json]:

@@ -65,8 +65,9 @@ def entries(package: PackageInput) -> Iterator[Entry]:
         words = " ".join([entry.when, entry.who, entry.why, *changes])
         yield Entry(addresses.link(addresses.TRAIL, entry.anchor), "trail", entry.heading, words)
     for number, figure in enumerate(package.conventions, start=1):
-        href = addresses.link(addresses.CONVENTIONS, f"conventions-figure-{number}")
-        yield Entry(href, "figure", figure.title, f"{figure.description} {figure.labels}")
+        yield _figure(figure, addresses.link(addresses.CONVENTIONS, f"conventions-figure-{number}"))
+    for number, figure in enumerate(package.map, start=1):
+        yield _figure(figure, addresses.link(addresses.MAP, f"map-figure-{number}"))
 
 
 def spelled(name: str) -> str:
@@ -129,6 +130,11 @@ def _calc(calc: EvaluatedCalc, package: PackageInput) -> Iterator[Entry]:
                     yield from (
                         _result(r, at(addresses.result_anchor(segment.name, group.name, r.name)), owner)
                         for r in group.results
+                    )
+                for influence in segment.influences:
+                    yield from (
+                        _result(r, at(addresses.result_anchor(segment.name, "", r.name)), segment.name)
+                        for r in influence.results
                     )
                 yield from figures(segment.name)
             case StressResult():

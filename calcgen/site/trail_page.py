@@ -4,7 +4,7 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from calcgen.site.cover import change_link
+from calcgen.site.cover import change_link, fed_changes
 from calcgen.site.facts import PackageInput
 from calcgen.site.views import Link
 
@@ -21,7 +21,10 @@ class ChangeRow:
 
 @dataclass(frozen=True)
 class EntryView:
-    """One entry; `anchor` counts from the oldest, so that it keeps its address."""
+    """One entry; `anchor` counts from the oldest, so that it keeps its address.
+
+    `downstream` are the calcs that changed because of what feeds them.
+    """
 
     anchor: str
     heading: str
@@ -29,6 +32,7 @@ class EntryView:
     who: str
     why: str
     changes: tuple[ChangeRow, ...]
+    downstream: tuple[Link, ...]
 
 
 @dataclass(frozen=True)
@@ -53,6 +57,10 @@ def trail_view(package: PackageInput) -> TrailView:
                 tuple(
                     ChangeRow(change_link(c.address, package, c.name), c.what, c.before, c.after)
                     for c in entry.changes
+                ),
+                tuple(
+                    change_link(first.address, package, number)
+                    for number, (first, *_) in fed_changes(entry.changes).items()
                 ),
             )
             for index, entry in enumerate(package.history)

@@ -12,6 +12,7 @@ from calcgen.evaluation.results.common import Result, SecondRoute
 from calcgen.evaluation.results.lines import CheckResult
 from calcgen.language.nodes import Column
 from calcgen.quantities.display import number_text
+from calcgen.quantities.display import utilisation_text as utilisation_text
 from calcgen.quantities.symbols import symbol as symbol_of
 from calcgen.site import addresses
 from calcgen.site.equations import Equation, stated
@@ -147,16 +148,6 @@ def route_row(route: SecondRoute) -> RouteRow:
     what = lettered((route.what,)) if name else escape(route.what)
     residual = "0" if route.residual == 0 else number_text(route.residual, 2)
     return RouteRow(what, route.scale, residual, number_text(route.tolerance, 2), route.holds)
-
-
-def utilisation_text(value: float | None) -> str:
-    """Return a utilisation with three decimals, more where it would read 1.000 without being 1."""
-    if value is None:
-        return "—"
-    if abs(value) >= 10:
-        return number_text(value, 4)
-    texts = (f"{value:.{places}f}" for places in range(3, 13))
-    return next((t for t in texts if value == 1 or float(t) != 1), f"{value:.3f}").replace("-", "−")
 
 
 def bar(check: CheckResult | None) -> BarView | None:

@@ -14,13 +14,13 @@ DIGITS = 12  # significant digits of a float; hides last-bit differences between
 
 def normalised(value: Json) -> Json:
     """Return `value` with its floats rounded to 12 significant digits, and -0.0 as 0.0."""
+    if value is None or isinstance(value, str | int):
+        return value
     if isinstance(value, float):
         return float(f"{value:.{DIGITS}g}") + 0.0
     if isinstance(value, Mapping):
         return {key: normalised(item) for key, item in value.items()}
-    if isinstance(value, Sequence) and not isinstance(value, str):
-        return [normalised(item) for item in value]
-    return value
+    return [normalised(item) for item in value]
 
 
 def canonical(value: Json) -> str:

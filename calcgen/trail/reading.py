@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Iterator, Sequence
 from dataclasses import dataclass
+from functools import lru_cache
 from typing import Literal
 
 from calcgen.trail.entry import Entry, read_line
@@ -23,6 +24,7 @@ class Fault:
     hint: str = ""
 
 
+@lru_cache(maxsize=1)  # `watch` reads the same trail at every save
 def read_trail(text: str) -> tuple[Trail, tuple[Fault, ...]]:
     """Return the trail and its faults, in the order of the lines.
 

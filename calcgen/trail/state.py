@@ -2,11 +2,11 @@
 
 from __future__ import annotations
 
-from collections.abc import Iterable, Mapping, Sequence
+from collections.abc import Collection, Iterable, Mapping, Sequence
 
 from calcgen.evaluation.results.beam import BeamResult
 from calcgen.evaluation.results.calc import EvaluatedCalc
-from calcgen.evaluation.results.common import Plain, Result
+from calcgen.evaluation.results.common import FedBlock, Plain
 from calcgen.evaluation.results.lines import (
     AssumptionsResult,
     CheckResult,
@@ -16,6 +16,7 @@ from calcgen.evaluation.results.lines import (
     InputsResult,
     WorkingResult,
 )
+from calcgen.evaluation.results.named import named_results
 from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.results.stress import StressResult
 from calcgen.evaluation.results.table import TableResult
@@ -29,20 +30,25 @@ from calcgen.trail.changes import Item, State
 
 
 def state_of(
-    calcs: Sequence[EvaluatedCalc], references: Mapping[str, str], before: State, style: Style
+    calcs: Sequence[EvaluatedCalc],
+    references: Mapping[str, str],
+    before: State,
+    style: Style,
+    unread: Collection[str] = (),
 ) -> State:
     """Return the state of a project.
 
-    A calc that is in error or not evaluated keeps the items it had `before`: what cannot be evaluated now has
-    not been taken back. `references` gives each key's title and edition in one text.
+    A calc that is in error or not evaluated, or whose file cannot be read (`unread`), keeps the items it had
+    `before`: what cannot be evaluated now has not been taken back. `references` gives each key's title and
+    edition in one text.
     """
     state: dict[str, Item] = {
         f"references#{key}": {"kind": "reference", "text": text} for key, text in references.items()
     }
+    kept = {*unread, *(c.number for c in calcs if c.standing in ("in error", "not evaluated"))}
+    state |= {a: item for a, item in before.items() if a.partition("#")[0] in kept}
     for calc in calcs:
-        if calc.standing in ("in error", "not evaluated"):
-            state |= {a: i for a, i in before.items() if a.partition("#")[0] == calc.number}
-        else:
+        if calc.number not in kept:
             state |= {f"{calc.number}#{address}": item for address, item in _items(calc, style)}
     return state
 
@@ -58,7 +64,11 @@ def _items(calc: EvaluatedCalc, style: Style) -> Iterable[tuple[str, Item]]:
             case InputsResult(rows=inputs):
                 for row in inputs:
                     if isinstance(row, InputRow):
-                        yield row.name, _valued("input", text(row.node.statement_span), row.value, row, style)
+                        typed = text(row.node.statement_span)
+                        if isinstance(row.value, FedBlock):
+                            yield row.name, _fed(typed, row.value, row, style)
+                        else:
+                            yield row.name, _valued("input", typed, row.value, row, style)
             case WorkingResult(rows=rows):
                 for line in rows:
                     if isinstance(line, DerivedRow):
@@ -86,26 +96,27 @@ def _items(calc: EvaluatedCalc, style: Style) -> Iterable[tuple[str, Item]]:
 def _block(
     segment: SectionResult | BeamResult | StressResult, text: str, style: Style
 ) -> Iterable[tuple[str, Item]]:
-    results: dict[str, Json] = {}
     match segment:
         case SectionResult():
             kind = "section"
-            results = _results(segment.results, style)
-            for owner in segment.owners:
-                results |= {f"{owner.name}.{k}": v for k, v in _results(owner.results, style).items()}
         case BeamResult():
             kind = "beam"
-            for group in segment.groups:
-                prefix = f"{group.name}." if group.name else ""
-                results |= {prefix + k: v for k, v in _results(group.results, style).items()}
         case StressResult():
             kind = "stress"
-            results = _results(segment.results, style)
-            for name, rows in segment.parts.items():
-                results |= {f"{name}.{k}": v for k, v in _results(rows, style).items()}
             if segment.check is not None:
                 yield segment.check.address, _check(segment.check, f"{segment.name}: limit")
-    yield segment.name, {"kind": kind, "text": text, "results": results}
+    results = {name: r.value for name, r in named_results(segment)}
+    found = _results(results, style) | (_generated(segment) if isinstance(segment, BeamResult) else {})
+    yield segment.name, {"kind": kind, "text": text, "results": found}
+
+
+def _generated(beam: BeamResult) -> dict[str, Json]:
+    """Return the combinations of standard sets: factors change with inputs, or with the program."""
+    return {
+        c.name: [" + ".join(f"{rounded(factor):.12g}*{case}" for case, factor in c.factors.items()), ""]
+        for each in beam.sets
+        for c in each.combinations
+    }
 
 
 def _assumption(a: Assumption) -> Item:
@@ -135,8 +146,13 @@ def _check(result: CheckResult, statement: str) -> Item:
     }
 
 
-def _results(results: Iterable[Result], style: Style) -> dict[str, Json]:
-    return {r.name: list(plain_value(r.value, style)) for r in results}
+def _fed(text: str, block: FedBlock, row: InputRow, style: Style) -> Item:
+    """Return an input that is a block of another calc: which one it is, and what it gives."""
+    return {**_valued("input", text, block.what, row, style), "results": _results(block.results, style)}
+
+
+def _results(results: Mapping[str, Measure], style: Style) -> dict[str, Json]:
+    return {name: list(plain_value(value, style)) for name, value in results.items()}
 
 
 def plain_value(value: Plain, style: Style) -> tuple[float | str | bool, str]:

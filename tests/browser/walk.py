@@ -35,7 +35,8 @@ SURFACES = (
 _CHECKS = (Path(__file__).parent / "page_checks.js").read_text(encoding="utf-8")
 _LINKS = (
     "() => [...document.querySelectorAll('a[href], img[src], link[href], script[src]')]"
-    ".map((e) => e.href || e.src)"
+    # the address of a link in a figure is an object
+    ".map((e) => e.href?.baseVal === undefined ? e.href || e.src : new URL(e.href.baseVal, e.baseURI).href)"
 )
 _IDS = "() => [...document.querySelectorAll('[id]')].map((e) => e.id)"
 _FIGURES = (

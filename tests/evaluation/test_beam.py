@@ -525,13 +525,39 @@ def test_what_results_json_lists_beside_the_table() -> None:
         "θ_1",
         "θ_2",
         "θ_3",
-        "w_rel_max",
         "x_M_0_1",
         "x_V_0_1",
         "span_2.M_max",
-        "span_1.w_rel_max",
+        "span_1.C_b",
+        "span_2.C_1",
     } <= names
+    assert not {n for n in names if "w_rel" in n}  # no support moves: w itself
     (group, *_) = [g for g in result(beam(*TWO)).groups if g.name == "ULS"]
     names = {r.name for r in group.further}
     assert {"θ_1_max", "θ_3_min", "span_2.M_max"} <= names
     assert not {n for n in names if n.startswith("x_")}  # of which state?
+
+
+@pytest.mark.parametrize(
+    "moves",
+    [
+        ("support pin at 0 m", "support spring 2 kN/mm at 6 m"),
+        ("support pin at 0 m", "support roller at 6 m settles 5 mm in G"),
+        ("support pin at 0 m", "support roller at 4 m"),  # the overhang has no chord
+    ],
+)
+def test_deflections_from_the_chord_are_listed_where_they_are_others(moves: tuple[str, ...]) -> None:
+    lines = ("span = 6 m", "EI = 20000 kN·m^2", *moves, "load G uniform 10 kN/m")
+    (group,) = result(beam(*lines)).groups
+    assert {"w_rel_max", "w_rel_min"} <= {r.name for r in group.further}
+
+
+def test_shape_factors_are_listed_of_spans_from_support_to_support() -> None:
+    (group,) = result(beam("span = 6 m", "EI = 20000 kN·m^2", "load G uniform 10 kN/m")).groups
+    meanings = {r.name: r.meaning for r in group.further}
+    assert meanings["C_b"] == (
+        "moment shape factor of span 1 between its supports, AISC 360-16 equation F1-1"
+    )
+    fixed = ("span = 6 m", "EI = 20000 kN·m^2", "support fixed at 0 m", "load G uniform 10 kN/m")
+    (group,) = result(beam(*fixed)).groups
+    assert not {r.name for r in group.further} & {"C_b", "C_1"}  # a cantilever

@@ -204,13 +204,13 @@ def test_the_train_is_drawn_where_the_moment_is_largest() -> None:
     calc = beam(*RUNWAY, before=SECTION)
     upright, sideways = beam_drawings(result(calc), "b", Style("SI"))
     (case,) = upright.cases
-    assert case.title == "C, train as for M_max"
+    assert case.title == "C, train where it stands for the largest M"
     axles = [load for load in case.loads if isinstance(load, PointLoad)]
     assert [load.label.replace("\u00a0", " ") for load in axles] == ["100.0 kN", "100.0 kN"]
     assert abs(axles[0].x - axles[1].x) == pytest.approx(3)
     assert {round(load.x, 6) for load in axles} & {3.25, 4.75}  # L/2 ± a/4
     (lateral,) = sideways.cases
-    assert lateral.title == "C, train as for M_max_lat"
+    assert lateral.title == "C, train where it stands for the largest M sideways"
     diagrams = {d.title: d for d in upright.diagrams}
     moment = diagrams["moment M"]
     assert moment.lower

@@ -188,11 +188,11 @@ def test_a_case_not_taken_is_still_checked_for_dimensions() -> None:
     assert codes(calc(*lines, inputs=("d = 200 mm",))) == ["wrong-dimension"]
 
 
-def test_another_calc_takes_a_value_and_not_the_table() -> None:
+def test_another_calc_takes_the_table_or_one_of_its_values() -> None:
     lines = ("k_mod of C-1", 'k = k_mod("class 1", "short") of C-1', 'a = k_mod("class 9", "short") of C-1')
     _, user = evaluated("# Basis\n" + K_MOD, "# User\n" + fence("inputs", *lines))
     assert shown(user, "k") == "0.9000"
-    assert [(d.line, d.code) for d in user.diagnostics] == [(3, "block-is-no-value"), (5, "no-such-head")]
+    assert [(d.line, d.code) for d in user.diagnostics] == [(5, "no-such-head")]
 
 
 def test_values_and_heads_stay_as_typed() -> None:

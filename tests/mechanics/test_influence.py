@@ -213,3 +213,125 @@ def test_a_support_that_holds_one_plane_only() -> None:
     lines: Influence = influence(model, PLANES)
     assert lines.line("M_lat", 4.0, plane="lateral").extremes().max == pytest.approx(2.0, rel=EXACT)
     assert lines.line("M", 4.0).extremes().max == pytest.approx(0.0, abs=EXACT)
+
+
+# --- published values, and the equation of three moments --------------------------------------------------
+
+
+def support_moments(spans: list[float], x: float) -> list[float]:
+    """Moments over the supports under a unit load at x, by Clapeyron's equation of three moments.
+
+    M_{i-1} l_i + 2 M_i (l_i + l_{i+1}) + M_{i+1} l_{i+1} = -6 (A a/l)_i - 6 (A b/l)_{i+1}; for a load at a in
+    a span l, with b = l - a, the terms are ab(a + l)/l on its right support and ab(b + l)/l on its left one.
+    """
+    ends = np.concatenate([[0.0], np.cumsum(spans)])
+    n = len(spans)
+    matrix, known = np.eye(n + 1), np.zeros(n + 1)
+    for i in range(1, n):
+        matrix[i, i - 1 : i + 2] = spans[i - 1], 2 * (spans[i - 1] + spans[i]), spans[i]
+    number = min(int(np.searchsorted(ends, x, side="right")) - 1, n - 1)
+    length, a = spans[number], x - ends[number]
+    b = length - a
+    if number > 0:
+        known[number] -= a * b * (b + length) / length
+    if number < n - 1:
+        known[number + 1] -= a * b * (a + length) / length
+    return [float(value) for value in np.linalg.solve(matrix, known)]
+
+
+@pytest.mark.parametrize(
+    "spans", [[5.0, 5.0], [4.0, 6.0, 5.0], [3.0, 3.0, 3.0, 3.0], [8.0, 2.0, 7.0, 5.0, 1.0]]
+)
+def test_moments_over_supports_are_those_of_three_moments(spans: list[float]) -> None:
+    ends = [0.0, *np.cumsum(spans).tolist()]
+    model = prismatic(ends[-1], EI, tuple(pin(x) for x in ends))
+    lines = influence(model)
+    x = np.linspace(0.0, ends[-1], 67)
+    expected = np.array([support_moments(spans, float(at)) for at in x])
+    for number, place in enumerate(ends):
+        found = lines.line("M", place).values(x)
+        assert found == pytest.approx(expected[:, number], abs=EXACT * sum(spans))
+
+
+@pytest.mark.parametrize(
+    ("spans", "of", "place", "load", "value"),
+    [  # for spans of length 1, three or four figures as printed; all from memory
+        (2, "M", 0.4, 0.4, 0.2064),  # tables of influence lines of continuous beams
+        (2, "M", 0.5, 0.5, 0.2031),  # 13/64
+        (
+            2,
+            "R",
+            0,
+            0.5,
+            0.406,
+        ),  # AISC Steel Construction Manual, Table 3-23, two spans, load at midspan: 13/32
+        (2, "R", 1, 0.5, 0.688),  # the same: 22/32
+        (2, "R", 2, 0.5, -0.094),  # the same: -3/32
+        (3, "M", 1.0, 1.5, -0.075),  # three spans, load in the middle of the inner one: -3/40
+        (3, "M", 1.5, 1.5, 0.175),  # 7/40
+        (3, "M", 1.0, 0.5774, -0.1026),
+        (3, "M", 2.0, 0.5774, 0.0257),
+    ],
+)
+def test_published_ordinates(spans: int, of: str, place: float, load: float, value: float) -> None:
+    lines = influence(prismatic(float(spans), EI, tuple(pin(float(i)) for i in range(spans + 1))))
+    line = lines.line("M", place) if of == "M" else lines.reaction(int(place))
+    assert line.values(np.array([load]))[0] == pytest.approx(value, abs=0.00051 if of == "R" else 0.000051)
+
+
+def test_the_largest_span_moment_of_two_spans_under_one_load() -> None:
+    """0.2074 L, the load and the moment at 0.4323 L: the maximum over all places of the line's peak.
+
+    Known from tables as about 0.207 P L (from memory); here by scipy on x(1 - x) - x·x(1 - x²)/4.
+    """
+    from scipy.optimize import minimize_scalar
+
+    best = minimize_scalar(
+        lambda x: -(x * (1 - x) - x * x * (1 - x**2) / 4), bounds=(0.1, 0.9), method="bounded"
+    )
+    lines = influence(TWO_SPANS)
+    assert lines.line("M", float(best.x)).extremes().max == pytest.approx(-best.fun, rel=1e-9)
+    assert -best.fun == pytest.approx(0.2074, abs=5e-5)
+
+
+def test_ends_that_are_fixed() -> None:
+    """M_A = -ab²/L², R_A = b²(3a + b)/L³ for a load at a: textbooks, from memory."""
+    lines, L = influence(MODELS["fixed at both ends"]), 7.0
+    a = np.linspace(0.0, L, 15)
+    b = L - a
+    assert lines.line("M", 0.0, "right").values(a) == pytest.approx(-a * b**2 / L**2, abs=EXACT)
+    assert lines.reaction(0, "moment").values(a) == pytest.approx(a * b**2 / L**2, abs=EXACT)
+    assert lines.reaction(0).values(a) == pytest.approx(b**2 * (3 * a + b) / L**3, abs=EXACT)
+
+
+# --- beside a jump, areas ---------------------------------------------------------------------------------
+
+
+def test_a_line_beside_its_jump() -> None:
+    line = influence(SIMPLE).line("V", 2.0)
+    assert line.beside(2.0) == pytest.approx((-1 / 3, 2 / 3), rel=EXACT)
+    assert line.beside(2.0 + 1e-10) == line.beside(2.0)  # one place, within the model's tolerance
+    left, right = line.beside(3.0)
+    assert left == right == pytest.approx(0.5, rel=EXACT)
+    assert line.beside(0.0) == (0.0, 0.0)
+    assert influence(TWO_SPANS).line("M", 0.4).beside(1.0) == (0.0, 0.0)  # no rounding above a support
+
+
+def test_areas_of_the_parts() -> None:
+    """V at a of a simple beam: b²/(2L) and -a²/(2L); M at 0.4 of two spans: 0.095 and -0.025 L²."""
+    assert influence(SIMPLE).line("V", 2.0).areas() == pytest.approx((16 / 12, -4 / 12), rel=EXACT)
+    assert influence(TWO_SPANS).line("M", 0.4).areas() == pytest.approx((0.095, -0.025), rel=EXACT)
+    assert influence(SIMPLE).line("M", 2.0).areas() == pytest.approx((4.0, 0.0), rel=EXACT)
+
+
+@pytest.mark.parametrize("name", MODELS)
+def test_the_areas_of_both_signs_make_the_whole(name: str) -> None:
+    model = MODELS[name]
+    lines = influence(model)
+    for quantity in ("w", "slope", "M", "V"):
+        line = lines.line(quantity, 0.37 * model.length)
+        positive, negative = line.areas()
+        assert negative <= 0.0 <= positive
+        assert positive + negative == pytest.approx(
+            line.integral(0.0, model.length), abs=1e-12 * (positive - negative)
+        )

@@ -131,7 +131,7 @@ def pages(whole: PackageInput) -> Mapping[str, str]:
 class Outline(HTMLParser):
     """Reads a page: its ids, its links, its headings; complains about tags that do not match."""
 
-    VOID = frozenset({"meta", "link", "input", "br", "img", "col", "hr"})
+    VOID = frozenset({"meta", "link", "input", "br", "img", "col", "hr", "wbr"})
 
     def __init__(self, text: str) -> None:
         super().__init__(convert_charrefs=True)

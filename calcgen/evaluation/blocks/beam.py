@@ -4,14 +4,20 @@ from __future__ import annotations
 
 import math
 import re
-from collections.abc import Sequence
+from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
 
+from calcgen.evaluation.blocks.beam_influence_results import (
+    influence_named,
+    influence_route,
+    read_influence,
+    solved_influences,
+)
 from calcgen.evaluation.blocks.beam_lines import SPAN, is_result, length_text
 from calcgen.evaluation.blocks.beam_model import BeamData, read_beam
 from calcgen.evaluation.blocks.beam_premises import premises
 from calcgen.evaluation.blocks.beam_reading import Reading, beam_measure
-from calcgen.evaluation.blocks.beam_results import group_results, relieving_cases
+from calcgen.evaluation.blocks.beam_results import group_results, places_of_results, relieving_cases
 from calcgen.evaluation.blocks.beam_second_route import second_route
 from calcgen.evaluation.blocks.beam_states import Solved, States
 from calcgen.evaluation.results.beam import BeamResult, CombinationResult, GroupResult
@@ -39,6 +45,17 @@ class BeamThing:
     def read(self, name: Name, arguments: tuple[Plain, ...] | None, report: Report) -> Measure | None:
         """Return a result; report one that does not exist, or that has several states."""
         parts, spans = list(name.parts[1:]), list(name.spans[1:])
+        line = influence_named(self.result, parts[-1])
+        if line is not None and len(parts) == 1:
+            return read_influence(self.result, line, parts[0], arguments, self.style, report, spans[0])
+        if line is not None:
+            report.error(
+                "no-such-result",
+                spans[-1],
+                f"the influence line '{plain(line.name)}' belongs to the beam as a whole",
+                hint=f"write {self.result.name}.{parts[-1]}",
+            )
+            return None
         states = self._states(parts, spans, report)
         if states is None:
             return None
@@ -74,6 +91,14 @@ class BeamThing:
         singles = {c.name: c.states for g in self.result.groups for c in g.combinations}
         known = {**singles, **groups}
         head = parts[0]
+        if not known:
+            report.error(
+                "no-such-result",
+                spans[0],
+                f"the beam '{plain(self.result.name)}' has no load, so it has influence lines alone",
+                hint=f"such as {self.result.name}.{self.result.influences[0].name}_max",
+            )
+            return None
         if head in known:
             parts.pop(0)
             spans.pop(0)
@@ -113,26 +138,33 @@ def evaluate_beam(block: BeamBlock, scope: Scope) -> BeamResult | FailedBlock:
 def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None:
     name = block.target.name
     try:
-        solved = Solved(data.model, data.actions, solve(data.model, data.actions.cases))
+        grouped = _grouped(data)
+        cuts = places_of_results(data.model, _ends(data.spans))
+        cases = solve(data.model, data.actions.cases)
+        solved = Solved(data.model, data.actions, cases, tuple(grouped.values()), cuts)
     except UnstableBeam as fault:
-        scope.report.error(
-            "unstable", block.head_span, _motion(fault, scope.style), hint="add a support, or remove a hinge"
-        )
+        support = "a support" if fault.plane == "vertical" else "a support that holds it sideways"
+        hint = f"add {support}{', or remove a hinge' if fault.hinges else ''}"
+        scope.report.error("unstable", block.head_span, _motion(fault, scope.style), hint=hint)
         return None
     except ValueError as fault:
         scope.report.error("beam", block.head_span, str(fault))
         return None
-    groups = _groups(data, solved, scope.style)
-    if not groups:
+    groups = _groups(data, grouped, solved, scope.style)
+    influences = solved_influences(data.influences, data.model, scope.style, scope.report)
+    if influences is None:
+        return None
+    if not groups and not influences:
         scope.report.error("load-missing", block.head_span, f"the beam '{plain(name)}' has no load")
         return None
     for group in groups:
-        for case in relieving_cases(group, solved.cases, data.case_kinds):
+        for case, (governs, factor) in relieving_cases(group, solved.cases, data.case_kinds).items():
             scope.report.warning(
                 "relieving-permanent",
                 block.head_span,
-                f"the permanent case '{case}' relieves in '{group.name}', and no combination takes it at 1.0",
-                hint=f"add a combination with 1.0*{case}",
+                f"the permanent case '{case}' relieves in '{plain(group.name)}', where {plain(governs)} "
+                f"governs and takes it at {factor:.12g}",
+                hint=f"add a combination like {plain(governs)} with 1.0*{case}",
             )
     return BeamResult(
         name=name,
@@ -148,15 +180,33 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         settings=_shown_settings(data, scope.style),
         restrained=data.is_restrained if data.restrained is not None else None,
         premises=premises(name, data, groups, _other_deflection(data, groups), scope.style),
-        second_route=second_route(name, data, groups),
+        second_route=(
+            *second_route(name, data, groups),
+            *influence_route(name, data.model, data.influences, influences),
+        ),
         lines=_lines(block, scope),
         line=scope.report.source.line_number(block.head_span),
         span=block.head_span,
+        influences=influences,
+        sets=data.sets.results,
+        set_factors=data.sets.factors,
+        section_names=data.section_names,
     )
 
 
-def _groups(data: BeamData, solved: Solved, style: Style) -> tuple[GroupResult, ...]:
-    """Return the groups of combinations with their results; without any written, all cases act together."""
+def _grouped(data: BeamData) -> dict[str, list[Combination]]:
+    """Return the combinations by their group; without any written, all cases act together."""
+    by_group: dict[str, list[Combination]] = {}
+    for written in data.combinations:
+        combination = Combination(written.name, written.factors)
+        by_group.setdefault(written.group or written.name, []).append(combination)
+    return by_group or {"": [Combination("", dict.fromkeys(data.actions.cases, 1.0))]}
+
+
+def _groups(
+    data: BeamData, grouped: Mapping[str, Sequence[Combination]], solved: Solved, style: Style
+) -> tuple[GroupResult, ...]:
+    """Return the groups of combinations with their results."""
     if not solved.cases:
         return ()
     spans = _ends(data.spans)
@@ -164,16 +214,13 @@ def _groups(data: BeamData, solved: Solved, style: Style) -> tuple[GroupResult, 
     def results(states: States) -> tuple[tuple[Result, ...], tuple[Result, ...]]:
         return group_results(states, data.model, spans, style, beam_measure)
 
-    by_group: dict[str, list[Combination]] = {}
-    for written in data.combinations:
-        combination = Combination(written.name, written.factors)
-        by_group.setdefault(written.group or written.name, []).append(combination)
+    generated = {c.name for c in data.combinations if c.generated}
     groups: list[GroupResult] = []
-    for name, combinations in (by_group or {"": [_everything(data)]}).items():
+    for name, combinations in grouped.items():
         members: list[CombinationResult] = []
         for c in combinations:
             states = solved.states([c])
-            shown, further = results(states)
+            shown, further = ((), ()) if c.name in generated and len(combinations) > 1 else results(states)
             members.append(CombinationResult(c.name, c.factors, states, (*shown, *further)))
         if len(members) > 1:
             states = solved.states(combinations)
@@ -182,17 +229,14 @@ def _groups(data: BeamData, solved: Solved, style: Style) -> tuple[GroupResult, 
     return tuple(groups)
 
 
-def _everything(data: BeamData) -> Combination:
-    return Combination("", dict.fromkeys(data.actions.cases, 1.0))
-
-
 def _other_deflection(data: BeamData, groups: Sequence[GroupResult]) -> float | None:
     """Return the largest deflection by the other choice about shear, None where it is not known."""
-    if data.shear.other is None:
+    if data.shear.other is None or not groups:
         return None
-    other = Solved(data.shear.other, data.actions, solve(data.shear.other, data.actions.cases))
-    found = [other.states([Combination(c.name, c.factors) for c in g.combinations]) for g in groups]
-    return max(abs(states.extremes("w").abs.value) for states in found)
+    grouped = tuple(_grouped(data).values())
+    cases = solve(data.shear.other, data.actions.cases)
+    other = Solved(data.shear.other, data.actions, cases, grouped)
+    return max(abs(other.states(group).extremes("w").abs.value) for group in grouped)
 
 
 def _ends(lengths: tuple[float, ...]) -> tuple[tuple[float, float], ...]:

@@ -19,15 +19,18 @@ def arrangement(
 
     A length is named by its number among the `spans` written, else by its ends.
     """
-    patterns = (_pattern(p, effects, spans, style) for p in effect.patterns)
+    patterns = (pattern_text(p, effects, spans, style) for p in effect.patterns)
     trains = (_train(t, effects, style) for t in effect.trains)
     return (*patterns, *trains)
 
 
-def _pattern(pattern: Pattern, effects: Effects, spans: Sequence[tuple[float, float]], style: Style) -> str:
+def pattern_text(
+    pattern: Pattern, effects: Effects, spans: Sequence[tuple[float, float]], style: Style
+) -> str:
+    """Return the lengths on which a case acts: 'Q on spans 1 and 3', or 'without Q'."""
     case = plain(pattern.case)
     if not pattern.lengths:
-        return f"{case} on no span"
+        return f"without {case}"
     numbers: list[str] = []
     others: list[str] = []
     for index in pattern.lengths:

@@ -2,17 +2,21 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Collection, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 
 from calcgen.evaluation.blocks.beam_lines import Lines
+from calcgen.evaluation.blocks.beam_sets import BeamSets
+from calcgen.evaluation.results.beam import SetResult
 from calcgen.language.blocks.beam import (
     CaseLine,
     CombinationLine,
     LoadLine,
+    SetLine,
     SupportLine,
     TrainLine,
 )
+from calcgen.language.nodes import Named
 from calcgen.mechanics.beam import (
     Load,
 )
@@ -21,12 +25,16 @@ from calcgen.text import Span, nearest
 
 @dataclass(frozen=True)
 class Combination:
-    """A combination's name, its group ('' where none is written) and the factor of each case."""
+    """A combination's name, its group ('' where none is written) and the factor of each case.
+
+    `generated`: by a standard set, from the kinds of the cases.
+    """
 
     name: str
     group: str
     factors: Mapping[str, float]
     span: Span
+    generated: bool = False
 
 
 def case_kinds(lines: Lines) -> dict[str, str]:
@@ -41,13 +49,18 @@ def case_kinds(lines: Lines) -> dict[str, str]:
 
 
 def combinations_of(
-    lines: Lines, kinds: Mapping[str, str], cases: Mapping[str, list[Load]]
+    lines: Lines, kinds: Mapping[str, str], cases: Mapping[str, list[Load]], sets: BeamSets
 ) -> tuple[Combination, ...]:
-    """Return the combinations; report what they name and what they leave out."""
+    """Return the combinations, written and generated; report what they name and what they leave out."""
     typed = lines.of(CombinationLine)
     groups = {line.group.name for line in typed if line.group is not None}
+    groups |= {line.target.name for line in lines.of(SetLine)}
     found: list[Combination] = []
-    for line in typed:
+    for line in lines.block.lines:
+        if isinstance(line, SetLine) and line.span in sets.by_line:
+            found += _generated(lines, line, sets.by_line[line.span], groups, {c.name for c in found})
+        if not isinstance(line, CombinationLine):
+            continue
         name = line.target.name
         if any(c.name == name for c in found):
             lines.fault("written-twice", line.target.span, f"the combination '{name}' is given twice")
@@ -71,6 +84,30 @@ def combinations_of(
             factors[case] = factors.get(case, 0.0) + term.sign * factor
         group = line.group.name if line.group is not None else ""
         found.append(Combination(name, group, factors, line.span))
+    _warn_of_unused(lines, found)
+    return tuple(found)
+
+
+def _generated(
+    lines: Lines, line: SetLine, result: SetResult, groups: Collection[str], names: Collection[str]
+) -> Iterator[Combination]:
+    """Give the combinations of a set; report a name that is taken."""
+    lines.keep_free_of_results(line.target)
+    lines.keep_free_of_results(Named(result.combinations[0].name, line.target.span))
+    taken = [c.name for c in result.combinations if c.name in names or c.name in groups]
+    if taken:
+        lines.fault(
+            "written-twice",
+            line.target.span,
+            f"this set makes a combination '{taken[0]}', and there is one, or a group, of that name",
+            hint="choose another name for the set's group, or for the other",
+        )
+    for c in result.combinations:
+        yield Combination(c.name, result.group, c.factors, line.span, generated=True)
+
+
+def _warn_of_unused(lines: Lines, found: Sequence[Combination]) -> None:
+    """Report settlements and cases that are in no combination."""
     used = {case for c in found for case in c.factors}
     settling = [s for s in lines.of(SupportLine) if s.settles is not None]
     for support in settling if found else ():
@@ -93,4 +130,3 @@ def combinations_of(
                 f"no combination uses the load case '{target.name}'",
                 hint="its loads have no effect on any result",
             )
-    return tuple(found)

@@ -23,7 +23,7 @@ EXTREME = re.compile(r"^(x_)?(M|V|w|slope|w_rel)_(max|min|abs)(_lat)?$")
 REACTION = re.compile(r"^(R|M_R|θ)_([1-9]\d*)(?:_(max|min))?(_lat)?$")
 CROSSING = re.compile(r"^x_(M|V)_0(?:_([1-9]\d*))?(_lat)?$")
 SHAPE = re.compile(r"^(C_b|C_1)$")
-STATE = re.compile(r"^(M|V|w|slope)(_lat)?$")
+STATE = re.compile(r"^(M|V|w|slope|w_rel)(_lat)?$")
 SPAN = re.compile(r"^span_([1-9]\d*)$")
 
 

@@ -5,9 +5,12 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 
+from calcgen.evaluation.blocks.beam_carried import require_carried
 from calcgen.evaluation.blocks.beam_combinations import Combination, case_kinds, combinations_of
+from calcgen.evaluation.blocks.beam_influence import Wanted, influences_of
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.blocks.beam_loads import loads_of
+from calcgen.evaluation.blocks.beam_sets import BeamSets, sets_of
 from calcgen.evaluation.blocks.beam_shear import ShearDeformation, choose, shear_modulus_of, shear_stiffnesses
 from calcgen.evaluation.blocks.beam_stiffness import common_modulus, modulus_of, properties_of, stiffness_of
 from calcgen.evaluation.blocks.beam_supports import hinges_of, supports_of
@@ -32,7 +35,8 @@ from calcgen.text import Related
 class BeamData:
     """A beam block in SI: the model, what acts on it in each case, and what the page shows beside them.
 
-    `sections` holds the section of each stretch that has one; `G` and `expansion` stand where they are given.
+    `sections` holds the section of each stretch that has one, `section_names` its name, or '' without one, for
+    every stretch; `G` and `expansion` stand where they are given.
     """
 
     model: BeamModel
@@ -41,15 +45,18 @@ class BeamData:
     rows: tuple[LoadRow, ...]
     combinations: tuple[Combination, ...]
     sections: tuple[SectionThing, ...]
+    section_names: tuple[str, ...]
     E: Measure | None
     G: Measure | None
     expansion: Measure | None
     shear: ShearDeformation
     support_kinds: tuple[str, ...]
-    support_notes: tuple[str, ...]
+    support_notes: tuple[tuple[str, str], ...]
     restrained: BeamSetting | None
     is_restrained: bool
     spans: tuple[float, ...]
+    influences: tuple[Wanted, ...]
+    sets: BeamSets
 
 
 def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
@@ -75,7 +82,8 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         cases.setdefault(case, []).append(load)
     trains, train_rows = trains_of(lines, kinds)
     patterned = patterned_of(lines, kinds, cases)
-    combinations = combinations_of(lines, kinds, cases)
+    sets = sets_of(lines, kinds, cases, patterned | trains.keys(), settings)
+    combinations = combinations_of(lines, kinds, cases, sets)
     if lines.failed:
         return None
     stretches = tuple(Stretch(p.start, p.end, stiffness_of(p, restrained=is_restrained)) for p in properties)
@@ -85,10 +93,13 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         lines.fault("beam", lines.block.head_span, str(fault))
         return None
     require_lateral(lines, model)
+    require_carried(lines, model)
     sections = tuple(p.section for p in properties if p.section is not None)
     model, shear = choose(
         lines, model, sections, shear_stiffness, settings.get("shear_deformation"), wanted=shears
     )
+    groups = {name: c.span for c in combinations for name in (c.name, c.group) if name}
+    influences = influences_of(lines, model, groups)
     if lines.failed:
         return None
     return BeamData(
@@ -98,6 +109,7 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         rows=(*rows, *train_rows),
         combinations=combinations,
         sections=sections,
+        section_names=tuple(p.section.result.name if p.section is not None else "" for p in properties),
         E=common_modulus(properties, E),
         G=G,
         expansion=expansion,
@@ -107,6 +119,8 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         restrained=settings.get("restrained"),
         is_restrained=is_restrained,
         spans=spans,
+        influences=influences,
+        sets=sets,
     )
 
 

@@ -31,11 +31,14 @@ def premises(
 
     lengths = [b - a for a, b in data.model.spans] or [data.model.length]
     unit: Literal["in", "mm"] = "in" if style.system == "US" else "mm"
-    deflections = [abs(g.states.extremes("w").abs.value) for g in groups]
-    _shear(data, max(deflections), other_w, add)
-    share = max(deflections) / max(lengths)
-    shown = length_text(max(deflections), style, unit)
-    if share <= SMALL:
+    w = max((abs(g.states.extremes("w").abs.value) for g in groups), default=0.0)
+    _shear(data, w, other_w, add)
+    share = w / max(lengths)
+    shown = length_text(w, style, unit)
+    if not groups:
+        detail = "no load is written; influence lines hold for small deflections"
+        add("small deflections", "left to judgement", detail)
+    elif share <= SMALL:
         add("small deflections", "met", f"the largest, {shown}, is at most 1/{1 / SMALL:.0f} of the span")
     else:
         add(

@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 import re
+from collections.abc import Callable
 from dataclasses import dataclass
 
 from calcgen.evaluation.blocks.beam_lines import CROSSING, EXTREME, REACTION, SHAPE, STATE, length_text
@@ -10,7 +11,7 @@ from calcgen.evaluation.blocks.beam_spans import chord_range, least_shape
 from calcgen.evaluation.blocks.beam_states import States, Varying, names_of, single
 from calcgen.evaluation.results.beam import BeamResult
 from calcgen.evaluation.results.common import Plain
-from calcgen.mechanics.beam import CaseSolution, Plane, Quantity
+from calcgen.mechanics.beam import BeamModel, CaseSolution, Plane, Quantity, relative_to_chord
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.quantities.display import Style
 from calcgen.quantities.measure import Measure, from_si
@@ -69,11 +70,15 @@ class Reading:
             return self._extreme(extreme, stretch)
         if extreme and extreme[2] == "w_rel" and place is not None:
             return self._fault(
-                f"'{word}' is a result of a span, not of a place", f"write {word}, or span_1.{word}"
+                f"'{word}' is a result of a span, not of a place",
+                f"write {word}, or w_rel{extreme[4] or ''}(…) for one place",
             )
-        if extreme and place is not None and extreme[3] != "abs" and not extreme[1]:
+        if extreme and place is not None and not extreme[1]:
             there = self.states.at(_quantity(extreme[2], extreme[4]), place)
-            return self._measure(extreme[2], getattr(there, extreme[3]).value)
+            value = getattr(there, extreme[3]).value
+            return self._measure(extreme[2], abs(value) if extreme[3] == "abs" else value)
+        if state and state[1] == "w_rel" and place is not None:
+            return self._from_chord(word, "lateral" if state[2] else "vertical", place)
         if state and place is not None:
             solution = self._one_state(word, f"{word}_max(…)")
             if solution is None:
@@ -83,11 +88,15 @@ class Reading:
             return self._fault(
                 f"'{word}' is a result at a place", f"write {word}(2.5 m), or {word}_max for the largest"
             )
-        if reaction and place is None and stretch is None:
+        if reaction and stretch is not None:
+            return self._fault(
+                "a support belongs to the beam, not to a span", f"write {word} without the span"
+            )
+        if reaction and place is None:
             return self._turning(reaction) if reaction[1] == "θ" else self._reaction(reaction)
         if (crossing := CROSSING.match(word)) and place is None:
             return self._crossing(crossing, stretch)
-        close = nearest(word, _KNOWN)
+        close = nearest(word, (*_KNOWN, *(line.name for line in self.beam.influences)))
         return self._fault(
             f"a beam has no result '{plain(word)}'",
             f"the nearest is '{close}'" if close else ", ".join(_KNOWN),
@@ -104,16 +113,7 @@ class Reading:
     def _place(self, arguments: tuple[Plain, ...] | None) -> float | None:
         if arguments is None:
             return None
-        length = from_si(1.0, "m").dimension
-        if len(arguments) != 1 or not isinstance(arguments[0], Measure) or arguments[0].dimension != length:
-            self._fault("a place on the beam is a length from its start", "such as M(2.5 m)")
-            return None
-        x = arguments[0].si
-        if not -1e-9 <= x / self.beam.model.length <= 1 + 1e-9:
-            end = length_text(self.beam.model.length, self.style, self._unit)
-            self._fault("the place lies outside the beam", f"the beam runs from 0 to {end}")
-            return None
-        return min(max(x, 0.0), self.beam.model.length)
+        return place_of(self.beam.model, arguments, self.style, self._fault)
 
     def _one_state(self, word: str, instead: str) -> CaseSolution | None:
         solution = single(self.states)
@@ -152,6 +152,21 @@ class Reading:
         if match[1]:
             return self._measure("x", governing.x)
         return self._measure(match[2], abs(governing.value) if match[3] == "abs" else governing.value)
+
+    def _from_chord(self, word: str, plane: Plane, place: float) -> Measure | None:
+        """Return the deflection at a place from the chord of its span; beyond the supports there is none."""
+        solution = self._one_state(word, f"{word}_max")
+        if solution is None:
+            return None
+        model, least = self.beam.model, self.beam.model.tolerance
+        span = next(((a, b) for a, b in model.spans_in(plane) if a - least <= place <= b + least), None)
+        if span is None:
+            return self._fault(
+                "the place lies in no span between two supports that hold the deflection",
+                "w is counted from the undeflected axis",
+            )
+        quantity: Quantity = "w" if plane == "vertical" else "w_lat"
+        return self._measure("w", relative_to_chord(solution, *span, plane).at(quantity, place))
 
     def _reaction(self, match: re.Match[str]) -> Measure | None:
         number, which = int(match[2]), match[3]
@@ -237,6 +252,22 @@ class Reading:
 
     def _measure(self, quantity: str, value: float) -> Measure:
         return beam_measure(quantity, value, self.style)
+
+
+def place_of(
+    model: BeamModel, arguments: tuple[Plain, ...], style: Style, fault: Callable[[str, str], object]
+) -> float | None:
+    """Return the one place on the beam that is asked for, m; call `fault` where it is none."""
+    length = from_si(1.0, "m").dimension
+    if len(arguments) != 1 or not isinstance(arguments[0], Measure) or arguments[0].dimension != length:
+        fault("a place on the beam is a length from its start", "such as M(2.5 m)")
+        return None
+    x = arguments[0].si
+    if not -1e-9 <= x / model.length <= 1 + 1e-9:
+        end = length_text(model.length, style, "ft" if style.system == "US" else "m")
+        fault("the place lies outside the beam", f"the beam runs from 0 to {end}")
+        return None
+    return min(max(x, 0.0), model.length)
 
 
 def beam_measure(quantity: str, value: float, style: Style) -> Measure:

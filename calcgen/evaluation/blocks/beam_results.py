@@ -6,7 +6,7 @@ from collections.abc import Callable, Iterator, Mapping, Sequence
 from dataclasses import dataclass, replace
 
 from calcgen.evaluation.blocks.beam_arrangement import arrangement
-from calcgen.evaluation.blocks.beam_spans import chord_range
+from calcgen.evaluation.blocks.beam_spans import chord_range, least_shape
 from calcgen.evaluation.blocks.beam_states import Found, States, Varying, names_of, single
 from calcgen.evaluation.results.beam import GroupResult
 from calcgen.evaluation.results.common import Result
@@ -14,7 +14,7 @@ from calcgen.mechanics.actions import Effect
 from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.quantities.display import Style, show
-from calcgen.quantities.measure import Measure
+from calcgen.quantities.measure import Measure, from_si
 
 Measured = Callable[[str, float, Style], Measure]
 
@@ -29,6 +29,7 @@ _SENSE_LAT = {
     "w": ("sideways deflection", "positive to the right"),
 }
 _SIDEWAYS: tuple[Quantity, ...] = ("w_lat", "M_lat")
+SAME = 1e-9  # part of the largest deflection below which two are the same
 LISTED_SPANS = 12  # up to so many spans are listed one by one; those of a longer beam are read by name
 
 
@@ -102,10 +103,16 @@ class _Rows:
     def from_chords(
         self, suffix: str, span: tuple[float, float] | None = None, stem: str = ""
     ) -> Iterator[Result]:
-        """Give the largest and smallest deflection from the chord of its span."""
+        """Give the largest and smallest deflection from the chord of its span, where w itself is another."""
         start, end = span if span is not None else (None, None)
         found = chord_range(self.states, "lateral" if suffix else "vertical", start, end)
+        quantity: Quantity = f"w{suffix}"  # type: ignore[assignment]
         if found is None:
+            return
+        own = self.states.extremes(quantity, start, end)
+        if max(abs(found.max.value - own.max.value), abs(found.min.value - own.min.value)) <= (
+            SAME * abs(own.abs.value)
+        ):
             return
         for which, adjective, governing in (("max", "largest", found.max), ("min", "smallest", found.min)):
             meaning = (
@@ -125,6 +132,17 @@ class _Rows:
                 name = f"x_{symbol}_0_{number}{suffix}"
                 yield Result(name, f"{meaning} {number}", place, show(place, self.style))
 
+    def shapes(self, number: int, span: tuple[float, float], model: BeamModel, stem: str) -> Iterator[Result]:
+        """Give the moment shape factors of a span from support to support, the smallest over combinations."""
+        supported = any(all(map(model.same, span, other)) for other in model.spans)
+        if isinstance(self.states, Varying) or not supported:
+            return
+        least = "smallest " if self.several else ""
+        for factor, value in least_shape(self.states.solutions, *span).items():
+            meaning = f"{least}moment shape factor of span {number} between its supports, {_SHAPES[factor]}"
+            measure = from_si(value, "")
+            yield Result(f"{stem}{factor}", meaning, measure, show(measure, self.style))
+
     def of_span(self, number: int, span: tuple[float, float], suffix: str) -> Iterator[Result]:
         """Give the extremes of one span."""
         stem = f"span_{number}."
@@ -139,6 +157,7 @@ class _Rows:
         yield from self.from_chords(suffix, span, stem)
 
 
+_SHAPES = {"C_b": "AISC 360-16 equation F1-1", "C_1": "for ends free to warp and to turn sideways"}
 _FROM_ABOVE = {"": "", "_lat": " seen from above"}
 _PARTS: dict[tuple[str, str], ReactionPart] = {
     ("R", ""): "force",
@@ -165,7 +184,7 @@ def group_results(
 
     Shown are extremes with place, combination and arrangement of loads, and reactions; the further ones are
     magnitudes, reactions by the names that the table does not use, rotations at supports, deflections from
-    the chords, the places where M and V change sign, and the extremes of each of `spans`.
+    the chords, the places where M and V change sign, and the extremes and shape factors of each of `spans`.
     """
     rows = _Rows(states, spans, style, measured)
     shown: list[Result] = []
@@ -192,7 +211,17 @@ def group_results(
         if 1 < len(spans) <= LISTED_SPANS:
             for number, span in enumerate(spans, start=1):
                 further += rows.of_span(number, span, suffix)
+    for number, span in enumerate(spans[:LISTED_SPANS], start=1):
+        further += rows.shapes(number, span, model, f"span_{number}." if len(spans) > 1 else "")
     return tuple(shown), tuple(further)
+
+
+def places_of_results(model: BeamModel, spans: Sequence[tuple[float, float]]) -> tuple[float, ...]:
+    """Return the places between which `group_results` asks for extremes, m."""
+    if not 1 < len(spans) <= LISTED_SPANS:
+        return ()
+    held = (*model.spans_in("vertical"), *model.spans_in("lateral"))
+    return tuple(x for ends in (*spans, *held) for x in ends)
 
 
 def moves_sideways(states: States | CaseSolution, model: BeamModel) -> bool:
@@ -208,22 +237,28 @@ def moves_sideways(states: States | CaseSolution, model: BeamModel) -> bool:
 
 def relieving_cases(
     group: GroupResult, solutions: Mapping[str, CaseSolution], kinds: Mapping[str, str]
-) -> tuple[str, ...]:
-    """Return the permanent cases that act against a governing moment or reaction, never taken at 1.0.
+) -> dict[str, tuple[str, float]]:
+    """Return the permanent cases that act against a governing moment or reaction and stand above 1.0 there.
 
-    A share below a hundredth of the governing value does not count.
+    Each with the combination that governs and its factor. A share below a hundredth of the governing value
+    does not count.
     """
-    found: list[str] = []
+    factors = {c.name: c.factors for c in group.combinations}
+    found: dict[str, tuple[str, float]] = {}
     for case in solutions:
-        factors = [c.factors[case] for c in group.combinations if case in c.factors]
-        if kinds.get(case) != "permanent" or not factors or any(abs(f - 1.0) < 1e-12 for f in factors):
+        if kinds.get(case) != "permanent":
             continue
         moments = group.states.extremes("M")
-        shares = [(m.value, solutions[case].at("M", m.x)) for m in (moments.max, moments.min)]
+        shares: list[tuple[int, Found, float]] = [
+            (sense, m, solutions[case].at("M", m.x)) for sense, m in ((1, moments.max), (-1, moments.min))
+        ]
         for index in range(len(solutions[case].model.supports)):
             reaction = group.states.reaction(index)
             own = solutions[case].reactions[index].force
-            shares += [(reaction.max.value, own), (reaction.min.value, own)]
-        if any(total * own < 0 and abs(own) > 0.01 * abs(total) for total, own in shares):
-            found.append(case)
-    return tuple(found)
+            shares += [(1, reaction.max, own), (-1, reaction.min, own)]
+        for sense, governing, own in shares:
+            factor = factors[governing.combination].get(case, 0.0)
+            against = sense * governing.value > 0.0 > sense * own
+            if against and factor > 1.0 + 1e-12 and abs(own) > 0.01 * abs(governing.value):
+                found.setdefault(case, (governing.combination, factor))
+    return found

@@ -4,10 +4,11 @@ from __future__ import annotations
 
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass, field
+from functools import cached_property
 from typing import TypeAlias
 
 from calcgen.mechanics.actions import Actions, Band, Combination, Effect, EffectRange
-from calcgen.mechanics.beam import RIGID, BeamModel, CaseSolution, Plane, Quantity, Settlement, combine
+from calcgen.mechanics.beam import RIGID, BeamModel, CaseSolution, Plane, Quantity, Settlement, combine_all
 from calcgen.mechanics.combinations import Envelope, Governing, ReactionPart
 from calcgen.mechanics.envelope import Effects, effects
 
@@ -74,19 +75,37 @@ def single(states: States) -> CaseSolution | None:
 
 @dataclass(frozen=True, eq=False)
 class Solved:
-    """A beam with each of its cases solved, from which the states of any group of combinations follow."""
+    """A beam with each of its cases solved, from which the states of its groups of combinations follow.
+
+    `cuts`: places, m, between which extremes will be asked for.
+    """
 
     model: BeamModel
     actions: Actions
     cases: Mapping[str, CaseSolution]
+    groups: Sequence[Sequence[Combination]]
+    cuts: Sequence[float] = ()
 
     def states(self, combinations: Sequence[Combination]) -> States:
-        """Give the states of a group of combinations."""
+        """Give the states of one of the groups, or of one of its combinations."""
+        names = [c.name for c in combinations]
         if any(self.varies(c) for c in combinations):
-            return Varying(effects(self.model, self.actions, combinations))
-        return Envelope({c.name: combine(self.cases, c.factors) for c in combinations})
+            return Varying(self._effects.only(names))
+        return Envelope({name: self._combined[name] for name in names})
 
     def varies(self, combination: Combination) -> bool:
         """Tell whether a combination takes a case in patterns or a train."""
         varying = {*self.actions.patterned, *self.actions.trains}
         return any(factor != 0.0 and case in varying for case, factor in combination.factors.items())
+
+    @cached_property
+    def _combined(self) -> Mapping[str, CaseSolution]:
+        """The state of each combination that has one only."""
+        alone = {c.name: c.factors for group in self.groups for c in group if not self.varies(c)}
+        return combine_all(self.cases, alone)
+
+    @cached_property
+    def _effects(self) -> Effects:
+        """The effects of all groups in which some combination has many states."""
+        groups = (group for group in self.groups if any(self.varies(c) for c in group))
+        return effects(self.model, self.actions, [c for group in groups for c in group], cuts=self.cuts)

@@ -26,12 +26,12 @@ from calcgen.text import Related
 class Supports:
     """The supports from left to right, the word of each, and the settlements with their cases.
 
-    `notes` say of each how it settles: 'settles 8 mm in S'; '' where it does not.
+    `notes` say of each how it settles, vertically and sideways: 'settles 8 mm in S'; '' where it does not.
     """
 
     all: tuple[Support, ...]
     kinds: tuple[str, ...]
-    notes: tuple[str, ...]
+    notes: tuple[tuple[str, str], ...]
     settling: tuple[tuple[str, Settlement], ...]
 
 
@@ -41,7 +41,7 @@ def supports_of(lines: Lines, spans: tuple[float, ...]) -> Supports:
     if not typed:
         ends = [math.fsum(spans[:i]) for i in range(len(spans) + 1)]
         kinds = ("pin", *["roller"] * len(spans))
-        return Supports(tuple(Support(x) for x in ends), kinds, ("",) * len(ends), ())
+        return Supports(tuple(Support(x) for x in ends), kinds, (("", ""),) * len(ends), ())
     placed: list[tuple[float, SupportLine]] = sorted(
         ((lines.place(line.at), line) for line in typed), key=lambda item: item[0]
     )
@@ -51,7 +51,7 @@ def supports_of(lines: Lines, spans: tuple[float, ...]) -> Supports:
             groups[-1].append((x, line))
         else:
             groups.append([(x, line)])
-    found: list[tuple[Support, str, str]] = []
+    found: list[tuple[Support, str, tuple[str, str]]] = []
     settling: list[tuple[str, Settlement]] = []
     for index, group in enumerate(groups):
         main, *others = sorted(group, key=lambda item: item[1].plane == "lateral")
@@ -66,8 +66,8 @@ def supports_of(lines: Lines, spans: tuple[float, ...]) -> Supports:
                 )
             sideways = _support(lines, x, line)  # takes the place of the other one in the lateral plane
             support = replace(support, lateral=sideways.lateral, lateral_rotation=sideways.lateral_rotation)
-        notes = [_settles(lines, line, index, settling) for _, line in group if line.settles is not None]
-        found.append((support, main[1].kind, ", ".join(notes)))
+        notes = {line.plane == "lateral": _settles(lines, line, index, settling) for _, line in group}
+        found.append((support, main[1].kind, (notes.get(False, ""), notes.get(True, ""))))
     return Supports(
         tuple(support for support, _, _ in found),
         tuple(kind for _, kind, _ in found),
@@ -89,12 +89,8 @@ def _settles(lines: Lines, line: SupportLine, index: int, settling: list[tuple[s
 
 
 def _support(lines: Lines, x: float, line: SupportLine) -> Support:
-    force, rotation = RIGID, FREE
-    if line.kind == "fixed":
-        rotation = RIGID
-    if line.kind == "spring":
-        force = _spring(lines, line.stiffness, "line load")
-        rotation = _spring(lines, line.rotation, "moment")
+    force = _spring(lines, line.stiffness, "line load") if line.kind == "spring" else RIGID
+    rotation = RIGID if line.kind == "fixed" else _spring(lines, line.rotation, "moment")
     if line.plane == "lateral":
         return Support(x, FREE, FREE, force, rotation)
     return Support(x, force, rotation, force, rotation)
@@ -104,6 +100,8 @@ def _spring(lines: Lines, node: Expression | None, kind: str) -> float:
     if node is None:
         return FREE
     value = lines.number(node, kind)
+    if math.isnan(value):  # reported already
+        return FREE
     if value < 0:
         lines.fault("not-positive", node.span, "the stiffness of a spring must not be negative")
         return FREE

@@ -1,67 +1,67 @@
-"""`inputs`: literals, and values taken from other calcs."""
+"""`inputs`: literals, and what is taken from other calcs."""
 
 from __future__ import annotations
 
 from collections.abc import Mapping
 
+from calcgen.evaluation.blocks.fed import Upstream, fed_block, taken, under_name
 from calcgen.evaluation.formulas import Evaluator, shown, with_unit
 from calcgen.evaluation.results.common import Origin, Plain
 from calcgen.evaluation.results.lines import FailedRow, InputRow, InputsResult
-from calcgen.evaluation.scope import Scope
+from calcgen.evaluation.scope import Scope, Thing
 from calcgen.language.blocks.inputs import Feed, Input, InputsBlock
-from calcgen.text import nearest
+from calcgen.quantities.display import Shown
+from calcgen.quantities.measure import Measure
+from calcgen.text import SourceFile
 
 
 def evaluate_inputs(
-    block: InputsBlock, scope: Scope, upstream: Mapping[str, Scope], replaced: Mapping[str, Plain]
+    block: InputsBlock, scope: Scope, upstream: Upstream, replaced: Mapping[str, Plain]
 ) -> InputsResult:
     """Define the inputs of a block; those `replaced` have other values than are written."""
     return InputsResult(tuple(_row(item, scope, upstream, replaced) for item in block.items), block.span)
 
 
 def _row(
-    item: Input, scope: Scope, upstream: Mapping[str, Scope], replaced: Mapping[str, Plain]
+    item: Input, scope: Scope, upstream: Upstream, replaced: Mapping[str, Plain]
 ) -> InputRow | FailedRow:
     name = item.target.name
     line = scope.report.source.line_number(item.span)
     free = scope.define(item.target)
-    value: Plain | None
+    found: Plain | Thing | None
     origin: Origin | None = None
     if name in replaced:
-        value = replaced[name]
+        found = replaced[name]
     elif isinstance(item.value, Feed):
-        value = fed_value(item.value, scope, upstream)
-        origin = Origin(item.value.calc, item.value.name.dotted)
+        found = taken(item.value, scope, upstream)
+        origin = origin_of(item.value, scope.report.source)
     else:
-        value = Evaluator(scope).value(item.value)
-    if value is not None:
-        value = with_unit(value, item.unit, scope.report)
-    if value is None or not free:
-        if free:
-            scope.failed.add(name)
-        return FailedRow(scope.report.source.slice(item.statement_span), name, line)
-    scope.values[name] = value
-    return InputRow(name, value, shown(value, scope), origin, item, line)
-
-
-def fed_value(feed: Feed, scope: Scope, upstream: Mapping[str, Scope]) -> Plain | None:
-    """Return a value of another calc; report a calc or a name that does not exist."""
-    source = upstream.get(feed.calc)
-    if source is None:
-        found = nearest(feed.calc, upstream)
+        found = Evaluator(scope).value(item.value)
+    if found is None or isinstance(found, Measure | str | bool):
+        value = None if found is None else with_unit(found, item.unit, scope.report)
+        if value is not None and free:
+            scope.values[name] = value
+            return InputRow(name, value, shown(value, scope), origin, item, line)
+    elif item.unit is not None:
         scope.report.error(
-            "unknown-calc",
-            feed.calc_span,
-            f"there is no calc '{feed.calc}' in this project",
-            hint=f"the nearest calc is '{found}'"
-            if found
-            else "a calc's number is the stem of its file's name",
+            "unit-mismatch",
+            item.unit.span,
+            f"a {found.kind} has no unit",
+            hint="leave the brackets out; its results have units of their own",
         )
-        return None
-    arguments: tuple[Plain, ...] | None = None
+    elif free:
+        scope.things[name] = under_name(found, name)
+        block, text = fed_block(found, scope.style)
+        return InputRow(name, block, Shown(text), origin, item, line)
+    if free:
+        scope.failed.add(name)
+    return FailedRow(scope.report.source.slice(item.statement_span), name, line)
+
+
+def origin_of(feed: Feed, source: SourceFile) -> Origin:
+    """Return where a feed comes from, with its arguments as typed."""
+    arguments = ""
     if feed.name.arguments is not None:
-        values = [Evaluator(scope).value(a) for a in feed.name.arguments]
-        if any(v is None for v in values):
-            return None
-        arguments = tuple(v for v in values if v is not None)
-    return source.value(feed.name, arguments, report=scope.report)
+        after = source.text[feed.name.spans[-1].end : feed.name.span.end]
+        arguments = " ".join(after.split())
+    return Origin(feed.calc, feed.name.dotted, arguments)

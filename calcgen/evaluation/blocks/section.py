@@ -152,7 +152,9 @@ def section_named(node: Expression, scope: Scope) -> SectionThing | None:
         return thing
     sections = [n for n, t in scope.things.items() if isinstance(t, SectionThing)]
     found = nearest(head, sections)
-    if head in scope.later:
+    if thing is not None:
+        hint = f"it is a {thing.kind}"
+    elif head in scope.later:
         hint = "a section is defined above the block that uses it"
     elif found:
         hint = f"the nearest section is '{found}'"

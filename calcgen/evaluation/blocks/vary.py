@@ -109,7 +109,7 @@ def _is_input(block: VaryBlock, calc: Calc, scope: Scope) -> bool:
     """Report a name that is no input of the calc."""
     target = block.varied.target
     inputs = {i.target.name for b in calc.segments if isinstance(b, InputsBlock) for i in b.items}
-    if target.name in inputs:
+    if target.name in inputs and target.name not in scope.things:
         return True
     if target.name in scope.failed:
         return False
@@ -118,6 +118,9 @@ def _is_input(block: VaryBlock, calc: Calc, scope: Scope) -> bool:
     if target.name in scope.values or target.name in scope.things:
         what = scope.things[target.name].kind if target.name in scope.things else "derived value"
         message = f"'{plain(target.name)}' is a {what}, not an input"
+        if target.name in inputs:
+            message = f"'{plain(target.name)}' is a {what} of another calc, not a value"
+            hint = "vary an input of this calc that is a quantity, or a designation"
         scope.report.error("not-an-input", target.span, message, hint=hint)
     else:
         scope.report.error("unknown-name", target.span, f"'{plain(target.name)}' is not defined", hint=hint)

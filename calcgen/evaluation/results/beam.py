@@ -7,15 +7,21 @@ from dataclasses import dataclass
 from typing import Literal
 
 from calcgen.evaluation.blocks.beam_states import States
+from calcgen.evaluation.combination_sets.standard import Expression as StandardExpression
 from calcgen.evaluation.results.common import Premise, Result, SecondRoute
 from calcgen.language.nodes import Column
-from calcgen.mechanics.beam import BeamModel
+from calcgen.mechanics.beam import BeamModel, Plane
+from calcgen.mechanics.beam.results import Side
+from calcgen.mechanics.influence import InfluenceLine
 from calcgen.text import Span
 
 
 @dataclass(frozen=True)
 class CombinationResult:
-    """One combination with the factor of each case, its states, and every named result of it."""
+    """One combination with the factor of each case, its states, and every named result of it.
+
+    One that a set generates has no list of results: they are many, and each is read by its name.
+    """
 
     name: str
     factors: Mapping[str, float]
@@ -59,12 +65,83 @@ class LoadRow:
 
 
 @dataclass(frozen=True)
+class Ordinate:
+    """An ordinate of an influence line: unit load at `x`, m, `place` as read; at a jump on one `side`."""
+
+    x: float
+    place: str
+    side: Side | None
+    result: Result
+
+
+@dataclass(frozen=True, eq=False)
+class InfluenceResult:
+    """An influence line: what a unit load does, as a function of the load's place.
+
+    `of` is what it is of, as read: 'M at 7 m'; `meaning` that in words with its sign; `load` the plane of the
+    unit load; `place` where the effect is felt, m. `unit` is that of ordinates. `results` are its extremes
+    and areas, `further` the places of the load for the extremes; `ordinates` those at tenths of the fields
+    between supports, at hinges and at the places that the lines of the beam are of.
+    """
+
+    name: str
+    of: str
+    meaning: str
+    load: Plane
+    place: float
+    line: InfluenceLine
+    unit: str
+    results: tuple[Result, ...]
+    further: tuple[Result, ...]
+    ordinates: tuple[Ordinate, ...]
+    line_number: int
+
+
+@dataclass(frozen=True)
+class FactorRow:
+    """Factors of combination sets in force: symbols with values, what they are, where they come from."""
+
+    values: tuple[tuple[str, float], ...]
+    meaning: str
+    source: str
+
+
+@dataclass(frozen=True)
+class SetCombination:
+    """A generated combination: its factors, the number of its expression in the set, the cases that lead."""
+
+    name: str
+    factors: Mapping[str, float]
+    expression: int
+    leading: tuple[str, ...]
+
+
+@dataclass(frozen=True)
+class SetResult:
+    """A standard combination set as generated for a beam.
+
+    `group` is what its combinations are a group of, `name` that of the set; `cases` those that it takes, by
+    their symbol in the standard; `remarks` say how cases act together, and which are left out.
+    """
+
+    group: str
+    name: str
+    cases: Mapping[str, tuple[str, ...]]
+    expressions: tuple[StandardExpression, ...]
+    combinations: tuple[SetCombination, ...]
+    remarks: tuple[str, ...]
+    line: int
+
+
+@dataclass(frozen=True)
 class BeamResult:
     """A beam with its model, loads, and results by group; numbers in SI.
 
     `spans` are the stretches of the `span` line, from and to; `support_kinds` has the word of each support of
-    the model, `support_notes` how it settles; `patterned` the cases that act on adverse spans alone; `lines`
-    each line as typed, with its columns.
+    the model, `support_notes` how it settles, vertically and sideways; `patterned` the cases that act on
+    adverse spans alone; `lines` each line as typed, with its columns; `influences` its influence lines, which
+    belong to no combination; `sets` its standard combination sets, and `set_factors` what they take;
+    `section_names` the section of each stretch of the model, '' where it has EI alone.
     """
 
     name: str
@@ -72,7 +149,7 @@ class BeamResult:
     model: BeamModel
     spans: tuple[tuple[float, float], ...]
     support_kinds: tuple[str, ...]
-    support_notes: tuple[str, ...]
+    support_notes: tuple[tuple[str, str], ...]
     case_kinds: Mapping[str, str]
     patterned: frozenset[str]
     loads: tuple[LoadRow, ...]
@@ -84,3 +161,7 @@ class BeamResult:
     lines: tuple[tuple[str, Column, Column, int], ...]
     line: int
     span: Span
+    influences: tuple[InfluenceResult, ...] = ()
+    sets: tuple[SetResult, ...] = ()
+    set_factors: tuple[FactorRow, ...] = ()
+    section_names: tuple[str, ...] = ()

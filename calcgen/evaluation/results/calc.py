@@ -39,6 +39,26 @@ Segment: TypeAlias = (
 )
 
 
+@dataclass(frozen=True)
+class Hindrance:
+    """A calc that should feed another and cannot; `root` is in error where `calc` itself is not evaluated."""
+
+    calc: str
+    standing: Standing
+    root: str
+
+    @property
+    def words(self) -> str:
+        """It with places for the numbers: '{calc}, which feeds it, is not evaluated because {root} is …'."""
+        because = " because {root} is in error" if self.root != self.calc else ""
+        return f"{{calc}}, which feeds it, is {self.standing}{because}"
+
+    @property
+    def text(self) -> str:
+        """It in words: 'W-12, which feeds it, is not evaluated because W-07 is in error'."""
+        return self.words.format(calc=self.calc, root=self.root)
+
+
 @dataclass(frozen=True, eq=False)
 class EvaluatedCalc:
     """A calc with everything that could be evaluated.
@@ -47,9 +67,10 @@ class EvaluatedCalc:
     ----------
     segments : the results in the order of `calc.segments`; a FailedBlock where a block failed.
     values : every name that has a value, with its Shown.
-    depends : the values taken from other calcs.
+    depends : what is taken from other calcs.
     reason : why it is not evaluated, '' otherwise.
     lookups : where its tables are looked up, in the order of the text, cases not taken left out.
+    hindrances : the calcs in error, or not evaluated, that should feed it.
     """
 
     calc: Calc
@@ -63,6 +84,7 @@ class EvaluatedCalc:
     standing: Standing
     reason: str = ""
     lookups: tuple[Lookup, ...] = ()
+    hindrances: tuple[Hindrance, ...] = ()
 
     @property
     def number(self) -> str:

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Mapping
 from dataclasses import dataclass
 from typing import Literal, TypeAlias
 
@@ -20,10 +21,32 @@ Plain: TypeAlias = Measure | str | bool
 
 @dataclass(frozen=True)
 class Origin:
-    """Where a fed value comes from: `stringer.ULS.R_1` of calc `W-07`."""
+    """Where what is fed comes from: `stringer.ULS.R_1` of calc `W-07`; `arguments` as typed: '(2.5 m)'."""
 
     calc: str
     name: str
+    arguments: str = ""
+
+    @property
+    def text(self) -> str:
+        """It in words, as typed: 'stringer.ULS.M(2.5 m) of W-07'."""
+        return f"{self.name}{self.arguments} of {self.calc}"
+
+
+@dataclass(frozen=True)
+class FedBlock:
+    """A whole block of another calc, known here under a name of its own.
+
+    Attributes
+    ----------
+    kind : 'section', 'beam', 'stress' or 'table'.
+    what : which one it is, in words that do not depend on units or figures: 'IPE 240', 'parts rib, flange'.
+    results : what it gives, by dotted names; of a table its cells.
+    """
+
+    kind: str
+    what: str
+    results: Mapping[str, Measure]
 
 
 @dataclass(frozen=True)

@@ -5,7 +5,7 @@ from __future__ import annotations
 from collections.abc import Mapping
 from dataclasses import dataclass
 
-from calcgen.evaluation.results.common import Operand, Origin, Plain
+from calcgen.evaluation.results.common import FedBlock, Operand, Origin, Plain
 from calcgen.language.blocks.assumptions import AssumptionsBlock
 from calcgen.language.blocks.inputs import Input
 from calcgen.language.blocks.sheet import SheetBlock
@@ -19,10 +19,10 @@ from calcgen.text import Span
 
 @dataclass(frozen=True)
 class InputRow:
-    """One input; `origin` is set where the value is taken from another calc."""
+    """One input; `origin` is set where the value, or the block, is taken from another calc."""
 
     name: str
-    value: Plain
+    value: Plain | FedBlock
     shown: Shown
     origin: Origin | None
     node: Input

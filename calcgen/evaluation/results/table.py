@@ -53,7 +53,8 @@ class Lookup:
     Attributes
     ----------
     arguments : what is looked up, for the rows and for the columns; the latter may be left out.
-    rows, columns : indices of the heads found, one each or the two that an argument lies between.
+    rows, columns : indices of the heads found, one each or the two that an argument lies between;
+    row_heads, column_heads : what is written there.
     span : of the call in the calc's text.
     """
 
@@ -61,5 +62,7 @@ class Lookup:
     arguments: tuple[Shown, ...]
     rows: tuple[int, ...]
     columns: tuple[int, ...]
+    row_heads: tuple[str, ...]
+    column_heads: tuple[str, ...]
     value: Shown
     span: Span

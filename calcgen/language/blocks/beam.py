@@ -9,6 +9,7 @@ from calcgen.language.nodes import Annotations, Expression, Named
 from calcgen.text import Span
 
 Plane: TypeAlias = Literal["both", "vertical", "lateral"]
+InfluenceSymbol: TypeAlias = Literal["M", "V", "w", "slope", "R", "M_R", "θ"]
 
 
 @dataclass(frozen=True)
@@ -24,7 +25,8 @@ class SpanLine:
 class BeamSetting:
     """`E = 210 GPa`, `section = main`, `EI = ...`; a stretch of it with `start` and `end`.
 
-    Keys: section, E, G, EI, GA_s, restrained, shear_deformation, expansion.
+    Keys: section, E, G, EI, GA_s, restrained, shear_deformation, expansion, and the factors
+    of combination sets: γ_G, γ_G_inf, γ_Q, ξ.
     """
 
     key: Named
@@ -40,8 +42,8 @@ class BeamSetting:
 class SupportLine:
     """`support spring 12 kN/mm rotation 5 kN·m lateral at 14 m settles 5 mm in S`.
 
-    `plane` is 'both', or 'lateral' where that word is written. `label` numbers results: supports are
-    numbered from the left, from 1.
+    `rotation` is the stiffness of a rotational spring, at any support but a fixed one. `plane` is 'both', or
+    'lateral' where that word is written. Supports are numbered from the left, from 1.
     """
 
     kind: Literal["pin", "roller", "fixed", "spring"]
@@ -66,12 +68,19 @@ class HingeLine:
 
 @dataclass(frozen=True)
 class CaseLine:
-    """`case G permanent`; the kind is a word: permanent, imposed, snow, wind, ..."""
+    """`case G permanent`; the kind is a word: permanent, imposed, snow, wind, ...
+
+    For combination sets it may have more: `case Q imposed category B`, or ψ_0, ψ_1 and ψ_2 and a partial
+    factor of its own, `case T traffic ψ 1.0, 0.9, 0.5 γ 1.35`. `psi` has three values or none.
+    """
 
     target: Named
     kind: Named | None
     annotations: Annotations
     span: Span
+    category: Named | None = None
+    psi: tuple[Expression, ...] = ()
+    gamma: Expression | None = None
 
 
 @dataclass(frozen=True)
@@ -142,6 +151,37 @@ class CombinationLine:
     span: Span
 
 
+@dataclass(frozen=True)
+class InfluenceLine:
+    """`influence η_1 = M at 7 m`, `= V left of 6 m`, `= R_2_lat`, `= w_lat at 3 m under vertical`.
+
+    `symbol` is M, V, w or slope, with a place, or R, M_R or θ, with the `number` of a support. `side` is
+    written where a quantity has two values at its place. `under` is the plane of the unit load, None where it
+    is that of the result.
+    """
+
+    target: Named
+    symbol: InfluenceSymbol
+    number: int | None
+    lateral: bool
+    result_span: Span
+    at: Expression | None
+    side: Literal["left", "right"] | None
+    under: Literal["vertical", "lateral"] | None
+    annotations: Annotations
+    span: Span
+
+
+@dataclass(frozen=True)
+class SetLine:
+    """`combinations ULS = "EN 1990 6.10"`: the group and the standard set that fills it."""
+
+    target: Named
+    standard: Named
+    annotations: Annotations
+    span: Span
+
+
 BeamLine: TypeAlias = (
     SpanLine
     | BeamSetting
@@ -152,6 +192,8 @@ BeamLine: TypeAlias = (
     | TrainLine
     | PatternLine
     | CombinationLine
+    | SetLine
+    | InfluenceLine
 )
 
 

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import re
 from collections.abc import Callable
 from typing import Literal, TypeAlias
 
@@ -12,14 +13,18 @@ from calcgen.language.blocks.beam import (
     CaseLine,
     CombinationLine,
     HingeLine,
+    InfluenceLine,
+    InfluenceSymbol,
     LoadLine,
     PatternLine,
     Plane,
+    SetLine,
     SpanLine,
     SupportLine,
     Term,
     TrainLine,
 )
+from calcgen.language.blocks.beam_cases import read_case, read_set
 from calcgen.language.blocks.reading import BlockText, Outcome, one_of, only_once, read_each
 from calcgen.language.cursor import Cursor
 from calcgen.language.errors import ReadingError
@@ -27,25 +32,15 @@ from calcgen.language.expressions import expression
 from calcgen.language.lines import Line
 from calcgen.language.nodes import Binary, Expression, Name, Named, Unary
 from calcgen.language.tokens import Token
-from calcgen.text import Report, Span, nearest
+from calcgen.text import Report, Span
 
-STOPS = frozenset({"at", "from", "to", "in", "settles", "rotation", "lateral", "spaced"})
+STOPS = frozenset({"at", "from", "to", "in", "settles", "rotation", "lateral", "spaced", "under"})
 """Words that end an expression in a beam."""
 
 SETTINGS = ("section", "E", "G", "EI", "GA_s", "restrained", "shear_deformation", "expansion")
+FACTORS = ("γ_G", "γ_G_inf", "γ_Q", "ξ")
+"""Settings of combination sets."""
 STRETCHES = ("section", "EI", "GA_s")
-CASE_KINDS = (
-    "permanent",
-    "imposed",
-    "snow",
-    "wind",
-    "temperature",
-    "traffic",
-    "construction",
-    "accidental",
-    "seismic",
-)
-"""Kinds of load case that have a meaning or are usual; another word is taken as it is."""
 
 LoadKind: TypeAlias = Literal["uniform", "linear", "point", "moment", "self_weight", "gradient"]
 LOADS: dict[str, LoadKind] = {
@@ -60,6 +55,11 @@ KINDS = (*LOADS, "train")
 SupportKind: TypeAlias = Literal["pin", "roller", "fixed", "spring"]
 SUPPORTS: dict[str, SupportKind] = {"pin": "pin", "roller": "roller", "fixed": "fixed", "spring": "spring"}
 
+OF_PLACES: tuple[InfluenceSymbol, ...] = ("M", "V", "w", "slope")
+OF_SUPPORTS: tuple[InfluenceSymbol, ...] = ("R", "M_R", "θ")
+"""Results that have influence lines: those of a place, and those of a support, with its number."""
+_INFLUENCED = re.compile(rf"^({'|'.join(OF_PLACES)}|(?:{'|'.join(OF_SUPPORTS)})_[1-9]\d*)(_lat)?$")
+
 ReadLine: TypeAlias = Callable[[Line, Cursor], BeamLine]
 
 
@@ -68,7 +68,9 @@ def read_beam(block: BlockText, report: Report) -> Outcome[BeamBlock]:
     settings: dict[str, Span] = {}
     cases: dict[str, Span] = {}
     combinations: dict[str, Span] = {}
+    sets: dict[str, Span] = {}
     patterns: dict[str, Span] = {}
+    influences: dict[str, Span] = {}
 
     def read(line: Line, cursor: Cursor) -> BeamLine:
         token = cursor.token
@@ -76,7 +78,7 @@ def read_beam(block: BlockText, report: Report) -> Outcome[BeamBlock]:
         if word in READERS:
             node = READERS[word](line, cursor)
         else:
-            one_of(word, cursor.span(token), (*READERS, *SETTINGS), "line of a beam")
+            one_of(word, cursor.span(token), (*READERS, *SETTINGS, *FACTORS), "line of a beam")
             node = _setting(line, cursor)
         cursor.finish()
         match node:
@@ -88,8 +90,12 @@ def read_beam(block: BlockText, report: Report) -> Outcome[BeamBlock]:
                 only_once(node.target, cases, "load case")
             case CombinationLine():
                 only_once(node.target, combinations, "combination")
+            case SetLine():
+                only_once(node.target, sets, "combination set")
             case PatternLine():
                 only_once(node.case, patterns, "pattern")
+            case InfluenceLine():
+                only_once(node.target, influences, "influence line")
             case _:
                 pass
         return node
@@ -127,7 +133,7 @@ def _support(line: Line, cursor: Cursor) -> SupportLine:
     lateral = cursor.accept("lateral") is not None
     kind = SUPPORTS[_word(cursor, tuple(SUPPORTS), "support")]
     stiffness = expression(cursor) if kind == "spring" else None
-    rotation = expression(cursor) if kind == "spring" and cursor.accept("rotation") else None
+    rotation = expression(cursor) if kind != "fixed" and cursor.accept("rotation") else None
     lateral = cursor.accept("lateral") is not None or lateral
     at = _at(cursor, f"write support {kind} at 6 m")
     settles, case = None, None
@@ -141,15 +147,6 @@ def _support(line: Line, cursor: Cursor) -> SupportLine:
 def _hinge(line: Line, cursor: Cursor) -> HingeLine:
     cursor.take()
     return HingeLine(_at(cursor, "write hinge at 9 m"), line.annotations, line.span)
-
-
-def _case(line: Line, cursor: Cursor) -> CaseLine:
-    cursor.take()
-    target = cursor.named("a load case")
-    kind = None if cursor.ended else cursor.named("a kind of load case")
-    if kind is not None and kind.name not in CASE_KINDS and nearest(kind.name, CASE_KINDS, cutoff=0.8):
-        one_of(kind.name, kind.span, CASE_KINDS, "kind of load case")
-    return CaseLine(target, kind, line.annotations, line.span)
 
 
 def _load(line: Line, cursor: Cursor) -> LoadLine | TrainLine:
@@ -189,7 +186,8 @@ def _load(line: Line, cursor: Cursor) -> LoadLine | TrainLine:
         values.append(expression(cursor))
     at, start, end = None, None, None
     if kind == "point" or (kind == "moment" and not cursor.sees("from")):
-        at = _at(cursor, f"write {kind} ... at 2.5 m")
+        stretch = ", or from 2 m to 4 m where it is distributed" if kind == "moment" else ""
+        at = _at(cursor, f"write {kind} ... at 2.5 m{stretch}")
     else:
         start, end = _stretch(cursor)
     if cursor.sees("at"):
@@ -246,6 +244,13 @@ def _combination(line: Line, cursor: Cursor) -> CombinationLine:
     target = cursor.named("a combination")
     group = cursor.named("a group") if cursor.accept("in") else None
     cursor.expect("=", hint="write combination U1 in ULS = 1.35*G + 1.5*Q")
+    if cursor.token.kind == "text":
+        raise ReadingError(
+            "not-a-term",
+            cursor.span(cursor.token),
+            "a combination is a sum of load cases, each with its factor",
+            hint=f"a set of a standard is: combinations {(group or target).name} = {cursor.token.text}",
+        )
     total = expression(cursor)
     cursor.finish()
     seen: dict[str, Span] = {}
@@ -286,6 +291,57 @@ def _term(node: Expression, sign: int) -> Term:
     )
 
 
+def _influence(line: Line, cursor: Cursor) -> InfluenceLine:
+    cursor.take()
+    target = cursor.named("an influence line")
+    cursor.expect("=", hint=f"write influence {target.name} = M at 7 m")
+    result = cursor.named("a result")
+    found = _INFLUENCED.match(result.name)
+    if found is None:
+        possible = ", ".join([*OF_PLACES, *(f"{symbol}_1" for symbol in OF_SUPPORTS)])
+        raise ReadingError(
+            "unknown-word",
+            result.span,
+            f"'{result.name}' is no result that has an influence line",
+            hint=f"possible are {possible}, and each with _lat",
+        )
+    stem, _, number = found[1].rpartition("_")
+    symbol: InfluenceSymbol = stem or found[1]  # type: ignore[assignment]
+    at: Expression | None = None
+    side: Literal["left", "right"] | None = None
+    if not stem:
+        beside = cursor.accept("left", "right")
+        if beside is not None:
+            side = "left" if beside.text == "left" else "right"
+            cursor.expect("of", hint=f"write {result.name} {side} of 6 m")
+            at = expression(cursor)
+        else:
+            at = _at(cursor, f"write {result.name} at 7 m")
+    elif cursor.sees("at", "left", "right"):
+        raise ReadingError(
+            "unexpected",
+            cursor.span(cursor.token),
+            f"'{result.name}' belongs to a support, not to a place",
+            hint=f"write influence {target.name} = {result.name}",
+        )
+    under: Literal["vertical", "lateral"] | None = None
+    if cursor.accept("under"):
+        word = _word(cursor, ("vertical", "lateral"), "plane of the unit load")
+        under = "lateral" if word == "lateral" else "vertical"
+    return InfluenceLine(
+        target,
+        symbol,
+        int(number) if stem else None,
+        found[2] is not None,
+        result.span,
+        at,
+        side,
+        under,
+        line.annotations,
+        line.span,
+    )
+
+
 def _at(cursor: Cursor, hint: str) -> Expression:
     cursor.expect("at", hint=hint)
     return expression(cursor)
@@ -302,7 +358,8 @@ def _stretch(cursor: Cursor) -> tuple[Expression | None, Expression | None]:
 
 def _word(cursor: Cursor, known: tuple[str, ...], what: str) -> str:
     token = cursor.token
-    if token.kind not in ("name", "word") or token.text in cursor.stops:
+    stops = cursor.stops.difference(known)
+    if token.kind not in ("name", "word") or token.text in stops:
         raise cursor.misplaced(f"the {what} is missing", f"possible are {', '.join(known)}")
     one_of(token.text, cursor.span(token), known, what)
     return cursor.take().text
@@ -312,9 +369,11 @@ READERS: dict[str, ReadLine] = {
     "span": _span,
     "support": _support,
     "hinge": _hinge,
-    "case": _case,
+    "case": read_case,
     "load": _load,
     "pattern": _pattern,
     "combination": _combination,
+    "combinations": read_set,
+    "influence": _influence,
 }
 """The first word of a line and its reader; other lines are settings."""

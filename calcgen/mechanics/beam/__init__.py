@@ -58,9 +58,15 @@ from calcgen.mechanics.beam.results import (
     Quantity,
     Reaction,
     combine,
+    combine_all,
 )
 from calcgen.mechanics.beam.solve import solve
-from calcgen.mechanics.beam.span_measures import MomentShape, moment_shape, relative_to_chord
+from calcgen.mechanics.beam.span_measures import (
+    MomentShape,
+    moment_shape,
+    relative_to_chord,
+    relative_to_chords,
+)
 from calcgen.mechanics.beam.stability import UnstableBeam
 
 __all__ = [
@@ -91,12 +97,14 @@ __all__ = [
     "Support",
     "UnstableBeam",
     "combine",
+    "combine_all",
     "combined",
     "fixed",
     "moment_shape",
     "pin",
     "prismatic",
     "relative_to_chord",
+    "relative_to_chords",
     "roller",
     "scaled",
     "solve",

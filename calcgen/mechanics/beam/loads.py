@@ -10,7 +10,7 @@ from typing import TypeAlias
 import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.beam.mesh import Mesh
+from calcgen.mechanics.beam.mesh import Mesh, nearest
 from calcgen.mechanics.beam.model import BeamModel, Plane
 
 
@@ -124,40 +124,42 @@ def validate(load: Load, model: BeamModel) -> None:
     """Raise ValueError for a load that the model cannot carry: outside the beam, of no length, not finite."""
     if load.plane not in model.planes:
         raise ValueError("a lateral load needs the bending stiffness about the vertical axis")
-    if not all(-model.tolerance <= x <= model.length + model.tolerance for x in places(load)):
+    along = places(load)
+    tolerance = model.tolerance
+    if along and not (along[0] >= -tolerance and along[-1] <= model.length + tolerance):
         raise ValueError("a load lies outside the beam")
-    values: tuple[float, ...]
     match load:
         case DistributedLoad() | DistributedMoment():
-            values = (load.value_start, load.value_end)
-            if load.end - load.start <= model.tolerance:
+            if along[1] - along[0] <= tolerance:
                 raise ValueError("a distributed load needs a length")
         case FreeCurvature():
-            values = (load.value,)
-            if load.end - load.start <= model.tolerance:
+            if along[1] - along[0] <= tolerance:
                 raise ValueError("a free curvature needs a length")
         case PointMoment():
-            values = (load.value,)
             if any(model.same(load.x, hinge) for hinge in model.hinges):
                 raise ValueError("a couple at a hinge does not tell on which side of it it acts")
-        case PointLoad():
-            values = (load.value,)
         case Settlement():
-            values = (load.value,)
             if not 0 <= load.support < len(model.supports):
                 raise ValueError("a settlement names a support that does not exist")
             if model.supports[load.support].restraints(load.plane)[0] == 0.0:
                 raise ValueError("a support that does not hold the beam cannot settle")
-    if not all(math.isfinite(value) for value in values):
+    if not all(math.isfinite(value) for value in _values(load)):
         raise ValueError("a load must be finite")
+
+
+def _values(load: Load) -> tuple[float, ...]:
+    if isinstance(load, DistributedLoad | DistributedMoment):
+        return load.value_start, load.value_end
+    return (load.value,)
 
 
 @dataclass(frozen=True, eq=False)
 class LoadField:
-    """One case's loads on a mesh of n elements, in p planes.
+    """The loads of c cases on a mesh of n elements, in p planes.
 
-    `forces`, `couples` and `settlements`: (n + 1, p), at the nodes. `intensity` and `moment_intensity`: (n,
-    p, 2), at the start and the end of each element. `curvature`: (n, p), the free one of each element.
+    `forces`, `couples` and `settlements`: (n + 1, c, p), at the nodes. `intensity` and `moment_intensity`:
+    (n, c, p, 2), at the start and the end of each element. `curvature`: (n, c, p), the free one of each
+    element.
     """
 
     forces: FloatArray
@@ -168,33 +170,39 @@ class LoadField:
     curvature: FloatArray
 
 
-def on_mesh(loads: Sequence[Load], mesh: Mesh, planes: Sequence[Plane]) -> LoadField:
+def on_mesh(cases: Sequence[Sequence[Load]], mesh: Mesh, planes: Sequence[Plane]) -> LoadField:
     """Spread the loads over the nodes and elements of a mesh that has a node at each of their places."""
-    n, p = len(mesh.lengths), len(planes)
-    forces, couples, settlements = np.zeros((3, n + 1, p))
-    intensity, moment_intensity = np.zeros((2, n, p, 2))
-    field = LoadField(forces, couples, settlements, intensity, moment_intensity, np.zeros((n, p)))
-    for load in loads:
-        plane = list(planes).index(load.plane)
-        match load:
-            case PointLoad():
-                field.forces[mesh.node(load.x), plane] += load.value
-            case PointMoment():
-                field.couples[mesh.node(load.x), plane] += load.value
-            case DistributedLoad():
-                _spread(field.intensity[:, plane], load, mesh)
-            case DistributedMoment():
-                _spread(field.moment_intensity[:, plane], load, mesh)
-            case FreeCurvature():
-                field.curvature[mesh.node(load.start) : mesh.node(load.end), plane] += load.value
-            case Settlement():
-                field.settlements[mesh.supports[load.support], plane] += load.value
+    n, c, p = len(mesh.lengths), len(cases), len(planes)
+    forces, couples, settlements = np.zeros((3, n + 1, c, p))
+    intensity, moment_intensity = np.zeros((2, n, c, p, 2))
+    field = LoadField(forces, couples, settlements, intensity, moment_intensity, np.zeros((n, c, p)))
+    kinds: dict[type, list[tuple[int, int, Load]]] = {}
+    for case, loads in enumerate(cases):
+        for load in loads:
+            kinds.setdefault(type(load), []).append((case, planes.index(load.plane), load))
+    for kind, found in kinds.items():
+        case_of, plane_of = np.array([each[:2] for each in found]).T
+        values = np.array([_values(load) for _, _, load in found])
+        if kind is Settlement:
+            nodes = [mesh.supports[load.support] for _, _, load in found if isinstance(load, Settlement)]
+            np.add.at(settlements, (nodes, case_of, plane_of), values[:, 0])
+            continue
+        x = np.array([places(load) for _, _, load in found])
+        at = nearest(mesh.nodes, x)
+        if kind is PointLoad or kind is PointMoment:
+            np.add.at(forces if kind is PointLoad else couples, (at[:, 0], case_of, plane_of), values[:, 0])
+            continue
+        # Each distributed load on each of the elements that it covers.
+        count = at[:, 1] - at[:, 0]
+        number = np.repeat(np.arange(len(found)), count)
+        element = np.arange(len(number)) - np.repeat(np.cumsum(count) - count, count) + at[number, 0]
+        where = element, case_of[number], plane_of[number]
+        if kind is FreeCurvature:
+            np.add.at(field.curvature, where, values[number, 0])
+            continue
+        ends = mesh.nodes[at]
+        part = mesh.nodes[np.stack([element, element + 1])] - ends[number, 0]
+        part /= (ends[:, 1] - ends[:, 0])[number]
+        spread = values[number, 0] + (values[:, 1] - values[:, 0])[number] * part
+        np.add.at(intensity if kind is DistributedLoad else moment_intensity, where, spread.T)
     return field
-
-
-def _spread(intensity: FloatArray, load: DistributedLoad | DistributedMoment, mesh: Mesh) -> None:
-    first, last = mesh.node(load.start), mesh.node(load.end)
-    x = mesh.nodes[first : last + 1]
-    values = load.value_start + (load.value_end - load.value_start) * (x - x[0]) / (x[-1] - x[0])
-    intensity[first:last, 0] += values[:-1]
-    intensity[first:last, 1] += values[1:]

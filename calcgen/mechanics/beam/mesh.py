@@ -32,11 +32,6 @@ class Mesh:
         """Length of each element, (n,), m."""
         return np.diff(self.nodes)
 
-    def node(self, x: float) -> int:
-        """Give the number of the node nearest to `x`."""
-        right = min(max(bisect_left(self.nodes, x), 1), len(self.nodes) - 1)
-        return right - 1 if x - self.nodes[right - 1] <= self.nodes[right] - x else right
-
 
 def nearest(nodes: FloatArray, x: FloatArray | float) -> npt.NDArray[np.intp]:
     """Give the numbers of the nodes nearest to the places `x`."""
@@ -50,23 +45,20 @@ def divide(model: BeamModel, places: Iterable[float]) -> Mesh:
     Of places closer than the model's tolerance the first named stands: the ends, then the supports, then
     the rest.
     """
-    found: list[float] = [0.0, model.length]
-    for x in (
-        *(support.x for support in model.supports),
-        *model.hinges,
-        *(stretch.end for stretch in model.stretches[:-1]),
-        *places,
-    ):
+    supports = [support.x for support in model.supports]
+    changes = (stretch.end for stretch in model.stretches[:-1])
+    found, tolerance = [0.0, model.length], model.tolerance
+    for x in dict.fromkeys((*supports, *model.hinges, *changes, *places)):
         at = bisect_left(found, x)
-        if not any(model.same(x, neighbour) for neighbour in found[max(at - 1, 0) : at + 1]):
+        if not any(abs(x - neighbour) <= tolerance for neighbour in found[max(at - 1, 0) : at + 1]):
             insort(found, x)
     nodes = np.array(found)
     ends = np.array([stretch.end for stretch in model.stretches])
     stretch_of = np.searchsorted(ends, (nodes[:-1] + nodes[1:]) / 2)
     return Mesh(
         nodes,
-        tuple(int(nearest(nodes, support.x)) for support in model.supports),
-        frozenset(int(nearest(nodes, x)) for x in model.hinges),
+        tuple(nearest(nodes, np.array(supports)).tolist()),
+        frozenset(nearest(nodes, np.array(model.hinges)).tolist()),
         tuple(model.stretches[number].stiffness for number in stretch_of),
         tuple(model.stretches[number].shear for number in stretch_of),
     )

@@ -4,6 +4,7 @@ from __future__ import annotations
 
 import math
 from dataclasses import dataclass
+from functools import cached_property
 from itertools import pairwise
 from typing import Final, Literal, TypeAlias
 
@@ -170,7 +171,7 @@ class BeamModel:
             ):
                 raise ValueError("a support at a hinge cannot hold rotation")
 
-    @property
+    @cached_property
     def tolerance(self) -> float:
         """Distance below which two places are one, m."""
         return SAME_PLACE * self.length
@@ -179,7 +180,7 @@ class BeamModel:
         """Tell whether two places along the beam are one."""
         return abs(a - b) <= self.tolerance
 
-    @property
+    @cached_property
     def spans(self) -> tuple[tuple[float, float], ...]:
         """Start and end of each span: from one support that holds the deflection down or up to the next."""
         return self.spans_in("vertical")
@@ -189,7 +190,7 @@ class BeamModel:
         places = [support.x for support in self.supports if support.restraints(plane)[0] > FREE]
         return tuple(pairwise(places))
 
-    @property
+    @cached_property
     def planes(self) -> tuple[Plane, ...]:
         """Planes in which the stiffness is known."""
         known = all(stretch.stiffness.lateral is not None for stretch in self.stretches)
@@ -200,7 +201,7 @@ class BeamModel:
         """Tell whether shear deformation is taken into account somewhere."""
         return any(stretch.shear != NO_SHEAR for stretch in self.stretches)
 
-    @property
+    @cached_property
     def coupled(self) -> bool:
         """Tell whether a vertical load also bends the beam sideways."""
         return len(self.planes) == 2 and any(stretch.stiffness.coupling != 0.0 for stretch in self.stretches)

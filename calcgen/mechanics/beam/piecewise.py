@@ -44,13 +44,47 @@ def bounds(coefficients: FloatArray) -> tuple[FloatArray, FloatArray]:
 
 def roots(coefficients: FloatArray) -> FloatArray:
     """Real roots of one polynomial in (0, 1), ascending; none for a constant."""
-    size = np.abs(coefficients).max()
-    significant = np.flatnonzero(np.abs(coefficients) > _TINY_COEFFICIENT * size)
-    if size == 0.0 or significant[-1] == 0:
-        return np.zeros(0)
-    found = np.roots(coefficients[significant[-1] :: -1])
-    real = found.real[np.abs(found.imag) <= _TINY_IMAGINARY]
-    return np.sort(real[(real > 0.0) & (real < 1.0)])
+    found = all_roots(coefficients[None])[0]
+    return np.sort(found[~np.isnan(found)])
+
+
+def all_roots(coefficients: FloatArray) -> FloatArray:
+    """Real roots of polynomials (k, d) in (0, 1), (k, d - 1), nan in place of those that are not there."""
+    k, d = coefficients.shape
+    size = np.abs(coefficients).max(axis=1, keepdims=True, initial=0.0)
+    scaled = coefficients / np.where(size > 0.0, size, 1.0)
+    degree = d - 1 - np.argmax((np.abs(scaled) > _TINY_COEFFICIENT)[:, ::-1], axis=1)
+    zeros = np.argmax(scaled != 0.0, axis=1)  # so many roots are 0 itself
+    found = np.full((k, d - 1), np.nan)
+    kinds = degree * d + zeros
+    for kind in np.unique(kinds[(size[:, 0] > 0.0) & (degree > zeros)]).tolist():
+        m, z = divmod(kind, d)
+        of = kinds == kind
+        found[of, : m - z] = _nonzero_roots(scaled[of, z : m + 1])
+    with np.errstate(invalid="ignore"):
+        return np.where((found > 0.0) & (found < 1.0), found, np.nan)
+
+
+def _nonzero_roots(c: FloatArray) -> FloatArray:
+    """Real roots of polynomials (k, m + 1) of degree m, (k, m), nan in place of the others."""
+    m = c.shape[1] - 1
+    if m == 1:
+        return -c[:, :1] / c[:, 1:]
+    if m == 2:
+        # Without taking like numbers from each other.
+        square = c[:, 1] ** 2 - 4.0 * c[:, 0] * c[:, 2]
+        double = -c[:, 1] / (2.0 * c[:, 2])
+        with np.errstate(invalid="ignore", divide="ignore"):
+            q = -(c[:, 1] + np.copysign(np.sqrt(square), c[:, 1])) / 2.0
+            pair = np.stack([q / c[:, 2], c[:, 0] / q], axis=1)
+            near = (square <= 0.0) & (np.sqrt(-square) <= 2.0 * _TINY_IMAGINARY * np.abs(c[:, 2]))
+        pair[near] = double[near, None]
+        return pair
+    companion = np.zeros((len(c), m, m))
+    companion[:, np.arange(1, m), np.arange(m - 1)] = 1.0
+    companion[:, 0] = -c[:, m - 1 :: -1] / c[:, m:]
+    values = np.linalg.eigvals(companion)
+    return np.where(np.abs(values.imag) <= _TINY_IMAGINARY, values.real, np.nan)
 
 
 def derivative(coefficients: FloatArray) -> FloatArray:

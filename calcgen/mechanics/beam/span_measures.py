@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+from collections.abc import Sequence
 from dataclasses import dataclass, replace
 from math import sqrt
 
@@ -21,13 +22,25 @@ def relative_to_chord(
     The chord is the straight line through the deflected axis at `start` and `end`; what is asked beyond them
     is counted from its prolongation. Slopes stay those of the axis.
     """
+    return relative_to_chords(solution, (start, end), plane)
+
+
+def relative_to_chords(
+    solution: CaseSolution, places: Sequence[float], plane: Plane = "vertical"
+) -> CaseSolution:
+    """Give the solution with its deflection in `plane` counted from the chords from place to place, m.
+
+    Places are nodes, but for the first and the last; see `relative_to_chord`.
+    """
     quantity: Quantity = "w" if plane == "vertical" else "w_lat"
-    w_start, w_end = (float(w) for w in solution.values(quantity, np.array([start, end])))
-    slope = (w_end - w_start) / (end - start)
+    x, nodes = np.array(places), solution.nodes
+    w = solution.values(quantity, x)
+    number = np.clip(np.searchsorted(x, (nodes[:-1] + nodes[1:]) / 2) - 1, 0, len(x) - 2)
+    slope = (np.diff(w) / np.diff(x))[number]
     pieces = solution.pieces.copy()
     of_w = pieces[:, _W, PLANES.index(plane)]
-    of_w[:, 0] -= w_start + slope * (solution.nodes[:-1] - start)
-    of_w[:, 1] -= slope * np.diff(solution.nodes)
+    of_w[:, 0] -= w[number] + slope * (nodes[:-1] - x[number])
+    of_w[:, 1] -= slope * np.diff(nodes)
     return replace(solution, pieces=pieces)
 
 

@@ -3,13 +3,14 @@
 from __future__ import annotations
 
 import math
+from bisect import bisect_right
 from dataclasses import dataclass
 from itertools import pairwise
 
 import numpy as np
 
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.beam.model import FREE, BeamModel, Plane
+from calcgen.mechanics.beam.model import FREE, BeamModel, Plane, Support
 
 VANISHING = 1e-9
 """Part of a motion's size below which it counts as none."""
@@ -44,8 +45,9 @@ class UnstableBeam(Exception):  # noqa: N818 - the name says what is wrong with 
         text = f"the stretch between {start:g} m and {end:g} m can {motion}{sideways}: {hinges}"
         if not others:
             return text
-        moved = " and ".join(f"that between {a:g} m and {b:g} m" for a, b in others)
-        return f"{text}; {moved} {'moves' if len(others) == 1 else 'move'} with it"
+        *more, last = (f"that between {a:g} m and {b:g} m" for a, b in others)
+        moved = f"{', '.join(more)} and {last} move" if more else f"{last} moves"
+        return f"{text}; {moved} with it"
 
 
 def require_stable(model: BeamModel, plane: Plane) -> None:
@@ -73,16 +75,19 @@ def require_stable(model: BeamModel, plane: Plane) -> None:
 def _held(model: BeamModel, plane: Plane, start: float, end: float) -> FloatArray:
     """Rows that a part's motions must bring to zero; a support at a hinge acts on the part to its left."""
     after = -math.inf if start == 0.0 else start + model.tolerance
+    first, last = (bisect_right(model.supports, x, key=_place) for x in (after, end + model.tolerance))
     rows = [np.zeros(2)]
-    for support in model.supports:
-        if not after < support.x <= end + model.tolerance:
-            continue
+    for support in model.supports[first:last]:
         deflection, rotation = support.restraints(plane)
         if deflection > FREE:
             rows.append(_deflection(model, start, support.x))
         if rotation > FREE:
             rows.append(np.array([0.0, 1.0]))
     return np.array(rows)
+
+
+def _place(support: Support) -> float:
+    return support.x
 
 
 def _deflection(model: BeamModel, start: float, x: float) -> FloatArray:
@@ -93,7 +98,8 @@ def _nullspace(rows: FloatArray, motions: FloatArray) -> FloatArray:
     """Motions, as columns, that `rows` (in terms of the columns of `motions`) bring to zero."""
     if not motions.shape[1]:
         return motions
-    _, sizes, directions = np.linalg.svd(rows)
+    rows = np.vstack([rows, np.zeros((2, motions.shape[1]))])  # at least as many as columns
+    _, sizes, directions = np.linalg.svd(rows, full_matrices=False)
     rank = int(np.sum(sizes > VANISHING))
     return np.asarray(motions @ directions[rank:].T)
 

@@ -4,14 +4,13 @@ from __future__ import annotations
 
 from dataclasses import dataclass
 
-from markupsafe import Markup, escape
+from markupsafe import escape
 
 from calcgen.evaluation.results.table import TableHead, TableResult
 from calcgen.quantities.display import describe
 from calcgen.quantities.measure import Measure
 from calcgen.site.context import Context
-from calcgen.site.equations import looked_up
-from calcgen.site.lookups import between_text, user_of
+from calcgen.site.lookups import rows_of
 from calcgen.site.views import RowView, ValueRow
 
 
@@ -60,18 +59,7 @@ def table_view(result: TableResult, context: Context) -> TableView:
         flag="" if result.reference.text else "unreferenced",
         heads=tuple(head.shown.text for head in result.columns),
         rows=tuple((head.shown.text, row) for head, row in zip(result.rows, cells, strict=True)),
-        lookups=tuple(
-            ValueRow(
-                RowView(
-                    f"{result.name}-lookup-{number}",
-                    Markup("for ") + user_of(lookup, context),
-                    escape(between_text(lookup, result)),
-                    0,
-                ),
-                looked_up(lookup),
-            )
-            for number, lookup in enumerate(lookups, start=1)
-        ),
+        lookups=rows_of(result.name, context),
     )
 
 

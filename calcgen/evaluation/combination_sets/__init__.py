@@ -1,0 +1,1 @@
+"""Combination sets of design standards, generated from the kinds of load cases."""

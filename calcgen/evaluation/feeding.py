@@ -1,0 +1,58 @@
+"""What each calc takes from another, whether it could be evaluated or not."""
+
+from __future__ import annotations
+
+from collections.abc import Iterable, Iterator
+from dataclasses import dataclass
+
+from calcgen.evaluation.results.calc import EvaluatedCalc
+from calcgen.evaluation.results.common import Origin
+from calcgen.evaluation.results.lines import InputRow, InputsResult
+from calcgen.language.blocks.inputs import Feed, InputsBlock
+
+
+@dataclass(frozen=True)
+class Fed:
+    """An input that is taken from another calc.
+
+    Attributes
+    ----------
+    origin : the calc that gives, and the name there.
+    taker, name : the calc that takes, and the name here.
+    row : the input as evaluated; None where it could not be.
+    line : of the input in the source of the taker.
+    """
+
+    origin: Origin
+    taker: str
+    name: str
+    row: InputRow | None
+    line: int
+
+
+def fed_inputs(calcs: Iterable[EvaluatedCalc]) -> tuple[Fed, ...]:
+    """Return all inputs that calcs take from each other, in the order of the calcs and of their text.
+
+    A feed from a calc that does not exist is left out: it has its diagnostic.
+    """
+    by_number = {calc.number: calc for calc in calcs}
+    return tuple(fed for calc in by_number.values() for fed in _of(calc) if fed.origin.calc in by_number)
+
+
+def _of(calc: EvaluatedCalc) -> Iterator[Fed]:
+    rows = {
+        row.line: row
+        for segment in calc.segments
+        if isinstance(segment, InputsResult)
+        for row in segment.rows
+        if isinstance(row, InputRow)
+    }
+    source = calc.calc.source
+    for block in calc.calc.segments:
+        for item in block.items if isinstance(block, InputsBlock) else ():
+            if isinstance(item.value, Feed):
+                name = item.value.name
+                arguments = "" if name.arguments is None else source.text[name.spans[-1].end : name.span.end]
+                origin = Origin(item.value.calc, name.dotted, " ".join(arguments.split()))
+                line = source.line_number(item.span)
+                yield Fed(origin, calc.number, item.target.name, rows.get(line), line)
