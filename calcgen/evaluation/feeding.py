@@ -5,6 +5,7 @@ from __future__ import annotations
 from collections.abc import Iterable, Iterator
 from dataclasses import dataclass
 
+from calcgen.evaluation.blocks.inputs import origin_of
 from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.evaluation.results.common import Origin
 from calcgen.evaluation.results.lines import InputRow, InputsResult
@@ -51,8 +52,5 @@ def _of(calc: EvaluatedCalc) -> Iterator[Fed]:
     for block in calc.calc.segments:
         for item in block.items if isinstance(block, InputsBlock) else ():
             if isinstance(item.value, Feed):
-                name = item.value.name
-                arguments = "" if name.arguments is None else source.text[name.spans[-1].end : name.span.end]
-                origin = Origin(item.value.calc, name.dotted, " ".join(arguments.split()))
                 line = source.line_number(item.span)
-                yield Fed(origin, calc.number, item.target.name, rows.get(line), line)
+                yield Fed(origin_of(item.value, source), calc.number, item.target.name, rows.get(line), line)

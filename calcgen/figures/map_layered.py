@@ -42,9 +42,9 @@ def layered(
     given = list(dict.fromkeys(arrows))
     layer = {calc: n for n, calcs in enumerate(layers) for calc in calcs}
     back = [(giver, taker) for giver, taker in given if layer[giver] >= layer[taker]]
-    rows, links = stops(layers, [arrow for arrow in given if arrow not in back])
+    rows, links = stops(layers, [(giver, taker) for giver, taker in given if layer[giver] < layer[taker]])
     rows = ordered(rows, links)
-    real = {(calc, n) for n, layer in enumerate(layers) for calc in layer}
+    real = set(layer.items())
     heights = {stop: cells[stop[0]].height if stop in real else GRID for row in rows for stop in row}
     top = tops(rows, links, heights, GRID)
     start = {(s[0], end): top[s] for s, end in links}
@@ -193,23 +193,26 @@ def _plan(levels: _Levels, loops: frozenset[Arrow], label: float | None) -> Plan
         for net, t in zip(nets[n], track[n], strict=True)
     }
     layer = {stop[0]: stop[1] for stop in levels.cells}
+    leftmost = {giver: n for giver, n, returns in reversed(at) if returns}
+    farthest: dict[str, int] = {}  # layer to which a loop of a calc goes on
+    for giver, taker in loops:
+        farthest[giver] = max(farthest.get(giver, 0), layer[taker])
     for n in nets:
         for net in nets[n]:
             here = at[net.giver, n, net.returns]
             origin = at[net.giver, layer[net.giver], False] if net.returns else right[n]
             for stop, level in net.ends:
                 enters = stop in levels.cells
-                beyond = [t for g, t in loops if g == net.giver and layer[t] > stop[1]]
                 end = left[stop[1]] if enters else right[stop[1]]
                 points = _turned((origin, net.start), here, (end, level))
-                loop = (net.giver, stop[0]) in loops if enters else bool(beyond)
+                loop = (net.giver, stop[0]) in loops if enters else farthest.get(net.giver, 0) > stop[1]
                 routes.append(Route((net.giver, stop[0] if enters else ""), points, loop, tip=enters))
             if net.lane is not None and not net.returns:
                 points = ((origin, net.start), (here, net.start), (here, net.lane))
                 routes.append(Route((net.giver, ""), points, loop=True, tip=False))
             dots += [(here, level) for level in net.partings]
-            farther = net.returns and any(m < n for g, m, returns in at if returns and g == net.giver)
-            dots += [(here, net.start)] if farther else []
+            if net.returns and leftmost[net.giver] < n:
+                dots.append((here, net.start))
     lanes = [net.lane for row in nets.values() for net in row if net.lane is not None]
     width = max([right[last], *at.values()])
     return Plan(tuple(cells), tuple(routes), tuple(dots), width, max([levels.bottom, *lanes]))

@@ -31,36 +31,38 @@ def joined(calcs: Iterable[str], arrows: Iterable[Arrow]) -> list[list[str]]:
         near[taker].append(giver)
     order = {calc: place for place, calc in enumerate(near)}
     seen: set[str] = set()
-    groups = []
-    for calc in near:
-        if calc not in seen:
-            group = _reached(calc, near)
-            seen |= group
-            groups.append(sorted(group, key=order.__getitem__))
-    return groups
+    return [sorted(_reached(calc, near, seen), key=order.__getitem__) for calc in near if calc not in seen]
 
 
 def on_loops(arrows: Iterable[Arrow]) -> frozenset[Arrow]:
-    """Return the arrows that are part of a loop: those from whose tip a way leads back to their tail."""
-    left = list(arrows)
-    count = len(left) + 1
-    while len(left) < count:  # what leads nowhere, or comes from nowhere, is on no loop
-        count = len(left)
-        givers, takers = {giver for giver, _ in left}, {taker for _, taker in left}
-        left = [(giver, taker) for giver, taker in left if giver in takers and taker in givers]
-    fed: dict[str, list[str]] = {giver: [] for giver, _ in left}
-    for giver, taker in left:
+    """Return the arrows that are part of a loop: those within a strong component.
+
+    M. Sharir, A strong-connectivity algorithm and its applications in data flow analysis, Computers &
+    Mathematics with Applications 7 (1981) 67-72 (from memory).
+    """
+    pairs = list(arrows)
+    fed: dict[str, list[str]] = {calc: [] for pair in pairs for calc in pair}
+    given: dict[str, list[str]] = {calc: [] for calc in fed}
+    for giver, taker in pairs:
         fed[giver].append(taker)
-    ahead = {calc: _reached(calc, fed) for calc in fed}
-    return frozenset((giver, taker) for giver in fed for taker in fed[giver] if giver in ahead[taker])
+        given[taker].append(giver)
+    left, _ = _in_depth(fed, fed)
+    seen: set[str] = set()
+    component: dict[str, str] = {}
+    for calc in reversed(left):
+        if calc not in seen:
+            component.update(dict.fromkeys(_reached(calc, given, seen), calc))
+    return frozenset(pair for pair in pairs if component[pair[0]] == component[pair[1]])
 
 
-def _reached(start: str, near: Mapping[str, Sequence[str]]) -> set[str]:
-    found, waiting = {start}, [start]
-    while waiting:
-        new = [calc for calc in near[waiting.pop()] if calc not in found]
-        found.update(new)
-        waiting += new
+def _reached(start: str, near: Mapping[str, Sequence[str]], seen: set[str]) -> list[str]:
+    """Return where one comes from a start without passing what was seen before; it is seen now."""
+    found = [start]
+    seen.add(start)
+    for calc in found:  # grows
+        new = [other for other in dict.fromkeys(near[calc]) if other not in seen]
+        seen.update(new)
+        found += new
     return found
 
 
@@ -71,22 +73,32 @@ def backward(calcs: Sequence[str], arrows: Iterable[Arrow]) -> frozenset[Arrow]:
     for giver, taker in arrows:
         fed[giver].append(taker)
         free.discard(taker)
-    closing: set[Arrow] = set()
+    _, closing = _in_depth((*(c for c in calcs if c in free), *calcs), fed)
+    return frozenset(closing)
+
+
+def _in_depth(starts: Iterable[str], fed: Mapping[str, Sequence[str]]) -> tuple[list[str], list[Arrow]]:
+    """Search in depth; return the calcs in the order in which they are left, and arrows back to the path."""
+    left: list[str] = []
+    closing: list[Arrow] = []
     done: set[str] = set()
-    for start in (*(c for c in calcs if c in free), *calcs):
-        path = [(start, iter(fed[start]))] if start not in done else []
+    for start in starts:
+        if start in done:
+            continue
+        path = {start: iter(fed[start])}
         done.add(start)
         while path:
-            calc, ahead = path[-1]
-            after = next(ahead, None)
+            calc = next(reversed(path))
+            after = next(path[calc], None)
             if after is None:
-                path.pop()
-            elif any(after == before for before, _ in path):
-                closing.add((calc, after))
+                path.popitem()
+                left.append(calc)
+            elif after in path:
+                closing.append((calc, after))
             elif after not in done:
                 done.add(after)
-                path.append((after, iter(fed[after])))
-    return frozenset(closing)
+                path[after] = iter(fed[after])
+    return left, closing
 
 
 def layers_of(calcs: Sequence[str], arrows: Iterable[Arrow]) -> tuple[tuple[str, ...], ...]:
@@ -105,19 +117,23 @@ def layers_of(calcs: Sequence[str], arrows: Iterable[Arrow]) -> tuple[tuple[str,
         given[taker].append(giver)
         fed[giver].append(taker)
     layer: dict[str, int] = {}
-    waiting = list(calcs)
-    while waiting:
-        ready = [c for c in waiting if all(g in layer for g in given[c])]
-        if not ready:
-            raise ValueError("the arrows have a loop")
-        for calc in ready:
-            layer[calc] = 1 + max((layer[g] for g in given[calc]), default=-1)
-        waiting = [c for c in waiting if c not in layer]
+    unplaced = {calc: len(givers) for calc, givers in given.items()}
+    ready = [calc for calc in calcs if not unplaced[calc]]
+    for calc in ready:  # grows
+        layer[calc] = 1 + max((layer[g] for g in given[calc]), default=-1)
+        for taker in fed[calc]:
+            unplaced[taker] -= 1
+            if not unplaced[taker]:
+                ready.append(taker)
+    if len(layer) < len(given):
+        raise ValueError("the arrows have a loop")
     for calc in calcs:
         if not given[calc] and fed[calc]:
             layer[calc] = min(layer[t] for t in fed[calc]) - 1
-    count = 1 + max(layer.values(), default=-1)
-    return tuple(tuple(c for c in calcs if layer[c] == n) for n in range(count))
+    found: list[list[str]] = [[] for _ in range(1 + max(layer.values(), default=-1))]
+    for calc in calcs:
+        found[layer[calc]].append(calc)
+    return tuple(tuple(row) for row in found)
 
 
 Rows = list[list[Stop]]
@@ -131,10 +147,12 @@ def stops(layers: Sequence[Sequence[str]], arrows: Iterable[Arrow]) -> tuple[Row
     """
     layer = {calc: n for n, calcs in enumerate(layers) for calc in calcs}
     rows: Rows = [[(calc, n) for calc in calcs] for n, calcs in enumerate(layers)]
+    passed: set[Stop] = set()
     links: dict[tuple[Stop, Stop], None] = {}
     for giver, taker in arrows:
         for n in range(layer[giver] + 1, layer[taker]):
-            if (giver, n) not in rows[n]:
+            if (giver, n) not in passed:
+                passed.add((giver, n))
                 rows[n].append((giver, n))
             links[(giver, n - 1), (giver, n)] = None
         links[(giver, layer[taker] - 1), (taker, layer[taker])] = None

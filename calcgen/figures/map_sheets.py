@@ -5,6 +5,7 @@ from collections.abc import Collection, Iterator, Mapping, Sequence
 from dataclasses import dataclass
 from functools import cached_property
 
+from calcgen.figures.map_cut import MOST_LAYERS, bands
 from calcgen.figures.map_drawing import BOX, Cell, MapArrow, MapCalc, MapDrawing, Plan
 from calcgen.figures.map_layered import BETWEEN, layered
 from calcgen.figures.map_layout import GRID, Arrow, backward, joined, layers_of, on_loops
@@ -13,8 +14,6 @@ from calcgen.figures.map_words import MOST_SLOTS, Given, cell_of
 WIDTH = 900.0  # of a sheet, in pixels: on paper its small words keep a height of 6 points or so
 HEIGHT = 960.0
 APART = 2 * GRID  # from one plan to the next
-MOST_LAYERS = 5  # side by side without any words between them
-LAYERS = 3  # with words
 MOST_ARROWS = 6  # of a calc; one that feeds more has short arrows
 
 
@@ -57,16 +56,22 @@ def sheets_of(drawing: MapDrawing) -> tuple[MapSheet, ...]:
             free = HEIGHT + APART
         sheets[-1].append(piece)
         free -= height
-    return tuple(_sheet(drawing, pieces, n, len(sheets)) for n, pieces in enumerate(sheets, start=1))
-
-
-def _sheet(drawing: MapDrawing, pieces: Sequence[Piece], number: int, count: int) -> MapSheet:
-    of = f", {number} of {count}" if count > 1 else ""
-    here = {cell.calc.number: list[str]() for piece in pieces for cell in piece.cells}
+    givers: dict[str, list[str]] = {}
     for arrow in drawing.arrows:
-        if arrow.taker in here:
-            here[arrow.taker].append(arrow.giver)
-    feeds = [f"{', '.join(g)} feed{'' if len(g) > 1 else 's'} {n}" for n, g in sorted(here.items()) if g]
+        givers.setdefault(arrow.taker, []).append(arrow.giver)
+    return tuple(_sheet(drawing, givers, pieces, n, len(sheets)) for n, pieces in enumerate(sheets, start=1))
+
+
+def _sheet(
+    drawing: MapDrawing,
+    givers: Mapping[str, Sequence[str]],
+    pieces: Sequence[Piece],
+    number: int,
+    count: int,
+) -> MapSheet:
+    of = f", {number} of {count}" if count > 1 else ""
+    here = sorted(cell.calc.number for piece in pieces for cell in piece.cells)
+    feeds = [f"{', '.join(g)} feed{'' if len(g) > 1 else 's'} {n}" for n in here if (g := givers.get(n))]
     boxes = f"{len(here)} calc{'s' if len(here) > 1 else ''}"
     description = ". ".join([f"{boxes}, joined by arrows that carry values", *feeds]) + "."
     return MapSheet(f"{drawing.ident}-{number}", f"{drawing.title}{of}", description, tuple(pieces))
@@ -137,11 +142,15 @@ class _Map:
         apart = [arrow[1] for arrow in self._fed[number] if arrow not in arrows]
         return cell_of(self._calcs[number], given, apart)
 
-    def piece(self, group: Sequence[str]) -> Piece:
+    def layers(self, group: Sequence[str]) -> tuple[tuple[str, ...], ...]:
         """Return a group of calcs in its layers."""
         arrows = self.within(group)
         back = backward(group, arrows)
-        layers = layers_of(group, [arrow for arrow in arrows if arrow not in back])
+        return layers_of(group, [arrow for arrow in arrows if arrow not in back])
+
+    def piece(self, group: Sequence[str], layers: tuple[tuple[str, ...], ...]) -> Piece:
+        """Return a group of calcs with the arrows between them."""
+        arrows = self.within(group)
         drawn = set(arrows)
         cells = tuple(self.cell(calc, drawn) for layer in layers for calc in layer)
         return Piece(layers, cells, tuple(arrows))
@@ -149,16 +158,23 @@ class _Map:
     def groups(self) -> Iterator[Piece]:
         """Yield the calcs that are drawn together, each group small enough for a sheet."""
         linked = {calc for arrow in self.ends for calc in arrow}
-        numbers = [calc.number for calc in self.drawing.calcs if calc.number in linked]
-        waiting = joined(numbers, self.within(numbers))
+        place = {calc.number: n for n, calc in enumerate(self.drawing.calcs)}
+        numbers = [number for number in place if number in linked]
+        waiting = joined(numbers, self.within(numbers))[::-1]
         while waiting:
-            group = waiting.pop(0)
-            piece = self.piece(group)
-            parts = [set(part) for part in _cut(piece)]
-            if len(parts) < 2:
-                yield piece
-            ordered = [[calc for calc in group if calc in part] for part in parts if len(parts) > 1]
-            waiting[:0] = [found for part in ordered for found in joined(part, self.within(part))]
+            group = waiting.pop()
+            layers = self.layers(group)
+            if len(layers) > MOST_LAYERS:
+                parts = bands(layers, self.within(group), place)
+            else:
+                piece = self.piece(group, layers)
+                parts = _cut(piece)
+                if len(parts) < 2:
+                    yield piece
+                    continue
+            ordered = [sorted(part, key=place.__getitem__) for part in parts]
+            joint = [found for part in ordered for found in joined(part, self.within(part))]
+            waiting += reversed(joint)
 
     def pieces(self) -> Iterator[Piece]:
         """Yield the pieces: calcs that nothing feeds, groups joined by arrows, calcs by themselves."""
@@ -174,9 +190,6 @@ def _cut(piece: Piece) -> list[list[str]]:
 
     One that is too wide is cut behind the layers for which there is room, one too high at half its height.
     """
-    if len(piece.layers) > MOST_LAYERS:
-        parts = piece.layers[:LAYERS], piece.layers[LAYERS:]
-        return [[calc for layer in part for calc in layer] for part in parts]
     plan = piece.plan
     if plan.width > WIDTH and len(piece.layers) > 1:
         right = {placed.cell.calc.number: placed.box_left + BOX for placed in plan.cells}

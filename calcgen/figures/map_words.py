@@ -81,7 +81,7 @@ def _in_box(calc: MapCalc, apart: Sequence[str]) -> tuple[Line, ...]:
 
 def _some(verb: str, numbers: Sequence[str], room: float) -> str:
     """Return 'feeds B-03, D-04 + 7 more', with as many numbers as there is room for."""
-    for count in range(len(numbers), 0, -1):
+    for count in range(min(len(numbers), int(room)), 0, -1):  # each number is broader than a pixel
         more = f" + {len(numbers) - count} more" if count < len(numbers) else ""
         text = f"{verb} {', '.join(numbers[:count])}{more}"
         if text_width(text, SMALL) <= room:

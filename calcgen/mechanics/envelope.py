@@ -16,7 +16,7 @@ from __future__ import annotations
 from collections.abc import Collection, Iterator, Sequence
 from dataclasses import dataclass, field, replace
 from functools import cached_property
-from itertools import pairwise, product
+from itertools import pairwise
 
 import numpy as np
 
@@ -30,19 +30,18 @@ from calcgen.mechanics.actions import (
     Effect,
     EffectRange,
     Governs,
-    Pattern,
-    Placed,
 )
 from calcgen.mechanics.arrays import FloatArray
-from calcgen.mechanics.beam import BeamModel, Load, Quantity, scaled
+from calcgen.mechanics.beam import PLANES, BeamModel, Load, Quantity, scaled
 from calcgen.mechanics.beam.mesh import nearest
 from calcgen.mechanics.beam.results import TIE
 from calcgen.mechanics.combinations import ReactionPart
+from calcgen.mechanics.combined import Combined
+from calcgen.mechanics.extremes_along import extremes_of_each
 from calcgen.mechanics.governing import State, stretches
-from calcgen.mechanics.influence import BoolArray, IntArray
-from calcgen.mechanics.patterns import loaded_lengths
-from calcgen.mechanics.peaks import Places, divided, stationary
-from calcgen.mechanics.search import Curves, highest
+from calcgen.mechanics.influence import BoolArray
+from calcgen.mechanics.patterns import loaded_lengths, loaded_planes
+from calcgen.mechanics.peaks import divided
 
 
 def effects(
@@ -52,11 +51,13 @@ def effects(
     lengths: Sequence[tuple[float, float]] | None = None,
     cuts: Sequence[float] = (),
 ) -> Effects:
-    """Give the extreme effects of combinations; patterns load each span and overhang by default.
+    """Give the extreme effects of combinations.
 
-    Between places of `cuts`, m, extremes are found together when the first of them is asked for.
+    Patterns load each of `lengths`, by default each span and overhang in the planes of their loads. Between
+    places of `cuts`, m, extremes are found together when the first of them is asked for.
     """
-    acting = Acting(model, actions, tuple(lengths or loaded_lengths(model)))
+    planes = loaded_planes(actions.cases.get(name, ()) for name in actions.patterned)
+    acting = Acting(model, actions, tuple(lengths or loaded_lengths(model, planes or PLANES[:1])))
     inner = [x for x in sorted(cuts) if model.tolerance < x < model.length - model.tolerance]
     apart = [x for x, before in zip(inner, [0.0, *inner], strict=False) if x - before > model.tolerance]
     return Effects(acting, tuple(combinations), tuple(combinations), (0.0, *apart, model.length))
@@ -114,12 +115,14 @@ class Effects:
         near = float(self.acting.nodes[nearest(self.acting.nodes, x)])
         place = near if self.model.same(x, near) else x
         shares = self.acting.shares(quantity, np.array([place, place]), np.array([False, True]))
-        return EffectRange(self._governing(shares, low=False), self._governing(shares, low=True))
+        high, low = (self._combined.governing(shares, low=low) for low in (False, True))
+        return EffectRange(high, low)
 
     def reaction(self, support: int, part: ReactionPart = "force") -> EffectRange:
         """Give the extremes of one part of a support's reaction; supports count from 0, from the left."""
         shares = self.acting.reaction_shares(support, part)
-        return EffectRange(self._governing(shares, low=False), self._governing(shares, low=True))
+        high, low = (self._combined.governing(shares, low=low) for low in (False, True))
+        return EffectRange(high, low)
 
     def extremes(
         self, quantity: Quantity, start: float | None = None, end: float | None = None
@@ -153,7 +156,7 @@ class Effects:
         joints = self._joints((0.0, self.model.length))
         x, right = divided(joints[:-1], joints[1:], points_per_element)
         shares = self.acting.shares(quantity, x.ravel(), right.ravel())
-        high, low = self._sums(shares, low=False), self._sums(shares, low=True)
+        high, low = self._combined.sums(shares, low=False), self._combined.sums(shares, low=True)
         governs = [self._stretches(shares, joints, sums, low=sums is low) for sums in (low, high)]
         curves = tuple(self._curves(shares, [*governs[0], *governs[1]]))
         return Band(shares.x, low.min(axis=0), high.max(axis=0), governs[0], governs[1], curves)
@@ -174,73 +177,10 @@ class Effects:
         return tuple(found)
 
     @cached_property
-    def _factors(self) -> tuple[FloatArray, FloatArray]:
-        """Factors of the fixed cases (c, f) and of the actions that vary (c, v) in each combination."""
-        fixed, varying = (
-            np.array([[c.factors.get(name, 0.0) for name in names] for c in self.combinations]).reshape(
-                len(self.combinations), len(names)
-            )
-            for names in (self.acting.fixed, self.acting.varying)
-        )
-        return fixed, varying
+    def _combined(self) -> Combined:
+        return Combined(self.acting, self.combinations)
 
-    @cached_property
-    def _moving(self) -> BoolArray:
-        """Which combinations take a train, (c,)."""
-        return np.asarray(np.any(self._factors[1][:, len(self.acting.by_length) :] != 0.0, axis=1))
-
-    # Sums at places.
-
-    def _sums(self, shares: Shares, *, low: bool) -> FloatArray:
-        """Smallest, or largest, value of each combination at each place, (c, k)."""
-        fixed, varying = self._factors
-        adding, opposing = (shares.low, shares.high) if low else (shares.high, shares.low)
-        return np.asarray(
-            fixed @ shares.fixed + np.maximum(varying, 0.0) @ adding + np.minimum(varying, 0.0) @ opposing
-        )
-
-    # What governs.
-
-    def _governing(self, shares: Shares, *, low: bool) -> Effect:
-        """Give the extreme over combinations and places; of equal ones the first combination, then place."""
-        sums = self._sums(shares, low=low)
-        signed = -sums if low else sums
-        best = float(signed.max())
-        number = int(np.argmax(signed >= best - TIE * abs(best)))
-        return self._effect(shares, *divmod(number, sums.shape[1]), low=low)
-
-    def _effect(self, shares: Shares, combination: int, place: int, *, low: bool) -> Effect:
-        """Give the extreme of one combination at one of the places, and what causes it."""
-        factors = self.combinations[combination].factors
-        trains: list[Placed] = []
-        for reach, (name, train, _) in zip(shares.reaches, self.acting.crossings, strict=False):
-            factor = factors.get(name, 0.0)
-            position = reach.position(place, low=low == (factor > 0.0))
-            if factor != 0.0 and position is not None:
-                trains.append(Placed(name, train, position))
-        return Effect(
-            float(self._sums(shares.at(place), low=low)[combination, 0]),
-            float(shares.x[place]),
-            "right" if shares.right[place] else "left",
-            self.combinations[combination].name,
-            self._loaded(shares.parts[:, place], combination, low=low),
-            tuple(trains),
-        )
-
-    def _loaded(self, parts: FloatArray, combination: int, *, low: bool) -> tuple[Pattern, ...]:
-        """Give the lengths whose shares (j,) add to the extreme of a combination."""
-        found: list[Pattern] = []
-        for name in self.acting.by_length:
-            factor = self.combinations[combination].factors.get(name, 0.0)
-            wanted = parts * (-factor if low else factor) > 0.0
-            numbers = [
-                number
-                for acts, (case, number) in zip(wanted, self.acting.parts, strict=True)
-                if acts and case == name
-            ]
-            if factor != 0.0:
-                found.append(Pattern(name, tuple(numbers)))
-        return tuple(found)
+    # What governs along the beam.
 
     def _stretches(
         self, shares: Shares, joints: FloatArray, sums: FloatArray, *, low: bool
@@ -261,7 +201,7 @@ class Effects:
                 g.start,
                 g.end,
                 self.combinations[number].name,
-                self._loaded(signs, number, low=low),
+                self._combined.loaded(signs, number, low=low),
                 tuple(self.combinations[i].name for i in g.equal),
             )
             if found and replace(found[-1], start=g.start, end=g.end) == what:
@@ -273,14 +213,14 @@ class Effects:
     def _state(self, shares: Shares, state: State, where: slice, *, low: bool) -> FloatArray:
         """Give the extreme of one combination at some of the places, its parts acting as their signs tell."""
         number, signs = state
-        factors = self._factors[1][number, : len(self.acting.by_length)] @ self.acting.member
+        factors = self._combined.factors[1][number, : len(self.acting.by_length)] @ self.acting.member
         acts = factors * signs < 0.0 if low else factors * signs > 0.0
         return self._sum(shares, number, acts, where, low=low)
 
     def _sum(self, shares: Shares, number: int, acts: BoolArray, where: slice, *, low: bool) -> FloatArray:
         """Give the sum of a combination with those parts (j,) that act and the extreme of its trains."""
         count = len(self.acting.by_length)
-        fixed, varying = (factors[number] for factors in self._factors)
+        fixed, varying = (factors[number] for factors in self._combined.factors)
         factors = np.where(acts, varying[:count] @ self.acting.member, 0.0)
         adding, opposing = (shares.low, shares.high) if low else (shares.high, shares.low)
         return np.asarray(
@@ -293,7 +233,7 @@ class Effects:
     def _curves(self, shares: Shares, governs: Sequence[Governs]) -> Iterator[Curve]:
         """Give the curve of each state that governs somewhere, where they are few and no train moves."""
         states = dict.fromkeys((g.combination, g.patterns) for g in governs)
-        if len(states) > FEW or self._moving.any():
+        if len(states) > FEW or self._combined.moving.any():
             return
         names = [c.name for c in self.combinations]
         for name, patterns in states:
@@ -325,104 +265,7 @@ class Effects:
         """Give the extremes of each combination in each range between two cuts."""
         joints = self._joints(cuts)
         range_of = np.searchsorted(cuts, (joints[:-1] + joints[1:]) / 2) - 1
-        found: list[dict[tuple[int, bool], Effect]] = [{} for _ in cuts[1:]]
-        if self._moving.any():
-            self._by_bounds(quantity, joints, range_of, found)
-        if not self._moving.all():
-            self._by_roots(quantity, joints, range_of, found)
-        return [
-            {c.name: EffectRange(each[i, False], each[i, True]) for i, c in enumerate(self.combinations)}
-            for each in found
-        ]
-
-    def _by_roots(
-        self,
-        quantity: Quantity,
-        joints: FloatArray,
-        range_of: IntArray,
-        found: list[dict[tuple[int, bool], Effect]],
-    ) -> None:
-        """Find the extremes of the combinations without trains: they lie at joints and roots."""
-        pieces, noise = self.acting.of(quantity)
-        fixed, varying = self._factors
-        count, nodes = len(self.acting.fixed), self.acting.nodes
-        shares = pieces[count:].copy()
-        shares[np.abs(shares).max(axis=2) <= noise[count:, None]] = 0.0
-        own = np.tensordot(fixed, pieces[:count], axes=1)
-        parts = varying[:, : len(self.acting.by_length)] @ self.acting.member
-        ends, sides = divided(joints[:-1], joints[1:], 1)
-        x, right = ends.ravel(), sides.ravel()
-        seeds = self.acting.shares(quantity, x, right, trains=False)
-        h = np.diff(nodes)
-        for number, low in product(range(len(found)), (False, True)):
-            here = np.flatnonzero(range_of == number)
-            start, end = (
-                np.clip((joint - nodes[:-1]) / h, 0.0, 1.0)
-                for joint in (joints[here[0]], joints[here[-1] + 1])
-            )
-            at = slice(2 * here[0], 2 * here[-1] + 2)
-            sign = -1.0 if low else 1.0
-            values = sign * self._sums(seeds, low=low)[:, at]
-            for c in np.flatnonzero(~self._moving).tolist():
-                best = float(values[c].max())
-                equal = values[c] >= best - TIE * abs(best)
-                turns = stationary(sign * own[c, None], sign * parts[c, None], shares, start, end, best)
-                places = [
-                    *zip(x[at][equal].tolist(), right[at][equal].tolist(), strict=True),
-                    *((float(nodes[element] + h[element] * t), True) for element, t in turns),
-                ]
-                found[number][c, low] = self._best_of(quantity, joints, places, c, low=low)
-
-    def _by_bounds(
-        self,
-        quantity: Quantity,
-        joints: FloatArray,
-        range_of: IntArray,
-        found: list[dict[tuple[int, bool], Effect]],
-    ) -> None:
-        """Find the extremes of the combinations with trains."""
-        moving = np.flatnonzero(self._moving)
-
-        def both(shares: Shares) -> FloatArray:
-            high, low = (self._sums(shares, low=low)[moving] for low in (False, True))
-            return np.concatenate([high, -low])
-
-        def bounds(start: FloatArray, length: FloatArray) -> FloatArray:
-            controls = both(self.acting.control_shares(quantity, start, length))
-            return np.asarray(controls.reshape(len(controls), len(start), -1).max(axis=2))
-
-        noise = sum(
-            np.abs(factors[moving]) @ each
-            for factors, each in zip(self._factors, self.acting.noise(quantity), strict=True)
-        )
-        curves = Curves(
-            joints,
-            lambda x, right: both(self.acting.shares(quantity, x, right)),
-            bounds,
-            np.tile(noise, 2),
-        )
-        x, right = self._snapped(joints, *highest(curves, range_of))
-        shares = self.acting.shares(quantity, x.ravel(), right.ravel())
-        for curve, number in np.ndindex(x.shape):
-            c, low = int(moving[curve % len(moving)]), curve >= len(moving)
-            place = curve * x.shape[1] + number
-            found[number][c, low] = self._effect(shares, c, place, low=low)
-
-    def _best_of(
-        self, quantity: Quantity, joints: FloatArray, places: Places, combination: int, *, low: bool
-    ) -> Effect:
-        """Give the extreme of a combination without trains among places; of equal ones the first."""
-        x, right = (np.array(each) for each in zip(*places, strict=True))
-        shares = self.acting.shares(quantity, *self._snapped(joints, x, right), trains=False)
-        values = self._sums(shares, low=low)[combination] * (-1.0 if low else 1.0)
-        best = float(values.max())
-        return self._effect(shares, combination, int(np.argmax(values >= best - TIE * abs(best))), low=low)
-
-    def _snapped(self, joints: FloatArray, x: FloatArray, right: BoolArray) -> tuple[FloatArray, BoolArray]:
-        """Take a place that is next to a joint for the joint, on the side from which it was reached."""
-        near = joints[nearest(joints, x)]
-        close = np.abs(x - near) <= 2.0 * self.model.tolerance
-        return np.where(close, near, x), np.where(close & (x != near), x > near, right)
+        return extremes_of_each(self._combined, quantity, joints, range_of)
 
 
 def _first(effects: Sequence[Effect], sign: float) -> Effect:

@@ -7,16 +7,19 @@ ACI 318-19 6.4.3 name common arrangements; here the governing one is found for e
 
 from __future__ import annotations
 
-from collections.abc import Sequence
+from collections.abc import Collection, Iterable, Sequence
 from dataclasses import replace
 from itertools import pairwise
 
 from calcgen.mechanics.beam import (
+    FREE,
+    PLANES,
     BeamModel,
     DistributedLoad,
     DistributedMoment,
     FreeCurvature,
     Load,
+    Plane,
     PointLoad,
     PointMoment,
     Settlement,
@@ -24,18 +27,27 @@ from calcgen.mechanics.beam import (
 from calcgen.mechanics.beam.loads import places
 
 
-def loaded_lengths(model: BeamModel) -> tuple[tuple[float, float], ...]:
+def loaded_lengths(
+    model: BeamModel, planes: Collection[Plane] = PLANES[:1]
+) -> tuple[tuple[float, float], ...]:
     """Give start and end of each length that is loaded as one: each span, and each overhang by itself.
 
-    From left to right, over the whole beam; the supports that hold the deflection part them.
+    From left to right, over the whole beam; supports that hold the deflection in one of the `planes` part
+    them. With both planes that is more parts than either has, which only adds arrangements.
     """
-    inner = [x for span in model.spans for x in span] or [s.x for s in model.supports if s.w > 0.0]
+    held = sorted(s.x for s in model.supports if any(s.restraints(plane)[0] > FREE for plane in planes))
     joints = [0.0]
-    for x in (*inner, model.length):
+    for x in (*held, model.length):
         if x - joints[-1] > model.tolerance:
             joints.append(x)
     joints[-1] = model.length
     return tuple(pairwise(joints))
+
+
+def loaded_planes(cases: Iterable[Sequence[Load]]) -> frozenset[Plane]:
+    """Give the planes in which the loads of `cases` act; a settlement counts in none."""
+    loads = (load for case in cases for load in case if not isinstance(load, Settlement))
+    return frozenset(load.plane for load in loads)
 
 
 def by_length(loads: Sequence[Load], lengths: Sequence[tuple[float, float]]) -> tuple[tuple[Load, ...], ...]:

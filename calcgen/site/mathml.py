@@ -74,8 +74,8 @@ class Piece:
 
 
 def symbol(name: str) -> str:
-    """Return the MathML of a canonical name: `M_c_Rd` is M with the subscript c,Rd."""
-    return _symbol(name).mathml
+    """Return the MathML of a name: `M_c_Rd` is M with the subscript c,Rd, `span_1.C_b` C_b of span_1."""
+    return _dotted(tuple(name.split("."))).mathml
 
 
 def quantity(shown: Shown) -> str:

@@ -3,7 +3,7 @@
 Cold: both demos in processes of their own, into empty folders, start included; the program is compiled to
 bytecode before, as an installation leaves it. Unchanged: the same again.
 Save to page: `watch` in a process, a number edited in one calc, until the preview serves it in the page.
-Sections: see `sections`.
+Sections and beams: see `sections`, `beams`.
 """
 
 from __future__ import annotations
@@ -19,7 +19,7 @@ import time
 import urllib.request
 from pathlib import Path
 
-from tests.benchmarks import sections
+from tests.benchmarks import beams, sections
 
 PROJECTS = Path(__file__).parents[2] / "projects"
 DEMOS = ("heron-lock", "mill-loft")
@@ -101,6 +101,7 @@ def main() -> None:
     for name, seconds, aim in rows:
         print(f"{name:40} {seconds:7.3f} s   {seconds / start:6.2f} × the import   {aim}")  # noqa: T201
     sections.main()
+    beams.main()
 
 
 if __name__ == "__main__":

@@ -40,5 +40,13 @@
       found.push(`${name(whole)} may be split between sheets`);
     }
   }
+  for (const row of document.querySelectorAll("main tbody tr")) {
+    const style = getComputedStyle(row);
+    const columns = style.display === "grid" ? style.gridTemplateColumns.split(" ").length : 2;
+    if (row.checkVisibility() && (style.display === "block" || columns < 2)) found.push(`${name(row)} is stacked`);
+  }
+  for (const figure of document.querySelectorAll("main figure .narrow")) {
+    if (figure.checkVisibility()) found.push(`${name(figure.parentElement)} is drawn for a phone`);
+  }
   return found;
 }

@@ -123,7 +123,7 @@ def test_a_train_is_in_every_combination_that_another_does_not_cover() -> None:
     assert codes(calc) == []
     assert shown(calc, "x") == "92.40 kN·m"  # 1.35·3·8²/8 + 1.5·20·8/4
     assert {"G": 1.35} not in factors(calc)
-    assert result(calc).sets[0].remarks == ("C holds its own absence, which needs no combination",)
+    assert result(calc).sets[0].remarks == ("C acts where adverse, so no combination without is needed",)
 
 
 def test_a_settlement_is_there_or_not() -> None:

@@ -102,6 +102,9 @@ def test_a_result_says_what_causes_it() -> None:
     patterned = places(beam(*PATTERN))
     assert patterned["M_min"] == "at 5.000 m, Q on spans 1 and 2"
     assert patterned["R_1_min"] == "Q on span 2"
+    assert places(beam(*PATTERN[:2], "load Q uniform 8 kN/m from 0 m to 5 m", "pattern Q"))["R_1_min"] == (
+        "without Q"
+    )
 
 
 def test_with_combinations_it_names_the_combination_and_the_overhang() -> None:

@@ -212,6 +212,46 @@ def test_on_any_beam_what_governs_is_solved_again_and_never_exceeded(drawn: tupl
         assert all(residual.holds for residual in residuals), residuals
 
 
+def test_a_narrow_peak_of_the_envelope_is_found() -> None:
+    """Between two others that are a little lower, where a division of the beam may step over it."""
+    model = prismatic(11.125, 2e6, (fixed(0.0), pin(4.0), pin(7.625), pin(9.625)))
+    actions = Actions(
+        {"Q": (DistributedLoad(0.0, 11.125, 5e3, 8e3),)},
+        frozenset({"Q"}),
+        {"T": (Train((36.0, 12.0, 19.0), (1.765625, 3.75)),)},
+    )
+    found = effects(model, actions, (Combination("U", {"Q": 1.5, "T": 200.0}),))
+    largest = found.extremes("M").max
+    assert found.band("M", 2000).high.max() <= largest.value * (1.0 + 1e-12)
+    assert largest.value == pytest.approx(found.at("M", largest.x).max.value, rel=1e-12)
+    assert largest.x == pytest.approx(5.609375, abs=1e-6)  # the last axle at the free end of the overhang
+
+
+def test_extremes_between_cuts_are_those_of_each_range() -> None:
+    """Found together, range by range and combination by combination, and one by one."""
+    actions = Actions(
+        {"G": (DistributedLoad.uniform(0.0, 22.0, 4e3),), "Q": (DistributedLoad.uniform(0.0, 22.0, 8e3),)},
+        frozenset({"Q"}),
+        {"T": (TRAIN,)},
+    )
+    combinations = (
+        Combination("U1", {"G": 1.35, "Q": 1.5, "T": 1.5}),
+        Combination("U2", {"G": 1.0, "T": 1.5}),
+        Combination("U3", {"G": 1.0, "Q": 1.5}),
+    )
+    cuts = (0.0, 6.0, 14.0, 20.0, 22.0)
+    together = effects(THREE_SPANS, actions, combinations, cuts=cuts)
+    alone = effects(THREE_SPANS, actions, combinations)
+    for names in (("U1", "U2", "U3"), ("U2",), ("U3",)):
+        group, other = together.only(names), alone.only(names)
+        for quantity in VERTICAL:
+            for start, end in ((0.0, 22.0), (6.0, 14.0), (6.0, 22.0)):
+                here, there = group.extremes(quantity, start, end), other.extremes(quantity, start, end)
+                for a, b in ((here.max, there.max), (here.min, there.min)):
+                    assert a.value == pytest.approx(b.value, rel=1e-12)
+                    assert a.combination == b.combination
+
+
 def test_a_case_with_trains_alone_leaves_a_beam_at_rest_without_them() -> None:
     found = effects(THREE_SPANS, Actions({}, trains={"T": (TRAIN,)}), (Combination("T", {"T": 1.0}),))
     tip = found.at("M", 22.0)

@@ -44,6 +44,10 @@ def parsed(text: str) -> Formula:
         ("EI", "<mi>EI</mi>"),
         ("σ_max", "<msub><mi>σ</mi><mtext>max</mtext></msub>"),
         ("Φ'", "<msup><mi>Φ</mi><mo>′</mo></msup>"),
+        (
+            "span_1.C_b",
+            '<mrow><mtext class="owner">span_1.</mtext><msub><mi>C</mi><mtext>b</mtext></msub></mrow>',
+        ),
     ],
 )
 def test_symbols(name: str, expected: str) -> None:

@@ -26,6 +26,8 @@ SHAPE = re.compile(r"^(C_b|C_1)$")
 STATE = re.compile(r"^(M|V|w|slope|w_rel)(_lat)?$")
 SPAN = re.compile(r"^span_([1-9]\d*)$")
 
+NOTHING = 1e-24  # SI; a stiffness below it is none: what is divided by it is no longer a number
+
 
 def is_result(name: str) -> bool:
     """Whether a name is one of a beam's results."""
@@ -75,10 +77,16 @@ class Lines:
         if value is None:
             self.failed = True
             return None
-        if value.si <= 0:
-            self.fault("not-positive", line.value.span, f"{what} must be positive")
-            return None
-        return value
+        return value if self.is_positive(value.si, line.value, what) else None
+
+    def is_positive(self, value: float, node: Expression, what: str) -> bool:
+        """Report a stiffness, SI, that is not positive, or so small that it is as good as none."""
+        if not value >= NOTHING:
+            hint = f"{value:.3g} in SI units is as good as nothing" if value > 0.0 else ""
+            if not math.isnan(value):  # reported already
+                self.fault("not-positive", node.span, f"{what} must be positive", hint=hint)
+            return False
+        return True
 
     def place(self, node: Expression) -> float:
         """Return a place on the beam, m."""

@@ -2,6 +2,7 @@
 
 from __future__ import annotations
 
+import math
 from collections.abc import Mapping
 from dataclasses import dataclass
 
@@ -35,8 +36,8 @@ from calcgen.text import Related
 class BeamData:
     """A beam block in SI: the model, what acts on it in each case, and what the page shows beside them.
 
-    `sections` holds the section of each stretch that has one, `section_names` its name, or '' without one, for
-    every stretch; `G` and `expansion` stand where they are given.
+    `sections` holds the section of each stretch that has one, `section_names` its name for every stretch, ''
+    without one; `G` and `expansion` stand where they are given.
     """
 
     model: BeamModel
@@ -146,6 +147,15 @@ def _spans(lines: Lines) -> tuple[float, ...] | None:
         if length <= 0:
             lines.fault("not-positive", node.span, "a span must be longer than zero")
         lengths.append(length)
+    whole = math.fsum(lengths)
+    for node, length in zip(typed[0].lengths, lengths, strict=True):
+        if 0 < length <= 1e-9 * whole:
+            lines.fault(
+                "no-length",
+                node.span,
+                "the span has no length: beside the others it is a place",
+                hint="a span must be longer than a billionth of the beam",
+            )
     return None if lines.failed else tuple(lengths)
 
 

@@ -298,8 +298,8 @@ def _remarks(chosen: StandardSet, members: tuple[Case, ...]) -> Iterator[str]:
         yield "imposed loads of roofs do not act with snow or wind (EN 1991-1-1 3.3.2(1))"
     varying = [plain(case.name) for case in members if case.varies]
     if varying:
-        verb = "holds its" if len(varying) == 1 else "hold their"
-        yield f"{_listed(varying, 'and')} {verb} own absence, which needs no combination"
+        verb = "acts" if len(varying) == 1 else "act"
+        yield f"{_listed(varying, 'and')} {verb} where adverse, so no combination without is needed"
 
 
 def _listed(names: list[str], word: str) -> str:

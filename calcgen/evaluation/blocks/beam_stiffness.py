@@ -45,8 +45,7 @@ def properties_of(lines: Lines, E: Measure | None) -> list[Property]:
         EI = None
         if line.key.name == "EI":
             EI = lines.number(line.value, "bending stiffness")
-            if EI <= 0:
-                lines.fault("not-positive", line.value.span, "the bending stiffness must be positive")
+            lines.is_positive(EI, line.value, "the bending stiffness")
         found = Property(start, end, section, _modulus(lines, line, section, E), EI)
         if line.start is None:
             if base is not None and (base.EI is not None) != (EI is not None):

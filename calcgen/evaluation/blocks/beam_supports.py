@@ -105,6 +105,8 @@ def _spring(lines: Lines, node: Expression | None, kind: str) -> float:
     if value < 0:
         lines.fault("not-positive", node.span, "the stiffness of a spring must not be negative")
         return FREE
+    if value > FREE:
+        lines.is_positive(value, node, "the stiffness of a spring that is not 0")
     return value
 
 

@@ -1,7 +1,7 @@
 """The combinations of a standard set: every way in which cases may act together, each with its factors.
 
 Of an action the cases that may act together do so in every selection; those that are alternatives act one at
-a time. A case that varies by itself, in patterns or with a train, holds its own absence, so that no
+a time. A case that varies by itself, in patterns or with a train, may act nowhere, so that no
 combination without it is needed.
 """
 

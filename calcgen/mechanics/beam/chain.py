@@ -2,7 +2,7 @@
 
 Householder reflections reduce them: every second state is eliminated, all of them in one step, until the
 first and the last are left, in time proportional to the number of elements. What the reflections, which mix
-large and small rows, have rounded, one step of iterative refinement by `missing` takes away. (Reduction by
+large and small rows, have rounded, iterative refinement by `missing` takes away. (Reduction by
 orthogonal steps in halves: Wright, SIAM Journal on Scientific and Statistical Computing 13 (1992), 742-764,
 from memory.)
 """

@@ -4,7 +4,8 @@ The unknowns are deflection, slope, moment and shear at the start of each elemen
 rotations alone. The equations then multiply by the length h of an element and never divide by h³, as an
 element stiffness does, so a millimetre beside ten metres costs no digits; moment and shear come out of the
 system with its full accuracy instead of from differences of deflections. The system is block-bidiagonal:
-`Chain` solves it, with one step of iterative refinement, whose size tells how much was rounded, part by part.
+`Chain` solves it. Steps of iterative refinement follow, and the size of the last tells how much was rounded,
+part by part.
 With shear deformation (Timoshenko) the section turns by another angle than the axis: w' = rotation + V/GA_s,
 rotation' = -κ. The rotation of the section is then the unknown, as it is what supports and springs hold and
 what stays continuous; without shear the two are one.
@@ -34,7 +35,9 @@ W, ROTATION, M, V = range(4)
 ROUNDING = 1e-14
 """Part of the largest term of the scaled system below which a result is rounding error."""
 REFINED = 10.0
-"""A result below so many times what the refinement changed is rounding error, too."""
+"""A result below so many times what the last refinement changed is rounding error, too."""
+REFINEMENTS, ENOUGH = 4, 1e-11
+"""Steps of refinement at most, and the part of a state that a step changes when it is the last."""
 
 
 def solve(model: BeamModel, cases: Mapping[str, Sequence[Load]]) -> dict[str, CaseSolution]:
@@ -151,8 +154,12 @@ class _System:
         known[1:] -= left[1:] @ under_load.swapaxes(1, 2)
         chain = Chain.reduced(left, right, transfer)
         states = chain.solve(known)  # (n, m, cases)
-        refined = chain.solve(chain.missing(known, states))
-        start = (states + refined).swapaxes(1, 2).reshape(n, cases, 4, p)
+        for _ in range(REFINEMENTS):
+            refined = chain.solve(chain.missing(known, states))
+            states += refined
+            if np.all(np.abs(refined).max(axis=0) <= ENOUGH * np.abs(states).max(axis=0)):
+                break
+        start = states.swapaxes(1, 2).reshape(n, cases, 4, p)
         coefficients = self._march(start, loads)
         changed = np.abs(refined).max(axis=0).reshape(4, p, cases)
         rounding = REFINED * changed + ROUNDING * np.abs(coefficients).max(axis=(0, 2, 3, 4))

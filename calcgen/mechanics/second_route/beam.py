@@ -104,6 +104,8 @@ def _equilibrium(model: BeamModel, loads: Sequence[Load], solution: CaseSolution
         sums.append((plane, force.sum() - reaction.sum(), moment.sum() - reaction @ x - support_moment.sum()))
         force_scale += float(np.abs(force).sum() + np.abs(reaction).sum())
         moment_scale += float(size.sum() + np.abs(reaction * x).sum() + np.abs(support_moment).sum())
+        # Within the model's tolerance places are one, and so are the moments of a force at them.
+        moment_scale += model.tolerance * float(np.abs(force).sum())
     # Couples alone may leave the supports without force: their size over the length is then the measure.
     force_scale += moment_scale / model.length
     return [

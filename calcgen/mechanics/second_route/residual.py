@@ -3,6 +3,7 @@
 from __future__ import annotations
 
 from dataclasses import dataclass
+from typing import Final
 
 
 @dataclass(frozen=True)
@@ -24,6 +25,10 @@ class Residual:
         return abs(self.residual) <= self.tolerance
 
 
+UNDERFLOW: Final = 1e-290
+"""A difference, in SI units, that is left by numbers near the smallest there are: they hold few digits."""
+
+
 def relative(difference: float, scale: float) -> float:
     """Return `difference / scale`, and zero where nothing differs, whatever the scale."""
-    return 0.0 if difference == 0.0 else difference / scale if scale > 0.0 else float("inf")
+    return 0.0 if abs(difference) <= UNDERFLOW else difference / scale if scale > 0.0 else float("inf")

@@ -21,7 +21,8 @@ from calcgen.site.figure import FigureSvg
 from calcgen.site.mathml import symbol
 from calcgen.site.views import RouteRow, RowView, ValueRow, lettered, result_row, route_row
 
-_FURTHER = re.compile(r"θ_|w_rel_|x_[MV]_0_|(span_\d+\.)?C_[b1]$")  # others stand in the table by another name, or are of one span
+# Others stand in the table by another name, or are extremes of one span.
+_FURTHER = re.compile(r"θ_|w_rel_|x_[MV]_0_|(span_\d+\.)?C_[b1]$")
 
 
 @dataclass(frozen=True)
@@ -38,9 +39,8 @@ class BeamLineView:
 class GroupView:
     """A group of combinations and its results; the name is empty where all cases act together.
 
-    `further` are rotations at supports, deflections from the chords, where M and V change sign, and the moment
-    shape factors;
-    `generated` the standard set that the group has.
+    `further` are rotations at supports, deflections from the chords, where M and V change sign, and moment
+    shape factors; `generated` the standard set that the group has.
     """
 
     name: str
@@ -147,7 +147,7 @@ def _factors(solved: CombinationResult) -> Equation:
     """Return a combination as the sum of its cases with their factors."""
     terms: list[str] = []
     for case, factor in solved.factors.items():
-        size = f"{abs(factor):.12g}"
+        size = f"{abs(factor):.6g}"
         sign = '<mo form="infix">−</mo>' if factor < 0 else '<mo form="infix">+</mo>' if terms else ""
         times = "" if size == "1" else f'<mn>{size}</mn><mspace width="0.17em"/>'
         terms.append(f"{sign}{times}{symbol(case)}")

@@ -72,7 +72,7 @@ def _row(beam: str, c: SetCombination, cases: Sequence[str]) -> SetRow:
     return SetRow(
         result_anchor(beam, c.name, ""),
         lettered((c.name,)),
-        tuple(f"{c.factors[name]:.12g}" if name in c.factors else "" for name in cases),
+        tuple(f"{c.factors[name]:.6g}" if name in c.factors else "" for name in cases),
         Markup(", ").join(lettered((name,)) for name in c.leading),
     )
 
