@@ -4,13 +4,13 @@ from __future__ import annotations
 
 from collections.abc import Callable
 from itertools import pairwise
-from math import sqrt
+from math import ceil, sqrt
 from typing import NamedTuple, TypeAlias
 
 import numpy as np
 from numpy.typing import NDArray
 from scipy.integrate import cumulative_simpson, quad
-from scipy.optimize import fsolve
+from scipy.optimize import fsolve, minimize_scalar
 
 Array: TypeAlias = NDArray[np.float64]
 
@@ -92,6 +92,73 @@ def two_span_point(P: float, a: float, L: float) -> float:
     Source: three-moment equation, M = -P a (L² - a²)/(4 L²).
     """
     return -P * a * (L**2 - a**2) / (4 * L**2)
+
+
+class ThreeSpans(NamedTuple):
+    """Three equal spans L under w over all of them, and two equal wheels P, a apart, the left one at s.
+
+    Source: three-moment equations, of 4 M_2 + M_3 and M_2 + 4 M_3; a load at c from the left end of a span
+    counts -P c (L² - c²)/L² where that span lies left of the support, and where it lies right of it
+    -P d (L² - d²)/L² with d = L - c.
+    """
+
+    L: float
+    w: float
+    P: float
+    a: float
+    s: float
+
+    @property
+    def _wheels(self) -> list[tuple[int, float]]:
+        """Span of each wheel on the beam, at a support the left one, and its distance from the left end."""
+        places = [x for x in (self.s, self.s + self.a) if 0 < x <= 3 * self.L]
+        spans = [ceil(x / self.L) - 1 for x in places]
+        return [(span, x - span * self.L) for span, x in zip(spans, places, strict=True)]
+
+    @property
+    def supports(self) -> tuple[float, float, float, float]:
+        """The moments over the supports."""
+        L = self.L
+        sides = [-self.w * L**2 / 2] * 2  # of M_2 and M_3, over L
+        for span, c in self._wheels:
+            if span < 2:
+                sides[span] -= self.P * c * (L**2 - c**2) / L**2
+            if span > 0:
+                sides[span - 1] -= self.P * (L - c) * (L**2 - (L - c) ** 2) / L**2
+        return 0.0, (4 * sides[0] - sides[1]) / 15, (4 * sides[1] - sides[0]) / 15, 0.0
+
+    def M(self, span: int, x: Array) -> Array:
+        """Return the moment at x from the left support of a span, 0 to 2."""
+        L, ends = self.L, self.supports[span : span + 2]
+        total = self.w * x * (L - x) / 2 + ends[0] + (ends[1] - ends[0]) * x / L
+        for number, c in self._wheels:
+            if number == span:
+                total = total + self.P * np.where(x <= c, x * (L - c), c * (L - x)) / L
+        return np.asarray(total, dtype=np.float64)
+
+    def R_2(self) -> float:
+        """Return the reaction of the second support."""
+        _, left, right, _ = self.supports
+        total = self.w * self.L + left * -2 / self.L + right / self.L
+        for span, c in self._wheels:
+            total += self.P * {0: c, 1: self.L - c, 2: 0.0}[span] / self.L
+        return total
+
+    def V_left_of_2(self) -> float:
+        """Return the shear left of the second support."""
+        left = sum(self.P * c / self.L for span, c in self._wheels if span == 0)
+        return self.supports[1] / self.L - self.w * self.L / 2 - left
+
+
+def highest(f: Callable[[float], float], low: float, high: float) -> float:
+    """Return the largest value of f: the best of 801 places, closed in on between its neighbours."""
+    places = np.linspace(low, high, 801)
+    best = places[int(np.argmax([f(float(x)) for x in places]))]
+    step = (high - low) / 800
+    bounds = max(low, best - step), min(high, best + step)
+    return -float(
+        minimize_scalar(lambda x: -f(x), bounds=bounds, method="bounded", options={"xatol": 1e-12}).fun
+    )
 
 
 def curved(A: float, integral: float, R_c: float, N: float, M: float, r: float) -> float:

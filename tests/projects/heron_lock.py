@@ -12,10 +12,13 @@ from tests.projects.by_hand import (
     GRID,
     Angle,
     Overhang,
+    ThreeSpans,
     Worked,
     corner_pressure,
     cracked,
     curved,
+    highest,
+    sag,
     two_span_point,
 )
 
@@ -256,7 +259,67 @@ F_08 = (
     ),
 )
 
-CASES = (*W_07, *W_12, *B_03, *D_04, *P_05, *H_06, *L_16, *L_15, *S_02, *F_08)
+# R-18, HEB 160: A 54.3 cm², I_y 2492 cm⁴, W_pl,y 354.0 cm³, 160 x 160 x 8 x 13, r 15 mm
+_own18, _wheel, _bay, _apart = 78.5 * 54.3e-4, 21.0, 4.0, 1.6
+_g18, _d18 = G * (_own18 + 0.35), 1.35 * 1.12 * _wheel
+
+
+def _standing(s: float, w: float, P: float) -> ThreeSpans:
+    return ThreeSpans(_bay, w, P, _apart, s)
+
+
+def _sagging(w: float, P: float) -> float:
+    """Return the largest moment in the first span, which is at a wheel: V changes its sign there."""
+    return highest(lambda s: float(_standing(s, w, P).M(0, np.array(s))), 1.2, 1.8)
+
+
+def _moving(w: float, P: float, EI: float) -> float:
+    """Return the largest deflection of the first span."""
+    return highest(lambda s: sag(lambda x: _standing(s, w, P).M(0, x), _bay, EI), 1.0, 1.2)
+
+
+_M18, _M18_lat = _sagging(_g18, _d18), _sagging(0.0, 0.1 * _d18)
+_W_f, _I_c = 0.013 * 0.160**2 / 4, 0.013 * 0.160**3 / 12
+_A_c = 0.160 * 0.013 + 0.104 * 0.008 / 5
+_N_c = _M18 / 0.147
+_λ_c = _bay / (sqrt(_I_c / _A_c) * 93.9 * sqrt(235 / 275))
+_Φ_c = 0.5 * (1 + 0.49 * (_λ_c - 0.2) + _λ_c**2)
+_χ_c = 1 / (_Φ_c + sqrt(_Φ_c**2 - _λ_c**2))
+_u_b = _N_c / (_χ_c * _A_c * F_Y) + _M18_lat / (_W_f * F_Y) / (1 - _N_c * _λ_c**2 / (_A_c * F_Y))
+_R18 = highest(lambda s: _standing(s, _g18, _d18).R_2(), 2.0, 3.9)
+
+R_18 = (
+    Worked("R-18", "M_Ed", _M18, "kN·m", "three-moment equation, wheels stepped and closed in on", GRID),
+    Worked("R-18", "M_lat", _M18_lat, "kN·m", "the same, a tenth of each wheel and no weight", GRID),
+    Worked(
+        "R-18", "V_Ed", -_standing(2.4, _g18, _d18).V_left_of_2(), "kN", "a wheel at the bracket, one behind"
+    ),
+    Worked("R-18", "χ_c", _χ_c, "", "EN 1993-1-1 6.3.1.2, curve c"),
+    Worked("R-18", "u_b", _u_b, "", "strut and sideways moment", GRID),
+    Worked("R-18", "R_one", _R18 / _d18, "", "three-moment equation", GRID),
+    Worked("R-18", "w_max", _moving(_g18 / G, _wheel, E * 2492e-8) * 1e3, "mm", "double integration", 1e-5),
+    Worked(
+        "R-18", "u_max", _moving(0.0, 0.1 * _wheel, E * _I_c) * 1e3, "mm", "the same, top flange alone", 1e-5
+    ),
+)
+
+# R-19, rail 40 x 25 mm
+_I_rf = 40 * 25**3 / 12 + 78 * 13**3 / 12
+_l_eff = 3.25 * (_I_rf / 8) ** (1 / 3)
+_σ_z, _σ_x = _d18 * 1e3 / (_l_eff * 8), _M18 * 0.067 / 2492e-8 / 1e3
+_A_v19 = (
+    0.134 * 0.008 + (4 - pi) * 0.015**2 + (0.008 + 2 * 0.015) * 0.013
+)  # web, fillets, and the flange above them
+_τ_w = R_18[2].value / _A_v19 / 1e3
+
+R_19 = (
+    Worked("R-19", "l_eff", _l_eff, "mm", "EN 1993-6 Table 5.1(b)"),
+    Worked("R-19", "σ_z", _σ_z, "MPa", "F/(l t)"),
+    Worked("R-19", "σ_v", sqrt(_σ_x**2 + _σ_z**2 - _σ_x * _σ_z + 3 * _τ_w**2), "MPa", "von Mises", GRID),
+    Worked("R-19", "M_b", -_R18 * 0.22, "kN·m", "R e", GRID),
+)
+
+CASES = (*W_07, *W_12, *B_03, *D_04, *P_05, *H_06, *L_16, *L_15, *S_02, *F_08, *R_18, *R_19)
 
 _contact = 3 * (0.75 - _M8 / _N_min)
 _stress = _M16 * 0.067 / _I16 / 1e3

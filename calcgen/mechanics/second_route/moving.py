@@ -15,7 +15,7 @@ import numpy as np
 
 from calcgen.mechanics.actions import Effect, EffectRange, Pattern
 from calcgen.mechanics.beam import CaseSolution, Quantity, solve
-from calcgen.mechanics.combinations import ReactionPart
+from calcgen.mechanics.combinations import ReactionPart, reaction_index
 from calcgen.mechanics.envelope import Effects
 from calcgen.mechanics.second_route.residual import Residual, relative
 
@@ -41,8 +41,10 @@ def reaction_residuals(
 ) -> tuple[Residual, ...]:
     """Compare the extremes of a part of a support's reaction with plain solutions."""
 
+    plane, which = reaction_index(part)
+
     def read(solution: CaseSolution, _: Effect) -> float:
-        return float(getattr(solution.reactions[support], part))
+        return float(solution.clean_forces[support, plane, which])
 
     return _residuals(effects, "R" if part.startswith("force") else "M_R", found, read)
 
