@@ -115,14 +115,18 @@ def watch(folder: Path, port: int, out: Path | None) -> None:
     destination = out or root / "package"
     with Preview(destination, port, say=click.echo) as preview:
         click.echo(f"{preview.url}  (Ctrl-C ends)")
+        fault, stood = "", ""  # why there is no new package; when there was one last
 
         def rebuild(changes: frozenset[Change]) -> None:
+            nonlocal fault, stood
             began = time.perf_counter()
             request = _request(root, out, None, records=False)
             with _no_collection():
                 outcome = run(request, workshop)
-                if outcome.published:
-                    preview.announce()
+                before, fault = fault, _fault(outcome, stood)
+                if outcome.published or before != fault:
+                    preview.announce(fault)
+                stood = stood if fault else f"{datetime.now().astimezone():%H:%M:%S}"
             _tell(outcome, brief=True)
             what = ", ".join(sorted(c.path for c in changes if c.path != "."))
             click.echo(
@@ -264,6 +268,17 @@ def _tell(outcome: Outcome, *, brief: bool = False) -> None:
         standing = click.style(f"{calc.standing:13}", fg=_WORDS.get(calc.standing))
         ratio = f"{calc.utilisation:6.3f}" if calc.utilisation is not None else " " * 6
         click.echo(f"{calc.number:{width}}  {standing} {ratio}  {calc.title}{_governing(calc.governing)}")
+
+
+def _fault(outcome: Outcome, stood: str) -> str:
+    """Say why the package is not that of the project as it is now, '' where it is; `stood`: when it was."""
+    if outcome.published or outcome.current:
+        return ""
+    from calcgen.text.terminal import render
+
+    said = [render(d).partition("\n")[0] for d in outcome.diagnostics if d.severity == "error"][:1]
+    since = f" since {stood}" if stood else ", and from an earlier run"
+    return f"Not rebuilt{since}: {'; '.join(said or outcome.notes) or 'the project cannot be built'}"
 
 
 def _tell_diagnostics(diagnostics: Sequence[Diagnostic]) -> None:

@@ -10,6 +10,7 @@ import time
 from collections.abc import Callable
 from contextlib import suppress
 from dataclasses import dataclass
+from html import escape
 from http import HTTPStatus
 from http.server import BaseHTTPRequestHandler, ThreadingHTTPServer
 from pathlib import Path
@@ -86,6 +87,13 @@ _MISSING = b"""<!doctype html>
 """
 
 
+# It stays in view, and tells by words and a frame: not by colour alone.
+_BANNER = (
+    "position: sticky; top: 0; z-index: 9; margin: 0; padding: 8px 26px; font: 700 14px/1.4 sans-serif;"
+    " color: #fff; background: #8a1538; border: 3px double #fff; overflow-wrap: anywhere"
+)
+
+
 class Preview:
     """A server of one package folder on the loopback interface.
 
@@ -118,9 +126,9 @@ class Preview:
         """Serve, in a thread of its own."""
         self._thread.start()
 
-    def announce(self) -> None:
-        """Tell all open pages that a new build stands."""
-        self._builds.advance()
+    def announce(self, fault: str = "") -> None:
+        """Tell all open pages that a new build stands; with a `fault`, that the old one does and why."""
+        self._builds.advance(fault)
 
     def stop(self) -> None:
         """Stop at once; open event streams end."""
@@ -145,14 +153,16 @@ class _Builds:
         self._run = secrets.token_hex(4)  # so that a page left open from an earlier run reloads
         self._number = 0
         self._changed = threading.Condition()
+        self.fault = ""  # why the package is older than the project
         self.ended = False
 
     @property
     def current(self) -> str:
         return f"{self._run}-{self._number}"
 
-    def advance(self) -> None:
+    def advance(self, fault: str) -> None:
         with self._changed:
+            self.fault = fault
             self._number += 1
             self._changed.notify_all()
 
@@ -272,7 +282,7 @@ def _answer(path: str, folder: Path, builds: _Builds) -> _Answer:
         return _text(HTTPStatus.OK, builds.current)
     if path == "/-/reload.js":
         return _Answer(HTTPStatus.OK, _TYPES[".js"], _SCRIPT.encode())
-    build = builds.current  # before the file is read: a page older than its mark would never reload
+    build, fault = builds.current, builds.fault  # before the file is read: else it would never reload
     for pause in _PAUSES:
         time.sleep(pause)
         file = locate(folder, path)
@@ -280,14 +290,16 @@ def _answer(path: str, folder: Path, builds: _Builds) -> _Answer:
             return _Answer(HTTPStatus.FOUND, _TYPES[".txt"], b"", location=path.rstrip("/") + "/")
         with suppress(OSError):
             if file is not None:
-                return _file_answer(file, build)
-    return _Answer(HTTPStatus.NOT_FOUND, _TYPES[".html"], with_reload(_MISSING, build))
+                return _file_answer(file, build, fault)
+    return _Answer(HTTPStatus.NOT_FOUND, _TYPES[".html"], with_reload(with_fault(_MISSING, fault), build))
 
 
-def _file_answer(file: Path, build: str) -> _Answer:
+def _file_answer(file: Path, build: str, fault: str) -> _Answer:
     content = file.read_bytes()
     kind = _TYPES.get(file.suffix.lower(), "application/octet-stream")
-    return _Answer(HTTPStatus.OK, kind, with_reload(content, build) if file.suffix == ".html" else content)
+    if file.suffix == ".html":
+        content = with_reload(with_fault(content, fault), build)
+    return _Answer(HTTPStatus.OK, kind, content)
 
 
 def locate(folder: Path, path: str) -> Path | None:
@@ -305,6 +317,16 @@ def locate(folder: Path, path: str) -> Path | None:
         return file if file.is_relative_to(folder.resolve()) else None
     except (OSError, ValueError, RuntimeError):
         return None
+
+
+def with_fault(page: bytes, fault: str) -> bytes:
+    """Return the HTML page with a banner at its head that says what is at fault, if anything is."""
+    if not fault:
+        return page
+    banner = f'<p role="alert" style="{_BANNER}">{escape(fault)}</p>\n'.encode()
+    start = page.lower().find(b"<body>")
+    at = 0 if start < 0 else start + len(b"<body>")
+    return page[:at] + banner + page[at:]
 
 
 def with_reload(page: bytes, build: str) -> bytes:

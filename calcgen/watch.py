@@ -6,6 +6,7 @@ import os
 import queue
 import time
 from collections.abc import Callable, Collection, Iterable
+from contextlib import suppress
 from dataclasses import dataclass
 from pathlib import Path
 from threading import Event
@@ -13,7 +14,7 @@ from typing import Literal
 
 from watchdog.events import FileSystemEvent, FileSystemEventHandler
 from watchdog.observers import Observer
-from watchdog.observers.api import BaseObserver
+from watchdog.observers.api import BaseObserver, ObservedWatch
 from watchdog.observers.polling import PollingObserver
 
 QUIET = 0.03  # seconds without events after which a burst is over
@@ -125,17 +126,46 @@ class Debouncer:
 
 
 class _Handler(FileSystemEventHandler):
-    """Passes on the events that matter, so that writing the package prolongs no burst."""
+    """Passes on the events that matter, so that writing the package prolongs no burst.
+
+    Of the folders in the root those alone are watched that a build may read, also when they come later.
+    """
 
     def __init__(self, put: Callable[[RawEvent], None], root: Path, ignore: Collection[Path]) -> None:
         self._put = put
         self._root = root
         self._ignore = ignore
+        self._folders: dict[Path, ObservedWatch] = {}
+
+    def attach(self, observer: BaseObserver) -> None:
+        """Watch the root and its folders by an observer; call it once for each observer."""
+        self._observer = observer
+        self._folders.clear()
+        observer.schedule(self, str(self._root), recursive=False)
+        for path in self._root.glob("*"):  # none where the root is gone
+            self._come(path)
 
     def on_any_event(self, event: FileSystemEvent) -> None:
         raw = _raw(event)
-        if raw is not None and settle([raw], self._root, self._ignore):
-            self._put(raw)
+        if raw is None or not settle([raw], self._root, self._ignore):
+            return
+        if raw.kind in ("moved", "deleted"):
+            self._go(raw.path)
+        # Before it is passed on: what comes into a new folder later is seen, the rest the rebuild reads.
+        for path in (raw.path, raw.destination):
+            if raw.kind in ("created", "moved") and path is not None and path.parent == self._root:
+                self._come(path)
+        self._put(raw)
+
+    def _come(self, path: Path) -> None:
+        if path.is_dir() and _name(path, self._root, self._ignore) is not None:
+            self._go(path)
+            with suppress(FileNotFoundError, NotADirectoryError):  # gone again
+                self._folders[path] = self._observer.schedule(self, str(path), recursive=True)
+
+    def _go(self, path: Path) -> None:
+        if path in self._folders:
+            self._observer.unschedule(self._folders.pop(path))
 
 
 def watch(
@@ -165,7 +195,7 @@ def watch(
                 stop.wait(_TICK)
                 continue
             debouncer = Debouncer()
-            observer = _observer(_Handler(debouncer.put, root, ignore), root, say)
+            observer = _observer(_Handler(debouncer.put, root, ignore), say)
             try:
                 debouncer.put(RawEvent("created", root, is_directory=True))
                 _follow(root, ignore, debouncer, rebuild, stop)
@@ -201,16 +231,16 @@ def _identity(root: Path) -> tuple[int, int] | None:
     return status.st_dev, status.st_ino
 
 
-def _observer(handler: FileSystemEventHandler, root: Path, say: Callable[[str], None]) -> BaseObserver:
+def _observer(handler: _Handler, say: Callable[[str], None]) -> BaseObserver:
     """Start an observer; where the system has no more watches to give, one that looks at the files itself."""
     observer: BaseObserver = Observer()
-    observer.schedule(handler, str(root), recursive=True)
     try:
+        handler.attach(observer)
         observer.start()
     except OSError as error:
         say(f"the system cannot report changes here ({error}); looking for them twice a second instead")
         observer = PollingObserver(timeout=0.5)
-        observer.schedule(handler, str(root), recursive=True)
+        handler.attach(observer)
         observer.start()
     return observer
 

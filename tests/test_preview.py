@@ -217,6 +217,18 @@ def test_open_pages_hear_of_a_new_build_at_once(preview: Preview) -> None:
         tab.close()
 
 
+@pytest.mark.parametrize("path", ["/", "/calcs/W-12.html", "/no-such-page.html"])
+def test_pages_older_than_the_project_say_so(preview: Preview, path: str) -> None:
+    tab = Tab(preview)
+    tab.next()
+    preview.announce("Not rebuilt since 12:03:00: project.toml:3:1: <b> & c")
+    tab.next()  # open pages reload, and say it too
+    assert b">Not rebuilt since 12:03:00: project.toml:3:1: &lt;b&gt; &amp; c</p>" in ask(preview, path)[2]
+    preview.announce()
+    assert b"Not rebuilt" not in ask(preview, path)[2]
+    tab.close()
+
+
 def test_a_page_left_open_from_an_earlier_run_is_of_another_build(folder: Path) -> None:
     with Preview(folder) as first, Preview(folder) as second:
         assert ask(first, "/-/build")[2] != ask(second, "/-/build")[2]

@@ -216,6 +216,26 @@ def test_what_the_build_writes_causes_no_rebuild(watched: Watched) -> None:
     assert watched.is_quiet()
 
 
+def test_packages_are_written_without_a_word(watched: Watched, recwarn: pytest.WarningsRecorder) -> None:
+    """Their folders are not watched: the observer's threads would warn, or be late, when they come and go."""
+    for _ in range(5):
+        staging = watched.root / ".package.calcgen-staging"
+        (staging / "assets/fonts").mkdir(parents=True)
+        shutil.rmtree(watched.root / "package", ignore_errors=True)
+        staging.rename(watched.root / "package")
+    assert watched.is_quiet()
+    assert [str(warning.message) for warning in recwarn] == []
+
+
+def test_a_folder_that_went_and_came_again_is_watched_too(watched: Watched) -> None:
+    shutil.rmtree(watched.root / "calcs")
+    assert ("calcs", "removed") in watched.next()
+    (watched.root / "calcs").mkdir()
+    assert watched.next() == {("calcs", "changed")}
+    (watched.root / W).write_text("# Stringer\n")
+    assert watched.next() == CHANGED
+
+
 def test_a_new_folder_is_watched_too(watched: Watched) -> None:
     (watched.root / "methods").mkdir()
     assert watched.next() == {("methods", "changed")}

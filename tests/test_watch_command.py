@@ -127,9 +127,12 @@ def test_every_kind_of_broken_file_is_survived(watched: Watched) -> None:
     text = settings.read_bytes()
     settings.write_bytes(b"title = ")
     watched.expect("not built")
-    assert "Landing beam" in watched.page("B-01.html")  # the last good package is still served
+    page = watched.page("B-01.html")
+    assert "Landing beam" in page  # the last good package is still served, and says that it is old
+    assert re.search(r">Not rebuilt since \d\d:\d\d:\d\d: project\.toml:1:\d+: error: ", page)
     settings.write_bytes(text)
     watched.expect("1 satisfied")
+    assert "Not rebuilt" not in watched.page("B-01.html")
 
 
 def test_a_save_by_rename_and_calcs_that_come_and_go(watched: Watched) -> None:

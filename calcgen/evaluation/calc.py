@@ -7,7 +7,7 @@ from dataclasses import dataclass, field, replace
 from typing import Literal
 
 from calcgen.evaluation.blocks.beam import evaluate_beam
-from calcgen.evaluation.blocks.fed import Upstream
+from calcgen.evaluation.blocks.fed import Upstream, source_of
 from calcgen.evaluation.blocks.inputs import evaluate_inputs, origin_of
 from calcgen.evaluation.blocks.prose import evaluate_prose, evaluate_sheet
 from calcgen.evaluation.blocks.section import evaluate_section
@@ -20,11 +20,11 @@ from calcgen.evaluation.citations import check_citations
 from calcgen.evaluation.formulas import shown
 from calcgen.evaluation.lookups import lookups_of
 from calcgen.evaluation.order import feeds_of, in_order
+from calcgen.evaluation.residuals import report_residuals
 from calcgen.evaluation.results.beam import BeamResult
 from calcgen.evaluation.results.calc import EvaluatedCalc, Hindrance, Segment
-from calcgen.evaluation.results.common import Plain, Premise, SecondRoute, Standing
+from calcgen.evaluation.results.common import Plain, Premise, Standing
 from calcgen.evaluation.results.lines import AssumptionsResult, CheckResult, CheckRow, WorkingResult
-from calcgen.evaluation.results.section import SectionResult
 from calcgen.evaluation.results.stress import StressResult
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.assumptions import AssumptionsBlock
@@ -99,7 +99,8 @@ def evaluate_all(
         hindrances = tuple(h for n in feeders if n in done for h in [_hindrance(done[n])] if h is not None)
         if hindrances:
             reason = "; ".join(h.text for h in hindrances)
-            done[calc.number] = not_evaluated(calc, (), reason, hindrances)
+            found = _of_other_feeds(calc, hindrances, Upstream(calc.number, scopes, numbers, unread))
+            done[calc.number] = not_evaluated(calc, found, reason, hindrances)
             continue
         key = _depends_on(calc, tuple((n, done.get(n)) for n in feeders), (numbers, unread))
         result, scope = memory.recall(calc.number, key) or evaluate_calc(
@@ -108,6 +109,18 @@ def evaluate_all(
         memory.keep(key, result, scope)
         done[calc.number], scopes[calc.number] = result, scope
     return tuple(done[n] for n in sorted(done))
+
+
+def _of_other_feeds(
+    calc: Calc, hindrances: Sequence[Hindrance], upstream: Upstream
+) -> tuple[Diagnostic, ...]:
+    """Return the faults of what a calc that is not evaluated takes from calcs that do not hinder it."""
+    report = Report(calc.source)
+    hindering = {hindrance.calc for hindrance in hindrances}
+    for feed in feeds_of(calc):
+        if feed.calc not in hindering:
+            source_of(feed, report, upstream)
+    return report.diagnostics
 
 
 def _depends_on(
@@ -142,7 +155,6 @@ def not_evaluated(
         values={},
         checks=(),
         premises=(),
-        second_route=(),
         depends=tuple(origin_of(f, calc.source) for f in feeds_of(calc)),
         diagnostics=diagnostics,
         standing="in error" if failed else "not evaluated",
@@ -154,7 +166,11 @@ def not_evaluated(
 def evaluate_calc(
     calc: Calc, setting: Setting, upstream: Upstream, replaced: Mapping[str, Plain] | None = None
 ) -> tuple[EvaluatedCalc, Scope]:
-    """Evaluate one calc; `replaced` holds the values of inputs that have others than are written."""
+    """Evaluate one calc; `replaced` holds the values of inputs that have others than are written.
+
+    Of a calc with replaced values the second route is not asked here: it goes by what is read of the calc,
+    and whoever reads it asks. Its beams have no premises and warn of nothing, as nobody reads that.
+    """
     report = Report(calc.source)
     scope = Scope(report, setting.style, failed=set(calc.failed_names), later=_defined_names(calc))
     labels = Labels()
@@ -168,7 +184,8 @@ def evaluate_calc(
         elif isinstance(segment, SheetBlock):
             found[index] = evaluate_sheet(segment, scope)
     check_citations(calc, setting.references, report)
-    _report_residuals(tuple(found.values()), report)
+    if not replaced:
+        report_residuals(tuple(found.values()), report)
     once = replace(calc, segments=tuple(s for s in calc.segments if not isinstance(s, _TOLD)))
     for index, segment in enumerate(calc.segments):
         if isinstance(segment, VaryBlock):
@@ -176,7 +193,6 @@ def evaluate_calc(
                 segment, calc, scope, setting.catalogue, lambda r: evaluate_calc(once, setting, upstream, r)
             )
     segments = tuple(found[i] for i in range(len(calc.segments)))
-    second_route = _second_route(segments)
     diagnostics = tuple(sorted({*calc.diagnostics, *report.diagnostics}, key=lambda d: d.order))
     checks = _checks(segments)
     result = EvaluatedCalc(
@@ -185,7 +201,6 @@ def evaluate_calc(
         values={name: (value, shown(value, scope)) for name, value in scope.values.items()},
         checks=checks,
         premises=_premises(segments),
-        second_route=second_route,
         depends=tuple(origin_of(f, calc.source) for f in feeds_of(calc)),
         diagnostics=diagnostics,
         standing=_standing(checks, diagnostics),
@@ -216,7 +231,7 @@ def _evaluate_block(
         case SectionBlock():
             return evaluate_section(segment, scope, setting.axes, setting.catalogue)
         case BeamBlock():
-            return evaluate_beam(segment, scope)
+            return evaluate_beam(segment, scope, repeated=bool(replaced))
         case StressBlock():
             return evaluate_stress(segment, scope, labels)
         case TableBlock():
@@ -253,26 +268,6 @@ def _checks(segments: Sequence[Segment]) -> tuple[CheckResult, ...]:
 
 def _premises(segments: Sequence[Segment]) -> tuple[Premise, ...]:
     return tuple(p for s in segments if isinstance(s, BeamResult | StressResult) for p in s.premises)
-
-
-def _second_route(segments: Sequence[Segment]) -> tuple[SecondRoute, ...]:
-    kinds = SectionResult | BeamResult | StressResult
-    return tuple(r for s in segments if isinstance(s, kinds) for r in s.second_route)
-
-
-def _report_residuals(segments: Sequence[Segment], report: Report) -> None:
-    """Report each number that the second route does not find again: an error of the calc."""
-    for segment in segments:
-        if isinstance(segment, SectionResult | BeamResult | StressResult):
-            for row in segment.second_route:
-                if not row.holds:
-                    report.error(
-                        "residual",
-                        segment.span,
-                        f"the second route does not find {row.what} of '{row.of}' again: "
-                        f"residual {row.residual:.2e}, tolerance {row.tolerance:.0e} of {row.scale}",
-                        hint="do not use these results; the outline, the data or the program is at fault",
-                    )
 
 
 def _standing(checks: Sequence[CheckResult], diagnostics: Sequence[Diagnostic]) -> Standing:

@@ -140,7 +140,7 @@ class Evaluator:
                 return self._power(node, left, right)
 
     def _sum(self, node: Binary, left: Measure, right: Measure) -> Measure | None:
-        if not self.same_dimension(node.operator_span, node.operator, left, right):
+        if not self.same_dimension(node.operator_span, node.operator, left, right, _mixed_number(node)):
             return None
         unit = left.unit if left.unit is not None else right.unit
         if "°C" in (left.unit, right.unit):
@@ -169,13 +169,16 @@ class Evaluator:
             return self._fault("not-finite", node.operator_span, "the exponent is out of range", node.right)
         return self._finite(node.operator_span, lambda: left.quantity**exponent, None)
 
-    def same_dimension(self, span: Span, operator: str, left: Measure, right: Measure) -> bool:
-        """Return whether two operands have one dimension; report it when not."""
+    def same_dimension(
+        self, span: Span, operator: str, left: Measure, right: Measure, hint: str = ""
+    ) -> bool:
+        """Return whether two operands have one dimension; report it when not, with a hint if there is one."""
         if left.dimension == right.dimension:
             return True
         verb = {"+": "adds", "-": "subtracts"}.get(operator, "compares")
-        hint = ""
-        if {describe(left.dimension), describe(right.dimension)} == {"mass", "force"}:
+        if hint:
+            pass
+        elif {describe(left.dimension), describe(right.dimension)} == {"mass", "force"}:
             hint = "lb, kg and t are masses; write lbf or kN for a force, or multiply by g_n"
         elif not left.dimension or not right.dimension:
             hint = "a unit or a factor is missing on one side"
@@ -335,6 +338,16 @@ class Evaluator:
             f"'{node.operator}' compares two quantities, or with == and != two texts",
         )
         return None
+
+
+def _mixed_number(node: Binary) -> str:
+    """Return what to write where a dash joins a whole number and a fraction of a unit: `3-1/2 in`."""
+    whole, part = node.left, node.right
+    if node.operator != "-" or not isinstance(whole, Number) or not isinstance(part, Number):
+        return ""
+    joined = whole.span.end + 1 == part.span.start  # '3-1/2 in', not '3 - 1/2 in'
+    fraction = "/" in part.text.split()[0]
+    return f"write {whole.text} {part.text} for a length" if joined and fraction else ""
 
 
 def _product_unit(value: Measure, factor: Measure) -> str | None:

@@ -49,7 +49,8 @@ def in_order(calcs: Sequence[Calc]) -> Order:
         if number in twins:
             faulty.append((calc, (_twin(calc, twins[number]),), "another calc has the same number"))
         else:
-            reason = "it is part of a loop of calcs that feed each other"
+            itself = len(loops[number]) == 2
+            reason = "it feeds itself" if itself else "it is part of a loop of calcs that feed each other"
             faulty.append((calc, (_cycle(calc, loops[number]),), reason))
     return Order(tuple(by_number[n] for n in _sorted(feeds, loops.keys() | twins.keys())), tuple(faulty))
 

@@ -39,9 +39,10 @@ LARGEST: Mapping[str, float] = {
 """Largest magnitude by kind, SI: beyond anything built, and products of several are still numbers."""
 
 
-def quantity_of(node: Expression, kind: str, scope: Scope) -> Measure | None:
+def quantity_of(node: Expression, kind: str, scope: Scope, hint: str = "") -> Measure | None:
     """Return the value of an expression that must be of a kind of `KINDS`, 'number' or 'angle'.
 
+    `hint` says what to write where the dimension is another, in place of what is said in general.
     Reports a value of another dimension, and one beyond `LARGEST`, at the expression.
     """
     value = Evaluator(scope).measure(node)
@@ -51,8 +52,8 @@ def quantity_of(node: Expression, kind: str, scope: Scope) -> Measure | None:
     if value.dimension == wanted:
         return value if _can_be_computed(value, node, kind, scope) else None
     found = describe(value.dimension)
-    hint = _HINTS.get((found, kind), "")
-    if not value.dimension:
+    hint = hint or _HINTS.get((found, kind), "")
+    if not value.dimension and not hint:
         hint = f"write the unit after the number, such as {KINDS[kind]}" if kind != "number" else ""
     scope.report.error(
         "wrong-dimension", node.span, f"{_article(kind)} is needed here, this is {found}", hint=hint
@@ -60,9 +61,9 @@ def quantity_of(node: Expression, kind: str, scope: Scope) -> Measure | None:
     return None
 
 
-def si(node: Expression, kind: str, scope: Scope) -> float | None:
+def si(node: Expression, kind: str, scope: Scope, hint: str = "") -> float | None:
     """Return the magnitude in SI base units; as `quantity_of`."""
-    value = quantity_of(node, kind, scope)
+    value = quantity_of(node, kind, scope, hint)
     return None if value is None else value.si
 
 

@@ -6,6 +6,7 @@ from dataclasses import dataclass, field
 from typing import Protocol
 
 from calcgen.evaluation.results.common import Plain
+from calcgen.evaluation.results.table import TableResult
 from calcgen.language.nodes import CONSTANTS, FUNCTIONS, Name, Named
 from calcgen.quantities.display import Style
 from calcgen.quantities.measure import Measure, from_si, measure
@@ -109,6 +110,15 @@ class Scope:
         self._unknown(name, arguments, to)
         return None
 
+    def _is_head_of_table(self, word: str) -> bool:
+        tables = (getattr(thing, "result", None) for thing in self.things.values())
+        return any(
+            head.value == word
+            for table in tables
+            if isinstance(table, TableResult)
+            for head in (*table.rows, *table.columns)
+        )
+
     def _unknown(self, name: Name, arguments: tuple[Plain, ...] | None, to: Report) -> None:
         head = name.parts[0]
         if head in self.values:
@@ -131,6 +141,8 @@ class Scope:
         found = nearest(head, known)
         if head in self.later:
             hint = "it is defined further down; blocks are evaluated from top to bottom, so move it up"
+        elif self._is_head_of_table(head):
+            hint = f'quotes are missing: "{head}" is a head of a table'
         elif found:
             hint = f"the nearest name defined above is '{found}'"
         elif arguments is not None:

@@ -47,8 +47,6 @@ def _calc(calc: EvaluatedCalc, href: str) -> MapCalc:
 
 def _value(fed: Fed, was: str) -> MapValue:
     name = plain(fed.name)
-    if fed.row is None:
-        return MapValue(name, "", was=was)
-    if isinstance(fed.row.value, FedBlock):
+    if fed.row is not None and isinstance(fed.row.value, FedBlock):
         return MapValue(name, fed.row.value.what, ": ", was)
-    return MapValue(name, fed.row.shown.text, was=was)
+    return MapValue(name, fed.text, was=was)

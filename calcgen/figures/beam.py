@@ -66,6 +66,7 @@ class BeamDrawing:
     """A beam from `start` to `end` with what acts on it and what follows; lengths in the unit shown.
 
     `caption` says below the title how to read the figure; `parts` are given where the stiffness changes.
+    `intensity` is that of a distributed load drawn at full height, where it is not the largest of `cases`.
     """
 
     ident: str
@@ -81,6 +82,7 @@ class BeamDrawing:
     description: str = ""
     caption: str = ""
     parts: tuple[Part, ...] = ()
+    intensity: float = 0.0
 
 
 def draw_beam(drawing: BeamDrawing, width: Width) -> str:
@@ -100,7 +102,7 @@ def compose_beam(drawing: BeamDrawing, width: Width) -> Picture:
     y = _write(sketch, drawing.title, 0.0, room, bold=True)
     y = _write(sketch, drawing.caption, y, room)
     base = y + 14 if drawing.supports else y + 4
-    largest = largest_intensity(drawing.cases)
+    largest = drawing.intensity or largest_intensity(drawing.cases)
     for number, case in enumerate(drawing.cases):
         base = draw_case(sketch, case, y - 6, across, room, largest)
         if number < len(drawing.cases) - 1:

@@ -24,6 +24,7 @@ from calcgen.figures.adapt_shear import (
 from calcgen.figures.adapt_stress import field_drawing, stress_drawing
 from calcgen.figures.adapt_vary import vary_drawing
 from calcgen.figures.beam import compose_beam
+from calcgen.figures.beam_sheets import beam_sheets
 from calcgen.figures.conventions import ConventionDrawing, compose_conventions
 from calcgen.figures.field import compose_field
 from calcgen.figures.flow import compose_flow
@@ -74,8 +75,9 @@ def illustrate(calc: EvaluatedCalc, axes: Axes, style: Style) -> dict[str, tuple
                 )
             case BeamResult():
                 figures[segment.name] = tuple(
-                    Figure(compose_beam(b, "wide"), compose_beam(b, "narrow"))
+                    Figure(wide, compose_beam(part, "narrow"))
                     for b in beam_drawings(segment, ident, style)
+                    for part, wide in beam_sheets(b)
                 ) + tuple(
                     Figure(compose_influence(i, "wide"), compose_influence(i, "narrow"))
                     for i in influence_drawings(segment, ident, style)

@@ -7,13 +7,12 @@ from calcgen.figures.labels import Box, Point
 from calcgen.figures.map_drawing import BOX, Placed, Plan, Slot
 from calcgen.figures.map_layout import GRID
 from calcgen.figures.map_listed import listed
-from calcgen.figures.map_sheets import APART, WIDTH, MapSheet
+from calcgen.figures.map_sheets import APART, EDGE, WIDTH, MapSheet
 from calcgen.figures.map_words import BAR, PAD
 from calcgen.figures.picture import DASH, SMALL, TEXT, WIDTHS, Label, Picture, Sketch, Stroke, Width
 
 ARROW, LOOP = Stroke("muted", 1.0), Stroke("ink", 2.0)
 FRAME = Stroke("ink", 1.2)
-EDGE = 2.0  # for the thickness of lines at the left side
 HEAD = 7.0  # of an arrow, in pixels
 CORNER = 9.0  # cut off the box of a calc in error
 

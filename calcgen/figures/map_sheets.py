@@ -13,6 +13,7 @@ from calcgen.figures.map_words import MOST_SLOTS, Given, cell_of
 
 WIDTH = 900.0  # of a sheet, in pixels: on paper its small words keep a height of 6 points or so
 HEIGHT = 960.0
+EDGE = 2.0  # of the width, for the thickness of lines at the left side
 APART = 2 * GRID  # from one plan to the next
 MOST_ARROWS = 6  # of a calc; one that feeds more has short arrows
 
@@ -155,6 +156,21 @@ class _Map:
         cells = tuple(self.cell(calc, drawn) for layer in layers for calc in layer)
         return Piece(layers, cells, tuple(arrows))
 
+    def whole_loops(self, group: Sequence[str], parts: Sequence[Sequence[str]]) -> list[list[str]]:
+        """Return parts of a group with each loop that they cut, if it fits a sheet, as a part of its own."""
+        held = [set(part) for part in parts]
+        loops = joined(group, [arrow for arrow in self.within(group) if arrow in self.loops])
+        cut = [loop for loop in loops if not any(part.issuperset(loop) for part in held)]
+        whole = [loop for loop in cut if self._fits(loop)]
+        if not whole:
+            return [list(part) for part in parts]
+        apart = {calc for loop in whole for calc in loop}
+        return [*whole, [calc for calc in group if calc not in apart]]
+
+    def _fits(self, group: Sequence[str]) -> bool:
+        layers = self.layers(group)
+        return len(layers) <= MOST_LAYERS and len(_cut(self.piece(group, layers))) < 2
+
     def groups(self) -> Iterator[Piece]:
         """Yield the calcs that are drawn together, each group small enough for a sheet."""
         linked = {calc for arrow in self.ends for calc in arrow}
@@ -172,6 +188,7 @@ class _Map:
                 if len(parts) < 2:
                     yield piece
                     continue
+            parts = self.whole_loops(group, parts)
             ordered = [sorted(part, key=place.__getitem__) for part in parts]
             joint = [found for part in ordered for found in joined(part, self.within(part))]
             waiting += reversed(joint)
@@ -191,9 +208,9 @@ def _cut(piece: Piece) -> list[list[str]]:
     One that is too wide is cut behind the layers for which there is room, one too high at half its height.
     """
     plan = piece.plan
-    if plan.width > WIDTH and len(piece.layers) > 1:
+    if plan.width > WIDTH - EDGE and len(piece.layers) > 1:
         right = {placed.cell.calc.number: placed.box_left + BOX for placed in plan.cells}
-        count = max(1, sum(max(right[c] for c in layer) <= WIDTH for layer in piece.layers[:-1]))
+        count = max(1, sum(max(right[c] for c in layer) <= WIDTH - EDGE for layer in piece.layers[:-1]))
         parts = piece.layers[:count], piece.layers[count:]
         return [[calc for layer in part for calc in layer] for part in parts]
     if plan.height > HEIGHT and len(plan.cells) > 1:
@@ -204,9 +221,10 @@ def _cut(piece: Piece) -> list[list[str]]:
 
 
 def _rows(cells: Sequence[Cell]) -> Iterator[Piece]:
-    """Yield calcs side by side, as many in each row as there is room for."""
+    """Yield calcs side by side, as many as there is room for; one too high for a sheet by itself."""
     label = max((cell.label for cell in cells), default=0.0)
-    count = int((WIDTH + BETWEEN) // (label + BOX + BETWEEN))
-    for start in range(0, len(cells), count):
-        row = tuple(cells[start : start + count])
-        yield Piece(tuple((cell.calc.number,) for cell in row), row, (), label)
+    count = int((WIDTH - EDGE + BETWEEN) // (label + BOX + BETWEEN))
+    low = [cell for cell in cells if cell.height <= HEIGHT]
+    rows = [low[start : start + count] for start in range(0, len(low), count)]
+    for row in (*rows, *([cell] for cell in cells if cell.height > HEIGHT)):
+        yield Piece(tuple((cell.calc.number,) for cell in row), tuple(row), (), label)

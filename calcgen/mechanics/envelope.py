@@ -95,6 +95,11 @@ class Effects:
         """Give the effects of some of the combinations; what is found for one serves the others."""
         return replace(self, combinations=tuple(c for c in self.siblings if c.name in names))
 
+    def apart(self, names: Collection[str]) -> Effects:
+        """Give the effects of some of the combinations, whose extremes are found without those of others."""
+        members = tuple(c for c in self.siblings if c.name in names)
+        return replace(self, combinations=members, siblings=members, _found={})
+
     @property
     def model(self) -> BeamModel:
         """The beam."""

@@ -57,7 +57,7 @@ class Reach:
     low: FloatArray
     _found: FloatArray
     """Of high and low: value, place of the first axle (nan without a train), whether it runs to the left, and
-    from which side the value is a limit; (2, 4, k)."""
+    from which side the value is a limit, nan where it holds in a window too short for a step; (2, 4, k)."""
     _attained: Callable[[int, Position], Position]
 
     def position(self, number: int, *, low: bool) -> Position | None:
@@ -65,6 +65,8 @@ class Reach:
         _, x, left, limit = self._found[int(low), :, number]
         if math.isnan(x):
             return None
+        if math.isnan(limit):
+            return Position(float(x), "left" if left else "right")
         beside: Side | None = "right" if limit > 0.0 else "left" if limit < 0.0 else None
         return self._attained(number, Position(float(x), "left" if left else "right", beside))
 
@@ -120,7 +122,8 @@ class Crossing:
         found = nothing(1)
         for passage in self._passages:
             found = bettered(passage.reaction(support, part), passage, found, noise)
-        return Reach(found[0, 0], found[1, 0], found, lambda _, p: self._attained(p))
+        x = self.influence.model.supports[support].x
+        return Reach(found[0, 0], found[1, 0], found, lambda _, p: self._attained(p, left_at=x))
 
     def at(self, quantity: Quantity, x: float) -> TrainRange:
         """Give the extremes of a quantity at one place, over all positions and both sides of a jump."""
@@ -176,15 +179,19 @@ class Crossing:
         part = quantity_index(quantity)[0]
         return part == "V" or (part == "slope" and self.influence.model.shears)
 
-    def _attained(self, position: Position, jumps: tuple[float, ...] = ()) -> Position:
+    def _attained(
+        self, position: Position, jumps: tuple[float, ...] = (), left_at: float | None = None
+    ) -> Position:
         """Give the position at its place, where the effect does not jump there or has its limit as value.
 
-        It jumps where an axle stands at one of the places `jumps`, or leaves an end that no support holds.
+        It jumps where an axle stands at one of the places `jumps`, or leaves an end that no support holds, or
+        that end, `left_at`, of which the support's own reaction is meant.
         """
         model, lateral = self.influence.model, self.train.lateral != 0.0
         held = [s.x for s in model.supports if s.w == RIGID and (s.lateral == RIGID or not lateral)]
         ends: dict[float, Side] = {0.0: "left", model.length: "right"}
-        free = {end: off for end, off in ends.items() if not any(model.same(end, x) for x in held)}
+        kept = [x for x in held if left_at is None or not model.same(x, left_at)]
+        free = {end: off for end, off in ends.items() if not any(model.same(end, x) for x in kept)}
         for x in position.places(self.train):
             for place in (*jumps, *free):
                 if not model.same(x, place):

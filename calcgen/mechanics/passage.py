@@ -16,7 +16,7 @@ from calcgen.mechanics.beam import Quantity, piecewise
 from calcgen.mechanics.beam.results import TIE
 from calcgen.mechanics.combinations import ReactionPart, reaction_index
 from calcgen.mechanics.influence import BoolArray, Influence, IntArray, V, shift
-from calcgen.mechanics.trains import Direction, Position, Train, sense
+from calcgen.mechanics.trains import BESIDE, Direction, Position, Train, sense
 
 SAMPLES = (1.0 - np.cos(np.pi * (np.arange(4.0) + 0.5) / 4)) / 2  # Chebyshev: four values fix a cubic
 FROM_SAMPLES = np.linalg.inv(SAMPLES[:, None] ** np.arange(4.0)).T
@@ -137,6 +137,8 @@ class Passage:
         meets = np.clip((x[:, None] - self.offsets)[:, None, :], low, high)
         cuts = np.sort(np.concatenate([low, meets, high], axis=2), axis=2)
         parts = np.diff(cuts, axis=2)
+        # Within the tolerance of places a part is rounding, and over a jump no cubic fits it.
+        parts[parts <= 4.0 * self.influence.model.tolerance] = 0.0
         u = cuts[..., :-1, None] + parts[..., None] * SAMPLES
         values = piecewise.values(
             np.take_along_axis(cubics, near[:, :, None], axis=1)[:, :, None, None],
@@ -262,9 +264,14 @@ def bettered(cubics: Cubics, passage: Passage, known: FloatArray, noise: float) 
         place, interval, number = (each[first] for each in equal)
         # Within the model's tolerance of an end of its interval a position is a limit there.
         t_first = t[place, interval, number]
-        near = 2.0 * passage.influence.model.tolerance / np.maximum(cubics.lengths[place, interval], 1e-300)
+        length, tolerance = cubics.lengths[place, interval], passage.influence.model.tolerance
+        near = 2.0 * tolerance / np.maximum(length, 1e-300)
         limit = np.where(t_first <= np.minimum(near, 0.5), 1.0, np.where(t_first >= 1.0 - near, -1.0, 0.0))
-        new = np.stack([values[place, interval, number], u[first], np.full(len(place), left), limit])
+        # So short an interval is left by a step to a side: its middle stands for it.
+        short = (length > 0.0) & (length <= 4.0 * BESIDE * passage.influence.model.length)
+        limit[short] = np.nan
+        at = np.where(short, cubics.starts[place, interval] + length / 2, u[first])
+        new = np.stack([values[place, interval, number], at, np.full(len(place), left), limit])
         result[row] = np.where(bests > sign * known[row, 0] * (1.0 + TIE), new, known[row])
     return result
 

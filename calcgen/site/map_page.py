@@ -117,7 +117,7 @@ def _entry(fed: Fed, anchor: str, package: PackageInput) -> FeedEntry:
         taken_href=addresses.link(page, fed.name)
         if evaluated
         else addresses.source_line(fed.taker, fed.line),
-        value=fed.row.shown.text if fed.row is not None else "—",
+        value=fed.text or "—",
         was=previous.was if previous is not None else "",
     )
 

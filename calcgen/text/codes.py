@@ -20,6 +20,7 @@ CODES: dict[str, str] = {
     "case-after-otherwise": "a case stands after 'otherwise'",
     "case-unused": "no combination uses a load case",
     "case-without-condition": "a case does not say when it holds",
+    "case-without-load": "combinations take a load case that has no load",
     "cases-differ": "the cases of a value have different dimensions",
     "catalogue": "a row of the office's catalogue is wrong",
     "citation-in-note": "a citation stands in the second column",

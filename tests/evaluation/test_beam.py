@@ -231,6 +231,15 @@ def test_a_section_off_its_principal_axes_deflects_sideways_unless_restrained() 
     assert held.values["y"][0].si < by_name["y"]  # type: ignore[union-attr]
 
 
+def test_a_large_sideways_deflection_is_out_of_premise() -> None:
+    section = fence("section zed", "shape = zed(h = 200 mm, b = 70 mm, t = 2 mm)")
+    lines = ("span = 6 m", "section = zed", "E = 210 GPa", "load G uniform 2.5 kN/m")
+    (calc,) = evaluated("# T\n\n" + section + fence("beam b", *lines))
+    (premise,) = (p for p in calc.premises if p.premise == "small deflections")
+    assert premise.verdict == "not met"  # 102 mm down, more than 1/50 of 6 m sideways
+    assert "sideways" in premise.detail
+
+
 def test_premises() -> None:
     deep = fence("section wide", "shape = rectangle(b = 100 mm, h = 800 mm)")
     calc = beam("span = 4 m", "section = wide", "E = 11 GPa", "load G uniform 1 kN/m", before=deep)

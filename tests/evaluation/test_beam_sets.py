@@ -100,7 +100,7 @@ def test_settings_are_expressions_over_the_calc() -> None:
     assert factors(calc)[1] == {"G": 1.2, "S": 1.4}
     assert shown(calc, "x") == "−34.40 kN·m"  # (0.9·3 - 1.4·5)·8
     sources = {row.values: row.source for row in result(calc).set_factors}
-    assert sources[("γ_G", 1.2),] == "as written"
+    assert sources[("γ_G", 1.2),] == "as written, line 14"
     assert sources[("ψ_0", 0.5),] == "EN 1990:2002 Table A1.1, category low"
 
 
@@ -310,11 +310,68 @@ def test_a_permanent_load_that_relieves() -> None:
     asked = 'combinations LRFD = "ASCE 7-16 LRFD"'
     calc = beam(*lines, asked)
     assert codes(calc) == ["relieving-permanent"]
-    assert calc.diagnostics[0].message.endswith("where LRFD_2 governs and takes it at 1.2")
+    told = calc.diagnostics[0]
+    assert told.message.endswith("of 'LRFD', where LRFD_2 governs and takes it at 1.2")
+    assert told.hint == "add combination X in LRFD = 1.0*D + 1.6*L"
+    assert calc.calc.source.slice(told.span) == asked
+    assert codes(beam(*lines, asked, told.hint.removeprefix("add "))) == []
     assert (
         codes(beam(*lines, 'combinations LRFD = "ASCE 7-16 LRFD"', "combination X in LRFD = 0.9*D + 1.6*L"))
         == []
     )
+
+
+def test_a_written_factor_keeps_its_reference() -> None:
+    lines = (*SIMPLE, "case G permanent", "case C traffic ψ 1.0, 0.9, 0 γ γ_c | crane | EN 1991-3 Table A.1")
+    own = ("γ_G = 1.2 | national | NA.A1", "load C uniform 4 kN/m", ULS)
+    calc = beam(*lines, *LOADS[:1], *own, inputs=("γ_c = 1.35",))
+    sources = {row.values[0]: row.source for row in result(calc).set_factors}
+    assert sources["γ_G", 1.2] == "NA.A1, line 11"
+    assert sources["γ", 1.35] == "EN 1991-3 Table A.1, line 9"
+
+
+@pytest.mark.parametrize(
+    ("standard", "line", "hint"),
+    [
+        ("EN 1990 6.10", "load T train 80 kN", "write case T traffic ψ ..., ..., ...; or write its combin"),
+        ("EN 1990 6.10", "support roller at 6 m settles 9 mm in T", "write case T settlement; or write its"),
+        ("EN 1990 6.10", "load T uniform 1 kN/m", "write case T permanent, or another kind; or write its"),
+        ("ASCE 7-16 LRFD", "load T train 80 kN", "write its combinations yourself"),
+        ("ASCE 7-16 LRFD", "support roller at 6 m settles 9 mm in T", "write its combinations yourself"),
+    ],
+)
+def test_a_case_without_a_kind_is_told_what_it_may_be(standard: str, line: str, hint: str) -> None:
+    lines = (
+        "span = 6 m",
+        "EI = 9000 kN·m²",
+        "support pin at 0 m",
+        "case G permanent",
+        "load G uniform 4 kN/m",
+    )
+    end = () if line.startswith("support") else ("support roller at 6 m",)
+    sets = [f'combinations {group} = "{standard}"' for group in ("A", "B", "C")]
+    calc = beam(*lines, *end, line, *sets)
+    assert codes(calc) == ["set-incomplete"]  # one mistake is told once, not by each set
+    assert calc.diagnostics[0].hint.startswith(hint)
+
+
+def test_a_settlement_without_a_case_is_told_as_that_alone() -> None:
+    lines = ("span = 6 m", "EI = 9000 kN·m²", "support pin at 0 m", "support roller at 6 m settles 9 mm")
+    calc = beam(*lines, "case G permanent", "load G uniform 4 kN/m", ULS)
+    assert codes(calc) == ["unknown-case"]
+
+
+def test_a_category_that_a_kind_does_not_have_is_told_once() -> None:
+    for case in ("wind category A", "imposed category b", "traffic category B"):
+        calc = beam(*SIMPLE, "case G permanent", *LOADS[:1], f"case W {case}", "load W uniform 1 kN/m", ULS)
+        assert codes(calc) in (["combination-factor"], ["unknown-word"])
+
+
+def test_a_case_without_a_load_is_told() -> None:
+    lines = (*SIMPLE, "case G permanent", *LOADS[:1], "case W wind", ULS)
+    assert codes(beam(*lines)) == ["case-without-load"]
+    assert codes(beam(*lines, "load W uniform 1 kN/m")) == []
+    assert codes(beam(*lines, "load W train 8 kN")) == []
 
 
 # --- what is shown ------------------------------------------------------------------------------------------
@@ -374,3 +431,20 @@ def test_the_trail_notices_a_factor_that_changes_with_an_input() -> None:
     assert isinstance(after, dict)
     assert {key for key in before if before[key] != after[key]} == {"ULS_1", "ULS_6"}
     assert before["ULS_1"] == ["1.35*G + 1.5*S + 0.9*W", ""]
+
+
+def test_a_train_beside_other_loads_of_its_case_leaves_with_them() -> None:
+    calc = beam(
+        "span = 6 m, 6 m",
+        "EI = 9 MN*1 m*1 m",
+        "case G permanent",
+        "case T traffic ψ 0.7, 0.5, 0.3",
+        "load G uniform 5 kN/m",
+        "load T uniform 40 kN/m from 0 m to 6 m",
+        "load T train 5 kN",
+        'combinations ULS = "EN 1990 6.10"',
+    )
+    group = result(calc).groups[0]
+    assert {"G": 1.35} in [dict(c.factors) for c in group.combinations]
+    # Statics of two equal spans under w: the outer reaction is 3 w L/8.
+    assert group.states.reaction(2).max.value == pytest.approx(1.35 * 3 / 8 * 5e3 * 6, rel=1e-9)

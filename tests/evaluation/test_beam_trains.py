@@ -299,3 +299,30 @@ def test_a_train_is_the_worst_of_the_positions_written_out() -> None:
         assert isinstance(b, Measure)
         assert abs(a.si) >= abs(b.si) * (1 - 1e-9), name
         assert a.si == pytest.approx(b.si, rel=0.02), name
+
+
+@pytest.mark.parametrize(
+    "lines",
+    [
+        # An axle steps on or off the support whose reaction is meant.
+        ("span = 6 m, 6 m", "load T train 20 kN, 30 kN, 20 kN spaced 8 m, 8 m"),
+        (
+            "span = 6 m, 2 m",
+            "support pin at 0 m",
+            "support pin at 6 m",
+            "load T train 30 kN, 20 kN spaced 8 m",
+        ),
+        # An axle meets the place while another steps on the free end, but for the rounding of its distance.
+        (
+            "span = 3.75 m, 1.875 m",
+            "EI = 120 MN*1 m*1 m from 2.125 m to 4.375 m",
+            "support pin at 3.75 m",
+            "support pin at 5.625 m",
+            "load T train 5 kN, 43 kN, 45 kN, 10 kN, 71 kN spaced 1.5 m, 0.625 m, 2.125 m, 2.5 m",
+        ),
+    ],
+)
+def test_axles_that_coincide_are_found_again(lines: tuple[str, ...]) -> None:
+    (calc,) = evaluated("# T\n\n" + fence("beam b", "EI = 40 MN*1 m*1 m", *lines))
+    assert codes(calc) == []
+    assert all(row.holds for row in calc.second_route)

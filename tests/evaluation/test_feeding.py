@@ -39,6 +39,19 @@ def test_a_line_in_error_still_depends() -> None:
     assert (found.origin, found.row) == (Origin("A-1", "no_such_name"), None)
 
 
+def test_a_value_is_told_that_the_calc_it_feeds_could_not_take() -> None:
+    looped = "```inputs\nL of A-1\nM = b.M_max of A-1\nx of B-2\n```"
+    length, moment, own = fed(A_1=BEAM, B_2=looped)
+    assert (length.row, length.text) == (None, "3.000\u00a0m")
+    assert moment.text == "9.000\u00a0kN·m"  # 2 kN/m (6 m)²/8
+    assert own.text == ""
+
+
+def test_what_a_calc_in_error_has_is_not_given() -> None:
+    (found,) = fed(A_1="```working\na = 2 m\nb = nothing\n```", B_2="```inputs\na of A-1\n```")
+    assert found.text == ""
+
+
 def test_loops_are_told() -> None:
     pair = fed(A_1="```inputs\nb of B-2\n```", B_2="```inputs\nb = a of A-1\n```")
     assert [(f.origin.calc, f.taker) for f in pair] == [("B-2", "A-1"), ("A-1", "B-2")]

@@ -76,6 +76,19 @@ def test_unknown_calcs_and_names() -> None:
     assert [d.line for d in calc.diagnostics] == [3, 4]
 
 
+def test_a_calc_that_feeds_itself_says_so() -> None:
+    (calc,) = evaluated("# A\n" + fence("inputs", "x = y of C-1"))
+    assert (codes(calc), calc.reason) == (["cycle"], "it feeds itself")
+
+
+def test_the_faults_of_other_feeds_are_told_while_one_calc_is_in_error() -> None:
+    broken = "# Broken\n" + fence("working", "x = 1 m + 1 kN")
+    user = "# User\n" + fence("inputs", "x of C-1", "a = f_y of C-9", "b = f_u of C-2", "c = f_y of C-2")
+    calc = evaluated(broken, BASIS, user)[2]
+    assert codes(calc) == ["unknown-calc", "unknown-name"]
+    assert calc.standing == "in error"
+
+
 def test_only_what_changed_and_what_depends_on_it_is_evaluated_again() -> None:
     memory = Memory()
     user, other = "# User\n" + fence("inputs", "f_y of C-1"), "# Other\n" + fence("inputs", "a = 1")

@@ -184,3 +184,9 @@ def test_numbers_obey_the_rules_of_arithmetic(numbers: list[float], operators: l
     assert isinstance(value, Measure)
     # Python's own arithmetic is the oracle here: the same precedence for + - * and the sign
     assert value.si == pytest.approx(eval(text), rel=1e-12, abs=1e-12)  # noqa: S307
+
+
+def test_a_dash_between_a_whole_number_and_a_fraction_is_told() -> None:
+    calc = working("x = 3-1/2 in")
+    assert codes(calc) == ["dimension-mismatch"]
+    assert calc.diagnostics[0].hint == "write 3 1/2 in for a length"

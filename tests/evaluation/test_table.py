@@ -112,6 +112,7 @@ CALLS = [
     ('k_mod("class 1", "Medium")', '"Medium"', "no-such-head", 'the nearest is "medium"'),
     ('k_mod("medium", "class 1")', '"medium", "class 1"', "no-such-head", 'write k_mod("class 1", "medium")'),
     ("c_p(20 deg, 2 m)", "20 deg, 2 m", "no-such-head", "write c_p(2 m, 20 deg)"),
+    ('k_mod("class 1", medium)', "medium", "unknown-name", 'quotes are missing: "medium" is a head'),
     ('k_mod(1, "medium")', "1", "no-such-head", "found by a text, this is a plain number"),
     ('k_t("20 mm")', '"20 mm"', "not-a-number", "found by length, this is a text"),
     ("k_t(yes)", "yes", "not-a-number", "this is yes or no"),

@@ -2,12 +2,19 @@
 
 from __future__ import annotations
 
+from dataclasses import replace
+from typing import Any
+
 import pytest
 from hypothesis import given, settings
 from hypothesis import strategies as st
 
+from calcgen.evaluation.blocks import beam
 from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.evaluation.results.vary import VaryResult, VaryRun
+from calcgen.mechanics.envelope import Effects
+from calcgen.mechanics.second_route import moving
+from calcgen.mechanics.second_route.residual import Residual
 from calcgen.profiles.catalogue import builtin_catalogue
 from calcgen.quantities.measure import Measure, magnitude_in
 from tests.evaluation.helpers import codes, evaluated, fence
@@ -219,3 +226,81 @@ def test_a_calc_in_error_is_not_repeated_and_tells_nothing_twice() -> None:
     found = calc("L = 3 steps from 1 m to 2 m", "show b", working=fence("working", "b = 2*c"))
     assert codes(found) == ["unknown-name"]
     assert not any(isinstance(s, VaryResult) for s in found.segments)
+
+
+# --- what a run computes ------------------------------------------------------------------------------------
+
+GIRDER = fence(
+    "beam girder",
+    "span = L, L",
+    "EI = 8 MN·m²",
+    "case G permanent",
+    "case Q imposed category B",
+    "load G uniform 2 kN/m",
+    "load Q uniform w",
+    "support pin at 0 m",
+    "support roller at L",
+    "support roller at 2*L",
+    "pattern Q",
+    'combinations ULS = "EN 1990 6.10"',
+    'combinations CH = "EN 1990 characteristic"',
+)
+
+
+def under_patterns(*lines: str) -> str:
+    return f"# T\n{fence('inputs', 'L = 6 m', 'w = 8 kN/m')}{GIRDER}{fence('vary', *lines) if lines else ''}"
+
+
+def test_a_run_under_patterns_has_the_numbers_of_the_calc_itself() -> None:
+    names = ("girder.ULS.M_max", "girder.ULS.R_2_max", "girder.CH.w_max", "girder.ULS_1.V_abs")
+    read = fence("working", *(f"r_{i} = {name}" for i, name in enumerate(names)))
+    (found,) = evaluated(under_patterns("w = 2 steps from 8 kN/m to 9 kN/m", f"show {', '.join(names)}"))
+    (itself,) = evaluated(under_patterns() + read)
+    run = varied(found).runs[0]
+    assert [v.si for v in run.values if v is not None] == [
+        itself.values[f"r_{i}"][0].si  # type: ignore[union-attr]
+        for i in range(len(names))
+    ]
+
+
+@pytest.mark.parametrize(
+    ("compared", "shown", "at_fault"),
+    [
+        ("V", "girder.ULS.V_max", True),
+        ("V", "girder.ULS_1.V_max", True),
+        ("V", "girder.ULS.V_max(1 m)", True),
+        ("V", "girder.ULS.M_max", False),
+        ("M", "girder.ULS.M_max", True),
+        ("w", "girder.CH.w_abs", True),
+        ("R", "girder.ULS.R_1_max", True),
+        ("R", "girder.ULS.M_max", False),
+    ],
+)
+def test_a_run_is_at_fault_where_the_second_route_does_not_find_what_it_reads(
+    monkeypatch: pytest.MonkeyPatch, compared: str, shown: str, at_fault: bool
+) -> None:
+    """The route is made to miss in one run alone: with an error of its own the calc would have no runs."""
+    compare = moving._residuals
+
+    def missing(effects: Effects, what: str, *others: Any) -> tuple[Residual, ...]:
+        found = compare(effects, what, *others)
+        misses = what == compared and effects.model.length > 13.0
+        return tuple(replace(r, residual=1.0) for r in found) if misses else found
+
+    monkeypatch.setattr(moving, "_residuals", missing)
+    (found,) = evaluated(under_patterns("L = 2 steps from 6 m to 7 m", f"show {shown}"))
+    assert [run.fault.startswith("the second route") for run in varied(found).runs] == [False, at_fault]
+    assert [run.values == (None,) for run in varied(found).runs] == [False, at_fault]
+
+
+def test_a_run_lists_no_results(monkeypatch: pytest.MonkeyPatch) -> None:
+    listed: list[object] = []
+
+    def listing(*arguments: object) -> object:
+        listed.append(arguments)
+        return (), ()
+
+    monkeypatch.setattr(beam, "group_results", listing)
+    (found,) = evaluated(under_patterns("L = 3 steps from 6 m to 8 m", "show girder.ULS.M_max"))
+    assert all(run.values != (None,) for run in varied(found).runs)
+    assert not listed

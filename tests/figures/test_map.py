@@ -230,6 +230,18 @@ def test_a_loop_is_seen_as_one(width: Width) -> None:
     assert words((sheet,), width).count("loop, from ") == len(loop)
 
 
+def test_a_loop_that_fits_a_sheet_is_drawn_whole_where_its_surroundings_are_cut() -> None:
+    ring = [(1, 2), (2, 3), (3, 1)]
+    drawing = graph([(0, 1), *ring, (0, 4), (4, 5), (1, 6), (3, 7), (0, 7), (7, 8), (5, 8)], 9)
+    names = [calc.number for calc in drawing.calcs]
+    whole = {(names[giver], names[taker]) for giver, taker in ring}
+    pieces = [piece for sheet in sheets_of(drawing) for piece in sheet.pieces]
+    assert len(pieces) > 1
+    (piece,) = [piece for piece in pieces if whole & set(piece.arrows)]
+    assert set(piece.arrows) == whole
+    assert {route.ends for route in piece.plan.routes if route.loop and route.tip} == whole
+
+
 def test_a_calc_that_feeds_many_has_short_arrows_that_name_it() -> None:
     sheets = sheets_of(BASIS)
     basis = "W-00"

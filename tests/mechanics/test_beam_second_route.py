@@ -124,3 +124,11 @@ def test_another_gradient_is_noticed(solution: CaseSolution, curvature: float) -
         replace(load, value=curvature) if isinstance(load, FreeCurvature) else load for load in LOADS
     )
     assert "w" in failed(MODEL, loads, solution)
+
+
+def test_a_hinge_that_carries_a_moment_is_noticed() -> None:
+    supports = (fixed(0.0), pin(5.0), pin(8.0))
+    stiff, hinged = (prismatic(8.0, 2e6, supports, hinges=h) for h in ((), (3.0,)))
+    loads = (DistributedLoad.uniform(0.0, 8.0, 3e3),)
+    assert "M at hinges" in failed(hinged, loads, solve(stiff, {"case": loads})["case"])
+    assert failed(hinged, loads, solve(hinged, {"case": loads})["case"]) == set()

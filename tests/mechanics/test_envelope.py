@@ -28,7 +28,7 @@ from calcgen.mechanics.combinations import Envelope
 from calcgen.mechanics.envelope import Effects, effects
 from calcgen.mechanics.influence import influence
 from calcgen.mechanics.moving_loads import Crossing
-from calcgen.mechanics.second_route.moving import extreme_residuals, reaction_residuals
+from calcgen.mechanics.second_route.moving import along_residual, extreme_residuals, reaction_residuals
 from calcgen.mechanics.trains import Train
 from tests.mechanics.test_trains import crossings
 
@@ -280,3 +280,13 @@ def test_what_cannot_be_asked(bridge: Effects) -> None:
             Actions({"S": (Settlement(1, 0.01),)}, frozenset({"S"})),
             (Combination("U1", {"S": 1.0}),),
         )
+
+
+@pytest.mark.parametrize("quantity", ["M", "V", "w"])
+def test_an_extreme_that_is_exceeded_along_the_beam_is_noticed(quantity: Quantity) -> None:
+    actions = Actions({"Q": (DistributedLoad.uniform(0.0, 22.0, 5e3),)}, frozenset({"Q"}), {"T": (TRAIN,)})
+    found_in = effects(THREE_SPANS, actions, [Combination("U", {"Q": 1.5, "T": 1.35})])
+    found = found_in.extremes(quantity)
+    assert along_residual(found_in, quantity, found).holds
+    less = replace(found, max=replace(found.max, value=0.9 * found.max.value))
+    assert not along_residual(found_in, quantity, less).holds

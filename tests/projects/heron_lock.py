@@ -287,6 +287,7 @@ _Φ_c = 0.5 * (1 + 0.49 * (_λ_c - 0.2) + _λ_c**2)
 _χ_c = 1 / (_Φ_c + sqrt(_Φ_c**2 - _λ_c**2))
 _u_b = _N_c / (_χ_c * _A_c * F_Y) + _M18_lat / (_W_f * F_Y) / (1 - _N_c * _λ_c**2 / (_A_c * F_Y))
 _R18 = highest(lambda s: _standing(s, _g18, _d18).R_2(), 2.0, 3.9)
+_H18 = highest(lambda s: _standing(s, 0.0, 0.1 * _d18).R_2(), 2.0, 3.9)
 
 R_18 = (
     Worked("R-18", "M_Ed", _M18, "kN·m", "three-moment equation, wheels stepped and closed in on", GRID),
@@ -315,8 +316,8 @@ _τ_w = R_18[2].value / _A_v19 / 1e3
 R_19 = (
     Worked("R-19", "l_eff", _l_eff, "mm", "EN 1993-6 Table 5.1(b)"),
     Worked("R-19", "σ_z", _σ_z, "MPa", "F/(l t)"),
-    Worked("R-19", "σ_v", sqrt(_σ_x**2 + _σ_z**2 - _σ_x * _σ_z + 3 * _τ_w**2), "MPa", "von Mises", GRID),
-    Worked("R-19", "M_b", -_R18 * 0.22, "kN·m", "R e", GRID),
+    Worked("R-19", "σ_v", sqrt(_σ_x**2 + _σ_z**2 + _σ_x * _σ_z + 3 * _τ_w**2), "MPa", "von Mises", GRID),
+    Worked("R-19", "M_b", -(_R18 * 0.22 + _H18 * 0.25), "kN·m", "R e and H e", GRID),
 )
 
 CASES = (*W_07, *W_12, *B_03, *D_04, *P_05, *H_06, *L_16, *L_15, *S_02, *F_08, *R_18, *R_19)

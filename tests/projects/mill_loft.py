@@ -190,13 +190,15 @@ K_71 = (
     Worked("K-71", "Δ_S", 5 * _S_b * 144**4 / (384 * E * 20.9), "in", "5 w l⁴/384EI"),
 )
 
-# R-81, W8x13: A 3.84, I_x 39.6, Z_x 11.4, S_x 9.91, I_y 2.73, J 0.0871, C_w 40.8, d 7.99, t_f 0.255
+# R-81, W8x15: A 4.44, I_x 48.0, Z_x 13.6, S_x 11.8, I_y 3.41, J 0.137, C_w 51.8, d 8.11, t_f 0.315
 _bay, _tip = 22 * FT, 7 * FT
 _loads = {  # by case: on the bay, on the canopy
-    "D": (0.016 * 8 * KLF + STEEL * 3.84,) * 2,
+    "D": (0.016 * 8 * KLF + STEEL * 4.44,) * 2,
     "L": (0.020 * 8 * KLF,) * 2,
     "S": (0.025 * 8 * KLF,) * 2,
     "S_2": (0.025 * 8 * KLF, 0.046 * 8 * KLF),
+    "S_3": (0.025 * 8 * KLF, 0.0125 * 8 * KLF),
+    "S_4": (0.0125 * 8 * KLF, 0.025 * 8 * KLF),
     "up": (-0.030 * 8 * KLF, -0.044 * 8 * KLF),
     "down": (0.016 * 8 * KLF,) * 2,
 }
@@ -214,7 +216,7 @@ def _C_b(beam: Overhang) -> float:
     return float(12.5 * M.max() / (2.5 * M.max() + 3 * M[5000] + 4 * M[10_000] + 3 * M[15_000]))
 
 
-_roofs: tuple[dict[str, float], ...] = ({}, {"L": 1.0}, {"S": 1.0}, {"S_2": 1.0})
+_roofs: tuple[dict[str, float], ...] = ({}, *({case: 1.0} for case in ("L", "S", "S_2", "S_3", "S_4")))
 _winds: tuple[dict[str, float], ...] = ({}, {"up": 1.0}, {"down": 1.0})
 _combined = [{"D": 1.4}]  # ASCE 7-16 2.3.1, without live load
 _combined += [{"D": 1.2} | dict.fromkeys(r, 0.5) for r in _roofs]
@@ -223,21 +225,31 @@ _combined += [{"D": 1.2} | dict.fromkeys(r, 0.5) | w for r in _roofs for w in _w
 _combined += [{"D": 0.9} | w for w in _winds if w]
 _beams = [_roof(**factors) for factors in _combined]
 _C_b81 = min(_C_b(beam) for beam in _beams)
-_r_ts81 = sqrt(sqrt(2.73 * 40.8) / 9.91)
-_c81 = 0.0871 / (9.91 * (7.99 - 0.255))
+_r_ts81 = sqrt(sqrt(3.41 * 51.8) / 11.8)
+_c81 = 0.137 / (11.8 * (8.11 - 0.315))
 _s81 = _bay / 2 / _r_ts81
 _F_cr81 = _C_b81 * pi**2 * E / _s81**2 * sqrt(1 + 0.078 * _c81 * _s81**2)
 R_81 = (
     Worked(
-        "R-81", "M_u", max(b.M_span for b in _beams if b.w > 0) / FT, "kip-ft", "R²/2w, 1.2 D + 1.6 S + 0.5 W"
+        "R-81",
+        "M_u",
+        max(b.M_span for b in _beams if b.w > 0) / FT,
+        "kip-ft",
+        "R²/2w, 1.2 D + 1.6 S_3 + 0.5 W",
     ),
     Worked(
         "R-81", "M_uh", -min(b.M_support for b in _beams) / FT, "kip-ft", "v a²/2, 1.2 D + 1.6 S_2 + 0.5 W"
     ),
     Worked("R-81", "U", -min(b.R_1 for b in _beams), "kip", "statics, 0.9 D + W upwards"),
     Worked("R-81", "C_b", _C_b81, "", "AISC 360-16 F1-1, least of all combinations", GRID),
-    Worked("R-81", "φM_nh", 0.9 * _F_cr81 * 9.91 / FT, "kip-ft", "AISC 360-16 F2-3, F2-4", GRID),
-    Worked("R-81", "Δ_tip", -_roof(S=1.0).w_tip(E * 39.6), "in", "slope at the post, snow on all"),
+    Worked("R-81", "φM_nh", 0.9 * _F_cr81 * 11.8 / FT, "kip-ft", "AISC 360-16 F2-3, F2-4", GRID),
+    Worked(
+        "R-81",
+        "Δ_tip",
+        -_roof(S_3=1.0).w_tip(E * 48.0),
+        "in",
+        "slope at the post, half the snow on the canopy",
+    ),
 )
 
 CASES = (*F_11, *G_21, *L_31, *C_41, *J_51, *J_52, *H_61, *K_71, *R_81)

@@ -6,6 +6,8 @@ import math
 import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
+from functools import cache
+from itertools import chain, count
 
 from calcgen.evaluation.blocks.beam_influence_results import (
     influence_named,
@@ -20,7 +22,7 @@ from calcgen.evaluation.blocks.beam_reading import Reading, beam_measure
 from calcgen.evaluation.blocks.beam_results import group_results, places_of_results, relieving_cases
 from calcgen.evaluation.blocks.beam_second_route import second_route
 from calcgen.evaluation.blocks.beam_states import Solved, States
-from calcgen.evaluation.results.beam import BeamResult, CombinationResult, GroupResult
+from calcgen.evaluation.results.beam import BeamResult, CombinationResult, GroupResult, Listing
 from calcgen.evaluation.results.common import Plain, Result
 from calcgen.evaluation.scope import Scope
 from calcgen.language.blocks.beam import BeamBlock
@@ -122,11 +124,15 @@ class BeamThing:
         return None
 
 
-def evaluate_beam(block: BeamBlock, scope: Scope) -> BeamResult | FailedBlock:
-    """Solve the beam, combine its cases, and define its name."""
+def evaluate_beam(block: BeamBlock, scope: Scope, *, repeated: bool = False) -> BeamResult | FailedBlock:
+    """Solve the beam, combine its cases, and define its name.
+
+    In a `repeated` calc it has no premises and warns of nothing, as nobody reads them there, and its second
+    route goes over what is read.
+    """
     free = scope.define(block.target)
     data = read_beam(block, scope)
-    result = _solved(block, data, scope) if data is not None else None
+    result = _solved(block, data, scope, repeated=repeated) if data is not None else None
     if result is None or not free:
         if free:
             scope.failed.add(block.target.name)
@@ -135,13 +141,13 @@ def evaluate_beam(block: BeamBlock, scope: Scope) -> BeamResult | FailedBlock:
     return result
 
 
-def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None:
+def _solved(block: BeamBlock, data: BeamData, scope: Scope, *, repeated: bool) -> BeamResult | None:
     name = block.target.name
     try:
         grouped = _grouped(data)
         cuts = places_of_results(data.model, _ends(data.spans))
         cases = solve(data.model, data.actions.cases)
-        solved = Solved(data.model, data.actions, cases, tuple(grouped.values()), cuts)
+        solved = Solved(data.model, data.actions, cases, tuple(grouped.values()), cuts, together=not repeated)
     except UnstableBeam as fault:
         support = "a support" if fault.plane == "vertical" else "a support that holds it sideways"
         hint = f"add {support}{', or remove a hinge' if fault.hinges else ''}"
@@ -157,15 +163,8 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
     if not groups and not influences:
         scope.report.error("load-missing", block.head_span, f"the beam '{plain(name)}' has no load")
         return None
-    for group in groups:
-        for case, (governs, factor) in relieving_cases(group, solved.cases, data.case_kinds).items():
-            scope.report.warning(
-                "relieving-permanent",
-                block.head_span,
-                f"the permanent case '{case}' relieves in '{plain(group.name)}', where {plain(governs)} "
-                f"governs and takes it at {factor:.12g}",
-                hint=f"add a combination like {plain(governs)} with 1.0*{case}",
-            )
+    if not repeated:
+        _warn_of_relieving(data, groups, solved, scope.report)
     return BeamResult(
         name=name,
         section=", ".join(dict.fromkeys(s.result.name for s in data.sections)),
@@ -179,10 +178,14 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         groups=groups,
         settings=_shown_settings(data, scope.style),
         restrained=data.is_restrained if data.restrained is not None else None,
-        premises=premises(name, data, groups, _other_deflection(data, groups), scope.style),
-        second_route=(
-            *second_route(name, data, groups),
-            *influence_route(name, data.model, data.influences, influences),
+        premises=()
+        if repeated
+        else premises(name, data, groups, _other_deflection(data, groups), scope.style),
+        compare=cache(
+            lambda: (
+                *second_route(name, data, groups, of_read=repeated),
+                *influence_route(name, data.model, data.influences, influences),
+            )
         ),
         lines=_lines(block, scope),
         line=scope.report.source.line_number(block.head_span),
@@ -192,6 +195,36 @@ def _solved(block: BeamBlock, data: BeamData, scope: Scope) -> BeamResult | None
         set_factors=data.sets.factors,
         section_names=data.section_names,
     )
+
+
+def _warn_of_relieving(data: BeamData, groups: Sequence[GroupResult], solved: Solved, report: Report) -> None:
+    """Report permanent cases that relieve and stand above 1.0, at the combinations that govern."""
+    spans = {c.name: c.span for c in data.combinations}
+    taken = {*spans, *(group.name for group in groups)}
+    free = next(name for name in chain(("X",), (f"X_{n}" for n in count(1))) if name not in taken)
+    for group in groups:
+        factors = {c.name: c.factors for c in group.combinations}
+        for (case, governs), results in relieving_cases(group, solved.cases, data.case_kinds).items():
+            one = " + ".join(
+                f"{'1.0' if name == case else f'{factor:.12g}'}*{name}"
+                for name, factor in factors[governs].items()
+                if factor != 0.0
+            ).replace("+ -", "- ")
+            alone = group.name == governs
+            together = (
+                f"give {governs} a group, combination {governs} in ULS = ..., and add " if alone else "add "
+            )
+            report.warning(
+                "relieving-permanent",
+                spans[governs],
+                f"the permanent case '{plain(case)}' relieves {_listed(results)} of '{plain(group.name)}', "
+                f"where {plain(governs)} governs and takes it at {factors[governs][case]:.12g}",
+                hint=f"{together}combination {free} in {'ULS' if alone else group.name} = {one}",
+            )
+
+
+def _listed(names: Sequence[str]) -> str:
+    return f"{', '.join(names[:-1])} and {names[-1]}" if len(names) > 1 else names[0]
 
 
 def _grouped(data: BeamData) -> dict[str, list[Combination]]:
@@ -206,13 +239,13 @@ def _grouped(data: BeamData) -> dict[str, list[Combination]]:
 def _groups(
     data: BeamData, grouped: Mapping[str, Sequence[Combination]], solved: Solved, style: Style
 ) -> tuple[GroupResult, ...]:
-    """Return the groups of combinations with their results."""
+    """Return the groups of combinations with their results, which are listed when they are asked for."""
     if not solved.cases:
         return ()
     spans = _ends(data.spans)
 
-    def results(states: States) -> tuple[tuple[Result, ...], tuple[Result, ...]]:
-        return group_results(states, data.model, spans, style, beam_measure)
+    def results(states: States) -> Listing:
+        return cache(lambda: group_results(states, data.model, spans, style, beam_measure))
 
     generated = {c.name for c in data.combinations if c.generated}
     groups: list[GroupResult] = []
@@ -220,13 +253,17 @@ def _groups(
         members: list[CombinationResult] = []
         for c in combinations:
             states = solved.states([c])
-            shown, further = ((), ()) if c.name in generated and len(combinations) > 1 else results(states)
-            members.append(CombinationResult(c.name, c.factors, states, (*shown, *further)))
+            listing = _nothing if c.name in generated and len(combinations) > 1 else results(states)
+            members.append(CombinationResult(c.name, c.factors, states, listing))
         if len(members) > 1:
             states = solved.states(combinations)
-            shown, further = results(states)
-        groups.append(GroupResult(name, tuple(members), states, shown, further))
+            listing = results(states)
+        groups.append(GroupResult(name, tuple(members), states, listing))
     return tuple(groups)
+
+
+def _nothing() -> tuple[tuple[Result, ...], tuple[Result, ...]]:
+    return (), ()
 
 
 def _other_deflection(data: BeamData, groups: Sequence[GroupResult]) -> float | None:

@@ -85,6 +85,7 @@ def combinations_of(
         group = line.group.name if line.group is not None else ""
         found.append(Combination(name, group, factors, line.span))
     _warn_of_unused(lines, found)
+    _warn_of_unloaded(lines, found, cases)
     return tuple(found)
 
 
@@ -104,6 +105,21 @@ def _generated(
         )
     for c in result.combinations:
         yield Combination(c.name, result.group, c.factors, line.span, generated=True)
+
+
+def _warn_of_unloaded(lines: Lines, found: Sequence[Combination], cases: Mapping[str, list[Load]]) -> None:
+    """Report cases that combinations take and in which nothing acts."""
+    used = {case for c in found for case in c.factors}
+    moving = {line.case.name for line in lines.of(TrainLine)}
+    for line in lines.of(CaseLine):
+        name = line.target.name
+        if name in used and name not in moving and not cases.get(name) and not lines.failed:
+            lines.report.warning(
+                "case-without-load",
+                line.target.span,
+                f"the load case '{name}' has no load",
+                hint=f"write load {name} uniform 3 kN/m, or remove the case",
+            )
 
 
 def _warn_of_unused(lines: Lines, found: Sequence[Combination]) -> None:

@@ -63,9 +63,9 @@ class Lines:
                 "name-hides-result", label.span, f"'{label.name}' is the name of a result of this block"
             )
 
-    def number(self, node: Expression, kind: str) -> float:
-        """Return a value in SI, or nan after a fault."""
-        value = si(node, kind, self.scope)
+    def number(self, node: Expression, kind: str, hint: str = "") -> float:
+        """Return a value in SI, or nan after a fault; `hint` is for one of another dimension."""
+        value = si(node, kind, self.scope, hint)
         if value is None:
             self.failed = True
             return math.nan

@@ -83,7 +83,9 @@ def read_beam(block: BeamBlock, scope: Scope) -> BeamData | None:
         cases.setdefault(case, []).append(load)
     trains, train_rows = trains_of(lines, kinds)
     patterned = patterned_of(lines, kinds, cases)
-    sets = sets_of(lines, kinds, cases, patterned | trains.keys(), settings)
+    # The other loads of a case with a train act wherever it stands.
+    absent = patterned | {case for case in trains if not cases.get(case)}
+    sets = sets_of(lines, kinds, cases, absent, settings)
     combinations = combinations_of(lines, kinds, cases, sets)
     if lines.failed:
         return None

@@ -3,13 +3,13 @@
 from __future__ import annotations
 
 from collections.abc import Callable, Sequence
-from typing import Literal
 
 from calcgen.evaluation.blocks.beam_lines import length_text
 from calcgen.evaluation.blocks.beam_model import BeamData
 from calcgen.evaluation.blocks.beam_shear import SLENDER, slenderness
 from calcgen.evaluation.results.beam import GroupResult
 from calcgen.evaluation.results.common import Premise, Verdict
+from calcgen.mechanics.beam import Quantity
 from calcgen.quantities.display import Style, number_text
 
 NEGLIGIBLE = 0.05  # part of the deflection up to which that from shear is left out (common practice)
@@ -29,24 +29,9 @@ def premises(
     def add(premise: str, verdict: Verdict, detail: str) -> None:
         found.append(Premise(name, premise, verdict, detail))
 
-    lengths = [b - a for a, b in data.model.spans] or [data.model.length]
-    unit: Literal["in", "mm"] = "in" if style.system == "US" else "mm"
-    w = max((abs(g.states.extremes("w").abs.value) for g in groups), default=0.0)
+    w = _largest(groups, "w")
     _shear(data, w, other_w, add)
-    share = w / max(lengths)
-    shown = length_text(w, style, unit)
-    if not groups:
-        detail = "no load is written; influence lines hold for small deflections"
-        add("small deflections", "left to judgement", detail)
-    elif share <= SMALL:
-        add("small deflections", "met", f"the largest, {shown}, is at most 1/{1 / SMALL:.0f} of the span")
-    else:
-        add(
-            "small deflections",
-            "not met",
-            f"the largest, {shown}, is more than 1/{1 / SMALL:.0f} of the span: "
-            "equilibrium on the undeformed shape no longer holds",
-        )
+    _small(data, groups, style, add)
     _bending_plane(data, add)
     if data.is_restrained and data.restrained is not None:
         reason = data.restrained.annotations.note.text
@@ -59,6 +44,36 @@ def premises(
         )
     add("linear elastic", "left to judgement", "compare the largest stress with the yield strength")
     return tuple(found)
+
+
+def _largest(groups: Sequence[GroupResult], quantity: Quantity) -> float:
+    return max((abs(g.states.extremes(quantity).abs.value) for g in groups), default=0.0)
+
+
+def _small(
+    data: BeamData, groups: Sequence[GroupResult], style: Style, add: Callable[[str, Verdict, str], None]
+) -> None:
+    """Add the premise that deflections are small, down and sideways, each to the spans of its plane."""
+    premise = "small deflections"
+    if not groups:
+        add(premise, "left to judgement", "no load is written; influence lines hold for small deflections")
+        return
+    shares: list[tuple[float, str]] = []
+    for plane in data.model.planes:
+        w = _largest(groups, "w" if plane == "vertical" else "w_lat")
+        longest = max((b - a for a, b in data.model.spans_in(plane)), default=data.model.length)
+        shown = length_text(w, style, "in" if style.system == "US" else "mm")
+        shares.append((w / longest, f"{shown} sideways" if plane == "lateral" else shown))
+    share, shown = max(shares)
+    if share <= SMALL:
+        add(premise, "met", f"the largest, {shown}, is at most 1/{1 / SMALL:.0f} of the span")
+    else:
+        add(
+            premise,
+            "not met",
+            f"the largest, {shown}, is more than 1/{1 / SMALL:.0f} of the span: "
+            "equilibrium on the undeformed shape no longer holds",
+        )
 
 
 def _bending_plane(data: BeamData, add: Callable[[str, Verdict, str], None]) -> None:

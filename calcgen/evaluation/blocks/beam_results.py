@@ -10,7 +10,7 @@ from calcgen.evaluation.blocks.beam_spans import chord_range, least_shape
 from calcgen.evaluation.blocks.beam_states import Found, States, Varying, names_of, single
 from calcgen.evaluation.results.beam import GroupResult
 from calcgen.evaluation.results.common import Result
-from calcgen.mechanics.actions import Effect
+from calcgen.mechanics.actions import Actions, Effect
 from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
 from calcgen.mechanics.combinations import ReactionPart
 from calcgen.quantities.display import Style, show
@@ -231,34 +231,44 @@ def moves_sideways(states: States | CaseSolution, model: BeamModel) -> bool:
     if isinstance(states, CaseSolution):
         return any(states.extremes(q).abs > 0 for q in _SIDEWAYS)
     if isinstance(states, Varying):
+        if not model.coupled and not _act_sideways(states.effects.actions):
+            return False
         return any(abs(states.extremes(q).abs.value) > 0 for q in _SIDEWAYS)
     return any(moves_sideways(solution, model) for solution in states.solutions.values())
 
 
+def _act_sideways(actions: Actions) -> bool:
+    loads = (load for case in actions.cases.values() for load in case)
+    trains = (train for crossing in actions.trains.values() for train in crossing)
+    return any(load.plane == "lateral" for load in loads) or any(train.lateral != 0.0 for train in trains)
+
+
 def relieving_cases(
     group: GroupResult, solutions: Mapping[str, CaseSolution], kinds: Mapping[str, str]
-) -> dict[str, tuple[str, float]]:
+) -> dict[tuple[str, str], list[str]]:
     """Return the permanent cases that act against a governing moment or reaction and stand above 1.0 there.
 
-    Each with the combination that governs and its factor. A share below a hundredth of the governing value
-    does not count.
+    Each with the combination that governs, and the names of the results. A share below a hundredth of the
+    governing value does not count.
     """
     factors = {c.name: c.factors for c in group.combinations}
-    found: dict[str, tuple[str, float]] = {}
+    found: dict[tuple[str, str], list[str]] = {}
     for case in solutions:
         if kinds.get(case) != "permanent":
             continue
         moments = group.states.extremes("M")
-        shares: list[tuple[int, Found, float]] = [
-            (sense, m, solutions[case].at("M", m.x)) for sense, m in ((1, moments.max), (-1, moments.min))
+        shares: list[tuple[str, int, Found, float]] = [
+            (name, sense, m, solutions[case].at("M", m.x))
+            for name, sense, m in (("M_max", 1, moments.max), ("M_min", -1, moments.min))
         ]
         for index in range(len(solutions[case].model.supports)):
             reaction = group.states.reaction(index)
             own = solutions[case].reactions[index].force
-            shares += [(1, reaction.max, own), (-1, reaction.min, own)]
-        for sense, governing, own in shares:
+            name = f"R_{index + 1}"
+            shares += [(f"{name}_max", 1, reaction.max, own), (f"{name}_min", -1, reaction.min, own)]
+        for name, sense, governing, own in shares:
             factor = factors[governing.combination].get(case, 0.0)
             against = sense * governing.value > 0.0 > sense * own
             if against and factor > 1.0 + 1e-12 and abs(own) > 0.01 * abs(governing.value):
-                found.setdefault(case, (governing.combination, factor))
+                found.setdefault((case, governing.combination), []).append(name)
     return found

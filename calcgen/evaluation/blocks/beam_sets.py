@@ -4,6 +4,7 @@ from __future__ import annotations
 
 from collections.abc import Collection, Iterator, Mapping
 from dataclasses import dataclass, replace
+from typing import Literal, TypeAlias
 
 from calcgen.evaluation.blocks.beam_lines import Lines
 from calcgen.evaluation.combination_sets.generate import (
@@ -40,6 +41,9 @@ from calcgen.text import Span, nearest
 _OWN = frozenset({"γ_G", "γ_Q", "γ_SET"})  # what a partial factor of a case's own stands for
 _WITHOUT_PSI = frozenset({"permanent", "settlement", "accidental", "seismic"})
 
+Acts: TypeAlias = Literal["load", "train", "settlement"]
+"""What acts in a case, as far as it tells the kind that is likely to be meant."""
+
 
 @dataclass(frozen=True)
 class _Factored:
@@ -72,12 +76,14 @@ def sets_of(
 ) -> BeamSets:
     """Return the generated sets of a block; report what they lack, and factors that none of them takes.
 
-    `varying` are the cases in patterns or with trains.
+    `varying` are the cases that may act nowhere: in patterns, or of trains alone.
     """
     given = _given(lines, settings)
     partial = {key: given.get(key, row.value) for key, row in recommended().items()}
     declared = {line.target.name: line for line in lines.of(CaseLine)}
-    factored = [_factored(lines, n, kinds.get(n, ""), declared.get(n), n in varying) for n in cases]
+    named = [n for n in cases if n]  # a settlement without a case is told with the combinations
+    factored = [_factored(lines, n, kinds.get(n, ""), declared.get(n), n in varying) for n in named]
+    told: set[tuple[str, str]] = set()
     found: dict[Span, SetResult] = {}
     needs: dict[str, frozenset[str]] = {}
     for line in lines.of(SetLine):
@@ -92,7 +98,7 @@ def sets_of(
                 + f"possible are {', '.join(standard_sets())}",
             )
             continue
-        members, left_out = _members(lines, chosen, factored)
+        members, left_out = _members(lines, chosen, factored, told)
         for name, symbols in needed(chosen, members).items():
             needs[name] = needs.get(name, frozenset()) | symbols | {chosen.standard}
         result = None if lines.failed else _generated(lines, line, chosen, members, partial)
@@ -100,7 +106,7 @@ def sets_of(
             found[line.span] = replace(result, remarks=(*result.remarks, *left_out))
     if not lines.failed:
         _warn_of_unused(lines, factored, needs, settings)
-    return BeamSets(found, tuple(_in_force(factored, needs, given)))
+    return BeamSets(found, tuple(_in_force(lines, factored, needs, given, settings)))
 
 
 def _given(lines: Lines, settings: Mapping[str, BeamSetting]) -> dict[str, float]:
@@ -144,7 +150,10 @@ def _factored(lines: Lines, name: str, kind: str, line: CaseLine | None, varies:
 
 
 def _row(lines: Lines, kind: str, line: CaseLine | None) -> Psi | None:
-    """Return the row of ψ factors of a case, None where there is none without more being written."""
+    """Return the row of ψ factors of a case, None where there is none without more being written.
+
+    A category that the kind does not have is reported, and None returned.
+    """
     rows = {row.category: row for row in psi_factors() if row.kind == kind}
     if line is None or line.category is None:
         return rows.get("") if line is None or not line.psi else None
@@ -153,7 +162,9 @@ def _row(lines: Lines, kind: str, line: CaseLine | None) -> Psi | None:
     if category in known:
         return rows[category]
     if not known:
-        lines.fault("combination-factor", span, f"the kind '{kind}' has no categories", hint="leave it out")
+        needs_psi = kind and not rows and kind not in _WITHOUT_PSI
+        hint = f"write case {line.target.name} {kind} ψ ..., ..., ..." if needs_psi else "leave it out"
+        lines.fault("combination-factor", span, f"the kind '{kind}' has no categories", hint=hint)
         return None
     close = nearest(category, known)
     lines.fault(
@@ -186,47 +197,58 @@ def _psi(lines: Lines, kind: str, line: CaseLine) -> tuple[float, float, float]:
 
 
 def _members(
-    lines: Lines, chosen: StandardSet, factored: list[_Factored]
+    lines: Lines, chosen: StandardSet, factored: list[_Factored], told: set[tuple[str, str]]
 ) -> tuple[tuple[Case, ...], tuple[str, ...]]:
-    """Return the cases that a set can take, and remarks on those that written combinations take instead."""
+    """Return the cases that a set can take, and remarks on those that written combinations take instead.
+
+    `told` are the cases with what they lack that another set has reported: one mistake is told once.
+    """
     written = {term.case.name for line in lines.of(CombinationLine) for term in line.terms}
+    trains = {line.case.name for line in lines.of(TrainLine)}
+    settling = {line.settles_case.name for line in lines.of(SupportLine) if line.settles_case is not None}
+
+    def fault(case: str, what: str, message: str, hint: str) -> None:
+        lines.failed = True
+        if (case, what) not in told:
+            told.add((case, what))
+            lines.fault("set-incomplete", _span(lines, case), message, hint=hint)
+
     members: list[Case] = []
     left_out: list[str] = []
     for each in factored:
         case = each.case
-        lack, hint = _lack(chosen, each)
+        acts: Acts = "train" if case.name in trains else "settlement" if case.name in settling else "load"
+        lack, hint = _lack(chosen, each, acts)
         if not lack:
             members.append(case)
         elif case.name in written:
             left_out.append(f"{plain(case.name)} is left out: {lack}; written combinations take it")
         else:
-            lines.fault("set-incomplete", _span(lines, case.name), f"'{chosen.name}': {lack}", hint=hint)
+            fault(case.name, lack, f"'{chosen.name}': {lack}", hint)
+    misnamed = {e.case.name for e in factored if e.line and e.line.category and e.row is None}  # reported
     needs = needed(chosen, members)
     for case in members:
         psi = sorted(symbol for symbol in needs.get(case.name, ()) if symbol.startswith("ψ"))
-        if psi and case.psi is None:
-            lines.fault(
-                "set-incomplete",
-                _span(lines, case.name),
-                f"'{chosen.name}' needs {' and '.join(psi)} of the case '{case.name}'",
-                hint=_category_hint(case),
-            )
+        if psi and case.psi is None and case.name not in misnamed:
+            message = f"'{chosen.name}' needs {' and '.join(psi)} of the case '{case.name}'"
+            fault(case.name, "ψ", message, _category_hint(case))
     return tuple(members), tuple(left_out)
 
 
-def _lack(chosen: StandardSet, each: _Factored) -> tuple[str, str]:
+def _lack(chosen: StandardSet, each: _Factored, acts: Acts) -> tuple[str, str]:
     """Return why a set cannot take a case, and what to write instead; '' where it can."""
     case = each.case
     own = f"write its combinations yourself: combination U1 = ... + 1.0*{case.name}"
     if not case.action:
-        return (
-            f"the case '{case.name}' has no kind",
-            f"write case {case.name} permanent, or another kind; or {own}",
-        )
+        kind = {"train": "traffic ψ ..., ..., ...", "settlement": "settlement"}.get(acts, "permanent")
+        meant = f"write case {case.name} {kind}{', or another kind' if acts == 'load' else ''}; or {own}"
+        known_here = load_of(kind.split()[0], chosen.standard) is not None
+        return f"the case '{case.name}' has no kind", meant if known_here else own
     if load_of(case.action, chosen.standard) is None:
         return f"it has no factor for the kind {case.action}", own
     known = {row.kind for row in psi_factors()} | _WITHOUT_PSI
-    if chosen.standard == "EN" and case.psi is None and case.action not in known:
+    misnamed = each.line is not None and each.line.category is not None  # reported with the category
+    if chosen.standard == "EN" and case.psi is None and case.action not in known and not misnamed:
         return (
             f"EN 1990 has no ψ for the kind {case.action} in buildings",
             f"write case {case.name} {case.action} ψ ..., ..., ...; or {own}",
@@ -352,25 +374,40 @@ def _warn_of_unused(
             warn(f"the category of '{each.case.name}'", each.line.category.span)
 
 
+def _written(lines: Lines, line: BeamSetting | CaseLine | None) -> str:
+    """Return where a written factor comes from: the line's reference, or the line."""
+    if line is None:
+        raise TypeError("a written factor has its line")
+    typed = f"line {lines.report.source.line_number(line.span)}"
+    reference = line.annotations.reference.text
+    return f"{reference}, {typed}" if reference else f"as written, {typed}"
+
+
 def _in_force(
-    factored: list[_Factored], needs: Mapping[str, frozenset[str]], given: Mapping[str, float]
+    lines: Lines,
+    factored: list[_Factored],
+    needs: Mapping[str, frozenset[str]],
+    given: Mapping[str, float],
+    settings: Mapping[str, BeamSetting],
 ) -> Iterator[FactorRow]:
     """Give the factors that sets take, each with its source."""
     taken = frozenset[str]().union(*(_taken(each, needs) for each in factored))
     for key, row in recommended().items():
         if key in taken:
-            source = "as written" if key in given else f"{row.source}, recommended value"
+            source = f"{row.source}, recommended value"
+            if key in given:
+                source = _written(lines, settings[key])
             yield FactorRow(((key, given.get(key, row.value)),), row.meaning, source)
     for each in factored:
         symbols = needs.get(each.case.name, frozenset())
         name = plain(each.case.name)
         if each.case.own is not None and symbols & _OWN:
-            yield FactorRow((("γ", each.case.own),), f"partial factor of {name}", "as written")
+            yield FactorRow((("γ", each.case.own),), f"partial factor of {name}", _written(lines, each.line))
         psi = sorted(symbol for symbol in symbols if symbol.startswith("ψ"))
         if psi and each.case.psi is not None:
             values = tuple((symbol, each.case.psi[int(symbol[2:])]) for symbol in psi)
             row_found = each.row if each.line is None or not each.line.psi else None
             meaning = f"of {name}: {row_found.meaning}" if row_found is not None else f"of {name}"
             category = f", category {row_found.category}" if row_found and row_found.category else ""
-            source = f"{row_found.source}{category}" if row_found is not None else "as written"
+            source = f"{row_found.source}{category}" if row_found is not None else _written(lines, each.line)
             yield FactorRow(values, meaning, source)

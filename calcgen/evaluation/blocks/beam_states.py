@@ -15,9 +15,13 @@ from calcgen.mechanics.envelope import Effects, effects
 
 @dataclass(frozen=True, eq=False)
 class Varying:
-    """Effects of combinations that take a case in patterns or a train; extremes are found once."""
+    """Effects of combinations that take a case in patterns or a train; extremes are found once.
+
+    `asked`: the quantities, and the parts of the reactions of supports, of which extremes were asked for.
+    """
 
     effects: Effects
+    asked: set[Quantity | tuple[int, ReactionPart]] = field(default_factory=set)
     _found: dict[tuple[Quantity, float | None, float | None], EffectRange] = field(default_factory=dict)
 
     @property
@@ -29,6 +33,7 @@ class Varying:
         self, quantity: Quantity, start: float | None = None, end: float | None = None
     ) -> EffectRange:
         """Give the extremes of a quantity from `start` to `end`, over all that may act."""
+        self.asked.add(quantity)
         key = quantity, start, end
         if key not in self._found:
             self._found[key] = self.effects.extremes(quantity, start, end)
@@ -36,10 +41,12 @@ class Varying:
 
     def at(self, quantity: Quantity, x: float) -> EffectRange:
         """Give the extremes of a quantity at one place."""
+        self.asked.add(quantity)
         return self.effects.at(quantity, x)
 
     def reaction(self, support: int, part: ReactionPart = "force") -> EffectRange:
         """Give the extremes of one part of a support's reaction."""
+        self.asked.add((support, part))
         return self.effects.reaction(support, part)
 
     def band(self, quantity: Quantity, points_per_element: int = 20) -> Band:
@@ -77,7 +84,8 @@ def single(states: States) -> CaseSolution | None:
 class Solved:
     """A beam with each of its cases solved, from which the states of its groups of combinations follow.
 
-    `cuts`: places, m, between which extremes will be asked for.
+    `cuts`: places, m, between which extremes will be asked for. `together`: whether extremes of all groups
+    are found together, which is quicker where all are asked for and slower where few are.
     """
 
     model: BeamModel
@@ -85,12 +93,13 @@ class Solved:
     cases: Mapping[str, CaseSolution]
     groups: Sequence[Sequence[Combination]]
     cuts: Sequence[float] = ()
+    together: bool = True
 
     def states(self, combinations: Sequence[Combination]) -> States:
         """Give the states of one of the groups, or of one of its combinations."""
         names = [c.name for c in combinations]
         if any(self.varies(c) for c in combinations):
-            return Varying(self._effects.only(names))
+            return Varying(self._effects[names[0]].only(names))
         return Envelope({name: self._combined[name] for name in names})
 
     def varies(self, combination: Combination) -> bool:
@@ -105,7 +114,12 @@ class Solved:
         return combine_all(self.cases, alone)
 
     @cached_property
-    def _effects(self) -> Effects:
-        """The effects of all groups in which some combination has many states."""
-        groups = (group for group in self.groups if any(self.varies(c) for c in group))
-        return effects(self.model, self.actions, [c for group in groups for c in group], cuts=self.cuts)
+    def _effects(self) -> Mapping[str, Effects]:
+        """The effects of groups in which some combination has many states, by each of their combinations."""
+        groups = [group for group in self.groups if any(self.varies(c) for c in group)]
+        found = effects(self.model, self.actions, [c for group in groups for c in group], cuts=self.cuts)
+        by_name: dict[str, Effects] = {}
+        for group in groups:
+            names = [c.name for c in group]
+            by_name |= dict.fromkeys(names, found if self.together else found.apart(names))
+        return by_name

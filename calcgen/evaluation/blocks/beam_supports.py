@@ -96,10 +96,16 @@ def _support(lines: Lines, x: float, line: SupportLine) -> Support:
     return Support(x, force, rotation, force, rotation)
 
 
+_STIFFNESSES = {
+    "line load": "a spring stiffness is force by length, such as 12 kN/mm",
+    "moment": "the stiffness of a spring against rotation is a moment by radian, such as 5000 kN·m",
+}
+
+
 def _spring(lines: Lines, node: Expression | None, kind: str) -> float:
     if node is None:
         return FREE
-    value = lines.number(node, kind)
+    value = lines.number(node, kind, _STIFFNESSES[kind])
     if math.isnan(value):  # reported already
         return FREE
     if value < 0:

@@ -21,7 +21,7 @@ from calcgen.language.blocks.inputs import Feed
 from calcgen.quantities.display import Style
 from calcgen.quantities.measure import Measure
 from calcgen.quantities.symbols import plain
-from calcgen.text import nearest
+from calcgen.text import Report, nearest
 
 _MOST = 5  # spans or parts that are told one by one
 
@@ -41,20 +41,10 @@ class Upstream:
 
 def taken(feed: Feed, scope: Scope, upstream: Upstream) -> Plain | Thing | None:
     """Return what a calc takes from another; report a calc, a name or a result that does not exist."""
-    source = upstream.scopes.get(feed.calc)
+    source = source_of(feed, scope.report, upstream)
     if source is None:
-        _missing(feed, scope, upstream)
         return None
     head = feed.name.parts[0]
-    if head not in source.values and head not in source.things:
-        found = nearest(head, [*source.values, *source.things])
-        scope.report.error(
-            "unknown-name",
-            feed.name.spans[0],
-            f"the calc {feed.calc} has no '{plain(head)}'",
-            hint=f"the nearest name there is '{found}'" if found else "it is defined in no block there",
-        )
-        return None
     if len(feed.name.parts) == 1 and feed.name.arguments is None and head in source.things:
         return source.things[head]
     arguments: tuple[Plain, ...] | None = None
@@ -66,7 +56,26 @@ def taken(feed: Feed, scope: Scope, upstream: Upstream) -> Plain | Thing | None:
     return source.value(feed.name, arguments, report=scope.report)
 
 
-def _missing(feed: Feed, scope: Scope, upstream: Upstream) -> None:
+def source_of(feed: Feed, report: Report, upstream: Upstream) -> Scope | None:
+    """Return the scope of the calc that feeds; report a calc, or a name there, that does not exist."""
+    source = upstream.scopes.get(feed.calc)
+    if source is None:
+        _missing(feed, report, upstream)
+        return None
+    head = feed.name.parts[0]
+    if head in source.values or head in source.things:
+        return source
+    found = nearest(head, [*source.values, *source.things])
+    report.error(
+        "unknown-name",
+        feed.name.spans[0],
+        f"the calc {feed.calc} has no '{plain(head)}'",
+        hint=f"the nearest name there is '{found}'" if found else "it is defined in no block there",
+    )
+    return None
+
+
+def _missing(feed: Feed, report: Report, upstream: Upstream) -> None:
     """Report a calc that does not exist, or whose file cannot be read."""
     message = f"there is no calc '{feed.calc}' in this project"
     found = nearest(feed.calc, (n for n in upstream.numbers if n != upstream.taker))
@@ -74,7 +83,7 @@ def _missing(feed: Feed, scope: Scope, upstream: Upstream) -> None:
     if feed.calc in upstream.unread:
         message = f"the file of the calc '{feed.calc}' cannot be read"
         hint = "its own fault is told on the cover"
-    scope.report.error("unknown-calc", feed.calc_span, message, hint=hint)
+    report.error("unknown-calc", feed.calc_span, message, hint=hint)
 
 
 def under_name(thing: Thing, name: str) -> Thing:

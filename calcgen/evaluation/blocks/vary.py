@@ -7,6 +7,7 @@ from dataclasses import dataclass, replace
 from typing import TypeAlias
 
 from calcgen.evaluation.formulas import Evaluator, shown
+from calcgen.evaluation.residuals import report_residuals
 from calcgen.evaluation.results.calc import EvaluatedCalc
 from calcgen.evaluation.results.common import Plain
 from calcgen.evaluation.results.vary import VaryResult, VaryRun
@@ -219,11 +220,16 @@ def _by_mass(profile: Profile) -> tuple[float, str]:
 
 
 def _run(trial: _Trial, expressions: Iterable[Expression], name: str, again: Again) -> _Found:
-    """Evaluate the calc with a value; a run with an error shows no value at all."""
+    """Evaluate the calc with a value; a run with an error shows no value at all.
+
+    The second route is asked when everything of the run is read. Of beams under patterns or trains it finds
+    again what was read; of all else, what it finds in the calc itself.
+    """
     calc, scope = again({name: trial.value})
     report = Report(calc.calc.source)
     reader = Evaluator(replace(scope, report=report))
     values = tuple(reader.measure(e) for e in expressions)
+    report_residuals(calc.segments, report)
     errors = [d for d in (*calc.diagnostics, *report.diagnostics) if d.severity == "error"]
     if errors:
         return _Found(trial, calc, (None,) * len(values), errors[0].message)

@@ -2,9 +2,9 @@
 
 from __future__ import annotations
 
-from collections.abc import Mapping
+from collections.abc import Callable, Mapping
 from dataclasses import dataclass
-from typing import Literal
+from typing import Literal, TypeAlias
 
 from calcgen.evaluation.blocks.beam_states import States
 from calcgen.evaluation.combination_sets.standard import Expression as StandardExpression
@@ -14,6 +14,9 @@ from calcgen.mechanics.beam import BeamModel, Plane
 from calcgen.mechanics.beam.results import Side
 from calcgen.mechanics.influence import InfluenceLine
 from calcgen.text import Span
+
+Listing: TypeAlias = Callable[[], tuple[tuple[Result, ...], tuple[Result, ...]]]
+"""Gives the named results: those that a table shows, and further ones; found once, when first asked for."""
 
 
 @dataclass(frozen=True)
@@ -26,21 +29,33 @@ class CombinationResult:
     name: str
     factors: Mapping[str, float]
     states: States
-    results: tuple[Result, ...]
+    listing: Listing
+
+    @property
+    def results(self) -> tuple[Result, ...]:
+        """Every named result of it."""
+        shown, further = self.listing()
+        return (*shown, *further)
 
 
 @dataclass(frozen=True)
 class GroupResult:
-    """A group of combinations ('' is the beam itself: all cases together).
-
-    `results` are shown in its table; `further` are the same under names that the table does not use.
-    """
+    """A group of combinations ('' is the beam itself: all cases together)."""
 
     name: str
     combinations: tuple[CombinationResult, ...]
     states: States
-    results: tuple[Result, ...]
-    further: tuple[Result, ...]
+    listing: Listing
+
+    @property
+    def results(self) -> tuple[Result, ...]:
+        """The results that its table shows."""
+        return self.listing()[0]
+
+    @property
+    def further(self) -> tuple[Result, ...]:
+        """The same under names that the table does not use."""
+        return self.listing()[1]
 
 
 @dataclass(frozen=True)
@@ -141,7 +156,8 @@ class BeamResult:
     the model, `support_notes` how it settles, vertically and sideways; `patterned` the cases that act on
     adverse spans alone; `lines` each line as typed, with its columns; `influences` its influence lines, which
     belong to no combination; `sets` its standard combination sets, and `set_factors` what they take;
-    `section_names` the section of each stretch of the model, '' where it has EI alone.
+    `section_names` the section of each stretch of the model, '' where it has EI alone; `compare` asks the
+    second route.
     """
 
     name: str
@@ -157,7 +173,7 @@ class BeamResult:
     settings: tuple[Result, ...]
     restrained: bool | None
     premises: tuple[Premise, ...]
-    second_route: tuple[SecondRoute, ...]
+    compare: Callable[[], tuple[SecondRoute, ...]]
     lines: tuple[tuple[str, Column, Column, int], ...]
     line: int
     span: Span
@@ -165,3 +181,8 @@ class BeamResult:
     sets: tuple[SetResult, ...] = ()
     set_factors: tuple[FactorRow, ...] = ()
     section_names: tuple[str, ...] = ()
+
+    @property
+    def second_route(self) -> tuple[SecondRoute, ...]:
+        """What the second route finds; found once, when first asked for."""
+        return self.compare()

@@ -78,13 +78,18 @@ class EvaluatedCalc:
     values: Mapping[str, tuple[Plain, Shown]]
     checks: tuple[CheckResult, ...]
     premises: tuple[Premise, ...]
-    second_route: tuple[SecondRoute, ...]
     depends: tuple[Origin, ...]
     diagnostics: tuple[Diagnostic, ...]
     standing: Standing
     reason: str = ""
     lookups: tuple[Lookup, ...] = ()
     hindrances: tuple[Hindrance, ...] = ()
+
+    @property
+    def second_route(self) -> tuple[SecondRoute, ...]:
+        """What the second route finds of every block."""
+        kinds = SectionResult | BeamResult | StressResult
+        return tuple(r for s in self.segments if isinstance(s, kinds) for r in s.second_route)
 
     @property
     def number(self) -> str:

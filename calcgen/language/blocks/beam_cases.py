@@ -49,7 +49,7 @@ def read_case(line: Line, cursor: Cursor) -> CaseLine:
             "unexpected",
             cursor.span(cursor.token),
             f"'{cursor.token.text}' is not expected here",
-            hint=f"write case {target.name} {kind.name} category {cursor.token.text}, if that is meant",
+            hint=_meant(f"case {target.name} {kind.name}", cursor),
         )
     cursor.stops |= {"ψ", "γ"}
     category: Named | None = None
@@ -64,6 +64,15 @@ def read_case(line: Line, cursor: Cursor) -> CaseLine:
                 f"'{word.text}' is one too many",
                 hint="a case has a category or ψ_0, ψ_1 and ψ_2, and may have one γ",
             )
+        if cursor.sees("="):
+            raise ReadingError(
+                "unexpected",
+                cursor.span(cursor.token),
+                f"no '=' stands after '{word.text}' in the line of a case",
+                hint={"category": "write category B", "γ": "write γ 1.35"}.get(
+                    word.text, "write ψ 0.7, 0.5, 0.3"
+                ),
+            )
         if word.text == "category":
             category = cursor.named("a category")
         elif word.text == "γ":
@@ -73,11 +82,35 @@ def read_case(line: Line, cursor: Cursor) -> CaseLine:
     return CaseLine(target, kind, line.annotations, line.span, category, psi, gamma)
 
 
+def _meant(head: str, cursor: Cursor) -> str:
+    """Return what to write for the next token after a kind of load case."""
+    word, after = cursor.token.text, cursor.following.text
+    if word == ",":
+        rest = " ".join(cursor.text.text[cursor.token.end :].split())
+        return f"no comma stands after the kind: write {head} {rest}"
+    if word in ("cat", "class"):
+        return f"write {head} category {after or 'B'}"
+    if word in ("ψ_0", "ψ_1", "ψ_2", "psi"):
+        return f"ψ_0, ψ_1 and ψ_2 are written together: {head} ψ 0.7, 0.5, 0.3"
+    if word in ("γ_F", "γ_Q", "γ_G"):
+        return f"a partial factor of this case alone: {head} γ 1.35"
+    return f"write {head} category {word}, if that is meant"
+
+
 def _three(cursor: Cursor) -> tuple[Expression, ...]:
     first = cursor.token
     values = [expression(cursor)]
-    while cursor.accept(","):
+    tight = 0
+    while comma := cursor.accept(","):
+        tight += comma.end == cursor.token.start
         values.append(expression(cursor))
+    if len(values) == 6 and tight == 3:
+        raise ReadingError(
+            "decimal-comma",
+            cursor.span(first),
+            "',' is no decimal sign: these are six values",
+            hint="write points, and commas between the values: ψ 0.7, 0.5, 0.3",
+        )
     if len(values) != 3:
         raise ReadingError(
             "unexpected",

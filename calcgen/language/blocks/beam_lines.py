@@ -32,7 +32,7 @@ from calcgen.language.expressions import expression
 from calcgen.language.lines import Line
 from calcgen.language.nodes import Binary, Expression, Name, Named, Unary
 from calcgen.language.tokens import Token
-from calcgen.text import Report, Span
+from calcgen.text import Report, Span, nearest
 
 STOPS = frozenset({"at", "from", "to", "in", "settles", "rotation", "lateral", "spaced", "under"})
 """Words that end an expression in a beam."""
@@ -135,13 +135,68 @@ def _support(line: Line, cursor: Cursor) -> SupportLine:
     stiffness = expression(cursor) if kind == "spring" else None
     rotation = expression(cursor) if kind != "fixed" and cursor.accept("rotation") else None
     lateral = cursor.accept("lateral") is not None or lateral
+    _no_comma(cursor)
+    start = cursor.token
     at = _at(cursor, f"write support {kind} at 6 m")
+    if cursor.sees("rotation"):
+        raise _rotation_after_at(cursor, kind, _typed(cursor, start))
     settles, case = None, None
+    _meant_word(cursor, "settles")
     if cursor.accept("settles"):
         settles = expression(cursor)
         case = cursor.named("a load case") if cursor.accept("in") else None
     plane: Plane = "lateral" if lateral else "both"
     return SupportLine(kind, stiffness, rotation, plane, at, settles, case, line.annotations, line.span)
+
+
+def _rotation_after_at(cursor: Cursor, kind: SupportKind, at: str) -> ReadingError:
+    """Return the fault of a spring against rotation that is written after the place, `at 0 m`."""
+    word = cursor.take()
+    if kind == "fixed":
+        return ReadingError(
+            "unexpected",
+            cursor.span(word),
+            "a fixed support holds the rotation: it has no spring against it",
+            hint=f"write support pin rotation 5000 kN·m {at}",
+        )
+    first = cursor.token
+    expression(cursor)
+    spring = "spring 12 kN/mm" if kind == "spring" else kind
+    return ReadingError(
+        "unexpected",
+        cursor.span(word),
+        "'rotation' stands before 'at'",
+        hint=f"write support {spring} rotation {_typed(cursor, first)} {at}",
+    )
+
+
+def _typed(cursor: Cursor, first: Token) -> str:
+    """Return what was read, from a token on, as typed."""
+    last = cursor.previous or first
+    return " ".join(cursor.text.text[first.start : last.end].split())
+
+
+def _no_comma(cursor: Cursor) -> None:
+    """Refuse a comma between the parts of a support."""
+    if cursor.sees(","):
+        raise ReadingError(
+            "unexpected",
+            cursor.span(cursor.token),
+            "no comma stands between the parts of a support",
+            hint="write support spring 12 kN/mm rotation 500 kN·m at 6 m",
+        )
+
+
+def _meant_word(cursor: Cursor, word: str) -> None:
+    """Refuse a name that is nearly the word that may stand here."""
+    token = cursor.token
+    if token.kind == "name" and token.text != word and nearest(token.text, (word,)):
+        raise ReadingError(
+            "unknown-word",
+            cursor.span(token),
+            f"'{token.text}' is not expected here",
+            hint=f"write '{word}', if that is meant",
+        )
 
 
 def _hinge(line: Line, cursor: Cursor) -> HingeLine:
@@ -213,7 +268,22 @@ def _train(line: Line, cursor: Cursor, case: Named, sideways: Token | None) -> T
         )
     axles = _row(cursor)
     spaced = cursor.token
+    if spaced.kind == "number":
+        raise ReadingError(
+            "unexpected",
+            cursor.span(spaced),
+            "a comma is missing between two axle loads",
+            hint="write train 80 kN, 80 kN, 40 kN spaced 1.2 m, 3.6 m",
+        )
+    _meant_word(cursor, "spaced")
     spacings = _row(cursor) if cursor.accept("spaced") else ()
+    if spacings and cursor.token.kind == "number":
+        raise ReadingError(
+            "unexpected",
+            cursor.span(cursor.token),
+            "a comma is missing between two distances",
+            hint="write train 80 kN, 80 kN, 40 kN spaced 1.2 m, 3.6 m",
+        )
     if len(spacings) != len(axles) - 1:
         wanted = f"{len(axles)} axle{'s have' if len(axles) > 1 else ' has'} {len(axles) - 1}"
         raise ReadingError(
@@ -222,6 +292,7 @@ def _train(line: Line, cursor: Cursor, case: Named, sideways: Token | None) -> T
             f"{wanted} distance{'' if len(axles) == 2 else 's'} between them, not {len(spacings)}",
             hint="write train 80 kN, 80 kN, 40 kN spaced 1.2 m, 3.6 m",
         )
+    _meant_word(cursor, "lateral")
     lateral = expression(cursor) if cursor.accept("lateral") else None
     return TrainLine(case, axles, spacings, lateral, line.annotations, line.span, line.statement_span)
 
@@ -236,7 +307,16 @@ def _row(cursor: Cursor) -> tuple[Expression, ...]:
 
 def _pattern(line: Line, cursor: Cursor) -> PatternLine:
     cursor.take()
-    return PatternLine(cursor.named("a load case"), line.annotations, line.span)
+    case = cursor.named("a load case")
+    second = cursor.following if cursor.sees(",") else cursor.token
+    if second.kind == "name" and second.text not in cursor.stops:
+        raise ReadingError(
+            "unexpected",
+            cursor.span(cursor.token),
+            "a line of pattern has one load case",
+            hint=f"write a line for each: pattern {case.name}, and below it pattern {second.text}",
+        )
+    return PatternLine(case, line.annotations, line.span)
 
 
 def _combination(line: Line, cursor: Cursor) -> CombinationLine:
@@ -294,6 +374,13 @@ def _term(node: Expression, sign: int) -> Term:
 def _influence(line: Line, cursor: Cursor) -> InfluenceLine:
     cursor.take()
     target = cursor.named("an influence line")
+    if target.name == "line" and cursor.token.kind == "name":
+        raise ReadingError(
+            "unexpected",
+            target.span,
+            "the word 'influence' says it: no 'line' stands after it",
+            hint=f"write influence {cursor.token.text} = M at 7 m",
+        )
     cursor.expect("=", hint=f"write influence {target.name} = M at 7 m")
     result = cursor.named("a result")
     found = _INFLUENCED.match(result.name)
@@ -349,6 +436,8 @@ def _at(cursor: Cursor, hint: str) -> Expression:
 
 def _stretch(cursor: Cursor) -> tuple[Expression | None, Expression | None]:
     """Read `from a to b` where it stands here."""
+    if cursor.token.kind == "number" and cursor.following.text == "to":
+        raise cursor.misplaced("'from' is missing", "write from 2 m to 4 m")
     if not cursor.accept("from"):
         return None, None
     start = expression(cursor)

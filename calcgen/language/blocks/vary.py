@@ -117,6 +117,13 @@ def _read_line(line: Line, cursor: Cursor) -> Varied | Show:
         values = Over(pattern)
     else:
         cursor.expect("=", _FORMS)
+        if cursor.sees("over"):
+            raise ReadingError(
+                "unexpected",
+                cursor.span(cursor.token),
+                "'over' stands without '='",
+                hint=f"write {target.name} over {cursor.following.text}",
+            )
         values = _steps(cursor)
     cursor.finish()
     return Varied(target, values, line.annotations, line.span, line.statement_span)

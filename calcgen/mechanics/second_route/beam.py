@@ -45,12 +45,13 @@ def beam_residuals(model: BeamModel, loads: Sequence[Load], solution: CaseSoluti
     """Compare a solved case, or a combination given as its factored loads, with the second route.
 
     In each plane whose stiffness is known: the sums of forces and of moments about x = 0, the slopes of M
-    and V, and the largest deflection by virtual work. The scales span both planes: one in which next to
-    nothing happens is not measured by itself.
+    and V, the moment at hinges, and the largest deflection by virtual work. The scales span both planes: one
+    in which next to nothing happens is not measured by itself.
     """
     return (
         *_equilibrium(model, loads, solution),
         *_slopes(model, loads, solution),
+        *_hinges(model, solution),
         *_deflections(model, loads, solution),
     )
 
@@ -125,6 +126,23 @@ def _equilibrium(model: BeamModel, loads: Sequence[Load], solution: CaseSolution
                 "moments of loads and reactions about the beam's start, over the sum of their magnitudes",
             ),
         )
+    ]
+
+
+def _hinges(model: BeamModel, solution: CaseSolution) -> list[Residual]:
+    """Hinges turn freely in each plane: what moment they carry is an error."""
+    if not model.hinges:
+        return []
+    quantities = [(plane, _quantity("M", plane)) for plane in model.planes]
+    scale = max(solution.extremes(quantity).abs for _, quantity in quantities)
+    return [
+        Residual(
+            _name("M at hinges", plane),
+            relative(max(abs(solution.at(quantity, x)) for x in model.hinges), scale),
+            TOLERANCE,
+            "the moment that a hinge carries, over the largest one",
+        )
+        for plane, quantity in quantities
     ]
 
 

@@ -36,11 +36,22 @@ def extreme_residuals(effects: Effects, quantity: Quantity, found: EffectRange) 
     return _residuals(effects, quantity, found, read)
 
 
+def along_residual(effects: Effects, quantity: Quantity, found: EffectRange) -> Residual:
+    """Compare the extremes along the beam with the envelope at places a tenth of an element apart."""
+    band = effects.band(quantity, 11)
+    worse = max(float(band.high.max()) - found.max.value, found.min.value - float(band.low.min()), 0.0)
+    return Residual(
+        quantity,
+        relative(worse, max(abs(found.max.value), abs(found.min.value))),
+        TOLERANCE,
+        "what the envelope at some place along the beam exceeds its extremes by, over the larger of them",
+    )
+
+
 def reaction_residuals(
     effects: Effects, support: int, found: EffectRange, part: ReactionPart = "force"
 ) -> tuple[Residual, ...]:
     """Compare the extremes of a part of a support's reaction with plain solutions."""
-
     plane, which = reaction_index(part)
 
     def read(solution: CaseSolution, _: Effect) -> float:
