@@ -326,3 +326,16 @@ def test_axles_that_coincide_are_found_again(lines: tuple[str, ...]) -> None:
     (calc,) = evaluated("# T\n\n" + fence("beam b", "EI = 40 MN*1 m*1 m", *lines))
     assert codes(calc) == []
     assert all(row.holds for row in calc.second_route)
+
+
+def test_moments_along_the_beam_name_what_causes_them() -> None:
+    (calc,) = evaluated("# T\n\n" + fence("beam b", *TRAIN))
+    group = result(calc).groups[0]
+    rows = {row.at: row for row in group.along()}
+    assert len(rows) == 11
+    # Two wheels P, a apart, the first at x of a simple span: P x (2 (L - x) - a)/L where both stand on it.
+    for x, at in ((2.4, "2.400\xa0m"), (4.8, "4.800\xa0m")):
+        moment = 80.0 * x * (2 * (12.0 - x) - 3.0) / 12.0
+        assert rows[at].high.value.si == pytest.approx(moment * 1e3, rel=1e-12)
+        assert rows[at].high.place.startswith("T with its first axle at")
+    assert result(beam(*PATTERN)).groups[0].along() == ()

@@ -6,7 +6,7 @@ import math
 import re
 from collections.abc import Mapping, Sequence
 from dataclasses import dataclass
-from functools import cache
+from functools import cache, partial
 from itertools import chain, count
 
 from calcgen.evaluation.blocks.beam_influence_results import (
@@ -19,7 +19,12 @@ from calcgen.evaluation.blocks.beam_lines import SPAN, is_result, length_text
 from calcgen.evaluation.blocks.beam_model import BeamData, read_beam
 from calcgen.evaluation.blocks.beam_premises import premises
 from calcgen.evaluation.blocks.beam_reading import Reading, beam_measure
-from calcgen.evaluation.blocks.beam_results import group_results, places_of_results, relieving_cases
+from calcgen.evaluation.blocks.beam_results import (
+    group_results,
+    moments_along,
+    places_of_results,
+    relieving_cases,
+)
 from calcgen.evaluation.blocks.beam_second_route import second_route
 from calcgen.evaluation.blocks.beam_states import Solved, States
 from calcgen.evaluation.results.beam import BeamResult, CombinationResult, GroupResult, Listing
@@ -258,7 +263,8 @@ def _groups(
         if len(members) > 1:
             states = solved.states(combinations)
             listing = results(states)
-        groups.append(GroupResult(name, tuple(members), states, listing))
+        along = cache(partial(moments_along, states, spans, style, beam_measure))
+        groups.append(GroupResult(name, tuple(members), states, listing, along))
     return tuple(groups)
 
 

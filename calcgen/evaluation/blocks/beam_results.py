@@ -8,7 +8,7 @@ from dataclasses import dataclass, replace
 from calcgen.evaluation.blocks.beam_arrangement import arrangement
 from calcgen.evaluation.blocks.beam_spans import chord_range, least_shape
 from calcgen.evaluation.blocks.beam_states import Found, States, Varying, names_of, single
-from calcgen.evaluation.results.beam import GroupResult
+from calcgen.evaluation.results.beam import Along, GroupResult
 from calcgen.evaluation.results.common import Result
 from calcgen.mechanics.actions import Actions, Effect
 from calcgen.mechanics.beam import BeamModel, CaseSolution, Quantity
@@ -222,6 +222,29 @@ def places_of_results(model: BeamModel, spans: Sequence[tuple[float, float]]) ->
         return ()
     held = (*model.spans_in("vertical"), *model.spans_in("lateral"))
     return tuple(x for ends in (*spans, *held) for x in ends)
+
+
+TENTHS = 10  # parts of a span between which moments are listed along the beam
+
+
+def moments_along(
+    states: States, spans: Sequence[tuple[float, float]], style: Style, measured: Measured
+) -> tuple[Along, ...]:
+    """Return the extreme moments at tenths of the spans, where a train crosses the beam and spans are few."""
+    if not isinstance(states, Varying) or len(spans) > LISTED_SPANS:
+        return ()
+    trains = states.effects.actions.trains
+    if not any(c.factors.get(case, 0.0) != 0.0 for c in states.effects.combinations for case in trains):
+        return ()
+    rows = _Rows(states, spans, style, measured)
+    places = dict.fromkeys(a + (b - a) * i / TENTHS for a, b in spans for i in range(TENTHS + 1))
+    found: list[Along] = []
+    for x in places:
+        there = states.at("M", x)
+        at = show(measured("x", x, style), style).text
+        high, low = (rows.row(f"M_{which}", "M", getattr(there, which), "") for which in ("max", "min"))
+        found.append(Along(at, high, low))
+    return tuple(found)
 
 
 def moves_sideways(states: States | CaseSolution, model: BeamModel) -> bool:

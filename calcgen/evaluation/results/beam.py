@@ -39,13 +39,27 @@ class CombinationResult:
 
 
 @dataclass(frozen=True)
+class Along:
+    """The largest and the smallest moment at a place; the `place` of each result tells what causes it."""
+
+    at: str
+    high: Result
+    low: Result
+
+
+@dataclass(frozen=True)
 class GroupResult:
-    """A group of combinations ('' is the beam itself: all cases together)."""
+    """A group of combinations ('' is the beam itself: all cases together).
+
+    `along` gives the moments along the beam, with what causes each, where trains change that from place to
+    place; nothing where none crosses.
+    """
 
     name: str
     combinations: tuple[CombinationResult, ...]
     states: States
     listing: Listing
+    along: Callable[[], tuple[Along, ...]]
 
     @property
     def results(self) -> tuple[Result, ...]:

@@ -48,6 +48,8 @@ class GroupView:
     results: tuple[ValueRow, ...]
     further: tuple[ValueRow, ...]
     generated: SetView | None = None
+    along: tuple[tuple[str, str, str, str, str], ...] = ()
+    """Place, largest moment and its cause, smallest moment and its cause."""
 
 
 @dataclass(frozen=True)
@@ -172,4 +174,8 @@ def _group(beam: BeamResult, group: GroupResult) -> GroupView:
         results=rows(group.results),
         further=rows(r for r in group.further if _FURTHER.match(r.name)),
         generated=set_view(beam.name, chosen) if chosen is not None else None,
+        along=tuple(
+            (row.at, row.high.shown.text, row.high.place, row.low.shown.text, row.low.place)
+            for row in group.along()
+        ),
     )
