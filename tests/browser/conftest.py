@@ -49,7 +49,10 @@ class Walked:
     survey: Survey
 
 
-@pytest.fixture(scope="session", params=["heron-lock", "mill-loft", "manual", "extreme"])
+MANUAL = pytest.param("manual", marks=pytest.mark.slow)  # as many pages as the others together
+
+
+@pytest.fixture(scope="session", params=["heron-lock", "mill-loft", MANUAL, "extreme"])
 def walked(
     request: pytest.FixtureRequest, browser: Browser, tmp_path_factory: pytest.TempPathFactory
 ) -> Walked:
